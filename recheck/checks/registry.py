@@ -1,0 +1,98 @@
+"""The list of checks: each declared once, with its formula, source, limits and examples."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable
+from dataclasses import dataclass, field
+from functools import cache
+from importlib import import_module
+
+from recheck.errors import UnknownCheck
+from recheck.model import Claim, ClaimKind, Context, Finding, Settings
+
+FAMILIES = ("tails", "groups", "effects", "intervals", "sizes", "ranges")
+"""Modules of checks, in the order in which they are listed and run."""
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Case:
+    """A claim with what a check may need beside it: its groups, the context, the settings."""
+
+    claim: Claim
+    groups: tuple[Claim, ...] = ()
+    context: Context = Context()
+    settings: Settings = field(default_factory=Settings)
+    neighbours: tuple[Claim, ...] = ()
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Check:
+    """One relation between printed numbers.
+
+    `needs` names the quantities without which the check does not run; the examples are whole
+    passages with the verdict that each must get.
+    """
+
+    name: str
+    title: str
+    kinds: tuple[ClaimKind, ...]
+    quantity: str
+    needs: tuple[str, ...]
+    formula: str
+    source: str
+    limits: str
+    run: Callable[[Case], Iterable[Finding]]
+    agrees: tuple[str, ...] = ()
+    conditional: tuple[str, ...] = ()
+    inconsistent: tuple[str, ...] = ()
+    impossible: tuple[str, ...] = ()
+    unchecked: tuple[str, ...] = ()
+
+
+_CHECKS: dict[str, Check] = {}
+
+
+def check(
+    name: str,
+    *,
+    title: str,
+    kinds: tuple[ClaimKind, ...],
+    quantity: str,
+    needs: tuple[str, ...],
+    formula: str,
+    source: str,
+    limits: str,
+    **examples: tuple[str, ...],
+) -> Callable[[Callable[[Case], Iterable[Finding]]], Callable[[Case], Iterable[Finding]]]:
+    """Declare a check; the decorated function yields its findings for one case."""
+
+    def declare(run: Callable[[Case], Iterable[Finding]]) -> Callable[[Case], Iterable[Finding]]:
+        if name in _CHECKS:
+            raise ValueError(f"two checks are named {name!r}")
+        _CHECKS[name] = Check(
+            name=name, title=title, kinds=kinds, quantity=quantity, needs=needs,
+            formula=formula, source=source, limits=limits, run=run, **examples,
+        )  # fmt: skip
+        return run
+
+    return declare
+
+
+@cache
+def all_checks() -> tuple[Check, ...]:
+    """All checks in the order in which they are listed and run."""
+    for family in FAMILIES:
+        import_module(f"recheck.checks.{family}")
+    return tuple(_CHECKS.values())
+
+
+def find_check(name: str) -> Check:
+    """The check of that name; raises `UnknownCheck` with the nearest names."""
+    checks = {check.name: check for check in all_checks()}
+    if name not in checks:
+        from difflib import get_close_matches
+
+        near = get_close_matches(name, checks, n=3, cutoff=0.5)
+        hint = f"; did you mean {' or '.join(near)}?" if near else "; `recheck methods` lists all."
+        raise UnknownCheck(f"there is no check named {name!r}{hint}")
+    return checks[name]

@@ -1,0 +1,107 @@
+"""Claims: printed numbers that the authors assert together."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+from recheck.model.document import Place
+from recheck.model.printed import Printed
+
+ClaimKind = Literal[
+    "t-test", "F-test", "chi2-test", "correlation", "z-test", "rank-test", "group-summary",
+    "comparison", "estimate", "regression", "count", "two-by-two", "power", "correlation-matrix",
+]  # fmt: skip
+Confidence = Literal["high", "medium", "low"]
+
+STATED = {
+    "two-tailed": "a two-sided test",
+    "one-tailed": "a one-sided test",
+    "independent": "two independent groups",
+    "pooled": "equal variances, pooled",
+    "welch": "unequal variances (Welch)",
+    "paired": "the same units measured twice",
+    "one-sample": "one sample against a fixed value",
+    "between-groups": "a design without repeated measures",
+    "repeated": "a design with repeated measures",
+    "corrected-df": "degrees of freedom corrected for sphericity (Greenhouse–Geisser, Huynh–Feldt)",
+    "adjusted-p": "p adjusted for several tests (Bonferroni, Holm, Tukey, false discovery rate)",
+    "adjusted-p-post-hoc": "p of post hoc comparisons adjusted for several tests",
+    "equivalence": "a test of equivalence or non-inferiority",
+    "covariate-adjusted": "means or tests adjusted for covariates (ANCOVA)",
+    "mixed-model": "a mixed (multilevel) model",
+    "imputed": "multiple imputation",
+    "weighted": "weights",
+    "robust": "robust standard errors",
+    "bootstrap": "a bootstrap",
+    "permutation": "a permutation or exact test",
+    "bayesian": "a Bayesian analysis",
+    "contrast": "a contrast on the error term of a larger analysis",
+    "marginal": "estimated marginal means",
+    "within-subject-se": "a spread normalised within subjects",
+    "rank-test": "a test of ranks",
+    "spearman": "a rank correlation",
+    "partial": "a partial correlation",
+    "disattenuated": "a correlation corrected for unreliability or between latent variables",
+    "yates": "the continuity correction",
+    "likelihood-ratio": "a likelihood-ratio test",
+    "fisher-exact": "Fisher's exact test",
+    "multi-regression": "a regression with several predictors",
+    "model-fit": "the fit of a model (structural equations, nested models)",
+    "spread-unlabelled": "a spread that is not said to be SD or SE",
+    "effect-size-r": "r as the effect size of a test",
+    "glass-delta": "d by the SD of one group",
+    "inferred": "put together from numbers that stand apart",
+}
+"""What a manuscript can say of a result, in the words that reports use for it."""
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Claim:
+    """One result, group summary or comparison as the manuscript prints it.
+
+    `values` maps the name of a quantity to its printed number. `stated` holds keys of `STATED`
+    said of this claim, `background` those said for the document elsewhere. `interval_of` names the
+    quantity that `ci_low` and `ci_high` belong to, where that is sure. `groups` are ids of linked
+    group summaries, in the order in which they are printed. `alpha` is the significance level
+    where the text states one for this claim.
+    """
+
+    id: str
+    kind: ClaimKind
+    place: Place
+    values: Mapping[str, Printed]
+    stated: tuple[str, ...] = ()
+    background: tuple[str, ...] = ()
+    interval_of: str | None = None
+    confidence: Confidence = "high"
+    groups: tuple[str, ...] = ()
+    link: str | None = None
+    notes: tuple[str, ...] = field(default=())
+
+    def says(self, *words: str) -> bool:
+        """Tell whether any of the words is stated of this claim itself."""
+        return any(word in self.stated for word in words)
+
+    def suggests(self, *words: str) -> bool:
+        """Tell whether any of the words is stated of this claim or for the whole document."""
+        return any(word in self.stated or word in self.background for word in words)
+
+
+@dataclass(frozen=True, slots=True)
+class Context:
+    """What the document says once for all its tests."""
+
+    alpha: Printed | None = None
+    background: tuple[str, ...] = ()
+    notes: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Reading:
+    """Everything that was read from one document."""
+
+    claims: tuple[Claim, ...]
+    context: Context = Context()
+    notes: tuple[str, ...] = ()

@@ -1,0 +1,104 @@
+"""Findings: the outcome of a check on a claim, with its evidence."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+from recheck.model.claim import Claim, Confidence
+from recheck.model.document import Place
+
+Verdict = Literal["impossible", "inconsistent", "conditional", "agrees", "unchecked"]
+VERDICTS: tuple[Verdict, ...] = ("impossible", "inconsistent", "conditional", "agrees", "unchecked")
+DISCREPANT: tuple[Verdict, ...] = ("impossible", "inconsistent")
+
+
+@dataclass(frozen=True, slots=True)
+class Implied:
+    """What the other numbers say that a printed one must be, under one reading.
+
+    `integers` holds the only whole numbers possible, where the quantity is one.
+    `assuming` names the reading in words; empty for the claim as it stands.
+    """
+
+    low: float
+    high: float
+    assuming: str = ""
+    integers: tuple[int, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Remedy:
+    """One thing that would reconcile a discrepancy."""
+
+    kind: Literal["reading", "slip", "number"]
+    quantity: str
+    text: str
+    low: float | None = None
+    high: float | None = None
+    change: str | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Finding:
+    """The outcome of one check, with everything that a report shows of it."""
+
+    id: str
+    check: str
+    verdict: Verdict
+    claims: tuple[str, ...]
+    quantity: str
+    printed: str
+    implied: tuple[Implied, ...]
+    message: str
+    place: Place
+    tolerance: str = ""
+    question: str = ""
+    gap: float | None = None
+    reversal: bool = False
+    confidence: Confidence = "high"
+    assumptions: tuple[str, ...] = ()
+    reconciled_by: tuple[Remedy, ...] = ()
+    rank: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class DocumentFacts:
+    """What is known of an audited file."""
+
+    name: str
+    format: str
+    sha256: str
+    pages: int | None
+    words: int
+    title: str | None
+
+
+@dataclass(frozen=True, slots=True)
+class Settings:
+    """How an audit was asked for."""
+
+    alpha: float = 0.05
+    alpha_source: Literal["default", "stated", "asked"] = "default"
+    reader: Literal["auto", "pdfium", "pdfminer"] = "auto"
+    rounding: str = "half up or half to even"
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Audit:
+    """A finished audit of one document: claims in reading order, findings ranked."""
+
+    document: DocumentFacts
+    settings: Settings
+    claims: tuple[Claim, ...]
+    findings: tuple[Finding, ...]
+    notes: tuple[str, ...] = ()
+
+    def summary(self) -> dict[str, int]:
+        """Count claims, claims checked, and findings by verdict."""
+        checked = {c for f in self.findings if f.verdict != "unchecked" for c in f.claims}
+        counts = {"claims": len(self.claims), "checked": len(checked & {c.id for c in self.claims})}
+        counts["reversals"] = sum(f.reversal for f in self.findings)
+        for verdict in VERDICTS:
+            counts[verdict] = sum(f.verdict == verdict for f in self.findings)
+        return counts
