@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
@@ -13,14 +14,16 @@ __version__ = "0.1.0"
 __all__ = ["Audit", "RecheckError", "audit", "audit_text"]
 
 
+_HOMES = {
+    "Audit": "recheck.model",
+    "RecheckError": "recheck.errors",
+    "audit": "recheck.auditing",
+    "audit_text": "recheck.auditing",
+}
+
+
 def __getattr__(name: str) -> Any:
     """Import a public name when it is first asked for: numpy and scipy cost a third of a second."""
-    if name in ("audit", "audit_text"):
-        import recheck.auditing as home
-    elif name == "RecheckError":
-        import recheck.errors as home
-    elif name == "Audit":
-        import recheck.model as home
-    else:
+    if name not in _HOMES:
         raise AttributeError(f"module 'recheck' has no attribute {name!r}")
-    return getattr(home, name)
+    return getattr(import_module(_HOMES[name]), name)

@@ -20,9 +20,8 @@ class Case:
 
     claim: Claim
     groups: tuple[Claim, ...] = ()
-    context: Context = Context()
+    context: Context = field(default_factory=Context)
     settings: Settings = field(default_factory=Settings)
-    neighbours: tuple[Claim, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, eq=False)

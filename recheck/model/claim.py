@@ -64,8 +64,8 @@ class Claim:
     `values` maps the name of a quantity to its printed number. `stated` holds keys of `STATED`
     said of this claim, `background` those said for the document elsewhere. `interval_of` names the
     quantity that `ci_low` and `ci_high` belong to, where that is sure. `groups` are ids of linked
-    group summaries, in the order in which they are printed. `alpha` is the significance level
-    where the text states one for this claim.
+    group summaries, in the order in which they are printed; `link` says on what ground, and
+    `link_confidence` how sure that is (`confidence` speaks of the claim's own numbers alone).
     """
 
     id: str
@@ -78,6 +78,7 @@ class Claim:
     confidence: Confidence = "high"
     groups: tuple[str, ...] = ()
     link: str | None = None
+    link_confidence: Confidence = "high"
     notes: tuple[str, ...] = field(default=())
 
     def says(self, *words: str) -> bool:

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
-from typing import Literal
+from typing import ClassVar, Literal
 
 from recheck.model.claim import Claim, Confidence
 from recheck.model.document import Place
@@ -86,7 +87,12 @@ class Settings:
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Audit:
-    """A finished audit of one document: claims in reading order, findings ranked."""
+    """A finished audit of one document: claims in reading order, findings ranked.
+
+    `notebook_view` writes an audit as HTML where a notebook shows one; None until something sets it.
+    """
+
+    notebook_view: ClassVar[Callable[[Audit], str] | None] = None
 
     document: DocumentFacts
     settings: Settings
@@ -102,3 +108,12 @@ class Audit:
         for verdict in VERDICTS:
             counts[verdict] = sum(f.verdict == verdict for f in self.findings)
         return counts
+
+    @property
+    def discrepant(self) -> bool:
+        """Tell whether anything is impossible or inconsistent."""
+        return any(finding.verdict in DISCREPANT for finding in self.findings)
+
+    def _repr_html_(self) -> str | None:
+        view = type(self).notebook_view
+        return None if view is None else view(self)

@@ -1,0 +1,69 @@
+"""The whole way for one document: open, read, check, confirm, rank."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from pathlib import Path
+from typing import BinaryIO, Literal
+
+from recheck.checks.registry import all_checks
+from recheck.checks.running import run_checks
+from recheck.confirming import confirm
+from recheck.documents import open_document, text_document
+from recheck.model import Audit, Context, Document, DocumentFacts, Reading, Settings
+from recheck.ranking import rank
+from recheck.reading import read
+
+ReaderChoice = Literal["auto", "pdfium", "pdfminer"]
+Source = str | Path | bytes | BinaryIO
+
+
+def audit(
+    source: Source, *, name: str | None = None, alpha: float | None = None, reader: ReaderChoice = "auto"
+) -> Audit:
+    """Audit one manuscript: a path, its bytes, or an open binary file.
+
+    `alpha` overrides the significance level that the text states. Raises `UnreadableDocument`.
+    """
+    if hasattr(source, "read"):
+        name, source = name or str(getattr(source, "name", "")) or None, source.read()
+    document = open_document(source, name=name, reader=reader)
+    return _audit(document, source, alpha, reader)
+
+
+def audit_text(text: str, *, name: str = "text", alpha: float | None = None) -> Audit:
+    """Audit a text that is at hand as a string."""
+    return _audit(text_document(text, name=name), None, alpha, "auto")
+
+
+def _audit(
+    document: Document, source: str | Path | bytes | None, alpha: float | None, reader: ReaderChoice
+) -> Audit:
+    all_checks()
+    reading = read(document)
+    settings = _settings(reading.context, alpha, reader)
+    findings = run_checks(reading.claims, reading.context, settings)
+    if document.format == "pdf" and reader == "auto" and document.reader == "pdfium" and source is not None:
+        findings = confirm(findings, reading.claims, lambda pages: _second(source, document, pages))
+    facts = DocumentFacts(
+        name=document.name, format=document.format, sha256=document.sha256, pages=document.pages,
+        words=document.words, title=document.title,
+    )  # fmt: skip
+    notes = (*document.notes, *reading.context.notes, *reading.notes)
+    return Audit(facts, settings, reading.claims, rank(findings), notes)
+
+
+def _second(source: str | Path | bytes, document: Document, pages: Sequence[int] | None) -> Reading:
+    """Read some pages (or all) again with the other engine."""
+    wanted = None if pages is None else frozenset(pages)
+    return read(open_document(source, name=document.name, reader="pdfminer", pages=wanted))
+
+
+def _settings(context: Context, alpha: float | None, reader: ReaderChoice) -> Settings:
+    if alpha is not None:
+        return Settings(alpha=alpha, alpha_source="asked", reader=reader)
+    if context.alpha is not None:
+        level = context.alpha.number / 100 if context.alpha.percent else context.alpha.number
+        if 0 < level < 1:
+            return Settings(alpha=level, alpha_source="stated", reader=reader)
+    return Settings(reader=reader)

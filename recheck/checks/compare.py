@@ -1,0 +1,252 @@
+"""From printed numbers and the ways to understand them to a finding: the only giver of verdicts."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Sequence
+from dataclasses import dataclass, field, replace
+from hashlib import sha256
+
+from recheck.checks.registry import Case
+from recheck.checks.wording import question_for, stands_for, tell
+from recheck.model import Claim, Confidence, Finding, Implied, Interval, Printed, Remedy, Verdict, shown
+from recheck.model.figures import interval_text, printed_text
+from recheck.reconcile.readings import Attempt, Numbers, Way, agrees_as_printed, attempts
+from recheck.reconcile.slips import slip_remedies
+
+_ORDER: tuple[Confidence, ...] = ("low", "medium", "high")
+
+
+EVERYTHING = Interval(-math.inf, math.inf)
+
+
+@dataclass(frozen=True, slots=True)
+class Comparison:
+    """What a check hands over to be judged.
+
+    `doubts` are reasons why a contradiction is no more than `conditional`; `excuses` reasons why
+    it is `unchecked` instead. `excess` and `lack` excuse only a printed number above or below
+    what is implied. `bounds` is the range that the quantity can have at all.
+    """
+
+    check: str
+    quantity: str
+    numbers: Numbers
+    ways: Sequence[Way]
+    claims: tuple[Claim, ...] = ()
+    bounds: Interval = EVERYTHING
+    doubts: tuple[str, ...] = ()
+    excuses: tuple[str, ...] = ()
+    excess: str = ""
+    lack: str = ""
+    mend_others: tuple[Remedy, ...] = field(default=())
+
+
+def lowest(claims: Sequence[Claim]) -> Confidence:
+    """The least confidence of several claims."""
+    return min((claim.confidence for claim in claims), key=_ORDER.index)
+
+
+def finding_id(check: str, claims: Sequence[Claim], quantity: str) -> str:
+    """An id made from the check and the claims alone: the same manuscript gives the same ids."""
+    return sha256("|".join((check, quantity, *(claim.id for claim in claims))).encode()).hexdigest()[:12]
+
+
+def judge(case: Case, comparison: Comparison) -> Finding:
+    """Give the verdict on one comparison.
+
+    `agrees` where the numbers meet as printed; `conditional` where they meet under at most two
+    unstated assumptions, or where the reading itself is in doubt; else `inconsistent`, unless an
+    excuse says that this model cannot be rebuilt.
+    """
+    claims = comparison.claims or (case.claim,)
+    tried: list[Attempt] = []
+    match = None
+    for attempt in attempts(comparison.quantity, comparison.numbers, comparison.ways):
+        attempt = _within(attempt, comparison.bounds)
+        tried.append(attempt)
+        if attempt.agrees:
+            match = attempt
+            break
+    if not any(attempt.implied for attempt in tried):
+        return unchecked(
+            case,
+            comparison.check,
+            comparison.quantity,
+            "the numbers do not fit any design that they could be checked against",
+            claims,
+        )
+    if match and not match.unstated:
+        return _finding(case, comparison, claims, "agrees", [match], match)
+    excuse = _excuse(comparison, tried)
+    if excuse:
+        shown_ways = [a for a in tried if not a.unstated and a.implied]
+        return replace(
+            unchecked(case, comparison.check, comparison.quantity, excuse, claims),
+            implied=_implied(shown_ways),
+        )
+    if match:
+        plain = [a for a in tried if not a.unstated and a.implied]
+        return _finding(case, comparison, claims, "conditional", [*plain, match], match)
+    doubts = (*comparison.doubts, *_doubts_of(claims))
+    if doubts:
+        return _finding(case, comparison, claims, "conditional", _listed(tried), None, doubts=doubts)
+    return _finding(
+        case,
+        comparison,
+        claims,
+        "inconsistent",
+        _listed(tried),
+        None,
+        reversal=_reverses(case, comparison, tried),
+    )
+
+
+def unchecked(case: Case, check: str, quantity: str, reason: str, claims: Sequence[Claim] = ()) -> Finding:
+    """A finding that says why nothing could be checked."""
+    claims = tuple(claims) or (case.claim,)
+    printed = case.claim.values.get(quantity)
+    return Finding(
+        id=finding_id(check, claims, quantity), check=check, verdict="unchecked", claims=tuple(c.id for c in claims),
+        quantity=quantity, printed=printed_text(printed) if printed else "", implied=(), place=case.claim.place,
+        message=f"Not checked: {reason}.", confidence=lowest(claims),
+    )  # fmt: skip
+
+
+def impossible(
+    case: Case,
+    check: str,
+    quantity: str,
+    message: str,
+    implied: Interval,
+    *,
+    remedies: tuple[Remedy, ...] = (),
+) -> Finding:
+    """A printed value that no data can have; `conditional` where it was read with doubt."""
+    printed = case.claim.values[quantity]
+    doubts = _doubts_of((case.claim,))
+    verdict: Verdict = "conditional" if doubts else "impossible"
+    gap = printed.interval().distance(implied) / float(printed.unit)
+    return Finding(
+        id=finding_id(check, (case.claim,), quantity), check=check, verdict=verdict, claims=(case.claim.id,),
+        quantity=quantity, printed=printed_text(printed), implied=(Implied(implied.low, implied.high),),
+        message=message, place=case.claim.place, tolerance=stands_for({quantity: printed}), gap=gap,
+        confidence=case.claim.confidence, assumptions=doubts, reconciled_by=remedies,
+        question=question_for(case.claim, quantity, printed, (Implied(implied.low, implied.high),)),
+    )  # fmt: skip
+
+
+def _within(attempt: Attempt, bounds: Interval) -> Attempt:
+    implied = tuple(i.guarded().within(bounds.low, bounds.high) for i in attempt.implied)
+    return replace(attempt, printed=attempt.printed.within(bounds.low, bounds.high), implied=implied)
+
+
+def _doubts_of(claims: Sequence[Claim]) -> tuple[str, ...]:
+    doubts = []
+    for claim in claims:
+        if claim.confidence != "high":
+            why = "; ".join(claim.notes) or "a number was read with doubt"
+            doubts.append(f"only if “{claim.place.quote}” was read rightly ({why})")
+    return tuple(dict.fromkeys(doubts))
+
+
+def _excuse(comparison: Comparison, tried: Sequence[Attempt]) -> str:
+    if comparison.excuses:
+        return "; ".join(comparison.excuses)
+    plain = [i for a in tried if not a.unstated for i in a.implied]
+    printed = next(a.printed for a in tried)
+    if comparison.excess and all(printed.low > i.high for i in plain):
+        return comparison.excess
+    if comparison.lack and all(printed.high < i.low for i in plain):
+        return comparison.lack
+    return ""
+
+
+def _listed(tried: Sequence[Attempt]) -> list[Attempt]:
+    """The ways worth showing: each under plain rounding, those without implied values left out."""
+    return [a for a in tried if not a.rounding.words and a.implied and len(a.way.unstated) <= 1]
+
+
+def _implied(listed: Sequence[Attempt]) -> tuple[Implied, ...]:
+    rows = [
+        Implied(interval.low, interval.high, "; ".join((*a.way.given, *a.unstated)))
+        for a in listed
+        for interval in a.implied
+    ]
+    return tuple(dict.fromkeys(rows))
+
+
+def _gap(printed: Printed, interval: Interval, implied: Sequence[Interval]) -> float | None:
+    """Distance to the nearest implied interval in units of the last printed digit."""
+    if not implied:
+        return None
+    return min(interval.distance(other) for other in implied) / float(printed.unit)
+
+
+def _reverses(case: Case, comparison: Comparison, tried: Sequence[Attempt]) -> bool:
+    """Tell whether printed and implied p lie on opposite sides of alpha under every reading tried."""
+    if comparison.quantity != "p":
+        return False
+    alpha = case.settings.alpha
+    printed = comparison.numbers["p"]
+    interval = next(iter(tried)).printed
+    implied = [i for a in tried for i in a.implied]
+    strict = printed.relation in ("<", ">")
+    below = interval.high < alpha or (strict and interval.high <= alpha)
+    above = interval.low > alpha or (strict and interval.low >= alpha)
+    return (below and all(i.low > alpha for i in implied)) or (above and all(i.high < alpha for i in implied))
+
+
+def _finding(
+    case: Case, comparison: Comparison, claims: tuple[Claim, ...], verdict: Verdict, listed: Sequence[Attempt],
+    match: Attempt | None, *, doubts: tuple[str, ...] = (), reversal: bool = False,
+) -> Finding:  # fmt: skip
+    printed = comparison.numbers[comparison.quantity]
+    implied = _implied(listed)
+    plain = [i for a in listed if not a.unstated for i in a.implied] or [i for a in listed for i in a.implied]
+    interval = printed.interval().within(comparison.bounds.low, comparison.bounds.high)
+    assumptions = (*(match.way.given if match else ()), *(match.unstated if match else ()), *doubts)
+    remedies = _remedies(comparison, verdict, match, plain)
+    return Finding(
+        id=finding_id(comparison.check, claims, comparison.quantity),
+        check=comparison.check,
+        verdict=verdict,
+        claims=tuple(claim.id for claim in claims),
+        quantity=comparison.quantity,
+        printed=printed_text(printed),
+        implied=implied,
+        message=tell(
+            comparison.quantity, comparison.numbers, verdict, implied, assumptions, reversal=reversal
+        ),
+        place=case.claim.place,
+        tolerance=stands_for(comparison.numbers),
+        question=""
+        if verdict == "agrees"
+        else question_for(case.claim, comparison.quantity, printed, implied),
+        gap=None if verdict == "agrees" else _gap(printed, interval, plain),
+        reversal=reversal,
+        confidence=lowest(claims),
+        assumptions=assumptions,
+        reconciled_by=remedies,
+    )
+
+
+def _remedies(
+    comparison: Comparison, verdict: Verdict, match: Attempt | None, plain: Sequence[Interval]
+) -> tuple[Remedy, ...]:
+    """What would reconcile the numbers: the reading that does, single slips, single numbers."""
+    if verdict == "agrees":
+        return ()
+    if match:
+        return tuple(
+            Remedy("reading", comparison.quantity, f"the numbers agree if {words}")
+            for words in match.unstated
+        )
+    rows = [
+        Remedy("number", comparison.quantity, f"{shown(comparison.quantity)} would have to be {interval_text(i)}", i.low, i.high)
+        for i in plain[:2]
+    ]  # fmt: skip
+    slips = slip_remedies(
+        comparison.numbers, lambda n: agrees_as_printed(comparison.quantity, n, comparison.ways)
+    )
+    return (*slips, *rows, *comparison.mend_others)

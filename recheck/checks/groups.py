@@ -1,0 +1,157 @@
+"""Checks of a test statistic against the two groups' mean, SD and n."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable
+from dataclasses import replace
+
+from recheck.checks.compare import Comparison, judge, unchecked
+from recheck.checks.designs import Groups, fit_designs, groups_of
+from recheck.checks.models import foreign_model
+from recheck.checks.registry import Case, check
+from recheck.model import Claim, Finding, Interval, Printed
+from recheck.reconcile.readings import Box, Way, box_of
+
+
+def linked_groups(case: Case) -> tuple[Groups, tuple[Claim, ...]] | None:
+    """The two summaries that a test is linked to, with all claims involved."""
+    if len(case.groups) != 2:
+        return None
+    groups = groups_of(*case.groups)
+    return (groups, (case.claim, *case.groups)) if groups else None
+
+
+def link_doubts(case: Case) -> tuple[str, ...]:
+    """What is inferred about the link between a test and its groups."""
+    if case.claim.link_confidence == "high":
+        return ()
+    return (
+        f"only if the groups belong to this test ({case.claim.link or 'put together from different sentences'})",
+    )
+
+
+def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Iterable[Finding]:
+    linked = linked_groups(case)
+    if linked is None:
+        return
+    groups, claims = linked
+    numbers = {quantity: case.claim.values[quantity], **groups.numbers}
+    fit = fit_designs(case.claim, groups, box_of(groups.numbers))
+    if fit.reason:
+        yield unchecked(case, name, quantity, fit.reason, claims)
+        return
+    foreign = foreign_model(claims)
+    ways = tuple(replace(way, implied=_squared(way) if squared else way.implied) for way in fit.ways)
+    comparison = Comparison(
+        check=name,
+        quantity=quantity,
+        numbers=numbers,
+        ways=ways,
+        claims=claims,
+        bounds=Interval(0.0, float("inf")),
+        doubts=(*fit.doubts, *link_doubts(case)),
+        excuses=(foreign,) if foreign else (),
+    )
+    yield judge(
+        case, replace(comparison, numbers={**numbers, quantity: unsigned(case.claim.values[quantity])})
+    )
+
+
+def unsigned(printed: Printed) -> Printed:
+    """The printed number without its sign: which group is subtracted is the authors' choice."""
+    return replace(printed, value=abs(printed.value))
+
+
+def _squared(way: Way) -> Callable[[Box], tuple[Interval, ...]]:
+    def implied(box: Box) -> tuple[Interval, ...]:
+        return tuple(Interval(i.low**2, i.high**2) for i in way.implied(box))
+
+    return implied
+
+
+@check(
+    "t-from-groups",
+    title="t against the means, SDs and ns of its two groups",
+    kinds=("t-test",),
+    quantity="t",
+    needs=("t",),
+    formula="t = (M1 − M2) / SE; pooled SE = √(s²(1/n1 + 1/n2)), Welch SE = √(s1²/n1 + s2²/n2), paired SE = √((s1² + s2² − 2 r s1 s2)/n), −1 ≤ r ≤ 1",
+    source="Student (1908) Biometrika 6:1-25; Welch (1938) Biometrika 29:350-362; Satterthwaite (1946) Biometrics Bulletin 2:110-114",
+    limits="Only where the printed df fit the design; adjusted means, mixed models and contrasts are not rebuilt.",
+    agrees=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23.",
+    ),
+    inconsistent=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 2.23.",
+    ),
+    unchecked=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(51) = 2.93.",
+    ),
+)
+def t_from_groups(case: Case) -> Iterable[Finding]:
+    """Compare |t| with what the two groups imply under each design that the df fit."""
+    yield from _judge_statistic(case, "t-from-groups", "t", squared=False)
+
+
+@check(
+    "F-from-two-groups",
+    title="F with one numerator df against the means, SDs and ns of its two groups",
+    kinds=("F-test",),
+    quantity="F",
+    needs=("F", "df1", "df2"),
+    formula="F(1, df) = t(df)², t as from two groups",
+    source="Fisher (1925) Statistical Methods for Research Workers",
+    limits="As for t; a factor of a larger design has an error term of its own.",
+    agrees=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), F(1, 34) = 10.4.",
+    ),
+    inconsistent=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), F(1, 34) = 4.1.",
+    ),
+)
+def f_from_two_groups(case: Case) -> Iterable[Finding]:
+    """Compare F with the squared t that the two groups imply."""
+    if case.claim.values["df1"].value == 1:
+        yield from _judge_statistic(case, "F-from-two-groups", "F", squared=True)
+
+
+@check(
+    "difference-from-means",
+    title="mean difference against the two means",
+    kinds=("t-test", "comparison"),
+    quantity="mean_difference",
+    needs=("mean_difference",),
+    formula="difference = M1 − M2",
+    source="common practice, no source",
+    limits="Adjusted differences are not those of the printed means. The sign is the authors' choice.",
+)
+def difference_from_means(case: Case) -> Iterable[Finding]:
+    """Compare a printed mean difference with the printed means."""
+    linked = linked_groups(case)
+    if linked is None:
+        return
+    groups, claims = linked
+    numbers = {
+        "mean_difference": unsigned(case.claim.values["mean_difference"]),
+        "mean1": groups.numbers["mean1"],
+        "mean2": groups.numbers["mean2"],
+    }
+    foreign = foreign_model(claims)
+
+    def implied(box: Box) -> tuple[Interval, ...]:
+        a, b = box["mean1"], box["mean2"]
+        return (Interval(a.low - b.high, a.high - b.low).absolute(),)
+
+    fit = fit_designs(case.claim, groups, box_of(groups.numbers))
+    sure = not fit.reason and not fit.doubts and groups.n1 is not None and groups.n2 is not None
+    doubts = (
+        *link_doubts(case),
+        *(() if sure else ("only if the difference is that of the same cases, unadjusted",)),
+    )
+    yield judge(
+        case,
+        Comparison(
+            "difference-from-means", "mean_difference", numbers, (Way(implied),), claims,
+            bounds=Interval(0.0, float("inf")), doubts=doubts, excuses=(foreign,) if foreign else (),
+        ),
+    )  # fmt: skip

@@ -1,0 +1,48 @@
+"""Running every check on every claim that it is for."""
+
+from __future__ import annotations
+
+import logging
+from collections.abc import Iterator, Sequence
+
+from recheck.checks.compare import unchecked
+from recheck.checks.registry import Case, Check, all_checks
+from recheck.model import Claim, Context, Finding, Settings, shown
+
+logger = logging.getLogger("recheck")
+
+
+def run_checks(claims: Sequence[Claim], context: Context, settings: Settings) -> tuple[Finding, ...]:
+    """Give the findings of all checks on all claims, in reading order; one fault loses one check only."""
+    by_id = {claim.id: claim for claim in claims}
+    findings: list[Finding] = []
+    for claim in claims:
+        groups = tuple(by_id[g] for g in claim.groups if g in by_id)
+        case = Case(claim=claim, groups=groups, context=context, settings=settings)
+        for check in all_checks():
+            if claim.kind in check.kinds:
+                findings += _run(check, case)
+    return tuple(findings)
+
+
+def _run(check: Check, case: Case) -> Iterator[Finding]:
+    values = case.claim.values
+    if check.quantity in check.needs and check.quantity not in values:
+        return
+    missing = [name for name in check.needs if name not in values]
+    if missing:
+        if check.quantity in values and check.quantity == "p":
+            yield unchecked(
+                case, check.name, check.quantity, f"{', '.join(shown(m) for m in missing)} not printed"
+            )
+        return
+    try:
+        yield from check.run(case)
+    except Exception as fault:
+        logger.exception("check %s failed on %r", check.name, case.claim.place.quote)
+        yield unchecked(
+            case,
+            check.name,
+            check.quantity,
+            f"recheck failed here ({type(fault).__name__}: {fault}); please report it",
+        )

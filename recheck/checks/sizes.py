@@ -1,0 +1,137 @@
+"""Checks of degrees of freedom against printed sample sizes; dropping cases is honest."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import replace
+
+from recheck.checks.compare import finding_id, lowest
+from recheck.checks.designs import fit_designs, groups_of, welch_df, whole
+from recheck.checks.registry import Case, check
+from recheck.checks.wording import question_for
+from recheck.model import Finding, Implied, Remedy
+from recheck.model.figures import printed_text, span
+from recheck.reconcile.readings import box_of
+
+
+@check(
+    "df-from-ns",
+    title="df of a two-group test against its group sizes",
+    kinds=("t-test", "F-test"),
+    quantity="df",
+    needs=(),
+    formula="pooled: df = n1 + n2 − 2; Welch: Satterthwaite df, from min(n1, n2) − 1 to n1 + n2 − 2; pairs: df = n − 1",
+    source="Satterthwaite (1946) Biometrics Bulletin 2:110-114",
+    limits="Never worse than conditional: cases may be missing, and a covariate or a larger error term changes df.",
+    agrees=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23.",
+    ),
+    conditional=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(43) = 3.23.",
+    ),
+)
+def df_from_ns(case: Case) -> Iterable[Finding]:
+    """Compare the printed df with those of the designs that the two group sizes allow."""
+    claim = case.claim
+    name = "df" if "df" in claim.values else "df2"
+    if (
+        name not in claim.values
+        or len(case.groups) != 2
+        or (name == "df2" and claim.values["df1"].value != 1)
+    ):
+        return
+    groups = groups_of(*case.groups)
+    if groups is None or groups.n1 is None or groups.n2 is None:
+        return
+    claims = (claim, *case.groups)
+    box = box_of(groups.numbers)
+    fit = fit_designs(claim, groups, box)
+    total, welch = groups.n1 + groups.n2 - 2, welch_df(box, groups)
+    implied = [
+        Implied(total, total, "two independent groups, pooled variance", (total,)),
+        Implied(welch.low, welch.high, "two independent groups, Welch"),
+    ]
+    if groups.n1 == groups.n2:
+        implied.append(
+            Implied(groups.n1 - 1, groups.n1 - 1, "the same units measured twice", (groups.n1 - 1,))
+        )
+    printed = claim.values[name]
+    finding = Finding(
+        id=finding_id("df-from-ns", claims, name), check="df-from-ns", verdict="agrees", claims=tuple(c.id for c in claims),
+        quantity=name, printed=printed_text(printed), implied=tuple(implied), place=claim.place, confidence=lowest(claims),
+        message=f"df {printed_text(printed)} fits groups of {groups.n1} and {groups.n2}.",
+    )  # fmt: skip
+    if not fit.reason:
+        yield finding
+        return
+    yield _other_df(finding, case, groups.n1, groups.n2)
+
+
+def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:
+    """df that fit no plain two-group design: missing cases or a larger model."""
+    printed = case.claim.values[finding.quantity]
+    total = n1 + n2 - 2
+    if printed.number < total:
+        why = (
+            f"cases are missing, or the error term belongs to another model (n = {n1} and {n2} give {total})"
+        )
+    else:
+        why = f"more units entered the test than the {n1 + n2} of the two groups, or it belongs to another model"
+    implied = "; or ".join(f"{span(row.low, row.high)} ({row.assuming})" for row in finding.implied)
+    gap = min(max(row.low - printed.number, printed.number - row.high, 0.0) for row in finding.implied)
+    return replace(
+        finding,
+        verdict="conditional",
+        message=f"df {printed_text(printed)} is printed; groups of {n1} and {n2} imply {implied}. They agree only if {why}.",
+        tolerance="group sizes taken as exact; df without decimals also as a rounded or floored fractional one",
+        gap=gap,
+        assumptions=(why,),
+        question=question_for(case.claim, finding.quantity, printed, finding.implied),
+        reconciled_by=(Remedy("reading", finding.quantity, f"the numbers agree if {why}"),),
+    )
+
+
+@check(
+    "r-df-from-n",
+    title="df of a correlation against its n",
+    kinds=("correlation",),
+    quantity="df",
+    needs=("df",),
+    formula="df = n − 2",
+    source="Fisher (1915) Biometrika 10:507-521",
+    limits="Never worse than conditional: cases may be missing.",
+    agrees=("Height rose with proofing time, r(48) = .30, n = 50, p = .034.",),
+    conditional=("Height rose with proofing time, r(58) = .30, n = 50, p = .020.",),
+)
+def r_df_from_n(case: Case) -> Iterable[Finding]:
+    """Compare the df of a correlation with the n printed beside it."""
+    claim = case.claim
+    n, df = whole(claim.values.get("n") or claim.values.get("N")), whole(claim.values["df"])
+    if n is None or df is None:
+        return
+    printed = claim.values["df"]
+    finding = Finding(
+        id=finding_id("r-df-from-n", (claim,), "df"), check="r-df-from-n", verdict="agrees", claims=(claim.id,),
+        quantity="df", printed=printed_text(printed), implied=(Implied(n - 2, n - 2, "", (n - 2,)),), place=claim.place,
+        confidence=claim.confidence, message=f"df {printed_text(printed)} fits n = {n}.",
+    )  # fmt: skip
+    if df == n - 2:
+        yield finding
+        return
+    why = (
+        "the number in brackets is n, not df"
+        if df == n
+        else "cases are missing or covariates take up df"
+        if df < n - 2
+        else "more units entered than n"
+    )
+    yield replace(
+        finding,
+        verdict="conditional",
+        message=f"df {printed_text(printed)} is printed; n = {n} implies {n - 2}. They agree only if {why}.",
+        tolerance="n and df taken as exact",
+        gap=float(abs(df - (n - 2))),
+        assumptions=(why,),
+        question=question_for(claim, "df", printed, finding.implied),
+        reconciled_by=(Remedy("reading", "df", f"the numbers agree if {why}"),),
+    )

@@ -1,0 +1,66 @@
+"""The sentences of findings: printed, implied, assumed. They never accuse."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from recheck.model import Claim, Implied, Printed, Verdict
+from recheck.model.figures import interval_text, printed_text, span
+from recheck.reconcile.readings import Numbers, is_exact
+from recheck.reconcile.slips import label
+
+
+def stands_for(numbers: Numbers) -> str:
+    """Say which true values each printed number can stand for: the tolerance in words."""
+    exact, rounded = [], []
+    for name, printed in numbers.items():
+        if printed.relation not in ("=", "≈"):
+            rounded.append(f"{label(name)} {printed_text(printed)} is read as a bound, end included")
+        elif is_exact(name, printed):
+            exact.append(label(name))
+        else:
+            interval = printed.interval()
+            rounded.append(f"{label(name)} = {printed.text} stands for {interval_text(interval, 12)}")
+    text = "; ".join(rounded)
+    return f"{text}; {', '.join(exact)} taken as exact" if exact else text
+
+
+def _alternatives(implied: Sequence[Implied], most: int = 3) -> str:
+    rows = []
+    for row in implied[:most]:
+        text = span(row.low, row.high)
+        rows.append(f"{text} ({row.assuming})" if row.assuming else text)
+    more = len(implied) - most
+    return "; or ".join(rows) + (f"; and {more} other readings do not fit either" if more > 0 else "")
+
+
+def tell(
+    quantity: str, numbers: Numbers, verdict: Verdict, implied: Sequence[Implied],
+    assumptions: Sequence[str], *, reversal: bool = False,
+) -> str:  # fmt: skip
+    """One or two sentences: what is printed, what the other numbers imply, what was assumed."""
+    others = ", ".join(f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n != quantity)
+    printed = f"{label(quantity)} {printed_text(numbers[quantity])}"
+    if verdict == "agrees":
+        given = f" ({'; '.join(assumptions)})" if assumptions else ""
+        return f"{_capital(printed)} agrees with {others}{given}."
+    start = f"{_capital(printed)} is printed; {others} imply {_alternatives(implied)}."
+    if verdict == "conditional":
+        return f"{start} They agree only under what the text does not state: {'; '.join(assumptions)}."
+    if reversal:
+        start += " Printed and implied p lie on opposite sides of the significance level."
+    return start
+
+
+def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied]) -> str:
+    """A neutral question to the authors about one printed number."""
+    plain = next((row for row in implied if not row.assuming), implied[0] if implied else None)
+    where = f" on page {claim.place.page}" if claim.place.page else ""
+    expected = f", where we expect {span(plain.low, plain.high)} from the other numbers" if plain else ""
+    return f"Could you check {label(quantity)} {printed_text(printed)} in “{claim.place.quote}”{where}{expected}, and say how it was computed?"
+
+
+def _capital(text: str) -> str:
+    """Begin a sentence, leaving symbols such as t and p as they are."""
+    first = text.split(" ", 1)[0]
+    return text if len(first) <= 3 else text[0].upper() + text[1:]

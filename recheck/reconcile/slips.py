@@ -1,0 +1,119 @@
+"""Plausible misprints: which one would turn the right number into the printed one."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator
+from dataclasses import replace
+from decimal import Decimal
+from itertools import pairwise
+
+from recheck.model import Printed, Remedy, shown
+from recheck.reconcile.readings import Numbers
+
+MINUS = "−"
+
+
+def candidates(printed: Printed) -> Iterator[tuple[Printed, str]]:
+    """Yield what the number may have been before the slip, with the slip's name; likeliest first."""
+    seen = {(printed.value, printed.decimals, printed.relation)}
+    texts = (*_swapped(printed), *_moved(printed), *_dropped(printed), *_wrong(printed))
+    numbers = ((_with_digits(printed, text), words) for text, words in texts)
+    for number, words in (*_relations(printed), *numbers):
+        key = (number.value, number.decimals, number.relation)
+        if key not in seen:
+            seen.add(key)
+            yield number, words
+
+
+def _with_digits(printed: Printed, text: str) -> Printed:
+    """The same number with other digits, its sign kept."""
+    negative = printed.value < 0
+    value = -Decimal(text) if negative else Decimal(text)
+    return replace(printed, text=MINUS + text if negative else text, value=value, decimals=_decimals(text))
+
+
+def _decimals(text: str) -> int:
+    return len(text.partition(".")[2])
+
+
+def _digits(printed: Printed) -> str:
+    """The digits with their point, as a plain decimal without sign, leading zero as printed."""
+    text = f"{abs(printed.value):f}" if printed.decimals >= 0 else f"{abs(printed.value):.0f}"
+    return text[1:] if text.startswith("0.") and printed.text.lstrip("-−–").startswith((".", ",")) else text
+
+
+def _relations(printed: Printed) -> list[tuple[Printed, str]]:
+    other = {"<": ">", ">": "<", "≤": "≥", "≥": "≤"}.get(printed.relation)
+    if other:
+        return [(replace(printed, relation=other), f"{printed.relation} for {other}")]  # type: ignore[arg-type]
+    return [(replace(printed, relation="<"), "= for <")] if printed.relation == "=" else []
+
+
+def _swapped(printed: Printed) -> Iterator[tuple[str, str]]:
+    text = _digits(printed)
+    places = [i for i, character in enumerate(text) if character.isdigit()]
+    for i, j in pairwise(places):
+        if text[i] != text[j]:
+            yield text[:i] + text[j] + text[i + 1 : j] + text[i] + text[j + 1 :], "digits swapped"
+
+
+def _moved(printed: Printed) -> Iterator[tuple[str, str]]:
+    for shift in (1, -1):
+        value = abs(printed.value).scaleb(shift)
+        decimals = max(0, printed.decimals - shift)
+        yield f"{value:.{decimals}f}", "decimal point moved"
+
+
+def _dropped(printed: Printed) -> Iterator[tuple[str, str]]:
+    text = _digits(printed)
+    for i, character in enumerate(text):
+        if character.isdigit() and i + 1 < len(text) and text[i + 1] == character:
+            yield text[:i] + text[i + 1 :], "a digit doubled"
+
+
+def _wrong(printed: Printed) -> Iterator[tuple[str, str]]:
+    text = _digits(printed)
+    for i, character in enumerate(text):
+        if character.isdigit():
+            for digit in "0123456789":
+                if digit != character:
+                    yield text[:i] + digit + text[i + 1 :], "one digit wrong"
+
+
+def slip_remedies(
+    numbers: Numbers, mended: Callable[[Numbers], bool], *, most: int = 4
+) -> tuple[Remedy, ...]:
+    """Single slips that would reconcile the numbers, swapped digits before single wrong digits.
+
+    `mended` tells whether a set of numbers agrees. A number of which more than one single digit
+    could be wrong is not named so: the interval that it must lie in says it better.
+    """
+    found: list[Remedy] = []
+    for name, printed in numbers.items():
+        wrong: list[Remedy] = []
+        for number, words in candidates(printed):
+            if not mended({**numbers, name: number}):
+                continue
+            remedy = _remedy(name, printed, number, words)
+            (wrong if words == "one digit wrong" else found).append(remedy)
+        if len(wrong) == 1:
+            found.append(wrong[0])
+    found.sort(key=lambda remedy: "one digit wrong" in remedy.text)
+    return tuple(found[:most])
+
+
+def _remedy(name: str, printed: Printed, number: Printed, words: str) -> Remedy:
+    now, then = _written(printed), _written(number)
+    text = f"if {label(name)} were {then} instead of {now} ({words}), the numbers would agree"
+    return Remedy("slip", name, text, change=f"{now} → {then}")
+
+
+def _written(printed: Printed) -> str:
+    return printed.text if printed.relation == "=" else f"{printed.relation} {printed.text}"
+
+
+def label(name: str) -> str:
+    """Write the name of a number of a claim: `sd2` is the SD of the second group."""
+    if name[-1:] in "12" and name[:-1] in ("mean", "sd", "se", "n"):
+        return f"the {shown(name[:-1])} of group {name[-1]}"
+    return shown(name)
