@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from decimal import Decimal
 
 from recheck.model import Interval, Printed
 
@@ -25,23 +26,26 @@ def _plain(printed: Printed) -> Interval:
     return printed.interval()
 
 
-def _exact_side(printed: Printed, below: float, above: float) -> Interval:
-    """Widen a printed value by so many units of its last digit toward and away from zero."""
+def _units_away(printed: Printed, toward_zero: Decimal, from_zero: Decimal) -> Interval:
+    """Widen a printed value by so many units of its last digit; exact before it becomes a float."""
     if printed.relation not in ("=", "≈"):
         return printed.interval()
-    value, unit = printed.value, float(printed.unit)
+    value, unit = printed.value, printed.unit
     if value == 0:
-        return Interval(-above * unit, above * unit)
-    near, away = (below, above) if value > 0 else (above, below)
-    return Interval(float(value) - near * unit, float(value) + away * unit)
+        return Interval(-float(from_zero * unit), float(from_zero * unit))
+    below, above = (toward_zero, from_zero) if value > 0 else (from_zero, toward_zero)
+    return Interval(float(value - below * unit), float(value + above * unit))
+
+
+HALF, WHOLE, TWICE_HALF = Decimal("0.5"), Decimal(1), Decimal("0.55")
 
 
 def _truncated(printed: Printed) -> Interval:
-    return _exact_side(printed, 0.5, 1.0)
+    return _units_away(printed, HALF, WHOLE)
 
 
 def _twice(printed: Printed) -> Interval:
-    return _exact_side(printed, 0.55, 0.55)
+    return _units_away(printed, TWICE_HALF, TWICE_HALF)
 
 
 def _padded(printed: Printed) -> Interval:
@@ -52,8 +56,8 @@ def _padded(printed: Printed) -> Interval:
     while decimals > 0 and shown and shown % 10 == 0:
         shown //= 10
         decimals -= 1
-    half = 0.5 * 10.0**-decimals
-    return Interval(float(printed.value) - half, float(printed.value) + half)
+    half = HALF.scaleb(-decimals)
+    return Interval(float(printed.value - half), float(printed.value + half))
 
 
 PLAIN = Rounding("rounded", "", _plain)
