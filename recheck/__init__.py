@@ -5,13 +5,14 @@ from __future__ import annotations
 from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
+from recheck.version import __version__
+
 if TYPE_CHECKING:
     from recheck.auditing import audit, audit_text
     from recheck.errors import RecheckError
     from recheck.model import Audit
 
-__version__ = "0.1.0"
-__all__ = ["Audit", "RecheckError", "audit", "audit_text"]
+__all__ = ["Audit", "RecheckError", "__version__", "audit", "audit_text"]
 
 
 _HOMES = {

@@ -13,9 +13,12 @@ from recheck.documents import open_document, text_document
 from recheck.model import Audit, Context, Document, DocumentFacts, Reading, Settings
 from recheck.ranking import rank
 from recheck.reading import read
+from recheck.reports.table import findings_table
 
 ReaderChoice = Literal["auto", "pdfium", "pdfminer"]
 Source = str | Path | bytes | BinaryIO
+
+Audit.notebook_view = findings_table
 
 
 def audit(

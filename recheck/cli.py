@@ -6,13 +6,15 @@ import io
 import os
 import sys
 from collections.abc import Sequence
+from contextlib import suppress
 from typing import TYPE_CHECKING, Any
 
 import click
 
-from recheck import __version__
+from recheck.version import __version__
 
 if TYPE_CHECKING:
+    from recheck.auditing import ReaderChoice
     from recheck.model import Audit
 
 DONE, DISCREPANT, WRONG_USE, UNREAD = 0, 1, 2, 3
@@ -85,7 +87,7 @@ def audit(
     as_json: bool,
     everything: bool,
     alpha: float | None,
-    reader: str,
+    reader: ReaderChoice,
 ) -> None:
     """List the discrepancies in manuscripts, worst first.
 
@@ -145,7 +147,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return INTERRUPTED
     except OutputLostError as error:
         # What is left in the buffer has nowhere to go, and Python would complain of that at exit.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        with suppress(OSError):
+            os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         if str(error):
             click.echo(str(error), err=True)
         return OUTPUT_LOST
@@ -153,7 +156,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
 
 
 def _audit_files(
-    files: Sequence[str], as_json: bool, everything: bool, alpha: float | None, reader: str
+    files: Sequence[str], as_json: bool, everything: bool, alpha: float | None, reader: ReaderChoice
 ) -> int:
     """Audit each file and print what was found; return the exit status."""
     from recheck.reports import json as json_report
@@ -186,7 +189,7 @@ def _audit_files(
     return max(statuses)
 
 
-def _audited(name: str, alpha: float | None, reader: str) -> Audit:
+def _audited(name: str, alpha: float | None, reader: ReaderChoice) -> Audit:
     from recheck.auditing import audit as audit_document
 
     if name == "-":

@@ -205,7 +205,8 @@ def _finding(
     implied = _implied(listed)
     plain = [i for a in listed if not a.unstated for i in a.implied] or [i for a in listed for i in a.implied]
     interval = printed.interval().within(comparison.bounds.low, comparison.bounds.high)
-    assumptions = (*(match.way.given if match else ()), *(match.unstated if match else ()), *doubts)
+    given = match.way.given if match else ()
+    unstated = (*(match.unstated if match else ()), *doubts)
     remedies = _remedies(comparison, verdict, match, plain)
     return Finding(
         id=finding_id(comparison.check, claims, comparison.quantity),
@@ -216,7 +217,7 @@ def _finding(
         printed=printed_text(printed),
         implied=implied,
         message=tell(
-            comparison.quantity, comparison.numbers, verdict, implied, assumptions, reversal=reversal
+            comparison.quantity, comparison.numbers, verdict, implied, given, unstated, reversal=reversal
         ),
         place=case.claim.place,
         tolerance=stands_for(comparison.numbers),
@@ -226,7 +227,7 @@ def _finding(
         gap=None if verdict == "agrees" else _gap(printed, interval, plain),
         reversal=reversal,
         confidence=lowest(claims),
-        assumptions=assumptions,
+        assumptions=(*given, *unstated),
         reconciled_by=remedies,
     )
 

@@ -183,22 +183,24 @@ def p_from_z(case: Case) -> Iterable[Finding]:
     claim = case.claim
     numbers = _p_numbers(claim, "z")
 
-    def p_of(box: Box, used: int, shift: float = 0.0) -> Interval:
-        z = box["z"].absolute()
-        return _interval(bounds.p_from_z_bounds(max(z.low - shift, 0.0), z.high + shift, used))
+    def p_of(box: Box, used: int, exact: bool = False) -> Interval:
+        z = _exact_z(box["z"].absolute()) if exact else box["z"].absolute()
+        return _interval(bounds.p_from_z_bounds(z.low, z.high, used))
 
     ways = list(_tail_ways(claim, True, p_of))
     if claim.kind == "rank-test" or claim.suggests("rank-test"):
         words = "p of the rank test is exact or continuity-corrected"
-        ways += _tail_ways(claim, True, lambda box, used: p_of(box, used, RANK_SHIFT), words=(words,))
+        ways += _tail_ways(claim, True, lambda box, used: p_of(box, used, True), words=(words,))
     yield _judge_p(case, "p-from-z", ways, numbers)
 
 
-RANK_SHIFT = 0.25
-"""How far exact p and normal p of a rank test may lie apart, on the scale of z.
+def _exact_z(z: Interval) -> Interval:
+    """Where the z of the exact p of a rank test may lie beside its normal z.
 
-Half a step of U is .14 of its SD for groups of 4 and 4; the rest allows for the shape of the exact
-distribution at such sizes (tested against all group sizes from 3 to 12)."""
+    Bounds drawn around U for groups of 3 to 12 and W for 5 to 20 pairs, all values of the statistic;
+    the exact tail is lighter far out, so the upper bound grows with z.
+    """
+    return Interval(max(z.low - 0.35, 0.0), z.high + 0.15 + 0.45 * max(z.high - 1.75, 0.0))
 
 
 @check(
@@ -243,13 +245,13 @@ OTHER_CHI2 = "p belongs to another statistic of the same table (Yates, N − 1, 
 def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
     """Where the other statistics of a table with this Pearson χ² may lie.
 
-    The likelihood ratio is taken within 0.7 and 1.5 times χ² (tested against tables with expected
-    counts from 1 up). With one df the continuity correction takes ½ off a deviation whose SD is
-    at least 0.7 where no expected count is below one half, and Fisher's p follows it.
+    Bounds drawn around 2×2 tables of 10 to 300 cases with expected counts from 1 up: the likelihood
+    ratio lies within 0.55 and 1.9 times χ²; the continuity correction and Fisher's p lie at most
+    1.4 below √χ².
     """
-    low, high = 0.7 * chi2.low, 1.5 * chi2.high
+    low, high = 0.55 * chi2.low, 1.9 * chi2.high
     if one_df:
-        low = min(low, max(math.sqrt(max(chi2.low, 0.0)) - 0.7, 0.0) ** 2)
+        low = min(low, max(math.sqrt(max(chi2.low, 0.0)) - 1.4, 0.0) ** 2)
     return Interval(low, high)
 
 

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from recheck.model import Claim, Implied, Printed, Verdict
+from recheck.model import Claim, Implied, Printed, Verdict, shown
 from recheck.model.figures import interval_text, printed_text, span
 from recheck.reconcile.readings import Numbers, is_exact
 from recheck.reconcile.slips import label
@@ -31,22 +31,41 @@ def _alternatives(implied: Sequence[Implied], most: int = 3) -> str:
         text = span(row.low, row.high)
         rows.append(f"{text} ({row.assuming})" if row.assuming else text)
     more = len(implied) - most
-    return "; or ".join(rows) + (f"; and {more} other readings do not fit either" if more > 0 else "")
+    if more > 0:
+        rows.append(f"{more} other reading{'s do' if more > 1 else ' does'} not fit either")
+    return "; or ".join(rows[:most]) + ("; " + rows[most] if more > 0 else "")
+
+
+def inputs(quantity: str, numbers: Numbers) -> str:
+    """Name the numbers that one is compared with; a group's mean, SD and n stand together."""
+    rest = [
+        f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n != quantity and n[-1:] not in "12"
+    ]
+    rest += [f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n in ("df1", "df2")]
+    for i in "12":
+        group = [
+            f"{shown(n[:-1])} {printed_text(p)}"
+            for n, p in numbers.items()
+            if n[-1] == i and not n.startswith("df")
+        ]
+        if group:
+            rest.append(f"group {i} ({', '.join(group)})")
+    return " and ".join(rest) if len(rest) <= 2 else ", ".join(rest)
 
 
 def tell(
     quantity: str, numbers: Numbers, verdict: Verdict, implied: Sequence[Implied],
-    assumptions: Sequence[str], *, reversal: bool = False,
+    given: Sequence[str], unstated: Sequence[str], *, reversal: bool = False,
 ) -> str:  # fmt: skip
     """One or two sentences: what is printed, what the other numbers imply, what was assumed."""
-    others = ", ".join(f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n != quantity)
+    others = inputs(quantity, numbers)
     printed = f"{label(quantity)} {printed_text(numbers[quantity])}"
     if verdict == "agrees":
-        given = f" ({'; '.join(assumptions)})" if assumptions else ""
-        return f"{_capital(printed)} agrees with {others}{given}."
-    start = f"{_capital(printed)} is printed; {others} imply {_alternatives(implied)}."
+        said = f" ({'; '.join(given)})" if given else ""
+        return f"{_capital(printed)} agrees with {others}{said}."
+    start = f"{_capital(printed)} is printed; from {others} follows {_alternatives(implied)}."
     if verdict == "conditional":
-        return f"{start} They agree only under what the text does not state: {'; '.join(assumptions)}."
+        return f"{start} The numbers agree only under what the text does not state: {'; '.join(unstated)}."
     if reversal:
         start += " Printed and implied p lie on opposite sides of the significance level."
     return start

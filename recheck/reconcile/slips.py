@@ -8,7 +8,7 @@ from decimal import Decimal
 from itertools import pairwise
 
 from recheck.model import Printed, Remedy, shown
-from recheck.reconcile.readings import Numbers
+from recheck.reconcile.readings import Numbers, is_exact
 
 MINUS = "−"
 
@@ -92,7 +92,7 @@ def slip_remedies(
     for name, printed in numbers.items():
         wrong: list[Remedy] = []
         for number, words in candidates(printed):
-            if not mended({**numbers, name: number}):
+            if not _sensible(name, printed, number) or not mended({**numbers, name: number}):
                 continue
             remedy = _remedy(name, printed, number, words)
             (wrong if words == "one digit wrong" else found).append(remedy)
@@ -100,6 +100,13 @@ def slip_remedies(
             found.append(wrong[0])
     found.sort(key=lambda remedy: "one digit wrong" in remedy.text)
     return tuple(found[:most])
+
+
+def _sensible(name: str, printed: Printed, number: Printed) -> bool:
+    """Tell whether a correction leaves a number of its kind: a relation turned is a slip of p alone."""
+    if number.relation != printed.relation:
+        return name == "p"
+    return not is_exact(name, printed) or (number.decimals <= 0 and number.value >= 1)
 
 
 def _remedy(name: str, printed: Printed, number: Printed, words: str) -> Remedy:
