@@ -5,9 +5,11 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import replace
 
+from recheck.checks.registry import find_check
 from recheck.errors import RecheckError
 from recheck.model import DISCREPANT, Claim, Finding, Printed, Reading
 
+GROUP_QUANTITIES = frozenset(("mean", "sd", "se", "n"))
 SecondReader = Callable[[Sequence[int] | None], Reading]
 
 
@@ -31,7 +33,9 @@ def confirm(
             seen = second(wanted).claims
         except RecheckError:
             continue
-        open_ = {i: f for i, f in open_.items() if not all(_found(by_id[c], seen) for c in f.claims)}
+        open_ = {
+            i: f for i, f in open_.items() if not all(_found(by_id[c], _used(f, c), seen) for c in f.claims)
+        }
         if not any(f.verdict in DISCREPANT for f in open_.values()):
             break
     return tuple(_unconfirmed(f, by_id, seen) if f.id in open_ else f for f in findings)
@@ -43,9 +47,21 @@ def _pages(claim: Claim) -> Iterable[int]:
     return (near for page in pages if page for near in (page - 1, page, page + 1))
 
 
-def _found(claim: Claim, seen: Iterable[Claim]) -> bool:
+def _used(finding: Finding, claim: str) -> frozenset[str]:
+    """The numbers of a claim that a finding rests on."""
+    if claim != finding.claims[0]:
+        return GROUP_QUANTITIES
+    return frozenset((finding.quantity, *find_check(finding.check).needs))
+
+
+def _found(claim: Claim, used: frozenset[str], seen: Iterable[Claim]) -> bool:
     """Tell whether the second reading holds a claim with the same numbers."""
-    return any(other.kind == claim.kind and _same(claim, other) for other in seen)
+    names = used & claim.values.keys() or claim.values.keys()
+    return any(other.kind == claim.kind and _same(claim, other, names) for other in seen)
+
+
+def _same(claim: Claim, other: Claim, names: Iterable[str]) -> bool:
+    return all(_alike(claim.values[name], other.values.get(name)) for name in names)
 
 
 def _alike(printed: Printed, other: Printed | None) -> bool:
@@ -57,10 +73,6 @@ def _alike(printed: Printed, other: Printed | None) -> bool:
         other.decimals,
         other.relation,
     )
-
-
-def _same(claim: Claim, other: Claim) -> bool:
-    return all(_alike(printed, other.values.get(name)) for name, printed in claim.values.items())
 
 
 def _nearest(claim: Claim, seen: Iterable[Claim]) -> Claim | None:

@@ -37,6 +37,13 @@ class Groups:
     n1: int | None
     n2: int | None
 
+    @property
+    def impossible(self) -> bool:
+        """Whether a spread is printed that cannot be."""
+        return any(
+            self.numbers[name + i].interval().high < 0 for name, i in zip(self.spreads, "12", strict=True)
+        )
+
 
 def whole(printed: Printed | None) -> int | None:
     """A printed count as an integer, None where it is none."""

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
+from typing import Literal
 
 import numpy as np
 
@@ -18,9 +19,10 @@ from recheck.recompute import effects
 from recheck.reconcile.readings import Box, Way, box_of
 
 INFINITY = float("inf")
+Denominator = Literal["pooled", "sd1", "sd2", "mean", "rms", "population"]
 NAMES = ("d", "g", "delta", "d_z", "d_av", "d_rm")
 
-DENOMINATORS = {
+DENOMINATORS: dict[Denominator, str] = {
     "pooled": "",
     "sd1": "d is divided by the SD of the first group",
     "sd2": "d is divided by the SD of the second group",
@@ -28,6 +30,7 @@ DENOMINATORS = {
     "rms": "d is divided by the root mean square of the two SDs",
     "population": "the pooled SD has N, not N − 2, in its denominator",
 }
+ONE_GROUP: tuple[Denominator, ...] = ("sd1", "sd2")
 CORRECTIONS = {
     "none": "d is not corrected for small samples",
     "exact": "d is corrected for small samples (g)",
@@ -61,7 +64,9 @@ def _scaled(interval: Interval, factor: Interval) -> Interval:
     return Interval(interval.low * factor.low, interval.high * factor.high)
 
 
-def _from_box(box: Box, groups: Groups, n1: float, n2: float, denominator: str, *, as_se: bool) -> Interval:
+def _from_box(
+    box: Box, groups: Groups, n1: float, n2: float, denominator: Denominator, *, as_se: bool
+) -> Interval:
     s, a, b = sds(box, groups, n1, n2, as_se=as_se), box["mean1"], box["mean2"]
     with np.errstate(divide="ignore", invalid="ignore"):
         low, high = effects.d_bounds(
@@ -78,7 +83,7 @@ def _independent_ways(name: str, groups: Groups, n1: float, n2: float) -> Iterat
                 unstated = (*((SE_READING,) if as_se else ()), *(() if usual else (words,)), *more)
 
                 def implied(
-                    box: Box, d: str = denominator, k: str = kind, as_se: bool = as_se
+                    box: Box, d: Denominator = denominator, k: str = kind, as_se: bool = as_se
                 ) -> tuple[Interval, ...]:
                     factor = correction(k, n1 + n2 - 2)
                     return (_scaled(_from_box(box, groups, n1, n2, d, as_se=as_se), factor),)
@@ -124,6 +129,8 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
     if name is None or linked is None:
         return
     groups, claims = linked
+    if groups.impossible:
+        return
     fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     if fit.reason:
         yield unchecked(case, "d-from-groups", name, fit.reason, claims)
@@ -156,7 +163,7 @@ def _split_ways(name: str, groups: Groups, total: int) -> Iterator[Way]:
     for kind, words in _corrections(name):
 
         def implied(box: Box, k: str = kind) -> tuple[Interval, ...]:
-            parts = [_from_box(box, groups, 2.0, 2.0, which, as_se=False) for which in ("sd1", "sd2")]
+            parts = [_from_box(box, groups, 2.0, 2.0, which, as_se=False) for which in ONE_GROUP]
             factor = correction(k, max(total - 2, 2))
             low, high = min(p.low for p in parts), max(p.high for p in parts)
             return (Interval(low * factor.low, high * factor.high),)

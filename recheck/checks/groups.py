@@ -35,6 +35,9 @@ def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Ite
     if linked is None:
         return
     groups, claims = linked
+    if groups.impossible:
+        yield unchecked(case, name, quantity, "a spread below 0 is printed for one of the groups", claims)
+        return
     numbers = {quantity: case.claim.values[quantity], **groups.numbers}
     fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     if fit.reason:
@@ -124,6 +127,12 @@ def f_from_two_groups(case: Case) -> Iterable[Finding]:
     formula="difference = M1 − M2",
     source="common practice, no source",
     limits="Adjusted differences are not those of the printed means. The sign is the authors' choice.",
+    agrees=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), mean difference = 6.4, t(34) = 3.23.",
+    ),
+    inconsistent=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), mean difference = 4.6, t(34) = 3.23.",
+    ),
 )
 def difference_from_means(case: Case) -> Iterable[Finding]:
     """Compare a printed mean difference with the printed means."""

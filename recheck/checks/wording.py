@@ -7,7 +7,7 @@ from collections.abc import Sequence
 from recheck.model import Claim, Implied, Printed, Verdict, shown
 from recheck.model.figures import interval_text, printed_text, span
 from recheck.reconcile.readings import Numbers, is_exact
-from recheck.reconcile.slips import label
+from recheck.reconcile.slips import GROUP_NUMBERS, label
 
 
 def stands_for(numbers: Numbers) -> str:
@@ -39,14 +39,15 @@ def _alternatives(implied: Sequence[Implied], most: int = 3) -> str:
 def inputs(quantity: str, numbers: Numbers) -> str:
     """Name the numbers that one is compared with; a group's mean, SD and n stand together."""
     rest = [
-        f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n != quantity and n[-1:] not in "12"
+        f"{label(n)} {printed_text(p)}"
+        for n, p in numbers.items()
+        if n != quantity and n not in GROUP_NUMBERS
     ]
-    rest += [f"{label(n)} {printed_text(p)}" for n, p in numbers.items() if n in ("df1", "df2")]
     for i in "12":
         group = [
             f"{shown(n[:-1])} {printed_text(p)}"
             for n, p in numbers.items()
-            if n[-1] == i and not n.startswith("df")
+            if n in GROUP_NUMBERS and n[-1] == i
         ]
         if group:
             rest.append(f"group {i} ({', '.join(group)})")

@@ -11,6 +11,8 @@ from recheck.model import Printed, Remedy, shown
 from recheck.reconcile.readings import Numbers, is_exact
 
 MINUS = "−"
+GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for i in "12")
+"""Names of the numbers of two groups: `sd2` is the SD of the second."""
 
 
 def candidates(printed: Printed) -> Iterator[tuple[Printed, str]]:
@@ -121,6 +123,6 @@ def _written(printed: Printed) -> str:
 
 def label(name: str) -> str:
     """Write the name of a number of a claim: `sd2` is the SD of the second group."""
-    if name[-1:] in "12" and name[:-1] in ("mean", "sd", "se", "n"):
+    if name in GROUP_NUMBERS:
         return f"the {shown(name[:-1])} of group {name[-1]}"
     return shown(name)
