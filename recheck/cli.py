@@ -122,7 +122,9 @@ def methods(name: str | None) -> None:
     if name is None:
         text = pages.methods_list(all_checks(), look)
     elif name == "words":
-        text = pages.words_text(look)
+        from recheck.reconcile.rounding import ROUNDINGS
+
+        text = pages.words_text([rounding.words for rounding in ROUNDINGS if rounding.words], look)
     elif name == "ranking":
         from recheck.ranking import RULE
 
@@ -159,10 +161,14 @@ def _audit_files(
     files: Sequence[str], as_json: bool, everything: bool, alpha: float | None, reader: ReaderChoice
 ) -> int:
     """Audit each file and print what was found; return the exit status."""
+    import logging
+
     from recheck.reports import json as json_report
     from recheck.reports.look import clean, look_of
     from recheck.reports.terminal import closing_line, terminal_report
 
+    # The findings tell of faults; what libraries log of broken files would come between the lines.
+    logging.getLogger().addHandler(logging.NullHandler())
     look = look_of(sys.stdout)
     records: list[dict[str, Any]] = []
     statuses: list[int] = []
@@ -191,8 +197,11 @@ def _audit_files(
 
 def _audited(name: str, alpha: float | None, reader: ReaderChoice) -> Audit:
     from recheck.auditing import audit as audit_document
+    from recheck.errors import UnreadableDocument
 
     if name == "-":
+        if sys.stdin is None:
+            raise UnreadableDocument(STANDARD_INPUT, "it is closed", "send a manuscript into it")
         return audit_document(sys.stdin.buffer.read(), name=STANDARD_INPUT, alpha=alpha, reader=reader)
     return audit_document(name, alpha=alpha, reader=reader)
 

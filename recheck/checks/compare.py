@@ -146,7 +146,7 @@ def _doubts_of(claims: Sequence[Claim]) -> tuple[str, ...]:
     for claim in claims:
         if claim.confidence != "high":
             why = "; ".join(claim.notes) or "a number was read with doubt"
-            doubts.append(f"only if “{claim.place.quote}” was read rightly ({why})")
+            doubts.append(f"“{claim.place.quote}” was read rightly ({why})")
     return tuple(dict.fromkeys(doubts))
 
 
@@ -217,7 +217,14 @@ def _finding(
         printed=printed_text(printed),
         implied=implied,
         message=tell(
-            comparison.quantity, comparison.numbers, verdict, implied, given, unstated, reversal=reversal
+            comparison.quantity,
+            comparison.numbers,
+            verdict,
+            implied,
+            given,
+            match.unstated if match else (),
+            doubts,
+            reversal=reversal,
         ),
         place=case.claim.place,
         tolerance=stands_for(comparison.numbers),

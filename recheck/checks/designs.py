@@ -141,12 +141,17 @@ def _split_interval(box: Box, groups: Groups, total: int, *, as_se: bool) -> Int
 
 @dataclass(frozen=True, slots=True)
 class Fit:
-    """Ways to understand the test, whether the design is named or fitted, or why there is none."""
+    """Ways to understand the test, or why there is none.
+
+    `sure` says that the df are those of the design for printed group sizes, or that the sentence
+    names the plain test.
+    """
 
     ways: tuple[Way, ...]
     reason: str = ""
     doubts: tuple[str, ...] = ()
     design: str = ""
+    sure: bool = False
 
 
 def welch_df(box: Box, groups: Groups, *, as_se: bool = False) -> Interval:
@@ -195,8 +200,13 @@ def _fit_known(claim: Claim, groups: Groups, box: Box, df: Printed | None, n1: i
         _known_ways(claim, groups, n1, n2, pooled=pooled, welch=welch, paired=paired, same_df=df is not None)
     )
     named = claim.says("independent", "pooled", "welch", "paired")
-    doubts = () if df is not None or named else ("neither df nor the test is named",)
-    return Fit(ways, "", doubts, "paired" if paired and not (pooled or welch) else "independent")
+    doubts = (
+        ()
+        if df is not None or named
+        else ("this is the plain test of two groups (neither its df nor its name is printed)",)
+    )
+    design = "paired" if paired and not (pooled or welch) else "independent"
+    return Fit(ways, "", doubts, design, sure=named or df is not None)
 
 
 def _known_ways(
@@ -247,5 +257,11 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
         if not claim.says("independent", "pooled", "welch", "between-groups"):
             stated = claim.says("paired", "repeated")
             ways.append(Way(by_pairs, extra if stated else (*extra, PAIRED), (PAIRED,) if stated else ()))
-    doubts = () if named else ("group sizes are not printed and the test is not named",)
-    return Fit(tuple(ways), "", doubts, "independent" if named else "")
+    doubts = (
+        ()
+        if named
+        else (
+            "this is the plain test of two independent groups (it is not named, and group sizes are not printed)",
+        )
+    )
+    return Fit(tuple(ways), "", doubts, "independent" if named else "", sure=named)

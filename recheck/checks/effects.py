@@ -135,7 +135,7 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
     if fit.reason:
         yield unchecked(case, "d-from-groups", name, fit.reason, claims)
         return
-    foreign = foreign_model(claims)
+    foreign = foreign_model(claims, fitted=fit.sure)
     printed = unsigned(case.claim.values[name])
     n1, n2, doubts = groups.n1, groups.n2, link_doubts(case)
     ways: list[Way] = []
@@ -144,7 +144,7 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
         if n1 is None or n2 is None:
             total = (whole(case.claim.values.get("df")) or whole(case.claim.values.get("df2")) or 0) + 2
             ways += _split_ways(name, groups, total)
-            doubts = (*doubts, "group sizes are not printed")
+            doubts = (*doubts, "the effect is that of these two groups (their sizes are not printed)")
         else:
             ways += _independent_ways(name, groups, n1, n2)
     if fit.design != "independent" or case.claim.says("paired", "repeated"):
@@ -293,11 +293,14 @@ def d_from_t(case: Case) -> Iterable[Finding]:
             case, "d-from-t", name, "the df are not whole, so group sizes cannot be told from them"
         )
         return
-    foreign = foreign_model((claim,))
+    named = claim.says("independent", "pooled", "paired", "one-sample")
+    foreign = foreign_model((claim,), fitted=named)
     printed = unsigned(claim.values[name])
     numbers = {name: printed, "t": unsigned(claim.values["t"]), "df": claim.values["df"]}
     doubts = (
-        () if claim.says("independent", "pooled", "paired", "one-sample") else ("the design is not stated",)
+        ()
+        if claim.says("independent", "pooled", "paired", "one-sample")
+        else ("t is that of two groups or of pairs (the design is not stated)",)
     )
     yield judge(
         case,

@@ -25,9 +25,7 @@ def link_doubts(case: Case) -> tuple[str, ...]:
     """What is inferred about the link between a test and its groups."""
     if case.claim.link_confidence == "high":
         return ()
-    return (
-        f"only if the groups belong to this test ({case.claim.link or 'put together from different sentences'})",
-    )
+    return (f"the groups belong to this test ({case.claim.link or 'put together from different sentences'})",)
 
 
 def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Iterable[Finding]:
@@ -43,7 +41,7 @@ def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Ite
     if fit.reason:
         yield unchecked(case, name, quantity, fit.reason, claims)
         return
-    foreign = foreign_model(claims)
+    foreign = foreign_model(claims, fitted=fit.sure)
     ways = tuple(replace(way, implied=_squared(way) if squared else way.implied) for way in fit.ways)
     comparison = Comparison(
         check=name,
@@ -145,17 +143,17 @@ def difference_from_means(case: Case) -> Iterable[Finding]:
         "mean1": groups.numbers["mean1"],
         "mean2": groups.numbers["mean2"],
     }
-    foreign = foreign_model(claims)
 
     def implied(box: Box) -> tuple[Interval, ...]:
         a, b = box["mean1"], box["mean2"]
         return (Interval(a.low - b.high, a.high - b.low).absolute(),)
 
     fit = fit_designs(case.claim, groups, box_of(groups.numbers))
+    foreign = foreign_model(claims, fitted=fit.sure and not fit.reason)
     sure = not fit.reason and not fit.doubts and groups.n1 is not None and groups.n2 is not None
     doubts = (
         *link_doubts(case),
-        *(() if sure else ("only if the difference is that of the same cases, unadjusted",)),
+        *(() if sure else ("the difference is that of the same cases, unadjusted",)),
     )
     yield judge(
         case,

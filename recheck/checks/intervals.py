@@ -96,11 +96,6 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
         return
     if low.interval().low > high.interval().high:
         return
-    if name in NONCENTRAL or claim.suggests("bayesian", "bootstrap"):
-        yield unchecked(
-            case, "ci-holds-estimate", name, f"an interval of this kind may leave out its own {shown(name)}"
-        )
-        return
     ratio = name in ("or", "rr", "hr")
     others = [n for n in printed if n != name and _inside(claim.values[n], low, high)]
 
@@ -108,12 +103,17 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
         return (Interval(box["ci_low"].low, box["ci_high"].high),)
 
     numbers = {name: claim.values[name], "ci_low": low, "ci_high": high}
-    doubts = [f"only if the interval belongs to {shown(name)}, not to {shown(other)}" for other in others]
+    doubts = [f"the interval belongs to {shown(name)}, not to {shown(other)}" for other in others]
     if claim.interval_of is None:
-        doubts.append(f"only if the interval belongs to {shown(name)}")
+        doubts.append(f"the interval belongs to {shown(name)}")
     if ratio and claim.suggests("covariate-adjusted", "multi-regression"):
-        doubts.append("only if ratio and interval come from the same model")
-    yield judge(case, Comparison("ci-holds-estimate", name, numbers, (Way(implied),), doubts=tuple(doubts)))
+        doubts.append("ratio and interval come from the same model")
+    apart = name in NONCENTRAL or claim.suggests("bayesian", "bootstrap")
+    excuses = (f"an interval of this kind may leave out its own {shown(name)}",) if apart else ()
+    ways = (Way(implied),)
+    yield judge(
+        case, Comparison("ci-holds-estimate", name, numbers, ways, doubts=tuple(doubts), excuses=excuses)
+    )
 
 
 def _inside(printed: Printed, low: Printed, high: Printed) -> bool:
@@ -188,7 +188,7 @@ def t_from_ci(case: Case) -> Iterable[Finding]:
     doubts = (
         ()
         if claim.values["df"].decimals > 0 or not claim.suggests("mixed-model")
-        else ("a mixed model may use other df for the interval",)
+        else ("the interval and t rest on the same df, which a mixed model need not",)
     )
     yield judge(
         case,
@@ -245,7 +245,7 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
     known = df is not None and df.number > 0
     numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
     ways = _p_ways(claim, df.number if known and df is not None else None)
-    doubts = () if known else ("neither df nor the test is printed with the interval",)
+    doubts = () if known else ("p and the interval come from one and the same test (no df are printed)",)
     excess = (
         "p may be adjusted for several tests" if claim.suggests("adjusted-p", "adjusted-p-post-hoc") else ""
     )

@@ -13,12 +13,22 @@ FOREIGN = (
 """What makes means and SDs another model's than that of the plain two-group test."""
 
 
-def foreign_model(claims: Sequence[Claim]) -> str:
-    """Say which model the summaries may belong to, as stated of them or for the document; else ''."""
+BESIDE_FITTING_DF = ("imputed", "weighted", "robust", "within-subject-se")
+"""Of those, what leaves the df of the plain two-group test as they are."""
+
+
+def foreign_model(claims: Sequence[Claim], *, fitted: bool = False) -> str:
+    """Say which model the summaries may belong to, as stated of them or for the document; else ''.
+
+    `fitted` says that the printed df are exactly those of the plain design for the printed group
+    sizes, or that the sentence names the plain test: then a covariate, a mixed model or a contrast
+    that the document speaks of elsewhere is not this test's.
+    """
     said = [word for word in FOREIGN if any(claim.says(word) for claim in claims)]
     if said:
         return f"summaries cannot rebuild {STATED[said[0]]}"
-    spoken = [word for word in FOREIGN if any(word in claim.background for claim in claims)]
+    possible = BESIDE_FITTING_DF if fitted else FOREIGN
+    spoken = [word for word in possible if any(word in claim.background for claim in claims)]
     if spoken:
         return f"the document speaks of {STATED[spoken[0]]}, which summaries cannot rebuild"
     return ""

@@ -88,7 +88,7 @@ def _excuses(claim: Claim) -> tuple[str, ...]:
     reasons = []
     if claim.suggests("permutation"):
         reasons.append("p comes from a permutation or exact test")
-    if claim.suggests("bootstrap"):
+    if claim.says("bootstrap"):
         reasons.append("p may come from a bootstrap")
     if claim.says("bayesian"):
         reasons.append("the analysis is Bayesian")

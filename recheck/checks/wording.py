@@ -25,15 +25,14 @@ def stands_for(numbers: Numbers) -> str:
     return f"{text}; {', '.join(exact)} taken as exact" if exact else text
 
 
-def _alternatives(implied: Sequence[Implied], most: int = 3) -> str:
-    rows = []
-    for row in implied[:most]:
-        text = span(row.low, row.high)
-        rows.append(f"{text} ({row.assuming})" if row.assuming else text)
-    more = len(implied) - most
-    if more > 0:
-        rows.append(f"{more} other reading{'s do' if more > 1 else ' does'} not fit either")
-    return "; or ".join(rows[:most]) + ("; " + rows[most] if more > 0 else "")
+def _expected(implied: Sequence[Implied]) -> str:
+    """The range under the reading that assumes least, and how many others there are."""
+    first = implied[0]
+    text = (
+        f"{span(first.low, first.high)} ({first.assuming})" if first.assuming else span(first.low, first.high)
+    )
+    more = len(implied) - 1
+    return text + (f"; {more} other reading{'s do' if more > 1 else ' does'} not fit either" if more else "")
 
 
 def inputs(quantity: str, numbers: Numbers) -> str:
@@ -56,7 +55,7 @@ def inputs(quantity: str, numbers: Numbers) -> str:
 
 def tell(
     quantity: str, numbers: Numbers, verdict: Verdict, implied: Sequence[Implied],
-    given: Sequence[str], unstated: Sequence[str], *, reversal: bool = False,
+    given: Sequence[str], unstated: Sequence[str], doubts: Sequence[str], *, reversal: bool = False,
 ) -> str:  # fmt: skip
     """One or two sentences: what is printed, what the other numbers imply, what was assumed."""
     others = inputs(quantity, numbers)
@@ -64,12 +63,16 @@ def tell(
     if verdict == "agrees":
         said = f" ({'; '.join(given)})" if given else ""
         return f"{_capital(printed)} agrees with {others}{said}."
-    start = f"{_capital(printed)} is printed; from {others} follows {_alternatives(implied)}."
     if verdict == "conditional":
-        return f"{start} The numbers agree only under what the text does not state: {'; '.join(unstated)}."
+        first = implied[0]
+        start = f"{_capital(printed)} is printed, but {others} imply {span(first.low, first.high)}."
+        if unstated:
+            return f"{start} The numbers agree if {'; and if '.join(unstated)}, which the text does not say."
+        return f"{start} That is a contradiction only if {'; and if '.join(doubts)}."
+    sentence = f"{_capital(printed)} is printed, but {others} imply {_expected(implied)}."
     if reversal:
-        start += " Printed and implied p lie on opposite sides of the significance level."
-    return start
+        sentence += " Printed and implied p lie on opposite sides of the significance level."
+    return sentence
 
 
 def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied]) -> str:

@@ -11,6 +11,8 @@ from recheck.model import Printed, Remedy, shown
 from recheck.reconcile.readings import Numbers, is_exact
 
 MINUS = "−"
+THRESHOLDS = frozenset(Decimal(text) for text in ("0.1", "0.05", "0.01", "0.005", "0.001", "0.0001"))
+"""Values that p is commonly printed to lie below (common practice, no source)."""
 GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for i in "12")
 """Names of the numbers of two groups: `sd2` is the SD of the second."""
 
@@ -19,12 +21,17 @@ def candidates(printed: Printed) -> Iterator[tuple[Printed, str]]:
     """Yield what the number may have been before the slip, with the slip's name; likeliest first."""
     seen = {(printed.value, printed.decimals, printed.relation)}
     texts = (*_swapped(printed), *_moved(printed), *_dropped(printed), *_wrong(printed))
-    numbers = ((_with_digits(printed, text), words) for text, words in texts)
+    numbers = ((_with_digits(printed, text), words) for text, words in texts if _printable(text))
     for number, words in (*_relations(printed), *numbers):
         key = (number.value, number.decimals, number.relation)
         if key not in seen:
             seen.add(key)
             yield number, words
+
+
+def _printable(text: str) -> bool:
+    """Tell whether digits could stand so in a manuscript: no idle zero in front, not all zeros."""
+    return bool(text.strip("0.")) and not (text[0] == "0" and text[1:2].isdigit())
 
 
 def _with_digits(printed: Printed, text: str) -> Printed:
@@ -48,7 +55,9 @@ def _relations(printed: Printed) -> list[tuple[Printed, str]]:
     other = {"<": ">", ">": "<", "≤": "≥", "≥": "≤"}.get(printed.relation)
     if other:
         return [(replace(printed, relation=other), f"{printed.relation} for {other}")]  # type: ignore[arg-type]
-    return [(replace(printed, relation="<"), "= for <")] if printed.relation == "=" else []
+    if printed.relation == "=" and printed.value in THRESHOLDS:
+        return [(replace(printed, relation="<"), "= for <")]
+    return []
 
 
 def _swapped(printed: Printed) -> Iterator[tuple[str, str]]:
