@@ -24,10 +24,28 @@ def test_worst_first():
     ]
     ranked = rank(findings)
     names = [f.id for f in ranked]
-    assert names == ["reversal", "impossible", "doubtful", "far", "near", "conditional", "agrees", "unchecked"]
+    assert names == [
+        "reversal",
+        "impossible",
+        "doubtful",
+        "far",
+        "near",
+        "conditional",
+        "agrees",
+        "unchecked",
+    ]
     assert [f.rank for f in ranked] == list(range(1, 9))
 
 
 def test_rule_names_every_tier():
-    for word in ("reversals", "impossible", "inconsistent", "conditional", "agrees", "unchecked", "gap", "confidence"):
+    for word in (
+        "reversals",
+        "impossible",
+        "inconsistent",
+        "conditional",
+        "agrees",
+        "unchecked",
+        "gap",
+        "confidence",
+    ):
         assert word in RULE

@@ -252,7 +252,7 @@ def _remedies(
         )
     rows = [
         Remedy("number", comparison.quantity, f"{shown(comparison.quantity)} would have to be {interval_text(i)}", i.low, i.high)
-        for i in plain[:2]
+        for i in plain[:1]
     ]  # fmt: skip
     slips = slip_remedies(
         comparison.numbers, lambda n: agrees_as_printed(comparison.quantity, n, comparison.ways)

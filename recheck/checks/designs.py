@@ -95,7 +95,12 @@ def _t_interval(box: Box, groups: Groups, n1: float, n2: float, *, as_se: bool, 
     bounds = two_groups.welch_t_bounds if welch else two_groups.pooled_t_bounds
     with np.errstate(divide="ignore", invalid="ignore"):
         low, high = bounds(a.low, a.high, s.low1, s.high1, n1, b.low, b.high, s.low2, s.high2, n2)
-    return Interval(float(low), float(high)).absolute()
+    return known(float(low), float(high)).absolute()
+
+
+def known(low: float, high: float) -> Interval:
+    """An interval of which an end that cannot be computed (no difference over no spread) is open."""
+    return Interval(-math.inf if math.isnan(low) else low, math.inf if math.isnan(high) else high)
 
 
 def _paired_interval(box: Box, groups: Groups, n: float, *, as_se: bool) -> Interval:
@@ -105,7 +110,7 @@ def _paired_interval(box: Box, groups: Groups, n: float, *, as_se: bool) -> Inte
         low, high = two_groups.paired_t_bounds(
             a.low, a.high, s.low1, s.high1, b.low, b.high, s.low2, s.high2, n
         )
-    return Interval(float(low), float(high)).absolute()
+    return known(float(low), float(high)).absolute()
 
 
 def _splits(total: int) -> list[tuple[int, int]]:
@@ -133,7 +138,7 @@ def _split_interval(box: Box, groups: Groups, total: int, *, as_se: bool) -> Int
             b.low, b.high, max(s2.low, 0.0) * factor2, s2.high * factor2, n2,
         )  # fmt: skip
     parts = [
-        Interval(float(x), float(y)).absolute()
+        known(float(x), float(y)).absolute()
         for x, y in zip(np.atleast_1d(low), np.atleast_1d(high), strict=True)
     ]
     return Interval(min(p.low for p in parts), max(p.high for p in parts))
@@ -186,8 +191,7 @@ def fit_designs(claim: Claim, groups: Groups, box: Box) -> Fit:
 
 
 def _fit_known(claim: Claim, groups: Groups, box: Box, df: Printed | None, n1: int, n2: int) -> Fit:
-    total = n1 + n2 - 2
-    pooled = df is None or (df.decimals <= 0 and df.value == total) or (df.decimals > 0 and df.value == total)
+    pooled = df is None or df.value == n1 + n2 - 2
     welch = df is None or _fits_welch(df, box, groups)
     paired = n1 == n2 and (df is None or df.value == n1 - 1)
     if claim.says("paired", "repeated"):
@@ -200,13 +204,16 @@ def _fit_known(claim: Claim, groups: Groups, box: Box, df: Printed | None, n1: i
         _known_ways(claim, groups, n1, n2, pooled=pooled, welch=welch, paired=paired, same_df=df is not None)
     )
     named = claim.says("independent", "pooled", "welch", "paired")
-    doubts = (
-        ()
-        if df is not None or named
-        else ("this is the plain test of two groups (neither its df nor its name is printed)",)
-    )
-    design = "paired" if paired and not (pooled or welch) else "independent"
-    return Fit(ways, "", doubts, design, sure=named or df is not None)
+    fractional = df is not None and df.decimals > 0
+    stated = claim.says("welch") or (fractional and claim.suggests("welch"))
+    by_welch_df = not (pooled or paired or stated)
+    doubt = WELCH_DF if by_welch_df else "" if df is not None or named else UNNAMED
+    design = "" if paired and (pooled or welch) else "paired" if paired else "independent"
+    return Fit(ways, "", (doubt,) if doubt else (), design, sure=not doubt)
+
+
+WELCH_DF = "these df are Welch's, not those of a model with covariates, of fewer cases or of more groups"
+UNNAMED = "this is the plain test of two groups (neither its df nor its name is printed)"
 
 
 def _known_ways(

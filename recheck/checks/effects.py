@@ -10,7 +10,7 @@ from typing import Literal
 import numpy as np
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import SE_READING, Groups, fit_designs, sds, whole
+from recheck.checks.designs import SE_READING, Groups, fit_designs, known, sds, whole
 from recheck.checks.groups import link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
@@ -72,7 +72,7 @@ def _from_box(
         low, high = effects.d_bounds(
             a.low, a.high, s.low1, s.high1, n1, b.low, b.high, s.low2, s.high2, n2, denominator=denominator
         )
-    return Interval(float(low), float(high)).absolute()
+    return known(float(low), float(high)).absolute()
 
 
 def _independent_ways(name: str, groups: Groups, n1: float, n2: float) -> Iterator[Way]:

@@ -3,14 +3,11 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable
+from collections.abc import Iterable
 
 from recheck.checks.compare import Comparison, impossible, judge, unchecked
-from recheck.checks.groups import unsigned
 from recheck.checks.registry import Case, check
 from recheck.model import Claim, Finding, Interval, Printed, Remedy, shown
-from recheck.recompute import bounds, intervals
-from recheck.recompute.tails import t_quantile, z_quantile
 from recheck.reconcile.readings import Box, Way
 
 ALL_KINDS = (
@@ -38,7 +35,11 @@ ESTIMATES = (
 )  # fmt: skip
 
 
-def _ends(claim: Claim) -> tuple[Printed, Printed]:
+OTHER_METHOD = "the interval was made by another method than the test (bootstrap, simultaneous, robust)"
+
+
+def ends(claim: Claim) -> tuple[Printed, Printed]:
+    """The two ends of a claim's interval."""
     return claim.values["ci_low"], claim.values["ci_high"]
 
 
@@ -55,7 +56,7 @@ def _ends(claim: Claim) -> tuple[Printed, Printed]:
 )
 def ci_order(case: Case) -> Iterable[Finding]:
     """Find intervals whose lower end lies above the upper one."""
-    low, high = _ends(case.claim)
+    low, high = ends(case.claim)
     if low.interval().low <= high.interval().high:
         return
     swapped = Remedy(
@@ -85,7 +86,7 @@ def ci_order(case: Case) -> Iterable[Finding]:
 def ci_holds_estimate(case: Case) -> Iterable[Finding]:
     """Find intervals that leave out the estimate that they belong to."""
     claim = case.claim
-    low, high = _ends(claim)
+    low, high = ends(claim)
     printed = [name for name in ESTIMATES if name in claim.values]
     name = claim.interval_of or (printed[0] if len(printed) == 1 else None)
     if name is None or name not in claim.values:
@@ -106,6 +107,8 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
     doubts = [f"the interval belongs to {shown(name)}, not to {shown(other)}" for other in others]
     if claim.interval_of is None:
         doubts.append(f"the interval belongs to {shown(name)}")
+    if name in STANDARDIZED and claim.kind != "estimate" and not _surely_of_effect(case, low, high):
+        doubts.append(f"the interval belongs to {shown(name)}, not to a mean or a difference told elsewhere")
     if ratio and claim.suggests("covariate-adjusted", "multi-regression"):
         doubts.append("ratio and interval come from the same model")
     apart = name in NONCENTRAL or claim.suggests("bayesian", "bootstrap")
@@ -116,176 +119,63 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
     )
 
 
+STANDARDIZED = ("d", "g", "delta", "d_z", "d_av", "d_rm")
+
+
+def _surely_of_effect(case: Case, low: Printed, high: Printed) -> bool:
+    """Tell whether an interval beside a test and its effect can be that of no mean or difference."""
+    means = [group.values["mean"] for group in case.groups if "mean" in group.values]
+    if len(means) != 2:
+        return False
+    interval = Interval(low.interval().low, high.interval().high)
+    difference = abs(means[0].number - means[1].number)
+    told = (*(mean.number for mean in means), difference, -difference)
+    return not any(interval.holds(value) for value in told)
+
+
 def _inside(printed: Printed, low: Printed, high: Printed) -> bool:
     return low.interval().low <= printed.number <= high.interval().high
 
 
-WIDER, NARROWER = 1.6, 0.6
-"""How much wider or narrower than the t interval an honest one by another method may be.
-
-Percentile bootstraps of a few cases are narrower by √((n − 1)/n) z/t, .63 at n = 5; Bonferroni
-intervals of six comparisons are wider by 1.35, of twenty-five by 1.6 (Dunn 1961, J. Am. Stat. Assoc. 56:52-64)."""
-
-OTHER_METHOD = "the interval was made by another method than the test (bootstrap, simultaneous, robust)"
-BY_HAND = "the interval was worked out by hand from rounded figures"
-NORMAL = "the interval uses the normal, not the t distribution"
-
-
-def level_of(claim: Claim) -> tuple[float, bool]:
-    """The level of the interval as a share, and whether it is printed."""
-    printed = claim.values.get("ci_level")
-    if printed is None:
-        return 0.95, False
-    level = printed.number / 100 if printed.number > 1 else printed.number
-    return (level, True) if 0.5 <= level < 1 else (0.95, False)
-
-
-def _t_of_ci(
-    level: float, df: float, width: float = 1.0, width_high: float | None = None, by_hand: float = 0.0
-) -> Callable[[Box], tuple[Interval, ...]]:
-    """|t| from the ends of an interval: crit (low + high)/(high − low), over the box of both ends."""
-
-    def implied(box: Box) -> tuple[Interval, ...]:
-        low, high = box["ci_low"], box["ci_high"]
-        half = by_hand * (high.high - low.low) / 2
-        a, b = Interval(low.low - half, low.high + half), Interval(high.low - half, high.high + half)
-        if a.high >= b.low:
-            return ()
-        least, most = intervals.t_from_ci_bounds(a.low, a.high, b.low, b.high, level, df)
-        t = Interval(float(least), float(most)).absolute()
-        return (Interval(t.low * width, t.high * (width_high or width)),)
-
-    return implied
+OFF_CENTRE = 0.35
+"""How far from its centre, in half widths, an honest interval by another method may have its estimate."""
 
 
 @check(
-    "t-from-ci",
-    title="t against the confidence interval of the mean difference",
-    kinds=("t-test",),
-    quantity="t",
-    needs=("t", "df", "ci_low", "ci_high"),
-    formula="t = c (low + high)/(high − low), c the critical value of t with df at the level of the interval",
-    source="Neyman (1937) Philosophical Transactions A 236:333-380; Altman & Bland (2011) BMJ 343:d2090",
-    limits="Same method, two-sided, unadjusted only. Bootstrap, profile and simultaneous intervals are not rebuilt.",
-    agrees=(
-        "Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.37, 10.43], t(34) = 3.23, p = .003.",
-    ),
-    inconsistent=(
-        "Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [5.9, 6.9], t(34) = 3.23, p = .003.",
-    ),
-)
-def t_from_ci(case: Case) -> Iterable[Finding]:
-    """Compare |t| with the interval of the mean difference that it belongs to."""
-    claim = case.claim
-    if claim.interval_of != "mean_difference":
-        return
-    low, high = _ends(claim)
-    df = claim.values["df"].number
-    if low.interval().low > high.interval().high or df <= 0:
-        return
-    numbers = {"t": unsigned(claim.values["t"]), "ci_low": low, "ci_high": high, "df": claim.values["df"]}
-    ways, excuses = _ci_ways(claim, df), _ci_excuses(claim)
-    doubts = (
-        ()
-        if claim.values["df"].decimals > 0 or not claim.suggests("mixed-model")
-        else ("the interval and t rest on the same df, which a mixed model need not",)
-    )
-    yield judge(
-        case,
-        Comparison(
-            "t-from-ci", "t", numbers, ways, bounds=Interval(0, math.inf), excuses=excuses, doubts=doubts
-        ),
-    )
-
-
-def _ci_excuses(claim: Claim) -> tuple[str, ...]:
-    foreign = {
-        "bootstrap": "the interval may come from a bootstrap", "adjusted-p": "the interval may be simultaneous",
-        "adjusted-p-post-hoc": "the interval may be simultaneous", "permutation": "the test is by permutation",
-        "equivalence": "the interval of an equivalence test has another level", "robust": "the interval may rest on a robust standard error",
-        "bayesian": "the interval may be a credible one",
-    }  # fmt: skip
-    return tuple(reason for word, reason in foreign.items() if claim.suggests(word))[:1]
-
-
-def _ci_ways(claim: Claim, df: float) -> tuple[Way, ...]:
-    level, printed = level_of(claim)
-    unstated = () if printed else (f"the interval is a {level:.0%} one",)
-    normal = float(z_quantile((1 - level) / 2)) / float(t_quantile((1 - level) / 2, df))
-    ways = [Way(_t_of_ci(level, df), unstated), Way(_t_of_ci(level, df, normal), (*unstated, NORMAL))]
-    ways.append(Way(_t_of_ci(level, df, min(normal, 0.95), 1.05, 0.1), (*unstated, BY_HAND)))
-    for other in (0.90, 0.95, 0.99):
-        if other != level:
-            ways.append(Way(_t_of_ci(other, df), (f"the interval is a {other:.0%} one",)))
-    ways.append(Way(_t_of_ci(level, df, NARROWER, WIDER, 0.35), (*unstated, OTHER_METHOD)))
-    return tuple(ways)
-
-
-@check(
-    "p-from-ci",
-    title="p against the confidence interval of the mean difference",
+    "ci-centre",
+    title="mean difference in the middle of its confidence interval",
     kinds=("t-test", "comparison"),
-    quantity="p",
-    needs=("p", "ci_low", "ci_high"),
-    formula="|t| = c |low + high|/(high − low); p = 2 P(T > |t|)",
-    source="Altman & Bland (2011) How to obtain the P value from a confidence interval, BMJ 343:d2304",
-    limits="Same method, two-sided, unadjusted only. Without df the verdict is conditional at most.",
-    agrees=("Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .003.",),
-    conditional=("Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .30.",),
+    quantity="mean_difference",
+    needs=("mean_difference", "ci_low", "ci_high"),
+    formula="mean difference = (lower end + upper end) / 2",
+    source="Neyman (1937) Philosophical Transactions A 236:333-380: a t interval is the difference ± c SE",
+    limits="Bootstrap and profile intervals are not symmetric: a little off the centre is conditional.",
+    agrees=("The mean difference was 4.1 mm, 95% CI [1.9, 6.3].",),
+    conditional=("The mean difference was 4.4 mm, 95% CI [1.9, 6.3].",),
 )
-def p_from_ci(case: Case) -> Iterable[Finding]:
-    """Compare p with the interval of the mean difference, over all df where none are printed."""
+def ci_centre(case: Case) -> Iterable[Finding]:
+    """Compare a mean difference with the middle of its interval; outside it another check speaks."""
     claim = case.claim
-    if claim.interval_of != "mean_difference":
+    low, high = ends(claim)
+    printed = claim.values["mean_difference"]
+    inside = low.interval().low <= printed.interval().high and printed.interval().low <= high.interval().high
+    if claim.interval_of != "mean_difference" or not inside or low.value > high.value:
         return
-    low, high = _ends(claim)
-    if low.interval().low > high.interval().high:
-        return
-    df = claim.values.get("df")
-    known = df is not None and df.number > 0
-    numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
-    ways = _p_ways(claim, df.number if known and df is not None else None)
-    doubts = () if known else ("p and the interval come from one and the same test (no df are printed)",)
-    excess = (
-        "p may be adjusted for several tests" if claim.suggests("adjusted-p", "adjusted-p-post-hoc") else ""
+
+    def centre(box: Box, off: float = 0.0, units: float = 0.0) -> tuple[Interval, ...]:
+        a, b = box["ci_low"], box["ci_high"]
+        more = off * (b.high - a.low) / 2 + units * float(low.unit)
+        return (Interval((a.low + b.low) / 2 - more, (a.high + b.high) / 2 + more),)
+
+    ways = (
+        Way(centre),
+        Way(lambda box: centre(box, 0.0, 1.0), ("the interval was worked out by hand from rounded figures",)),
+        Way(lambda box: centre(box, OFF_CENTRE), (OTHER_METHOD,)),
     )
+    numbers = {"mean_difference": printed, "ci_low": low, "ci_high": high}
+    foreign = claim.suggests("bootstrap", "bayesian")
+    excuses = ("an interval of this kind need not be symmetric",) if foreign else ()
+    doubts = ("the interval is a symmetric one, from t or z",)
     yield judge(
-        case,
-        Comparison(
-            "p-from-ci",
-            "p",
-            numbers,
-            ways,
-            bounds=Interval(0.0, 1.0),
-            doubts=doubts,
-            excuses=_ci_excuses(claim),
-            excess=excess,
-        ),
+        case, Comparison("ci-centre", "mean_difference", numbers, ways, excuses=excuses, doubts=doubts)
     )
-
-
-def _p_ways(claim: Claim, df: float | None) -> tuple[Way, ...]:
-    ways = []
-    for way in _ci_ways(claim, df if df is not None else 1e9):
-
-        def implied(
-            box: Box, inner: Callable[[Box], tuple[Interval, ...]] = way.implied
-        ) -> tuple[Interval, ...]:
-            out = []
-            for t in inner(box):
-                least, most = (df, df) if df is not None else (5.0, 1e9)
-                if df is None:
-                    t = Interval(t.low, t.high * float(t_quantile(0.025, 5.0)) / 1.959963984540054)
-                p_low, p_high = bounds.p_from_t_bounds(t.low, t.high, least, most, 2)
-                out.append(Interval(float(p_low), float(p_high)))
-            return tuple(out)
-
-        halved = way.unstated
-        ways.append(Way(implied, halved))
-        if not claim.suggests("two-tailed") and len(halved) <= 1:
-
-            def one(box: Box, inner: Callable[[Box], tuple[Interval, ...]] = implied) -> tuple[Interval, ...]:
-                return tuple(Interval(i.low / 2, i.high / 2) for i in inner(box))
-
-            ways.append(Way(one, (*halved, "p is one-tailed")))
-    return tuple(ways)

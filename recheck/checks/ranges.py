@@ -86,6 +86,9 @@ def _possible(printed: Printed, allowed: Interval) -> bool:
 def _misprints(name: str, printed: Printed, allowed: Interval) -> tuple[Remedy, ...]:
     """Slips with a lost or moved decimal point that lead back into the range."""
     rows = []
+    if printed.value < 0 <= allowed.low:
+        text = f"if {shown(name)} were {printed.text[1:]} (a dash for a minus), it would be possible"
+        rows.append(Remedy("slip", name, text, change=f"{printed.text} → {printed.text[1:]}"))
     for number, words in candidates(printed):
         if words == "decimal point moved" and _possible(number, allowed):
             rows.append(

@@ -124,6 +124,11 @@ def _interval(pair: tuple[object, object]) -> Interval:
     return Interval(float(low), float(high))  # type: ignore[arg-type]
 
 
+def _about(df1: Interval) -> Interval:
+    """The corrected numerator df, never below 1, that may have been rounded to these."""
+    return Interval(max(df1.low - 0.5, 1.0), df1.high + 0.5)
+
+
 def _around(df: Interval) -> Interval:
     """The fractional df that may have been rounded or floored to these."""
     return Interval(max(df.low - 0.5, 0.01), df.high + 1.0)
@@ -248,12 +253,11 @@ def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
 
     Bounds drawn around 2×2 tables of 10 to 300 cases with expected counts from 1 up: the likelihood
     ratio lies within 0.55 and 1.9 times χ²; the continuity correction and Fisher's p lie at most
-    1.4 below √χ².
+    1.4 below √χ². The steps of larger tables are finer.
     """
-    low, high = 0.55 * chi2.low, 1.9 * chi2.high
-    if one_df:
-        low = min(low, max(math.sqrt(max(chi2.low, 0.0)) - 1.4, 0.0) ** 2)
-    return Interval(low, high)
+    step = 1.4 if one_df else 0.7
+    low = min(0.55 * chi2.low, max(math.sqrt(max(chi2.low, 0.0)) - step, 0.0) ** 2)
+    return Interval(low, 1.9 * chi2.high)
 
 
 @check(
@@ -294,18 +298,13 @@ def p_from_F(case: Case) -> Iterable[Finding]:
     if numbers["df1"].value == 1:
         ways += _halved(claim, p_of)
     if whole[1]:
-        ways.append(Way(lambda box: p_of(box, None, _around(box["df2"])), (ROUNDED_DF,)))
-        if whole[0] and numbers["df1"].value > 1:
-            ways.append(
-                Way(
-                    lambda box: p_of(
-                        box,
-                        Interval(max(box["df1"].low - 0.5, 0.5), box["df1"].high + 1),
-                        _around(box["df2"]),
-                    ),
-                    (ROUNDED_DF,),
-                )
+        both = whole[0] and not between
+        ways.append(
+            Way(
+                lambda box: p_of(box, _about(box["df1"]) if both else None, _around(box["df2"])),
+                (ROUNDED_DF,),
             )
+        )
     if claim.suggests("mixed-model"):
         ways.append(Way(lambda box: p_of(box, None, Interval(1.0, UNIT_DF)), (ANY_DF,)))
     yield _judge_p(case, "p-from-F", ways, numbers, omnibus=numbers["df1"].value > 1)

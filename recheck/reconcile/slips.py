@@ -103,7 +103,7 @@ def slip_remedies(
     for name, printed in numbers.items():
         wrong: list[Remedy] = []
         for number, words in candidates(printed):
-            if not _sensible(name, printed, number) or not mended({**numbers, name: number}):
+            if not _sensible(name, printed, number, words) or not mended({**numbers, name: number}):
                 continue
             remedy = _remedy(name, printed, number, words)
             (wrong if words == "one digit wrong" else found).append(remedy)
@@ -113,11 +113,14 @@ def slip_remedies(
     return tuple(found[:most])
 
 
-def _sensible(name: str, printed: Printed, number: Printed) -> bool:
-    """Tell whether a correction leaves a number of its kind: a relation turned is a slip of p alone."""
+def _sensible(name: str, printed: Printed, number: Printed, words: str) -> bool:
+    """Tell whether a correction leaves a number of its kind.
+
+    A relation turned is a slip of p alone, a decimal point moved one of numbers that have one.
+    """
     if number.relation != printed.relation:
         return name == "p"
-    return not is_exact(name, printed) or (number.decimals <= 0 and number.value >= 1)
+    return not is_exact(name, printed) or (words != "decimal point moved" and number.value >= 1)
 
 
 def _remedy(name: str, printed: Printed, number: Printed, words: str) -> Remedy:

@@ -12,7 +12,10 @@ def number(text: str, relation: str = "=") -> Printed:
 
 
 def names(text: str, relation: str = "=") -> dict[str, str]:
-    return {n.text if n.relation == "=" else f"{n.relation} {n.text}": words for n, words in candidates(number(text, relation))}
+    return {
+        n.text if n.relation == "=" else f"{n.relation} {n.text}": words
+        for n, words in candidates(number(text, relation))
+    }
 
 
 def test_swapped_digits():
@@ -44,4 +47,6 @@ def test_remedy_names_the_one_slip_that_mends():
 def test_a_digit_that_could_be_many_is_not_named():
     numbers = {"t": number("3.4")}
     assert slip_remedies(numbers, lambda n: Decimal("5") < n["t"].value < Decimal("5.0001")) == ()
-    assert not slip_remedies(numbers, lambda n: n["t"].value in (Decimal("3.6"), Decimal("3.7"), Decimal("3.8")))
+    assert not slip_remedies(
+        numbers, lambda n: n["t"].value in (Decimal("3.6"), Decimal("3.7"), Decimal("3.8"))
+    )

@@ -1,0 +1,133 @@
+"""The whole way from the bytes of a PDF to a document."""
+
+from __future__ import annotations
+
+import hashlib
+from collections.abc import Collection
+from typing import Literal
+
+import numpy as np
+
+from recheck.documents import pdfium
+from recheck.documents.blocks import blocks_of, type_of
+from recheck.documents.columns import agreed_gutters, arranged, gutters_of
+from recheck.documents.furniture import furniture
+from recheck.documents.glyphs import Engine, Glyphs, Unopened, upright
+from recheck.documents.joining import put_together
+from recheck.documents.kinds import classified
+from recheck.documents.lines import Line, lines_of
+from recheck.documents.passages import passages_of, title_of
+from recheck.documents.words import words_of
+from recheck.errors import UnreadableDocument
+from recheck.model import Document, Passage
+
+
+def pdf_document(
+    data: bytes,
+    *,
+    name: str,
+    reader: Literal["auto", "pdfium", "pdfminer"] = "auto",
+    pages: Collection[int] | None = None,
+) -> Document:
+    """Read a PDF with the engine asked for; `auto` is pdfium, then pdfminer where pdfium fails.
+
+    Raises `UnreadableDocument` for a file that is locked, damaged or has no text layer.
+    """
+    engine, used = _read(data, name, reader, pages)
+    lines, surroundings = page_lines(engine.pages)
+    if not lines and not surroundings and pages is None:
+        raise UnreadableDocument(name, "it has no text layer (a scan of images)", "run OCR first")
+    type_ = type_of(lines)
+    blocks = classified(blocks_of(lines, type_), type_)
+    title = title_of(engine.title, blocks)
+    passages = (*passages_of(blocks), *_asides(surroundings))
+    return Document(
+        name=name,
+        format="pdf",
+        sha256=hashlib.sha256(data).hexdigest(),
+        passages=passages,
+        pages=engine.count,
+        words=sum(len(passage.text.split()) for passage in passages if passage.kind != "aside"),
+        title=title,
+        reader=used,
+        notes=_notes(data, engine, used, reader),
+    )
+
+
+def page_lines(pages: list[Glyphs]) -> tuple[list[Line], list[Line]]:
+    """The lines of all pages in reading order, and apart from them the lines that surround the text."""
+    turned = [upright(glyphs) for glyphs in pages]
+    words = [words_of(level) for _, level in turned]
+    masks = furniture(words)
+    chosen = [np.flatnonzero(~mask) for mask in masks]
+    own = [gutters_of(page, mine) for page, mine in zip(words, chosen, strict=True)]
+    agreed = agreed_gutters(own)
+    lines: list[Line] = []
+    surroundings: list[Line] = []
+    for (shown, level), page, mask, mine, gutters in zip(turned, words, masks, chosen, own, strict=True):
+        arrangement = arranged(page, mine, gutters, agreed).with_surroundings(mask, level.width)
+        for line in lines_of(shown, page, arrangement):
+            (surroundings if line.region == arrangement.around else lines).append(line)
+    return lines, surroundings
+
+
+def _read(
+    data: bytes, name: str, reader: Literal["auto", "pdfium", "pdfminer"], pages: Collection[int] | None
+) -> tuple[Engine, str]:
+    if reader != "pdfminer":
+        try:
+            engine = pdfium.read(data, pages)
+            if engine.count or reader == "pdfium":
+                return _with_pages(engine, name), "pdfium"
+        except Unopened as error:
+            if error.locked:
+                raise _locked(name) from None
+            if reader == "pdfium" or b" obj" not in data:
+                raise _damaged(name) from None
+    # Most files never need the second engine, and importing it takes a tenth of a second.
+    from recheck.documents import miner
+
+    try:
+        return _with_pages(miner.read(data, pages), name), "pdfminer"
+    except Unopened as error:
+        raise (_locked(name) if error.locked else _damaged(name)) from None
+
+
+def _with_pages(engine: Engine, name: str) -> Engine:
+    if not engine.count:
+        raise _damaged(name)
+    return engine
+
+
+def _locked(name: str) -> UnreadableDocument:
+    return UnreadableDocument(name, "the PDF is encrypted and needs a password", "save a copy without one")
+
+
+def _damaged(name: str) -> UnreadableDocument:
+    return UnreadableDocument(name, "the PDF is damaged or was cut off", "download or export it again")
+
+
+def _asides(lines: list[Line]) -> list[Passage]:
+    found = []
+    for line in lines:
+        text, marks, layout = put_together([line])
+        found.append(Passage(text=text, kind="aside", marks=marks, layout=layout))
+    return found
+
+
+def _notes(data: bytes, engine: Engine, used: str, asked: str) -> tuple[str, ...]:
+    notes = []
+    if used == "pdfminer" and asked == "auto":
+        notes.append("The first PDF reader could not open the file; it was read by pdfminer.six.")
+    if b"%%EOF" not in data[-2048:]:
+        notes.append("The file seems to be cut off at its end; what could be read was read.")
+    if engine.failed:
+        notes.append(f"Damaged and not read: page {_listed(engine.failed)}.")
+    empty = [glyphs.page for glyphs in engine.pages if not len(glyphs) and glyphs.page not in engine.failed]
+    if empty:
+        notes.append(f"Without a text layer, so not read: page {_listed(empty)}.")
+    return tuple(notes)
+
+
+def _listed(numbers: Collection[int]) -> str:
+    return ", ".join(str(number) for number in numbers)

@@ -1,0 +1,253 @@
+"""Neighbouring assignments of a sentence, put together to claims."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+from typing import Literal
+
+from recheck.reading.assignments import Assignment
+from recheck.reading.numerals import Line
+
+Gap = Literal["tight", "loose", "apart"]
+
+_CONNECTING = frozenset(
+    "and with an a the at is was were effect size sizes of corresponding two tailed one sided exact associated or by "
+    "its their value test two-sided uncorrected corrected adjusted bonferroni tukey holm fdr gg greenhouse geisser huynh "
+    "feldt for s ms g kg mg cm mm m min h hz years year points ml % cohen cohens hedges partial yielding giving indicating "
+    "observed both where as in each group per which had has mean overall model se sd i.e ie such that estimated sided "
+    "power respectively however difference age only statistic resulting days hours seconds minutes kcal db μv mv "
+    "participants units percent all large small medium moderate very also approximately about μm μg".split()
+)
+_TURNS = frozenset("whereas but while although however versus vs than compared unlike".split())
+
+
+@dataclass(frozen=True, slots=True)
+class Draft:
+    """Assignments that belong together, before they are judged and named."""
+
+    items: tuple[Assignment, ...]
+    line: Line
+    inferred: bool = False
+
+    @property
+    def first(self) -> int:
+        """Index of the first token."""
+        return self.items[0].first
+
+    @property
+    def after(self) -> int:
+        """Index after the last token."""
+        return max(item.after for item in self.items)
+
+    def get(self, *quantities: str) -> Assignment | None:
+        """The first item with one of these quantities."""
+        return next((item for item in self.items if item.quantity in quantities), None)
+
+    def part(self, *parts: str) -> Assignment | None:
+        """The first item that plays one of these parts."""
+        return next((item for item in self.items if item.part in parts), None)
+
+
+def drafts(items: Sequence[Assignment], line: Line) -> Iterator[Draft]:
+    """Put the assignments of a line together."""
+    current: list[Assignment] = []
+    inferred = False
+    for index, item in enumerate(items):
+        if current:
+            joins = _joins(current, item, items[index + 1 :], line)
+            if joins is None:
+                yield Draft(tuple(current), line, inferred)
+                current, inferred = [], False
+            elif joins == "loose":
+                inferred = True
+        current.append(item)
+    if current:
+        yield Draft(tuple(current), line, inferred)
+
+
+def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
+    """How closely two assignments stand together, and whether a semicolon divides them."""
+    between = line.tokens[last.after : item.first]
+    semicolon = any(t.text == ";" for t in between)
+    words = [t for t in between if t.kind == "word" and t.low not in _CONNECTING]
+    numbers = sum(t.kind == "num" for t in between)
+    if any(t.low in _TURNS for t in between):
+        return "apart", semicolon
+    if not words and numbers == 0 and len(between) <= 12:
+        return "tight", semicolon
+    inside = not any(t.text in "()[]" for t in between)
+    if len(words) <= (4 if inside else 3) and numbers <= 1 and len(between) <= 12:
+        return "loose", semicolon
+    return "apart", semicolon
+
+
+def _joins(
+    current: list[Assignment], item: Assignment, rest: Sequence[Assignment], line: Line
+) -> Literal["tight", "loose"] | None:
+    """Whether an assignment belongs to the current claim, and how surely."""
+    distance, semicolon = gap(line, current[-1], item)
+    if distance == "apart":
+        return None
+    rule = _RULES[item.part]
+    if not rule(Situation(current, item, rest, semicolon, distance, line)):
+        return None
+    return "tight" if distance == "tight" else "loose"
+
+
+@dataclass(frozen=True, slots=True)
+class Situation:
+    """What a rule of joining looks at."""
+
+    current: list[Assignment]
+    item: Assignment
+    rest: Sequence[Assignment]
+    semicolon: bool
+    distance: Gap
+    line: Line
+
+    def has(self, *parts: str) -> bool:
+        """Tell whether the current claim has an item that plays one of these parts."""
+        return any(item.part in parts for item in self.current)
+
+    def holds(self, *quantities: str) -> bool:
+        """Tell whether the current claim holds one of these quantities."""
+        held = {q for item in self.current for q in (item.quantity, *(k for k, _ in item.extra))}
+        return bool(held & set(quantities))
+
+    @property
+    def taken(self) -> bool:
+        """Whether the item's own place in the claim is taken."""
+        return self.holds(self.item.quantity)
+
+    @property
+    def tight(self) -> bool:
+        """Whether nothing but connecting words stands between."""
+        return self.distance == "tight"
+
+    def coming(self, part: str, before: str) -> bool:
+        """Tell whether a `part` follows tightly before the next `before` does."""
+        last = self.item
+        for item in self.rest:
+            distance, semicolon = gap(self.line, last, item)
+            if distance != "tight" or semicolon or _closes(self.line, last, item) or item.part == before:
+                return False
+            if item.part == part:
+                return True
+            last = item
+        return False
+
+
+def _closes(line: Line, last: Assignment, item: Assignment) -> bool:
+    """Whether brackets close after one assignment and others open before the next."""
+    between = [t.text for t in line.tokens[last.after : item.first]]
+    return bool({")", "]"} & set(between)) and bool({"(", "["} & set(between))
+
+
+_GROUP = ("centre",)
+_RESULT = ("statistic", "estimate", "effect")
+
+
+def _statistic(s: Situation) -> bool:
+    if not s.tight or s.taken:
+        return False
+    if s.has("statistic"):
+        names = {item.quantity for item in s.current if item.part == "statistic"}
+        if s.item.quantity == "r":
+            if s.holds("p") and s.coming("p", "statistic"):
+                return False
+            return not s.item.extra and "p" not in {i.quantity for i in s.current[-1:] if s.semicolon}
+        if names <= {"u", "w"} and s.item.quantity == "z":
+            return True
+        if names == {"z"} and s.item.quantity in ("u", "w"):
+            return True
+        if names == {"r"} and not s.holds("df", "p") and s.item.quantity in ("t", "z", "F"):
+            return True
+        return False
+    if s.has(*_GROUP, "spread") and not s.has("estimate"):
+        return False
+    if s.has("estimate", "effect"):
+        return not s.holds("p") and not (s.semicolon and not s.has("estimate")) or (
+            s.holds("p") and not s.coming("p", "statistic") and not s.semicolon
+        )
+    if s.holds("p"):
+        return not s.coming("p", "statistic") and not (s.has("other") and s.semicolon)
+    return True
+
+
+def _centre(s: Situation) -> bool:
+    return s.tight and not s.has("statistic", "estimate", "effect", "p", "centre", "spread", "interval", "other")
+
+
+def _spread(s: Situation) -> bool:
+    if s.taken or s.holds("spread"):
+        return False
+    if s.has(*_GROUP):
+        return s.tight or s.current[-1].part == "centre"
+    if not s.tight:
+        return False
+    if s.item.quantity == "sd":
+        return s.holds("mean_difference") and not s.has("statistic")
+    return s.has("statistic", "estimate", "effect") and not s.semicolon or s.has("estimate")
+
+
+def _estimate(s: Situation) -> bool:
+    if s.taken or not s.tight or s.has(*_GROUP, "spread") and not s.has(*_RESULT):
+        return False
+    if s.has("statistic"):
+        if s.semicolon and s.holds("p"):
+            return False
+        return not (s.holds("p") and s.coming("statistic", "p"))
+    if s.has("estimate", "effect"):
+        return not s.holds("p") and not (s.semicolon and s.has("interval"))
+    if s.holds("p"):
+        return not s.coming("p", "estimate") and not s.semicolon
+    return True
+
+
+def _effect(s: Situation) -> bool:
+    if s.taken or not s.tight or (s.has(*_GROUP) and not s.has(*_RESULT)):
+        return False
+    if s.has("statistic", "estimate", "effect"):
+        return not (s.coming("statistic", "p") and s.holds("p") and s.semicolon)
+    return not s.holds("p") or not (s.semicolon or s.coming("p", "effect"))
+
+
+def _p(s: Situation) -> bool:
+    if s.holds("p"):
+        return False
+    if s.has(*_GROUP):
+        return s.tight and s.has("interval")
+    if s.has("statistic"):
+        return True
+    return s.tight and s.has("estimate", "effect", "interval", "other", "df")
+
+
+def _interval(s: Situation) -> bool:
+    if s.holds("ci_low") or s.holds("ci"):
+        return False
+    if s.item.quantity in ("range", "iqr"):
+        return s.tight and s.has(*_GROUP)
+    return s.tight or s.has(*_RESULT, *_GROUP)
+
+
+def _size(s: Situation) -> bool:
+    if s.item.quantity == "other" or (s.holds("u", "w") and s.tight):
+        return s.tight and s.has("statistic")
+    return s.tight and not s.holds("n", "N") and not (s.semicolon and s.has("p") and not s.has("statistic"))
+
+
+def _df(s: Situation) -> bool:
+    if s.item.quantity == "df12":
+        return s.has("statistic") and not s.holds("df", "df1", "df2")
+    return s.has("statistic") and not s.holds("df", "df1", "df2") or (s.item.quantity == "df2" and s.holds("df1"))
+
+
+def _other(s: Situation) -> bool:
+    return s.tight and s.has("statistic") and not s.taken and not (s.semicolon and s.item.quantity != "mse")
+
+
+_RULES = {
+    "statistic": _statistic, "centre": _centre, "spread": _spread, "estimate": _estimate, "effect": _effect,
+    "p": _p, "interval": _interval, "size": _size, "df": _df, "other": _other,
+}  # fmt: skip

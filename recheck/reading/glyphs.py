@@ -1,0 +1,199 @@
+"""Fonts with a wrong code table: `F(1,44) 5 3.18, p , .05` where `F(1,44) = 3.18, p < .05` is printed.
+
+A document keeps to one such table. It is inferred from all its passages: a sign is taken for a relation
+only where it stands in the place of one again and again, and the true signs do not.
+"""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field, replace
+from decimal import Decimal
+from functools import cache
+
+import regex
+
+from recheck.model import Claim, Confidence, Passage, Printed
+from recheck.reading.alike import MISCODED
+from recheck.reading.views import TIMEOUT
+
+LEAST = 3
+"""How often a sign must stand in the place of a relation before it is taken for one."""
+
+_PLAIN = "5,.$#o4[\\"
+"""Signs that mean themselves as a rule; all others in the place of a relation are strange already."""
+
+
+@dataclass(frozen=True, slots=True)
+class Repairs:
+    """The code table of a document, and the characters of each passage that were replaced by it.
+
+    `places[i]` maps a position in passage i to the sign that the file has there.
+    """
+
+    table: Mapping[str, str] = field(default_factory=dict)
+    places: Mapping[int, Mapping[int, str]] = field(default_factory=dict)
+    minus_is_digit: bool = False
+
+
+@cache
+def _strange() -> regex.Pattern[str]:
+    """A quick look for anything that may be a misread relation."""
+    return regex.compile(
+        r"[\x00-\x08\x0e-\x1f\ue000-\uf8ff\ufffd¼½þ]|[ ][5,.$#][ ]|[pP] ?[o4\\\[]0?\.\d"
+    )
+
+
+@cache
+def _context() -> regex.Pattern[str]:
+    """A symbol, the sign in the place of its relation, and the number after it."""
+    return regex.compile(
+        r"""(?:\b(?P<p>[pP])
+              |(?P<stat>(?:\b[tFr]|[χ²2v]|\b[zZ])[ ]?[(\[][\d., =dfNn]{1,24}[)\]])
+              |\b(?P<symbol>M|SD|SE|SEM|n|N|df|d|r|t|z|β|b|OR|CI|MSE|[ηgh][p²2]{1,2}))
+            (?: (?P<sign>[=<>≤≥≈]) | (?P<tight>[o4\\\[]) | [ ](?P<spaced>[5,.$\#])[ ] | [ ]?(?P<odd>[^\w\s.,;:()\[\]\-−–*%/'"’]|[¼½þ]) )
+            [ ]?(?P<number>[-−–2\x00-\x1f]?(?:\d+\.\d+|\.\d+|\d+))""",
+        regex.VERBOSE,
+    )
+
+
+def repaired(passages: Sequence[Passage]) -> tuple[tuple[Passage, ...], Repairs]:
+    """The passages with misread relations put right, their length unchanged, and what was replaced."""
+    texts = [passage.text for passage in passages]
+    if not any(_strange().search(text, timeout=TIMEOUT) for text in texts):
+        return tuple(passages), Repairs()
+    table = _table(texts)
+    if not table:
+        return tuple(passages), Repairs()
+    places: dict[int, dict[int, str]] = {}
+    found = []
+    for index, passage in enumerate(passages):
+        text, replaced = _rewritten(passage.text, table)
+        if replaced:
+            places[index] = replaced
+            passage = replace(passage, text=text)
+        found.append(passage)
+    return tuple(found), Repairs(table, places, _minus_is_digit(found))
+
+
+_LEVELS = frozenset(Decimal(text) for text in (".05", ".01", ".001", ".005", ".0001", ".10", ".025"))
+
+
+def _table(texts: Sequence[str]) -> dict[str, str]:
+    """The signs that stand for relations in this document."""
+    signs: Counter[str] = Counter()
+    after_statistic: Counter[str] = Counter()
+    of_p: dict[str, list[Decimal]] = {}
+    for text in texts:
+        for match in _context().finditer(text, timeout=TIMEOUT):
+            sign = match["sign"] or match["tight"] or match["spaced"] or match["odd"]
+            signs[sign] += 1
+            after_statistic[sign] += match["stat"] is not None
+            if match["p"] is not None:
+                of_p.setdefault(sign, []).append(_number(match["number"]))
+    table: dict[str, str] = {}
+    equal = _equal(signs, after_statistic)
+    if equal:
+        table[equal] = "="
+    for sign, numbers in of_p.items():
+        if sign not in "=<>≤≥≈$#" and sign not in table:
+            relation = _relation_of_p(sign, numbers, signs, bool(table))
+            if relation:
+                table[sign] = relation
+    if table:
+        table |= {sign: relation for sign, relation in (("$", "≥"), ("#", "≤")) if signs[sign] and sign not in table}
+    return table
+
+
+def _number(text: str) -> Decimal:
+    return Decimal("0" + text.lstrip("-−–2") if text.lstrip("-−–2").startswith(".") else text.strip("-−–") or "0")
+
+
+def _equal(signs: Counter[str], after_statistic: Counter[str]) -> str | None:
+    """The sign that stands for `=`: often, after statistics too, and `=` itself hardly ever."""
+    strange = [(count, sign) for sign, count in signs.items() if sign not in "=<>≤≥≈,.[\\"]
+    if not strange:
+        return None
+    count, sign = max(strange)
+    enough = count >= LEAST and (after_statistic[sign] > 0 or sign not in _PLAIN)
+    return sign if enough and signs["="] * 5 <= count else None
+
+
+def _relation_of_p(sign: str, numbers: list[Decimal], signs: Counter[str], known: bool) -> str | None:
+    """Whether a sign after p stands for `<` or `>`: what follows `<` are levels."""
+    levels = sum(number in _LEVELS for number in numbers)
+    if len(numbers) < (1 if known else LEAST) or any(number > 1 for number in numbers):
+        return None
+    greater = sign in ".[4"
+    true_sign = ">" if greater else "<"
+    if signs[true_sign] * 5 > len(numbers) and signs[true_sign] > 0:
+        return None
+    if greater:
+        return ">"
+    return "<" if levels * 3 >= len(numbers) * 2 else None
+
+
+def _rewritten(text: str, table: Mapping[str, str]) -> tuple[str, dict[int, str]]:
+    """Replace the signs of the table where they stand in the place of a relation."""
+    replaced: dict[int, str] = {}
+    for match in _context().finditer(text, overlapped=True, timeout=TIMEOUT):
+        for group in ("tight", "spaced", "odd"):
+            if match[group] is not None and match[group] in table:
+                replaced[match.start(group)] = match[group]
+    # A sign that is no letter, digit or stop means a relation wherever it stands.
+    for sign in table:
+        if sign not in _PLAIN:
+            replaced |= {at: sign for at, char in enumerate(text) if char == sign}
+    if not replaced:
+        return text, replaced
+    chars = list(text)
+    for at, sign in replaced.items():
+        chars[at] = table[sign]
+    return "".join(chars), replaced
+
+
+@cache
+def _correlations() -> regex.Pattern[str]:
+    return regex.compile(r"\br(?: ?\(\d+\))? = (?P<number>2?\.\d+)")
+
+
+def _minus_is_digit(passages: Sequence[Passage]) -> bool:
+    """Whether a `2` before a number may be a minus: correlations such as `r = 2.45` say so."""
+    return any(
+        match["number"].startswith("2") for p in passages for match in _correlations().finditer(p.text, timeout=TIMEOUT)
+    )
+
+
+def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, repairs: Repairs) -> Claim:
+    """The claim with a note on each sign that was read by another code, and less confidence where it may be a digit."""
+    start, end = span
+    signs = {sign: repairs.table[sign] for at, sign in repairs.places.get(index, {}).items() if start <= at < end}
+    strange = sorted(MISCODED.intersection(passage.text[start:end]))
+    if not signs and not strange:
+        return claim
+    notes = [f"the file has {_shown(sign)} where {relation!r} is printed" for sign, relation in signs.items()]
+    notes += [f"the file has {_shown(sign)} for another sign" for sign in strange]
+    confidence: Confidence = claim.confidence
+    if any(sign in _PLAIN for sign in signs) and confidence == "high":
+        confidence = "medium"
+    values = dict(claim.values)
+    if signs and repairs.minus_is_digit:
+        for name, value in claim.values.items():
+            if value.text.startswith("2") and len(value.text) > 1 and value.decimals > 0:
+                values[name], note = _signed(name, value)
+                notes.append(note)
+                confidence = "low"
+    return replace(claim, values=values, notes=(*claim.notes, *notes), confidence=confidence)
+
+
+def _shown(sign: str) -> str:
+    return repr(sign) if sign.isprintable() else f"U+{ord(sign):04X}"
+
+
+def _signed(name: str, value: Printed) -> tuple[Printed, str]:
+    """A correlation above 1 that starts with the digit for a minus is negative; elsewhere both may be meant."""
+    note = f"the 2 of {value.text} may be a minus"
+    if name == "r" and value.value > 1:
+        return replace(value, value=-(value.value - 2)), note
+    return value, note

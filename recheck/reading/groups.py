@@ -1,0 +1,220 @@
+"""Means with their spread: numbers that only the SD beside them tells to be a mean, and what `±` stands for."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+
+from recheck.model import Printed
+from recheck.reading.assignments import MEAN, SPREADS, Assignment
+from recheck.reading.numerals import Line, Number, number_at
+from recheck.reading.symbols import Symbol
+
+_NOT_UNITS = frozenset("and or whereas while but vs versus than to from with without".split())
+
+
+def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[Assignment]:
+    """Add the means that stand without a symbol before their SD, and pairs such as `5.00 (1.65)`.
+
+    `announced` is the spread that the sentence says stands in brackets, "" where it says none.
+    """
+    found: list[Assignment] = []
+    for item in items:
+        if item.part == "spread" and not item.several and not _has_mean(found, item, line):
+            mean = _mean_before(line, item, found[-1].after if found else 0)
+            if mean:
+                found.append(mean)
+        if item.quantity == "ci" and not item.several and not _has_centre(found, item, line):
+            number = _mean_before(line, item, found[-1].after if found else 0)
+            if number:
+                found.append(replace(number, symbol=ESTIMATE))
+        found.append(item)
+        pair = _in_brackets(line, item, announced)
+        if pair:
+            found.append(pair)
+    if announced:
+        found += _announced_pairs(line, found, announced)
+        found.sort(key=lambda item: item.first)
+    return found
+
+
+ESTIMATE = Symbol("estimate", "estimate")
+
+
+def _has_centre(found: Sequence[Assignment], interval: Assignment, line: Line) -> bool:
+    """Tell whether the assignment before takes the interval."""
+    if not found:
+        return False
+    between = line.tokens[found[-1].after : interval.first]
+    return len(between) <= 6 and not any(t.kind == "num" and len(t.text) > 1 for t in between)
+
+
+def _has_mean(found: Sequence[Assignment], spread: Assignment, line: Line) -> bool:
+    """Tell whether the assignment before takes the spread."""
+    if not found:
+        return False
+    last = found[-1]
+    if last.part in ("centre", "estimate", "effect", "statistic"):
+        return not any(t.kind == "num" for t in line.tokens[last.after : spread.first])
+    if last.part == "size" and len(found) > 1 and found[-2].part == "centre":
+        return True
+    return last.part == "spread" and last.quantity != spread.quantity
+
+
+def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None:
+    """The number that directly precedes `(SD = 1.2)`, with its unit between them."""
+    at, words, opened = spread.first - 1, 0, False
+    while at >= stop:
+        token = line.at(at)
+        if token.kind == "num":
+            return _mean_at(line, at, stop, opened or spread.printed.percent)
+        if token.kind == "word":
+            words += 1
+            hyphened = not token.spaced and line.at(at - 1).text == "-"
+            if token.low in _NOT_UNITS and not hyphened and not (token.low in ("with", "and") and words <= 3):
+                return None
+        elif token.text in ("(", "["):
+            if opened:
+                return None
+            opened = True
+        elif token.text not in (",", "%", "°", "/", ")", "-", "·", "^") and token.kind not in ("sup", "sub"):
+            return None
+        if words > 6:
+            return None
+        at -= 1
+    return None
+
+
+def _mean_at(line: Line, at: int, stop: int, opened: bool) -> Assignment | None:
+    first = at - 1 if line.at(at - 1).text in ("-", "+") and line.at(at - 2).kind in ("word", "rel", "sign") else at
+    before = line.at(first - 1)
+    if first < stop or before.kind == "num" or before.text in ("/", "-"):
+        return None
+    if before.low in ("experiment", "study", "figure", "table", "n", "item", "day", "week", "session", "chapter"):
+        return None
+    number = number_at(line, first)
+    if number is None or (number.decimals == 0 and not opened):
+        return None
+    return Assignment(MEAN, number.printed(line), first, number.after, loose=True)
+
+
+def _in_brackets(line: Line, item: Assignment, announced: str) -> Assignment | None:
+    """`M = 5.00 (1.65)`: a spread without a label, or with the one announced."""
+    if item.quantity != "mean" or item.several:
+        return None
+    at = item.after
+    while line.at(at).kind == "word" and at < item.after + 2 and line.at(at).low not in _NOT_UNITS:
+        at += 1
+    number = _bracketed(line, at)
+    if number is None or (number.decimals == 0 and item.printed.decimals > 0) or number.percent != item.printed.percent:
+        return None
+    kind = _spread_word(item.announced) or announced
+    return Assignment(SPREADS[kind], number.printed(line), at, number.after + 1, loose=True)
+
+
+def _bracketed(line: Line, index: int) -> Number | None:
+    if line.at(index).text not in ("(", "["):
+        return None
+    number = number_at(line, index + 1)
+    if number is None or number.value < 0 or line.at(number.after).text not in (")", "]"):
+        return None
+    return number
+
+
+def _announced_pairs(line: Line, items: Sequence[Assignment], announced: str) -> list[Assignment]:
+    """Every `5.00 (1.65)` of a sentence that says `mean (SD)`."""
+    taken = {k for item in items for k in range(item.first, item.after)}
+    pairs: list[Assignment] = []
+    for at, token in enumerate(line.tokens):
+        if token.kind != "num" or at in taken:
+            continue
+        number = number_at(line, at)
+        if number is None or line.at(at - 1).kind == "rel":
+            continue
+        after = number.after + (line.at(number.after).kind == "word" and line.at(number.after).low not in _NOT_UNITS)
+        spread = _bracketed(line, after)
+        if spread is None or spread.percent or (spread.decimals == 0 and number.decimals > 0):
+            continue
+        first = at - 1 if line.at(at - 1).text == "-" and line.at(at - 1).spaced else at
+        signed = number_at(line, first) or number
+        pairs.append(Assignment(MEAN, signed.printed(line), first, number.after, loose=True))
+        pairs.append(Assignment(SPREADS[announced], spread.printed(line), after, spread.after + 1, loose=True))
+    return pairs
+
+
+_SPREAD_WORDS = (
+    ("se", ("sem", "standard error", "se", "s.e.m", "s.e.")),
+    ("sd", ("standard deviation", "sd", "s.d.")),
+)
+
+
+def _spread_word(text: str) -> str:
+    """`sd` or `se` where the text names one of them, else ""."""
+    for kind, words in _SPREAD_WORDS:
+        for word in words:
+            at = text.find(word)
+            end = at + len(word)
+            if at >= 0 and not text[at - 1 : at].isalpha() and not text[end : end + 1].isalpha():
+                return kind
+    return ""
+
+
+_MEANS = ("mean", "means", "average", "averages", "m")
+_JOINED = ("±", "+/-", "+-", "(±", "(+/-", "(", "[", "and", "(and")
+
+
+def announced_spread(text: str) -> tuple[str, str]:
+    """What a text says stands after `±` and in brackets: `mean ± SD`, `M (SE)`, `means and standard errors`.
+
+    A pair: the spread after `±`, the spread in brackets; each `sd`, `se` or "".
+    """
+    text = text.lower()
+    after_sign, in_brackets = "", ""
+    for mean in _MEANS:
+        at = text.find(mean)
+        while at >= 0:
+            end = at + len(mean)
+            bounded = not text[at - 1 : at].isalpha() and not text[end : end + 1].isalpha()
+            rest = text[end : end + 34].lstrip() if bounded else ""
+            for sign in _JOINED:
+                if rest.startswith(sign):
+                    kind = _spread_word(rest[len(sign) : len(sign) + 22].lstrip()[:18])
+                    starts = rest[len(sign) :].lstrip().startswith(("s", "±"))
+                    if kind and starts and "±" not in sign and "+" not in sign and sign != "and":
+                        in_brackets = in_brackets or kind
+                    elif kind and starts:
+                        after_sign = after_sign or kind
+            at = text.find(mean, end)
+    return after_sign, in_brackets
+
+
+
+_EACH = frozenset("group groups condition conditions arm arms cell cells sample".split())
+
+
+def size_of_each(items: Sequence[Assignment], line: Line) -> tuple[Printed | None, list[Assignment]]:
+    """The n that a sentence gives once for each of its groups, and the assignments without it.
+
+    `n = 20 in each group`, `20 per group`, `24 bakers per condition`.
+    """
+    for item in items:
+        if item.part == "size" and not item.several and _of_each(line, item.after, words=0):
+            return item.printed, [other for other in items if other is not item]
+    for at, token in enumerate(line.tokens):
+        if token.kind == "num" and token.text.isdigit() and _of_each(line, at + 1, words=2):
+            number = number_at(line, at)
+            if number and line.at(at - 1).kind not in ("rel", "num"):
+                return number.printed(line), list(items)
+    return None, list(items)
+
+
+def _of_each(line: Line, index: int, words: int) -> bool:
+    for at in range(index, index + words + 1):
+        low = line.at(at).low
+        if low == "per" or (low == "each" and at == index):
+            return line.at(at + 1).low in _EACH
+        if low == "in" and line.at(at + 1).low in ("each", "both", "every"):
+            return line.at(at + 2).low in _EACH
+        if line.at(at).kind != "word":
+            return False
+    return False

@@ -1,0 +1,115 @@
+"""Linking a test to the two group summaries that it compares."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+
+from recheck.model import Claim
+
+
+@dataclass(frozen=True, slots=True)
+class Placed:
+    """A claim with the passage and sentence it stands in, and its characters in the view.
+
+    `span` counts characters of the passage.
+    """
+
+    claim: Claim
+    passage: int
+    sentence: int
+    start: int
+    end: int
+    text: str
+    span: tuple[int, int] = (0, 0)
+
+
+def linked(placed: Sequence[Placed]) -> list[Claim]:
+    """The claims, each test of two groups with the ids of its summaries where these are sure."""
+    summaries = [item for item in placed if _summary(item.claim)]
+    tests = [item for item in placed if _two_groups(item.claim)]
+    found: dict[str, Claim] = {}
+    for test in tests:
+        pair, basis, near = _pair(test, summaries, tests)
+        if pair:
+            confidence = test.claim.confidence if near or test.claim.confidence == "low" else "medium"
+            found[test.claim.id] = replace(
+                test.claim, groups=tuple(item.claim.id for item in pair), link=basis, confidence=confidence
+            )
+    return [found.get(item.claim.id, item.claim) for item in placed]
+
+
+def _summary(claim: Claim) -> bool:
+    return claim.kind == "group-summary" and "mean" in claim.values and bool({"sd", "se"} & set(claim.values))
+
+
+def _two_groups(claim: Claim) -> bool:
+    if claim.kind == "t-test":
+        return not claim.says("one-sample")
+    df1 = claim.values.get("df1")
+    return claim.kind == "F-test" and df1 is not None and df1.value == 1
+
+
+def _pair(
+    test: Placed, summaries: Sequence[Placed], tests: Sequence[Placed]
+) -> tuple[tuple[Placed, ...], str, bool]:
+    here = [s for s in summaries if (s.passage, s.sentence) == (test.passage, test.sentence)]
+    rivals = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence)]
+    own = _own(test, here, rivals)
+    if len(own) == 2 and _alike(own):
+        return tuple(own), "the only two group summaries in the same sentence", True
+    if here:
+        return (), "", True
+    for step, words in ((-1, "the sentence before"), (1, "the sentence after")):
+        near = [s for s in summaries if (s.passage, s.sentence) == (test.passage, test.sentence + step)]
+        if not near:
+            continue
+        if len(near) != 2 or len(rivals) != 1 or not _alike(near):
+            return (), "", True
+        others = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence + step)]
+        further = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence + 2 * step)]
+        if others or further or not _same_outcome(test, near):
+            return (), "", True
+        return tuple(near), f"the only two group summaries in {words}", False
+    return (), "", True
+
+
+def _own(test: Placed, here: list[Placed], rivals: list[Placed]) -> list[Placed]:
+    """The summaries between this test and its neighbours, where a sentence holds several tests."""
+    if len(rivals) == 1:
+        return here
+    starts = sorted(t.start for t in rivals)
+    before = [s for s in starts if s < test.start]
+    left = before[-1] if before else -1
+    if len(here) != 2 * len(rivals):
+        return []
+    following = here and rivals[0].start < here[0].start
+    if following:
+        later = [s for s in starts if s > test.start]
+        right = later[0] if later else 1 << 60
+        return [s for s in here if test.start < s.start < right]
+    return [s for s in here if left < s.start < test.start]
+
+
+def _alike(pair: Sequence[Placed]) -> bool:
+    """Two summaries of one outcome have the same spread, unit and similar precision."""
+    one, two = (item.claim.values for item in pair)
+    same = ("sd" in one) == ("sd" in two) and one["mean"].percent == two["mean"].percent
+    return same and not _about_age(pair[0].text) and not _about_age(pair[1].text)
+
+
+def _about_age(text: str) -> bool:
+    return "age" in text.lower().split() or "mage" in text.lower()
+
+
+def _same_outcome(test: Placed, near: Sequence[Placed]) -> bool:
+    """Whether the sentences share a word that can name the outcome, or the test's names none of its own."""
+    mine = {w for w in test.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
+    other = {w for s in near for w in s.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
+    return bool(mine & other) or len(mine) <= 4
+
+
+_COMMON = frozenset(
+    "significant significantly difference between there which their these those groups group conditions condition "
+    "higher lower compared results revealed showed effect where other participants".split()
+)

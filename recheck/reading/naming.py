@@ -1,0 +1,146 @@
+"""From assignments that belong together to the kind, the values and the notes of a claim."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+from recheck.model import ClaimKind, Confidence, Printed
+from recheck.reading.assignments import Assignment
+from recheck.reading.claims import Draft
+
+
+@dataclass(frozen=True, slots=True)
+class Named:
+    """A claim without its place: what it is and what it holds."""
+
+    kind: ClaimKind
+    values: dict[str, Printed]
+    stated: tuple[str, ...] = ()
+    interval_of: str | None = None
+    confidence: Confidence = "high"
+    notes: tuple[str, ...] = field(default=())
+
+
+_KINDS: tuple[tuple[str, ClaimKind], ...] = (
+    ("t", "t-test"), ("F", "F-test"), ("chi2", "chi2-test"), ("u", "rank-test"), ("z", "z-test"), ("w", "rank-test"),
+    ("r", "correlation"),
+)  # fmt: skip
+_COEFFICIENTS = ("b", "beta", "or", "rr", "hr", "rd", "intercept", "estimate")
+
+
+def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | None:
+    """Name a draft; `label` is what an unlabelled spread is said to be, "" where nobody says it.
+
+    None where the numbers say nothing that could be checked or looked up: a lone n, df or coefficient.
+    """
+    values: dict[str, Printed] = {}
+    notes: list[str] = []
+    stated = [word for item in draft.items for word in item.stated]
+    for item in draft.items:
+        if item.several or (item.quantity == "other" and ("other" in values or item.part == "size")):
+            continue
+        for name, value in _values(item, draft, label):
+            values.setdefault(name, value)
+        notes += [note for note in item.notes if note not in notes]
+    kind = _kind(draft, values, sentence_says)
+    if kind is None:
+        return None
+    if draft.get("spread") and not label:
+        stated.append("spread-unlabelled")
+    if kind != "correlation" and "r" in values:
+        stated.append("effect-size-r")
+    foreign = values.pop("other", None)
+    if foreign is not None and kind == "estimate" and "ci_low" in values:
+        values["estimate"] = foreign
+    confidence: Confidence = "high"
+    if draft.inferred:
+        notes.append("words stand between the numbers that were put together here")
+        stated.append("inferred")
+        confidence = "medium"
+    doubts = {item.doubt for item in draft.items} | ({"low"} if _roughly(values) else set())
+    confidence = "low" if "low" in doubts else "medium" if "medium" in doubts else confidence
+    return Named(kind, values, tuple(dict.fromkeys(stated)), _interval_of(draft), confidence, tuple(notes))
+
+
+def _roughly(values: dict[str, Printed]) -> bool:
+    return any(value.relation == "≈" for value in values.values())
+
+
+def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Printed]]:
+    """The quantities that one assignment gives to its claim."""
+    if item.part == "interval":
+        ends = {"ci": ("ci_low", "ci_high"), "range": ("min", "max")}.get(item.quantity)
+        if ends is None:
+            return []
+        given = dict(item.extra)
+        level = [("ci_level", given["ci_level"])] if "ci_level" in given and item.quantity == "ci" else []
+        return [(ends[0], given["ci_low"]), (ends[1], given["ci_high"]), *level]
+    name = item.quantity
+    if name == "spread":
+        name = label or "sd"
+    if name == "se" and draft.get("mean_difference") and not draft.get("b", "beta", "mean"):
+        name = "se_difference"
+    if name == "df12":
+        return list(item.extra)
+    if name in ("alpha", "power"):
+        return []
+    return [(name, item.printed), *item.extra]
+
+
+def _kind(draft: Draft, values: dict[str, Printed], says: tuple[str, ...]) -> ClaimKind | None:
+    for quantity, kind in _KINDS:
+        if quantity in values:
+            return _test_kind(quantity, kind, draft, values, says)
+    if "mean" in values or "median" in values:
+        if "ci_low" in values and "sd" not in values and "se" not in values and "p" in values:
+            return "estimate"
+        single = draft.part("centre")
+        alone = not set(values) & {"sd", "se", "n", "N", "ci_low", "min"}
+        vague = single is not None and (single.loose or single.printed.relation != "=")
+        return None if alone and vague else "group-summary"
+    if "mean_difference" in values:
+        return "comparison"
+    if {"sd", "se"} & set(values) and not draft.part("estimate", "effect", "p"):
+        return None
+    if draft.part("effect"):
+        return "estimate"
+    if draft.part("estimate"):
+        lone_letter = set(values) - {"n", "N", "df"} <= {"b", "beta", "intercept"}
+        return None if lone_letter else "estimate"
+    if "p" in values or "ci_low" in values:
+        return "estimate"
+    return None
+
+
+def _test_kind(
+    quantity: str, kind: ClaimKind, draft: Draft, values: dict[str, Printed], says: tuple[str, ...]
+) -> ClaimKind | None:
+    if quantity == "w":
+        cramers = "w" in values and draft.get("w") is not None and abs(values["w"].number) <= 1
+        return None if cramers or "p" not in values else "rank-test"
+    if quantity == "z":
+        if "p" not in values and not set(values) & {"b", "beta", "se", "u", "w", "or", "ci_low", "n", "N"}:
+            return None
+        return "rank-test" if {"u", "w"} & set(values) or "rank-test" in says else "z-test"
+    if quantity == "r" and {"u", "w"} & set(values):
+        return "rank-test"
+    if quantity == "r" and "rank-test" in says and not {"df", "n", "N"} & set(values):
+        return "estimate"
+    return kind
+
+
+def _interval_of(draft: Draft) -> str | None:
+    """The quantity directly before the interval, or the one that the interval is said to belong to."""
+    previous: Assignment | None = None
+    for item in draft.items:
+        if item.quantity == "ci":
+            if item.label == "difference":
+                return "mean_difference"
+            if previous is None or previous.part in ("p", "size", "df", "other", "spread"):
+                spread_first = previous is not None and previous.part == "spread" and draft.part("estimate", "centre")
+                return spread_first.quantity if spread_first else None
+            if previous.part == "statistic" and previous.quantity != "r":
+                return None
+            return previous.quantity
+        previous = item
+    return None

@@ -1,0 +1,174 @@
+"""From a document to everything that was read from it."""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Iterator, Sequence
+from dataclasses import replace
+from hashlib import blake2b
+
+from recheck.model import Claim, Document, Passage, Printed, Reading
+from recheck.reading.assignments import Assignment, assignments, ns_at
+from recheck.reading.claims import Draft, drafts
+from recheck.reading.context import Setting, setting_of
+from recheck.reading.glyphs import doubted, repaired
+from recheck.reading.groups import announced_spread, size_of_each, with_means
+from recheck.reading.linking import Placed, linked
+from recheck.reading.naming import Named, named
+from recheck.reading.numerals import Line
+from recheck.reading.tokens import DIGITS, sentences, tokens
+from recheck.reading.traps import Sentence, trapped
+from recheck.reading.views import View, view_of
+from recheck.reading.wording import stated
+
+READ = ("body", "heading", "caption", "note")
+
+
+def read(document: Document) -> Reading:
+    """Read the claims of a document, its context, and what was left unread.
+
+    Raises TimeoutError where a passage takes longer than its patterns may.
+    """
+    passages, repairs = repaired([passage for passage in document.passages if passage.kind in READ])
+    views = [view_of(passage) for passage in passages]
+    setting = setting_of(views)
+    left: Counter[str] = Counter()
+    placed: list[Placed] = []
+    for number, view in enumerate(views):
+        placed += _passage(view, number, setting, left)
+    placed = [replace(item, claim=doubted(item.claim, item.span, passages[item.passage], item.passage, repairs)) for item in placed]
+    placed = _unique(placed)
+    claims = tuple(linked(placed))
+    return Reading(claims, setting.context, _notes(document, left))
+
+
+def _notes(document: Document, left: Counter[str]) -> tuple[str, ...]:
+    skipped = Counter(p.kind for p in document.passages if p.kind not in READ and not DIGITS.isdisjoint(p.text))
+    notes = [f"{count} passages of kind {kind!r} were not read for claims" for kind, count in sorted(skipped.items())]
+    notes += [f"{count} places were left out: {reason}" for reason, count in sorted(left.items())]
+    return tuple(notes)
+
+
+def _passage(view: View, number: int, setting: Setting, left: Counter[str]) -> Iterator[Placed]:
+    for order, (start, end) in enumerate(sentences(view)):
+        text = view.text[start:end]
+        if DIGITS.isdisjoint(text) or (_SIGNS.isdisjoint(text) and not _words_of_results(text)):
+            continue
+        line = Line(view, tokens(view, start, end), setting.decimal_comma)
+        sentence = Sentence(text, text.lower(), line)
+        for draft, name in _sentence(sentence, setting, left):
+            first, last = _extent(draft, name)
+            claim = _claim(view, first, last, name, setting)
+            yield Placed(claim, number, order, first, last, text, view.span(first, last))
+
+
+_SIGNS = frozenset("=<>≤≥≈±")
+_WORDS = ("mean", "average", "deviation", "interval", "ratio", "value", "correlation", "statistic", "difference", "test", "degrees",
+          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d")  # fmt: skip
+
+
+def _words_of_results(text: str) -> bool:
+    """Whether a sentence without a relation sign may hold a result in words: `a mean of 3.9`, `OR 1.5`."""
+    if any(word in text for word in ("OR ", "HR ", "RR ", "CI", "OR, ", "HR, ", "RR, ")):
+        return True
+    low = text.lower()
+    return any(word in low for word in _WORDS)
+
+
+def _sentence(
+    sentence: Sentence, setting: Setting, left: Counter[str]
+) -> Iterator[tuple[Draft, Named]]:
+    line = sentence.line
+    sign, brackets = announced_spread(sentence.low) if "±" in sentence.text or "(" in sentence.text else ("", "")
+    items = with_means(_with_ns(assignments(line), line), line, brackets)
+    if not items:
+        return
+    says = stated(sentence.text)
+    each, items = size_of_each(items, line)
+    for draft in drafts(items, line):
+        label = sign or setting.plus_minus if any(t.text == "±" for t in line.tokens[draft.first : draft.after]) else (
+            brackets or setting.in_brackets
+        )
+        name = named(draft, label, says)
+        if name is None:
+            continue
+        reason = trapped(draft, sentence)
+        if reason is None and setting.credible and draft.get("ci") and not draft.part("statistic", "p"):
+            reason = "an interval that is no confidence interval"
+        if reason:
+            left[reason] += 1
+            continue
+        if each and name.kind == "group-summary" and not {"n", "N"} & set(name.values):
+            note = "the size of each group is printed once for all groups"
+            name = replace(name, values={**name.values, "n": each}, notes=(*name.notes, note))
+        yield draft, replace(name, stated=_said(name, says))
+
+
+def _extent(draft: Draft, name: Named) -> tuple[int, int]:
+    """First and last character of the numbers that the claim holds."""
+    held = [i for i in draft.items if i.quantity != "other" or "estimate" in name.values] or list(draft.items)
+    line = draft.line
+    return line.at(held[0].first).start, line.at(max(i.after for i in held) - 1).end
+
+
+def _said(name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
+    """What the claim and its sentence say; adjusted post hoc comparisons are not said of an omnibus test."""
+    df1 = name.values.get("df1")
+    omnibus = name.kind == "F-test" and df1 is not None and df1.value != 1
+    said = dict.fromkeys((*name.stated, *says))
+    return tuple(word for word in said if not (omnibus and word == "adjusted-p-post-hoc"))
+
+
+def _with_ns(items: list[Assignment], line: Line) -> list[Assignment]:
+    """Put in `ns` where it stands in the place of p: `F(1, 38) = 0.4, ns`."""
+    found: list[Assignment] = []
+    for index, item in enumerate(items):
+        found.append(item)
+        following = items[index + 1] if index + 1 < len(items) else None
+        if item.part == "statistic" and line.at(item.after).text in (",", "(", ";"):
+            ns = ns_at(line, item.after + 1, item.after + 1)
+            if ns and not (following and following.part == "p" and following.first <= ns.after + 2):
+                found.append(ns)
+    return found
+
+
+def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> Claim:
+    first, last = view.span(start, end)
+    text = view.passage.text
+    if text[last : last + 1] in (")", "]") and text.count("(", first, last) + text.count("[", first, last) > text.count(
+        ")", first, last
+    ) + text.count("]", first, last):
+        last += 1
+    place = view.passage.place(first, last)
+    values = {quantity: _with_alpha(value, setting) for quantity, value in name.values.items()}
+    return Claim(
+        _id(name, place.quote, view.passage), name.kind, place, values, name.stated,
+        tuple(word for word in setting.context.background if word not in name.stated),
+        name.interval_of, name.confidence, notes=name.notes,
+    )  # fmt: skip
+
+
+def _with_alpha(value: Printed, setting: Setting) -> Printed:
+    """`ns` is larger than the document's own level."""
+    alpha = setting.context.alpha
+    if value.text[:1].isalpha() and value.relation == ">" and alpha is not None:
+        share = alpha.value / 100 if alpha.percent else alpha.value
+        return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
+    return value
+
+
+def _id(name: Named, quote: str, passage: Passage) -> str:
+    told = (name.kind, quote, passage.section, passage.table, passage.row, passage.column, *sorted(name.values))
+    return blake2b(repr(told).encode(), digest_size=5).hexdigest()
+
+
+def _unique(placed: Sequence[Placed]) -> list[Placed]:
+    """Number the ids of claims that are printed alike in one section."""
+    seen: Counter[str] = Counter()
+    found = []
+    for item in placed:
+        seen[item.claim.id] += 1
+        times = seen[item.claim.id]
+        claim = item.claim if times == 1 else replace(item.claim, id=f"{item.claim.id}-{times}")
+        found.append(replace(item, claim=claim))
+    return found

@@ -1,0 +1,200 @@
+"""The symbols that manuscripts print, with all their spellings, and the quantities they stand for."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cache, lru_cache
+from typing import Literal
+
+Part = Literal["statistic", "centre", "spread", "estimate", "effect", "p", "size", "df", "interval", "other"]
+"""What a quantity does in a claim: `centre` is a mean or median, `size` an n, `estimate` a coefficient,
+a difference or a ratio, `effect` an effect size, `other` what stands beside a result and is no result."""
+
+
+@dataclass(frozen=True, slots=True)
+class Symbol:
+    """What a spelling stands for.
+
+    `several` marks plurals (`ps`, `Fs`), that tell of several results at once; `bare` allows a number
+    without a relation (`SD 1.2`, `OR 1.5`); `worded` allows words before the number (`mean of 3.9`).
+    `stated` holds what the spelling itself says of the claim.
+    """
+
+    quantity: str
+    part: Part
+    stated: tuple[str, ...] = ()
+    several: bool = False
+    bare: bool = False
+    worded: bool = False
+
+
+def _family(part: Part, *, stated: tuple[str, ...] = (), bare: bool = False, worded: bool = False,
+            several: bool = False, **spellings: str) -> list[tuple[str, Symbol]]:  # fmt: skip
+    """One row a spelling; spellings are divided by `|`."""
+    return [
+        (text, Symbol(quantity.rstrip("_"), part, stated, several, bare, worded))
+        for quantity, texts in spellings.items()
+        for text in texts.split("|")
+    ]
+
+
+# A spelling of one or two letters, or with a capital inside, is taken with its case; the rest in any case.
+_ROWS: list[tuple[str, Symbol]] = [
+    *_family("statistic", t="t|T|t value|t-value|t statistic|t-statistic|t test|t-test|t ratio|t score"),
+    *_family(
+        "statistic",
+        F="F|f|F value|F-value|F statistic|F-statistic|F test|F-test|F ratio|F-ratio|ANOVA F",
+        chi2="chi square|chi-square|chi squared|chi-squared|chisq|chi sq|chisquare|khi2|chi2|chi-2|X|x|v|c|w|χ|chi|Chi"
+        "|Wald χ|Pearson χ",
+        z="z|Z|z value|z-value|z statistic|z-statistic|z score|z-score|Wald z|Wald Z|z test|z-test|z ratio",
+        r="r|R|Pearson r|Pearson's r|Pearson correlation|Pearson's correlation|Pearson correlation coefficient"
+        "|Pearson's correlation coefficient|correlation coefficient|correlation",
+        u="U|Mann-Whitney U|Mann Whitney U|Mann–Whitney U",
+        w="W|Wilcoxon W|Wilcoxon's W|V",
+    ),
+    *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal Wallis H|Kruskal-Wallis χ"),
+    *_family("statistic", stated=("likelihood-ratio",), chi2="G|G2|G²|LR χ|likelihood ratio χ"),
+    *_family("statistic", stated=("model-fit",), chi2="Δχ"),
+    *_family(
+        "statistic",
+        stated=("spearman",),
+        r="rs|rS|ρ|rho|Spearman r|Spearman's r|Spearman rho|Spearman's rho|Spearman ρ|Spearman's ρ|r rho"
+        "|Spearman correlation|Spearman's correlation|Spearman rank correlation|Spearman's rank correlation"
+        "|Spearman correlation coefficient|Spearman's correlation coefficient|Spearman's rs|Spearman rs"
+        "|Spearman's rank correlation coefficient|rank correlation coefficient",
+    ),
+    *_family("statistic", several=True, t="ts|t values|t-values", F="Fs|F values|F-values", chi2="χs|χ²s",
+             z="zs|Zs|z values|z scores|z-scores", r="correlations|correlation coefficients|Rs"),
+    *_family("p", p="p|P|p value|p-value|P value|P-value|pvalue|p val|sig|Sig|probability value", bare=True),
+    *_family(
+        "p",
+        stated=("adjusted-p",),
+        p="padj|pbonf|pBonf|pBonferroni|ptukey|pTukey|pholm|pHolm|pfdr|pFDR|pcorr|pcorrected|pcor|adjusted p|corrected p"
+        "|adjusted p value|adjusted p-value|corrected p value|corrected p-value|Bonferroni-corrected p|Bonferroni p"
+        "|Tukey p|Holm p|FDR p|pFWE|pFWER|pHB",
+    ),
+    *_family("p", several=True, p="ps|Ps|p values|p-values|P values|P-values|pvalues"),
+    *_family("centre", mean="M|x̄|X̄|x̅|X̅|ȳ|Ȳ|mean|average|mean value|mean score|mean age|M age", bare=True, worded=True),
+    *_family("centre", median="Mdn|Md|median|Median", bare=True, worded=True),
+    *_family("centre", several=True, mean="Ms|means|averages|mean values|mean scores", median="medians|Mdns"),
+    *_family(
+        "spread",
+        bare=True,
+        worded=True,
+        sd="SD|Sd|sd|StD|St Dev|StDev|std|standard deviation|std dev|stdev|σ",
+        se="SE|SEM|se|sem|SEs|Se|StdErr|standard error|standard error of the mean|standard error of mean|std error|std err",
+    ),
+    *_family("spread", several=True, sd="SDs|standard deviations|sds", se="SEMs|standard errors"),
+    *_family("spread", se_difference="SED|SEdiff|SE diff|standard error of the difference"),
+    *_family("size", n="n", N="N"),
+    *_family("size", several=True, n="ns", N="Ns"),
+    *_family("df", df="df|DF|d.f.|degrees of freedom|degree of freedom|dof", df1="df1|dfn", df2="df2|dfd"),
+    *_family("df", several=True, df="dfs"),
+    *_family(
+        "estimate",
+        bare=True,
+        or_="OR|aOR|AOR|odds ratio|adjusted odds ratio|ORadj|crude OR|OR adj",
+        rr="RR|aRR|ARR|risk ratio|relative risk|rate ratio|IRR|PR|prevalence ratio|incidence rate ratio|adjusted RR",
+        hr="HR|aHR|AHR|hazard ratio|hazards ratio|adjusted hazard ratio",
+        rd="risk difference",
+        mean_difference="MD|mean difference|difference in means|mean diff|Mdiff|MDiff|MD diff|difference of means"
+        "|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
+        "|difference in mean|mean change difference|ΔM",
+    ),
+    *_family("estimate", b="b|B|coefficient|coef|slope", estimate="Estimate|estimate|est|Est", beta="β|beta|Beta|bs", intercept="intercept"),
+    *_family("estimate", several=True, b="Bs", beta="βs|betas", or_="ORs|odds ratios", hr="HRs|hazard ratios", rr="RRs"),
+    *_family(
+        "effect",
+        d="d|Cohen d|Cohen's d|Cohens d|ds|d s|effect size d|Cohen's ds",
+        d_z="dz|Cohen's dz|dZ|d z",
+        d_av="dav|Cohen's dav|d av",
+        d_rm="drm|Cohen's drm|d rm",
+        g="g|Hedges g|Hedges' g|Hedge's g|Hedges's g|gs|ghedges",
+        eta2="h|eta squared|eta-squared|η2|η²|eta2|eta²|η|eta",
+        partial_eta2="partial eta squared|partial eta-squared|ηp|η2p|η²p|ηp2|ηp²|pη|pη2|pη²|partial η|eta p|eta2p|np2|pes"
+        "|partial eta|ηP|ηpartial|gp|hp|ɳp|ŋp|ῃp",
+        generalized_eta2="generalized eta squared|generalised eta squared|generalized eta-squared|generalised eta-squared"
+        "|ηG|ηg|ges|generalized η|generalised η|eta G|gG|hG",
+        omega2="omega squared|omega-squared|ω|ωp|partial ω|partial omega squared|omega2",
+        epsilon2="epsilon squared|epsilon-squared|ε²|ε2",
+        f2="f2|f²|Cohen's f2|Cohen's f²",
+        f="Cohen's f",
+        r_pb="rpb|point-biserial r|point biserial r",
+        phi="φ|phi|phi coefficient",
+        cramers_v="Cramer's V|Cramér's V|Cramers V|Cramer V|Cramér V|Cramer's φ|Cramér's φ|φc|φC",
+        r2="R2|R²|r2|r²|R-squared|R squared|R-square|R square|r-squared|r squared|Nagelkerke R|Nagelkerke's R"
+        "|pseudo R|Rsq|RSquared",
+        adjusted_r2="R2adj|R²adj|adjusted R2|adjusted R²|adjusted R-squared|adj R2|adj R²|Radj|adjusted R|adj R|R̄2",
+        delta="Glass's Δ|Glass Δ|Glass' Δ|Glass's delta|Glass delta",
+    ),
+    *_family("effect", several=True, partial_eta2="ηps|ηs", d="Cohen's ds'"),
+    *_family("other", mse="MSE|MSe|MS|mean square error|mean squared error|mean square"),
+    *_family("other", several=True, mse="MSEs"),
+    *_family("other", alpha="α|alpha|significance level", power="power|1-β|1 - β"),
+    *_family(
+        "other",
+        other="ΔR|BF|BF10|BF01|AIC|BIC|AUC|ICC|κ|kappa|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|τ|tau|Λ|ε|epsilon|Q|I2|I²|I"
+        "|rtt|KR-20|intraclass correlation|intraclass correlation coefficient|intra-class correlation coefficient|concordance correlation|concordance correlation coefficient|canonical correlation|multiple correlation|Matthews correlation coefficient|intra-class correlation|cophenetic correlation|intraclass r|test-retest r|ω total|pMCMC|logBF|RT|ER|H2|h2|C|D|S|A|E|K|L|J|k|m|y|q|ELPD|LOOIC|Q1|Q3|PPV|NPV|sensitivity|specificity",
+    ),
+    *_family("interval", ci="CI|CIs|IC|KI|C.I.|confidence interval|confidence limits|confidence intervals|CI's|Conf Int|conf int"),
+    *_family("interval", stated=("bayesian",), ci="CrI|CrIs|HDI|HDIs|HPD|HPDI|HPDs|credible interval|credible intervals|PI"
+             "|highest density interval|highest-density interval|credibility interval|posterior interval|ETI|CRI|PPI|UI"
+             "|prediction interval|limits of agreement|LoA|tolerance interval|reference range|CrL"),
+    *_family("interval", range="range|Range|age range|ranging|range of"),
+    *_family("interval", iqr="IQR|interquartile range|inter-quartile range|quartiles|interquartile interval"),
+]  # fmt: skip
+
+GLUED = ("Mean", "SEM", "SD", "SE", "M")
+"""Symbols that stand in front of a word without a space where the word was a subscript: `Mage`, `SDcontrol`."""
+
+_NO_SUBSCRIPTS = frozenset(
+    "en an ale ales odel odels ass ax ay ost ore inimum aximum ost onth onths onday ethod ethods easure easures "
+    "ixed edian iddle ode oderate other others arch id il ild eta ulti ultiple aterial aterials ajor inor any "
+    "icro acro emory orning ind is et ix ole iss aster ajority agnitude ean eans dn d s se ix ap atch ae ade ake "
+    "at ark".split()
+)
+
+
+@cache
+def _lexicon() -> tuple[dict[tuple[str, ...], Symbol], dict[str, int]]:
+    """Spellings as tuples of words, and for each first word the length of its longest spelling."""
+    exact: dict[tuple[str, ...], Symbol] = {}
+    longest: dict[str, int] = {}
+    for text, symbol in _ROWS:
+        words = tuple(text.replace("-", " ").replace("–", " ").split())
+        key = tuple(key_of(word) for word in words)
+        exact[key] = symbol
+        longest[key[0]] = max(longest.get(key[0], 0), len(key))
+    return exact, longest
+
+
+@lru_cache(maxsize=8192)
+def key_of(word: str) -> str:
+    """The form under which a word is looked up: short ones with their case, long ones without."""
+    word = word.replace(".", "")
+    if word.endswith("'s") or word.endswith("'"):
+        word = word.rstrip("s").rstrip("'")
+    return word if len(word) <= 3 or word[1:] != word[1:].lower() else word.lower()
+
+
+def longest_spelling(word: str) -> int:
+    """How many words the longest spelling has that starts with this one; 0 if none does."""
+    return _lexicon()[1].get(key_of(word), 0)
+
+
+def find(words: tuple[str, ...]) -> Symbol | None:
+    """The symbol with exactly this spelling."""
+    return _lexicon()[0].get(tuple(key_of(word) for word in words))
+
+
+def glued(word: str) -> tuple[Symbol, str] | None:
+    """A symbol with its subscript printed as one word: `Mage`, `SDage`, `SEM_pre`."""
+    if word[0] not in "MS":
+        return None
+    for head in GLUED:
+        tail = word[len(head) :]
+        if word.startswith(head) and tail and tail.isalpha() and (head != "M" or tail.lower() not in _NO_SUBSCRIPTS):
+            symbol = find((head,))
+            if symbol:
+                return symbol, tail
+    return None

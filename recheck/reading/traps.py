@@ -1,0 +1,286 @@
+"""What looks like a result and is none: criteria, quantiles, plans, legends, examples, other people's results."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from functools import cache
+
+import regex
+
+from recheck.reading.assignments import Assignment
+from recheck.reading.claims import Draft
+from recheck.reading.numerals import Line
+from recheck.reading.views import TIMEOUT
+
+
+@dataclass(frozen=True, slots=True)
+class Sentence:
+    """A sentence as the traps look at it: its text, in lower case too, and its tokens."""
+
+    text: str
+    low: str
+    line: Line
+
+
+def trapped(draft: Draft, sentence: Sentence) -> str | None:
+    """Why the numbers are no result of this manuscript, or None where they are one."""
+    for reason, trap in _TRAPS.items():
+        if trap(draft, sentence):
+            return reason
+    return None
+
+
+def _any(text: str, words: tuple[str, ...]) -> bool:
+    return any(word in text for word in words)
+
+
+def _tested(draft: Draft) -> bool:
+    """Tell whether a statistic stands with its degrees of freedom or its p."""
+    statistic = draft.part("statistic")
+    return statistic is not None and (bool(statistic.extra) or draft.get("df", "p", "n", "N") is not None)
+
+
+def _several(draft: Draft, sentence: Sentence) -> bool:
+    core = draft.part("statistic") or draft.part("centre", "estimate", "effect") or draft.part("p", "interval")
+    if core is None or core.several:
+        return core is not None
+    before = {t.low for t in draft.line.tokens[max(0, draft.first - 3) : draft.first]}
+    return core.printed.relation != "=" and bool(before & {"all", "both", "each", "every", "any", "always"})
+
+
+_CRITICAL = ("critical", "crit", "cutoff", "threshold", "thresholds", "criterion", "quantile", "percentile", "cut-off")
+
+
+def _critical(draft: Draft, sentence: Sentence) -> bool:
+    """`t_crit = 2.13`, `the critical F(1, 40) is 4.08`, `a threshold of r = .30`."""
+    if any(item.label.lower().startswith(("crit", "cut", "thresh", "tab")) for item in draft.items):
+        return True
+    before = [t.low for t in draft.line.tokens[max(0, draft.first - 4) : draft.first]]
+    return bool(set(before) & set(_CRITICAL)) or before[-1:] == ["than"]
+
+
+def _legend(draft: Draft, sentence: Sentence) -> bool:
+    """`* p < .05, ** p < .01`."""
+    if draft.part("statistic", "estimate", "effect"):
+        return False
+    before = draft.line.at(draft.first - 1)
+    closer = draft.line.at(draft.first - 2)
+    if before.text in ("=", ":") and closer.text in ("*", "†", "‡", "§", "#", "a", "b", "c"):
+        return True
+    marks = before.text in ("*", "†", "‡", "§", "¶") or (before.text == "#" and not before.spaced)
+    return marks and draft.get("p") is not None
+
+
+_LEVEL_WORDS = (
+    "considered", "deemed", "regarded", "significance level", "level of significance", "significance was", "threshold",
+    "set at", "set to", "alpha", "α", "cut-off", "cutoff", "criterion", "taken as", "defined as", "was accepted",
+    "were accepted", "taken to", "denote", "indicates signific", "indicate signific", "represent", "level for",
+    "declared", "p-values below", "interpreted as", "treated as", "significance at", "statistical significance",
+    "retained if", "entered if", "removed if", "inclusion", "less than 0.05 was", "was used as", "were used as",
+    "significant level", "fixed at", "established at", "stars", "asterisk", "set a ", "when p", "if p", "where p",
+)  # fmt: skip
+_LEVELS = {"0.05", "0.01", "0.001", "0.10", "0.1", "0.005", "0.0001", "0.050", "0.010", "0.100", "0.025", "0.017", "0.0125",
+           "0.20", "0.2", "0.15", "0.25", "5", "1"}  # fmt: skip
+
+
+def _level(draft: Draft, sentence: Sentence) -> bool:
+    """`p < .05 was considered significant`: a level, not a p."""
+    if draft.part("statistic", "estimate", "effect", "interval"):
+        return False
+    p = draft.get("p")
+    if p and draft.line.at(draft.first - 2).low in ("level", "threshold") and draft.line.at(draft.first - 1).low == "of":
+        return True
+    if p is None or str(abs(p.printed.value)) not in _LEVELS:
+        return False
+    if draft.line.at(draft.first - 1).text == "(" and draft.line.at(draft.first - 2).low == "significance":
+        return True
+    if draft.line.at(draft.first - 1).low == "at" and draft.line.at(draft.first - 2).low in ("significant", "significance"):
+        return True
+    foreign = draft.get("other")
+    if foreign is not None and foreign.printed.relation not in ("=", "≈"):
+        return True
+    if draft.line.at(draft.after).low == "level":
+        return True
+    if draft.line.at(draft.first - 1).low in ("if", "when", "at", "where") and p.printed.relation != "=" and _any(
+        sentence.low, ("signific", "reject")
+    ) and not _any(sentence.low, ("differ", "higher", "lower", "increas", "decreas", "effect", "correlat", "associat")):
+        return True
+    return _any(sentence.low, _LEVEL_WORDS) and _any(sentence.low, ("signific", "alpha", "α", "p-value", "p value", "level"))
+
+
+_PLANS = (
+    "power analys", "a priori", "a-priori", "sample size calc", "sample-size calc", "sample size estim", "g*power",
+    "g power", "gpower", "sample size was", "to detect", "size of interest", "effect of interest", "required sample", "would need", "would be needed",
+    "sample size needed", "planned sample", "detectable", "power calc", "statistical power", "80% power",
+    "90% power", "95% power", "sample size just", "power of", "equivalence bound",
+    "equivalence region", "smallest effect", "power to", "sensitivity power", "we expected",
+    "expected effect", "anticipated", "minimum sample", "we assumed", "assuming a", "assuming d", "assumed a", "assumed effect",
+    "assumed to be", "personal communication",
+)  # fmt: skip
+_EXAMPLES = ("for example, if", "for instance, if", "suppose ", "imagine ", "hypothetical example", "hypothetical data",
+             "hypothetical stud", "hypothetical result", "simulat", "would be reported as",
+             "for illustration", "fictitious", "a random variable", "drawn from a", "sampled from a", "generated from",
+             "generating", "normal distribution with", "prior distribution", "priors ", "gaussian")  # fmt: skip
+
+
+def _planned(draft: Draft, sentence: Sentence) -> bool:
+    """Values of a power analysis or of a simulation; tests with their df are results all the same."""
+    if _tested(draft) and draft.get("p"):
+        return _any(sentence.low, ("suppose ", "imagine ", "hypothetical example", "hypothetical data", "fictitious",
+                                   "would be reported"))
+    if _any(sentence.low, _EXAMPLES):
+        return True
+    return _any(sentence.low, _PLANS) and not draft.part("centre") and not (draft.get("t", "F", "chi2") and _tested(draft))
+
+
+_ASSUMPTIONS = ("shapiro", "kolmogorov", "levene", "mauchly", "bartlett", "box's m", "normality", "normal distribution", "normally distributed", "homogeneity of varian",
+                "equality of varian", "sphericity was", "sphericity assumption", "lilliefors", "anderson-darling",
+                "hosmer", "durbin")  # fmt: skip
+
+
+def _assumption(draft: Draft, sentence: Sentence) -> bool:
+    """A test of an assumption, where only its p or its W is printed."""
+    return not draft.get("t", "F", "chi2", "z", "r") and not draft.part("centre", "estimate") and _any(sentence.low, _ASSUMPTIONS)
+
+
+_RULES_OF_THUMB = ("small", "medium", "large", "strong", "moderate", "weak", "threshold", "criteri", "considered", "rule of thumb",
+                   "interpret", "defined", "benchmark", "guideline", "acceptable", "adequate", "good fit", "exceed",
+                   "cut-off", "cutoff", "collinear", "exclud", "remov")  # fmt: skip
+
+
+def _rule(draft: Draft, sentence: Sentence) -> bool:
+    """`r > 0.7`, `small (d = 0.2), medium (d = 0.5)`: rules of thumb."""
+    core = draft.part("statistic", "effect", "estimate")
+    if core is not None and core.quantity == "r" and (core.label in ("tt", "xx", "yy", "wg") or _with_unit(draft, core)):
+        return True
+    if core is None or draft.part("p", "interval", "df") or core.extra or draft.get("n", "N"):
+        return False
+    if core.printed.relation in ("<", ">", "≤", "≥", "≈"):
+        if core.quantity in ("F", "chi2", "t"):
+            return core.printed.relation in (">", "≥")
+        return _any(sentence.low, _RULES_OF_THUMB)
+    sizes = sum(word in sentence.low for word in ("small", "medium", "large", "moderate"))
+    return core.part == "effect" and sizes >= 2 and _any(sentence.low, ("cohen", "considered", "convention", "benchmark", "interpret", "respectively", "represent", "corresponds", "small (", "medium ("))
+
+
+_UNITS = frozenset("m cm mm km μm nm s ms min h g kg mg ml l hz khz years km/h mph pixels px deg degrees".split())
+
+
+_RATERS = frozenset("interrater rater intercoder coder intraclass reliability retest intrarater".split())
+
+
+def _with_unit(draft: Draft, core: Assignment) -> bool:
+    """`r = 0.033 m` is a radius, a worded `correlation of 14.1` no coefficient, agreement of raters no result."""
+    if draft.line.at(core.first - 1).low in _RATERS or draft.line.at(core.first - 2).low in _RATERS:
+        return True
+    if core.printed.percent or draft.line.at(core.after).low in _UNITS:
+        return True
+    return core.loose and abs(core.printed.value) > 1
+
+
+def _bayesian(draft: Draft, sentence: Sentence) -> bool:
+    """Credible and other intervals that are no confidence intervals."""
+    interval = draft.get("ci")
+    if interval is None:
+        return False
+    return "bayesian" in interval.stated or (not draft.part("statistic", "p") and _any(sentence.low, ("credible", "posterior dist", "posterior mean", "hdi")))
+
+
+def _equation(draft: Draft, sentence: Sentence) -> bool:
+    """`F = 2 × precision × recall`, `t1 = 12.5` (a time, not a test)."""
+    core = draft.part("statistic")
+    last = draft.items[-1]
+    follows = draft.line.at(last.after).text
+    if follows in ("+", "×", "/", "^", "√", "∑") and draft.line.at(last.after + 1).kind in ("word", "num", "sign"):
+        return True
+    if core is not None and core.quantity == "t" and not draft.get("p") and core.extra:
+        return core.extra[0][1].value <= 3 and draft.line.at(core.first + 1).text.isdigit()
+    return False
+
+
+def _condition(draft: Draft, sentence: Sentence) -> bool:
+    """`at 25 ± 1 °C`: a setting with its tolerance, no sample."""
+    mean = draft.get("mean")
+    if mean is None or not mean.loose or draft.get("n", "N"):
+        return False
+    line = draft.line
+    after = "".join(t.text for t in line.tokens[draft.after : draft.after + 3])
+    before = line.at(draft.first - 1).low
+    return after.startswith(("°", "º", "℃", "C,", "rpm", "Hz", "psi", "bar", "pH")) or before in ("ph", "at", "temperature")
+
+
+@cache
+def _cited() -> regex.Pattern[str]:
+    """A citation: `Baker (2012)`, `(Baker et al., 2012)`, `Baker and Loaf [12]`, `Baker et al., in press`."""
+    return regex.compile(
+        r"\p{Lu}[\p{L}'-]{1,24}(?:,? (?:and|&) \p{Lu}[\p{L}'-]{1,24}| et al\.?| and colleagues)?"
+        r"(?:'s)?,? ?(?P<year>[(\[]?(?:19|20)\d\d[a-z]?\b|\[\d{1,3}[\d, -]{0,12}\]"
+        r"|[(]?(?:[Ii]n[ -]press|[Aa]ccepted|[Ss]ubmitted|in prep|personal communication)\b)"
+    )
+
+
+_VERBS = ("found", "reported", "report ", "observed", "showed", "shown", "obtained", "estimated", "demonstrated", "documented",
+          "reveal", "concluded", "noted", "described", "yielded", "indicated", "suggested", "measured", "published")  # fmt: skip
+_OWN = (" we ", " our ", "present study", "current study", "this study", "present experiment", "current experiment", " us ",
+        "in the present", "replicat", "consistent with", "in line with", "similar to", "following ", "using ", "used ",
+        "according to", "in contrast to", "unlike", "as in ", "scale", "questionnaire", "adapted", "developed by")  # fmt: skip
+_EARLIER = ("previous", "prior ", "earlier", "past ", "meta-analy", "meta analy", "literature", "original study", "original effect",
+            "other studies", "other authors", "elsewhere", "systematic review", "et al")  # fmt: skip
+_OTHERS = ("they found", "they reported", "they observed", "they showed", "the authors found", "the authors reported",
+           "these authors", "their results", "their study", "their meta-analysis")  # fmt: skip
+
+
+def _quoted(draft: Draft, sentence: Sentence) -> bool:
+    """Results of other people: a citation with a verb of reporting, or right beside the numbers."""
+    low = f" {sentence.low} "
+    if low.lstrip().startswith(_OTHERS):
+        return True
+    own = _any(low, _OWN)
+    base = draft.line.tokens[0].start - (len(sentence.text) - len(sentence.text.lstrip()))
+    start, end = draft.line.at(draft.first).start, draft.line.at(draft.after - 1).end
+    tested = _tested(draft)
+    found = False
+    for match in _cited().finditer(sentence.text, timeout=TIMEOUT):
+        found = True
+        before = sentence.text[: match.start()].rstrip()
+        narrative = match["year"][0] in "([" and not before.endswith(("(", ";", "e.g.,"))
+        if narrative and not own and _any(low[match.end() : match.end() + 60], _VERBS):
+            return True
+        if (not own or not tested) and _beside(draft.line.view.text, start, end, match.start() + base, match.end() + base):
+            return True
+    if own or (tested and not found):
+        return False
+    return _any(low, _EARLIER) and (found or _any(low, ("meta-analy", "previous", "literature", "earlier"))) and (
+        _any(low, _VERBS) or _any(low, ("meta-analy", "average effect", "overall effect"))
+    )
+
+
+_BEFORE = regex.compile(r"[)\]]?,? ?(?:was|were|is|of|reported|found|observed|estimated|:|,|;)? ?(?:a|an)? ?[(\[]?")
+
+
+def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
+    """Tell whether a citation stands in the brackets of the numbers, or directly before or after them."""
+    if first >= end:
+        between = text[end:first].lstrip(" )]%")
+        opened = between.startswith("(") or between.startswith(";")
+        names_only = not any(char.isdigit() or char in ")=<>" for char in between)
+        return (opened and names_only and len(between) < 120) or between in ("by ", ", ", "in ", "from ", "; ")
+    if last <= start:
+        return bool(_BEFORE.fullmatch(text[last:start]))
+    return False
+
+
+_TRAPS: dict[str, Callable[[Draft, Sentence], bool]] = {
+    "several results told together": _several,
+    "a legend": _legend,
+    "a critical value or threshold": _critical,
+    "a level of significance": _level,
+    "values of a plan or an example": _planned,
+    "a test of an assumption": _assumption,
+    "a rule of thumb": _rule,
+    "an interval that is no confidence interval": _bayesian,
+    "an equation": _equation,
+    "a setting with its tolerance": _condition,
+    "results of another study": _quoted,
+}

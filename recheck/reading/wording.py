@@ -1,0 +1,134 @@
+"""Words that change how a result is read: the test, the design, the correction, the model."""
+
+from __future__ import annotations
+
+# Stems are looked for at the start of a word, in lower case; a stem that ends in a space is a whole word.
+STEMS: dict[str, tuple[str, ...]] = {
+    "two-tailed": ("two-tailed", "two tailed", "two-sided", "two sided", "2-tailed", "2-sided"),
+    "one-tailed": ("one-tailed", "one tailed", "one-sided", "one sided", "1-tailed", "1-sided", "directional test"),
+    "independent": (
+        "independent-sample", "independent sample", "independent t-", "independent t test", "independent-t", "unpaired", "two-sample t",
+        "two sample t", "two independent", "independent-group", "independent group", "independent-measures",
+        "independent student",
+    ),
+    "pooled": ("pooled variance", "equal variances assumed", "assuming equal variance", "pooled-variance"),
+    "welch": (
+        "welch", "unequal variance", "satterthwaite", "equal variances not assumed", "unequal-variance",
+        "equal variance was not assumed", "without assuming equal variance", "not assuming equal variance",
+    ),
+    "paired": (
+        "paired t-", "paired t test", "paired t(", "paired t (", "paired-t", "paired-sample", "paired sample", "paired student", "paired two", "paired test",
+        "paired (", "paired wilcoxon", "paired comparison", "dependent t-", "dependent t test", "dependent-sample", "dependent sample",
+        "matched-pair", "matched pair", "related-sample", "related sample", "related t-", "related t test", "repeated-measures t-",
+        "repeated measures t-", "correlated sample", "within-subject t-", "within-subjects t-", "within-participants t-",
+        "student's paired",
+    ),
+    "one-sample": ("one-sample", "one sample t", "single-sample t", "single sample t"),
+    "between-groups": (
+        "between-subject", "between subject", "between-group", "between-participant", "one-way anova",
+        "one-way analysis of variance", "one-way between", "factorial anova", "two-way anova", "one way anova",
+    ),
+    "repeated": (
+        "repeated-measure", "repeated measure", "within-subject", "within subject", "within-participant",
+        "rm-anova", "rm anova", "rmanova", "mixed anova", "mixed-design", "mixed design", "split-plot",
+        "crossover", "cross-over",
+    ),
+    "corrected-df": ("greenhouse-geisser", "greenhouse and geisser", "greenhouse & geisser", "greenhouse geisser", "huynh",
+                     "sphericity correct", "gg-correct", "correction for nonsphericity"),
+    "equivalence": ("equivalence test", "tost", "two one-sided", "non-inferiority", "noninferiority",
+                    "statistically equivalent", "equivalence bound", "test of equivalence"),
+    "covariate-adjusted": (
+        "ancova", "analysis of covariance", "analyses of covariance", "covariate", "controlling for", "controlled for",
+        "adjusting for", "adjusted for", "adjusted mean", "partialling out", "partialing out", "mancova", "covarying",
+        "covaried",
+    ),
+    "mixed-model": (
+        "mixed model", "mixed-model", "mixed effect", "mixed-effect", "multilevel", "multi-level", "random intercept",
+        "random effect", "random-effect", "hierarchical linear", "lmer", "glmm", "lme4", "gee ", "random slope",
+        "generalized estimating", "generalised estimating", "nlme", "proc mixed", "lmm ", "lmms", "linear mixed",
+    ),
+    "imputed": ("imputed", "imputation"),
+    "weighted": (
+        "weighted least", "weighted regression", "weighted analys", "weighted by", "weighted data", "weighted estimat",
+        "weighted mean", "survey weight", "sampling weight", "inverse probability", "inverse-probability", "weights were",
+        "post-stratif",
+    ),
+    "robust": (
+        "robust standard", "robust se", "robust varian", "robust estimat", "robust regress", "robust chi", "robust maximum",
+        "robust test", "scaled chi", "satorra", "robust t-", "robust anova", "sandwich estimat", "heteroskedastic",
+        "heteroscedasticity-consistent", "clustered standard error", "cluster-robust", "yuen", "trimmed mean",
+    ),
+    "bootstrap": ("bootstrap", "bias-corrected and accelerated", "bca "),
+    "permutation": ("permutation", "permuted", "randomization test", "randomisation test", "monte carlo"),
+    "bayesian": ("bayesian", "credible interval", "posterior distribution", "posterior mean", "posterior median",
+                 "posterior prob", "posterior estimate", "highest density", "highest-density", "hdi ", "bayes factor"),
+    "contrast": (
+        "planned contrast", "contrasts ", "orthogonal contrast", "polynomial contrast", "linear contrast", "simple contrast",
+        "contrast analys", "contrast test", "contrast cod", "contrast show", "contrast reveal", "a contrast ", "the contrast ",
+        "simple effect", "simple main effect", "planned comparison",
+    ),
+    "marginal": ("marginal mean", "least-squares mean", "least squares mean", "ls mean", "lsmean", "emmean",
+                 "estimated mean", "emm ", "emms"),
+    "within-subject-se": ("cousineau", "morey", "loftus", "within-subject standard error", "within-subjects se",
+                          "within-subject error", "normalised within", "normalized within"),
+    "rank-test": ("mann-whitney", "mann whitney", "wilcoxon", "kruskal", "friedman", "signed-rank", "signed rank",
+                  "rank-sum", "rank sum", "nonparametric", "non-parametric"),
+    "spearman": ("spearman", "rank correlation", "rank-order correlation"),
+    "partial": ("partial correlation", "partial r", "semi-partial", "semipartial", "part correlation"),
+    "disattenuated": ("disattenuat", "corrected for attenuation", "corrected for unreliability", "latent variable",
+                      "latent correlation", "latent factor"),
+    "yates": ("yates' ", "yates's", "yates corr", "yates cont", "continuity correct", "continuity-correct"),
+    "likelihood-ratio": ("likelihood ratio", "likelihood-ratio", "log-likelihood", "g-test", "deviance"),
+    "fisher-exact": ("fisher's exact", "fisher exact", "fisher-exact", "fishers exact"),
+    "multi-regression": ("multiple regression", "multiple linear regression", "multivariable", "multivariate regression",
+                         "hierarchical regression", "stepwise regression", "regression model", "logistic regression",
+                         "linear regression", "cox "),
+    "model-fit": ("model fit", "rmsea", "cfi ", "srmr", "tli ", "structural equation", "confirmatory factor",
+                  "measurement invariance", "path model", "fit indices", "nested model"),
+    "effect-size-r": ("effect size r", "r effect size", "rosenthal"),
+    "glass-delta": ("glass's", "glass' ", "glass delta", "glass δ"),
+}  # fmt: skip
+
+_ADJUSTING = (
+    "bonferroni", "holm-", "holm correct", "holm's", "holm method", "holm adj", "holm post", "holm proc", "holm step",
+    "tukey hsd", "tukey's", "tukey test", "tukey adj", "tukey-adj", "tukey corr", "tukey post", "tukey-kramer", "tukey method",
+    "tukey multiple", "tukey's hsd", "sidak", "šidák", "scheff", "benjamini", "hochberg", "false discovery", "fdr",
+    "family-wise", "familywise", "corrected for multiple", "adjusted for multiple", "correction for multiple",
+    "corrections for multiple", "correcting for multiple", "adjusting for multiple", "multiple comparison correct",
+    "adjusted p", "p-adjusted", "corrected p", "dunnett", "games-howell", "games howell", "newman-keuls", "dunn's",
+    "corrected for the number of", "multiplicity", "adjustment for multiple", "hommel", "p-values were adjusted",
+    "p values were adjusted", "p values were corrected", "p-values were corrected", "multiple-comparison correct",
+)  # fmt: skip
+_OF_TESTS = ("multiple", "family", "false", "type i", "spheric", "number of", "violation", "inflat")
+_POST_HOC = ("post hoc", "post-hoc", "posthoc", "pairwise", "pair-wise", "follow-up", "followed up", "multiple comparison",
+             "simple effect", "simple main effect", "subsequent comparison")  # fmt: skip
+_NEGATIONS = ("no ", "not ", "without ", "nor ", "never ", "neither ", "rather than ", "instead of ", "un", "non-", "non")
+
+
+def stated(text: str) -> tuple[str, ...]:
+    """Keys of `STATED` that the text says, in their order; negated ones are left out."""
+    text = text.lower().replace("–", "-").replace("’", "'") + " "
+    found = [key for key, stems in STEMS.items() if any(_says(text, stem) for stem in stems)]
+    if any(_says(text, stem) for stem in _ADJUSTING):
+        found.append("adjusted-p-post-hoc" if any(stem in text for stem in _POST_HOC) else "adjusted-p")
+    return tuple(found)
+
+
+def _says(text: str, stem: str) -> bool:
+    """Tell whether the stem starts a word somewhere and is not negated there."""
+    at = text.find(stem)
+    while at >= 0:
+        starts = at == 0 or not text[at - 1].isalpha()
+        if starts and not text[max(0, at - 14) : at].rstrip("-").endswith(_NEGATIONS) and not _undone(text, at, stem):
+            return True
+        at = text.find(stem, at + 1)
+    return False
+
+
+def _undone(text: str, at: int, stem: str) -> bool:
+    """`Bonferroni correction was not applied` says that there is none; `adjusted for multiple tests` names no covariate."""
+    rest = text[at + len(stem) : at + len(stem) + 45]
+    clause = rest.split(".")[0].split(",")[0].split(";")[0]
+    if stem.endswith(" for") and any(word in clause[:30] for word in _OF_TESTS):
+        return True
+    return any(no in clause for no in (" not applied", " not used", " not needed", " was not ", " were not ", " unnecessary"))

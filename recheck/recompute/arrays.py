@@ -1,0 +1,46 @@
+"""What the other modules share: array types, and arithmetic of intervals that has its ends at corners."""
+
+from __future__ import annotations
+
+from typing import TypeAlias
+
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+
+Floats: TypeAlias = NDArray[np.float64]
+Bounds: TypeAlias = tuple[Floats, Floats]
+"""Lower and upper ends, each of the shape to which the arguments broadcast."""
+
+
+def floats(*values: ArrayLike) -> tuple[Floats, ...]:
+    """Give the arguments as float arrays of their own shapes (0-d for scalars)."""
+    return tuple(np.asarray(value, dtype=np.float64) for value in values)
+
+
+def together(*values: ArrayLike) -> tuple[Floats, ...]:
+    """Give the arguments as float arrays broadcast to one shape (views: not to be written to)."""
+    return tuple(np.broadcast_arrays(*floats(*values)))
+
+
+def quotient(top: ArrayLike, bottom: ArrayLike) -> Floats:
+    """Divide without complaint: x/0 is infinite, 0/0 is nan."""
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
+        return np.asarray(np.divide(top, bottom), dtype=np.float64)
+
+
+def difference_bounds(low1: ArrayLike, high1: ArrayLike, low2: ArrayLike, high2: ArrayLike) -> Bounds:
+    """Range of a - b over a box."""
+    low1, high1, low2, high2 = floats(low1, high1, low2, high2)
+    return np.asarray(low1 - high2), np.asarray(high1 - low2)
+
+
+def quotient_bounds(top_low: Floats, top_high: Floats, bottom_low: Floats, bottom_high: Floats) -> Bounds:
+    """Range of a/b over a box with b >= 0: both ends are corners.
+
+    a/b rises with a, and for fixed a moves towards 0 as b rises. So the upper end has the largest a,
+    with the smallest b if that a is positive, else with the largest; the lower end mirrors it. A b
+    that may be 0 gives an infinite end; nan where a and b can be nothing but 0.
+    """
+    high = quotient(top_high, np.where(top_high > 0, bottom_low, bottom_high))
+    low = quotient(top_low, np.where(top_low < 0, bottom_low, bottom_high))
+    return low, high

@@ -1,0 +1,83 @@
+"""No honest result is called impossible or inconsistent; implied ends are attained; misprints are found."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+import numpy as np
+import pytest
+from hypothesis import HealthCheck, given, settings
+
+from tests.soundness.auditing import audit_document, outcomes
+from tests.soundness.honest import HONEST, honest_samples
+from tests.soundness.other_models import OTHER_MODELS, other_samples
+from tests.soundness.planted import PLANTS, plant
+from tests.soundness.samples import Generator, Sample
+from tests.soundness.sharpness import GROUP_CHECKS, STATISTICS, unattained, unattained_by_groups
+from tests.soundness.traps import TRAPS
+
+QUICK = settings(max_examples=30, deadline=None, derandomize=True, suppress_health_check=list(HealthCheck))
+
+
+@pytest.mark.parametrize(
+    ("generators", "each"),
+    [(HONEST, 36), (OTHER_MODELS, 20), (TRAPS, 14)],
+    ids=["plain", "other models", "traps"],
+)
+def test_honest_results_are_never_flagged(generators: Mapping[str, Generator], each: int) -> None:
+    drawn = outcomes(generators, each * len(generators), seed=11)
+    flagged = [outcome.report() for outcome in drawn if outcome.flagged or outcome.faults]
+    assert not flagged, "\n\n".join(flagged)
+
+
+def test_most_honest_results_are_read() -> None:
+    read = [o.read for o in outcomes(HONEST, 15 * len(HONEST), seed=5) if o.sample.facts]
+    assert np.mean(read) > 0.95
+
+
+@QUICK
+@given(honest_samples())
+def test_any_honest_result_alone(sample: Sample) -> None:
+    (outcome,) = audit_document([sample])
+    assert not outcome.flagged and not outcome.faults, outcome.report()
+
+
+@QUICK
+@given(other_samples())
+def test_any_honest_result_of_another_model_alone(sample: Sample) -> None:
+    (outcome,) = audit_document([sample])
+    assert not outcome.flagged and not outcome.faults, outcome.report()
+
+
+def test_ends_of_the_implied_p_are_attained() -> None:
+    seen = 0
+    for outcome in outcomes(HONEST, 15 * len(HONEST), seed=3):
+        claims = {claim.id: claim for claim in outcome.claims}
+        for finding in outcome.findings:
+            claim = claims.get(finding.claims[0]) if finding.check.startswith("p-from-") else None
+            if claim and claim.kind in STATISTICS and finding.check == f"p-from-{STATISTICS[claim.kind][0]}":
+                seen += 1
+                assert not unattained(claim, finding)
+    assert seen > 50
+
+
+def test_ends_of_what_groups_imply_are_attained() -> None:
+    seen = 0
+    names = ("d denominators", "t from printed figures")
+    for outcome in outcomes({name: OTHER_MODELS[name] for name in names}, 60, seed=4):
+        claims = {claim.id: claim for claim in outcome.claims}
+        for finding in outcome.findings:
+            if finding.check in GROUP_CHECKS and finding.verdict in ("agrees", "conditional"):
+                claim, *groups = (claims[i] for i in finding.claims if i in claims)
+                if len(groups) == 2 and not any(g.says("spread-unlabelled") for g in groups):
+                    seen += 1
+                    assert not unattained_by_groups(claim, (groups[0], groups[1]), finding)
+    assert seen > 20
+
+
+@pytest.mark.parametrize("name", sorted(name for name, kind in PLANTS.items() if kind.promised))
+def test_misprints_against_the_plain_readings_are_noticed(name: str) -> None:
+    drawn = [plant(name, np.random.default_rng([17, i])) for i in range(16)]
+    wrong = [sample for sample, contradicted in drawn if contradicted]
+    passed = [s.text for s in wrong if audit_document([s])[0].verdict not in ("flagged", "conditional")]
+    assert len(passed) <= 0.1 * len(wrong), "\n".join(passed)
