@@ -60,9 +60,9 @@ PLANTS = (
         "p", "inconsistent", True, "CI of a mean change that holds 0 beside P<0.001: a sign is added",
     ),
     Plant(
-        COACHING, "passed", "p", "=0.10",
+        COACHING, "passed", "p", "=0.12",
         "χ^2^={passed[chi2]}, df={passed[df]}, P{passed[p]}",
-        "p", "inconsistent", True, "P of a χ² test: the decimal point moved by two places",
+        "p", "inconsistent", True, "P of a χ² test: that of another comparison (growing up in a bakery) is printed",
     ),
     Plant(
         STARTER, "mills", "sd2", "6.4",

@@ -137,7 +137,11 @@ def impossible(
 
 
 def _within(attempt: Attempt, bounds: Interval) -> Attempt:
-    implied = tuple(i.guarded().within(bounds.low, bounds.high) for i in attempt.implied)
+    implied = tuple(
+        interval.guarded().within(bounds.low, bounds.high)
+        for interval in attempt.implied
+        if not (math.isnan(interval.low) or math.isnan(interval.high))
+    )
     return replace(attempt, printed=attempt.printed.within(bounds.low, bounds.high), implied=implied)
 
 

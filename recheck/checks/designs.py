@@ -123,11 +123,11 @@ def _splits(total: int) -> list[tuple[int, int]]:
     return [(n, total - n) for n in firsts]
 
 
-def _split_interval(box: Box, groups: Groups, total: int, *, as_se: bool) -> Interval:
-    """|t| over all splits of the total: each split with the box of means and spreads."""
+def _split_intervals(box: Box, groups: Groups, total: int, *, as_se: bool) -> tuple[Interval, ...]:
+    """|t| over all splits of the total, each split with the box of means and spreads; none below 4."""
     pairs = np.array(_splits(total), dtype=float).reshape(-1, 2)
     if not len(pairs):
-        return Interval(math.inf, math.inf)
+        return ()
     n1, n2 = pairs[:, 0], pairs[:, 1]
     factor1 = np.sqrt(n1) if groups.spreads[0] == "se" or as_se else np.ones_like(n1)
     factor2 = np.sqrt(n2) if groups.spreads[1] == "se" or as_se else np.ones_like(n2)
@@ -141,7 +141,7 @@ def _split_interval(box: Box, groups: Groups, total: int, *, as_se: bool) -> Int
         known(float(x), float(y)).absolute()
         for x, y in zip(np.atleast_1d(low), np.atleast_1d(high), strict=True)
     ]
-    return Interval(min(p.low for p in parts), max(p.high for p in parts))
+    return (Interval(min(p.low for p in parts), max(p.high for p in parts)),)
 
 
 @dataclass(frozen=True, slots=True)
@@ -252,7 +252,7 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
         extra = (SE_READING,) if as_se else ()
 
         def by_splits(box: Box, as_se: bool = as_se) -> tuple[Interval, ...]:
-            return (_split_interval(box, groups, total, as_se=as_se),)
+            return _split_intervals(box, groups, total, as_se=as_se)
 
         def by_pairs(box: Box, as_se: bool = as_se) -> tuple[Interval, ...]:
             return (_paired_interval(box, groups, total - 1, as_se=as_se),)

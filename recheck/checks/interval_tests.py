@@ -3,16 +3,18 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Iterable, Iterator
 
 from recheck.checks.compare import Comparison, judge
-from recheck.checks.groups import unsigned
-from recheck.checks.intervals import ESTIMATES, OTHER_METHOD, ends
+from recheck.checks.designs import Groups, fit_designs, sds
+from recheck.checks.groups import link_doubts, linked_groups, unsigned
+from recheck.checks.intervals import ESTIMATES, OFF_CENTRE, OTHER_METHOD, ends
+from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval
-from recheck.recompute import bounds, intervals
+from recheck.model import VERDICTS, Claim, Finding, Interval
+from recheck.recompute import bounds, intervals, two_groups
 from recheck.recompute.tails import t_quantile, z_quantile
-from recheck.reconcile.readings import Box, Way
+from recheck.reconcile.readings import Box, Way, box_of
 
 WIDER, NARROWER = 1.6, 0.6
 """How much wider or narrower than the t interval an honest one by another method may be.
@@ -184,3 +186,99 @@ def _p_ways(claim: Claim, df: float | None) -> tuple[Way, ...]:
 
             ways.append(Way(one, (*halved, "p is one-tailed")))
     return tuple(ways)
+
+
+@check(
+    "ci-from-groups",
+    title="confidence interval of a mean difference against its two groups",
+    kinds=("t-test",),
+    quantity="ci_low",
+    needs=("ci_low", "ci_high", "df"),
+    formula="(M1 − M2) ∓ c SE, SE pooled or Welch, c the critical value of t with df at the level of the interval",
+    source="Welch (1938) Biometrika 29:350-362; Altman & Bland (2011) BMJ 343:d2090",
+    limits="Independent groups of printed size only; otherwise as for t against its interval.",
+    agrees=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, mean difference = 6.4, 95% CI [2.37, 10.43].",
+    ),
+    conditional=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, mean difference = 6.4, 95% CI [3.07, 9.73].",
+    ),
+)
+def ci_from_groups(case: Case) -> Iterable[Finding]:
+    """Compare both ends with the two groups; the end that fits worse is told."""
+    claim, linked = case.claim, linked_groups(case)
+    if claim.interval_of != "mean_difference" or linked is None:
+        return
+    groups, claims = linked
+    fit = fit_designs(claim, groups, box_of(groups.numbers))
+    if (
+        fit.reason
+        or fit.design != "independent"
+        or groups.unlabelled
+        or groups.n1 is None
+        or groups.n2 is None
+    ):
+        return
+    low, high = ends(claim)
+    if low.value > high.value:
+        return
+    foreign = foreign_model(claims, fitted=fit.sure)
+    excuses = (foreign,) if foreign else _ci_excuses(claim)
+    found = []
+    for name, printed, side in (("ci_low", low, -1.0), ("ci_high", high, 1.0)):
+        ways = tuple(_end_ways(claim, groups, side))
+        numbers = {name: printed, **groups.numbers}
+        doubts = (*fit.doubts, *link_doubts(case))
+        found.append(
+            judge(
+                case,
+                Comparison("ci-from-groups", name, numbers, ways, claims, doubts=doubts, excuses=excuses),
+            )
+        )
+    yield min(found, key=lambda finding: VERDICTS.index(finding.verdict))
+
+
+def _end_ways(claim: Claim, groups: Groups, side: float) -> Iterator[Way]:
+    """Ways to one end of the interval: `side` −1 for the lower, 1 for the upper."""
+    level, printed = level_of(claim)
+    unstated = () if printed else (f"the interval is a {level:.0%} one",)
+    df = claim.values["df"].number
+    exact = float(t_quantile((1 - level) / 2, df))
+    normal = float(z_quantile((1 - level) / 2))
+    for welch in (claim.says("welch"), not claim.says("welch")):
+        words = (
+            ()
+            if welch == claim.says("welch")
+            else ("the interval is Welch's" if welch else "the interval is pooled",)
+        )
+        yield Way(_end(groups, side, exact, exact, welch=welch), (*unstated, *words))
+        yield Way(_end(groups, side, normal, normal, welch=welch), (*unstated, *words, NORMAL))
+    for other in (0.90, 0.95, 0.99):
+        if other != level:
+            c = float(t_quantile((1 - other) / 2, df))
+            yield Way(
+                _end(groups, side, c, c, welch=claim.says("welch")), (f"the interval is a {other:.0%} one",)
+            )
+    shift = OFF_CENTRE * exact
+    wide = _end(groups, side, NARROWER * exact - shift, WIDER * exact + shift, welch=claim.says("welch"))
+    yield Way(wide, (*unstated, OTHER_METHOD))
+
+
+def _end(
+    groups: Groups, side: float, least: float, most: float, *, welch: bool
+) -> Callable[[Box], tuple[Interval, ...]]:
+    """One end of the interval for either order of the groups, its half width from `least` to `most` SEs."""
+
+    def implied(box: Box) -> tuple[Interval, ...]:
+        n1, n2 = float(groups.n1 or 0), float(groups.n2 or 0)
+        s = sds(box, groups, n1, n2, as_se=False)
+        se = two_groups.welch_se if welch else two_groups.pooled_se
+        narrow, broad = least * float(se(s.low1, n1, s.low2, n2)), most * float(se(s.high1, n1, s.high2, n2))
+        a, b = box["mean1"], box["mean2"]
+        found = []
+        for d in (Interval(a.low - b.high, a.high - b.low), Interval(b.low - a.high, b.high - a.low)):
+            half = Interval(narrow, broad) if side > 0 else Interval(-broad, -narrow)
+            found.append(Interval(d.low + half.low, d.high + half.high))
+        return tuple(found)
+
+    return implied

@@ -370,17 +370,19 @@ def p_from_r(case: Case) -> Iterable[Finding]:
 
 
 def _rank_ways(claim: Claim, n: int) -> Iterator[Way]:
-    """The p of Spearman's rank correlation without ties, exact or by its Edgeworth series."""
+    """The p of Spearman's rank correlation, exact or by its Edgeworth series.
+
+    Without ties r moves in steps of 12/(n³ − n); ties put it between two steps.
+    """
     if n < 4:
         return
     said = claim.suggests("spearman")
 
     def p_of(box: Box, used: int) -> Interval:
         r = box["r"].absolute().within(0.0, 1.0)
-        at_high, at_low = (
-            float(ranks.spearman_two_sided(r.high, n)),
-            float(ranks.spearman_two_sided(r.low, n)),
-        )
+        step = 12.0 / (n**3 - n)
+        at_high = float(ranks.spearman_two_sided(min(r.high + step, 1.0), n))
+        at_low = float(ranks.spearman_two_sided(max(r.low - step, 0.0), n))
         return Interval(min(at_high, at_low) * used / 2, max(at_high, at_low) * used / 2)
 
     words = "p is that of Spearman's rank correlation"

@@ -13,6 +13,7 @@ from recheck.documents.words import Words
 _LEAST_GUTTER = 5.0
 _LEAST_ROWS = 6
 _FILLED = 0.55
+_ALIKE = 0.72
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,12 +51,24 @@ def gutters_of(words: Words, chosen: NDArray[np.intp]) -> list[Gutter]:
     first = _best_gutter(words, chosen)
     if first is None:
         return []
-    found = [first]
-    for side in (chosen[words.x1[chosen] <= first.left + 2], chosen[words.x0[chosen] >= first.right - 2]):
-        more = _best_gutter(words, side)
-        if more is not None and more.rows >= 0.5 * first.rows:
-            found.append(more)
-    return sorted(found, key=lambda gutter: gutter.left)[:2]
+    sides = chosen[words.x1[chosen] <= first.left + 2], chosen[words.x0[chosen] >= first.right - 2]
+    more = [gutter for side in sides if (gutter := _best_gutter(words, side)) is not None]
+    widths = _widths(words, chosen, first)
+    if min(widths) < _ALIKE * max(widths) and not (more or _is_side_note(words, sides)):
+        return []
+    kept = [gutter for gutter in more if gutter.rows >= 0.5 * first.rows]
+    return sorted([first, *kept], key=lambda gutter: gutter.left)[:2]
+
+
+def _widths(words: Words, chosen: NDArray[np.intp], gutter: Gutter) -> tuple[float, float]:
+    left, right = float(np.percentile(words.x0[chosen], 1)), float(np.percentile(words.x1[chosen], 99))
+    return gutter.left - left, right - gutter.right
+
+
+def _is_side_note(words: Words, sides: Sequence[NDArray[np.intp]]) -> bool:
+    """Whether the text on one side is set smaller: side notes, not the first column of a table."""
+    small, large = sorted(float(np.median(words.size[side])) for side in sides)
+    return small < 0.93 * large
 
 
 def agreed_gutters(pages: Sequence[list[Gutter]]) -> list[Gutter]:
@@ -70,7 +83,7 @@ def agreed_gutters(pages: Sequence[list[Gutter]]) -> list[Gutter]:
     agreed = []
     for group in groups:
         rows = sum(gutter.rows for gutter in group)
-        if rows >= 12 or len(group) > 1:
+        if rows >= 8 or len(group) > 1:
             left = float(np.median([gutter.left for gutter in group]))
             right = float(np.median([gutter.right for gutter in group]))
             agreed.append(Gutter(left, right, rows))
@@ -96,12 +109,18 @@ def _best_gutter(words: Words, chosen: NDArray[np.intp]) -> Gutter | None:
     depth = np.minimum(before, after) - cover[inner]
     if depth.max() < _LEAST_ROWS:
         return None
-    at = int(inner[int(depth.argmax())])
-    clear = cover <= cover[at] + max(1.0, 0.06 * float(depth.max()))
-    start, end = at, at
-    while start > 0 and clear[start - 1]:
+    deepest = inner[depth >= depth.max() - 1]
+    at = left + float(deepest[len(deepest) // 2]) + 0.5
+    # What runs across is set apart first: then the strip is seen whole, ragged edges and all.
+    clear = chosen[_runs_clear(words, chosen, Gutter(at - 1.5, at + 1.5, 0))]
+    if len(clear) < 20:
+        return None
+    cover = _cover(words.x0[clear] - left, words.x1[clear] - left, int(width) + 2)
+    free = cover <= 0.02 * len(np.unique(words.rows[clear]))
+    start = end = int(at - left)
+    while start > 0 and free[start - 1]:
         start -= 1
-    while end < len(clear) - 1 and clear[end + 1]:
+    while end < len(free) - 1 and free[end + 1]:
         end += 1
     gutter = Gutter(left + start, left + end + 1, 0)
     if not _LEAST_GUTTER <= gutter.right - gutter.left < 0.3 * width:
@@ -129,10 +148,8 @@ def _column_rows(words: Words, chosen: NDArray[np.intp], gutter: Gutter, left: f
         if not len(fill) or np.median(fill) < _FILLED:
             return 0
         counts.append(int((fill > _FILLED).sum()))
-    if min(widths) < 0.72 * max(widths):
-        # Side notes beside the text: a narrow column is one only if it is set smaller.
-        small, large = sorted(float(np.median(words.size[side])) for side in sides)
-        return min(counts) if small < 0.93 * large and min(counts) >= 8 else 0
+    if min(widths) < _ALIKE * max(widths) and min(counts) < 8:
+        return 0
     return min(counts)
 
 

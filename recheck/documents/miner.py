@@ -22,6 +22,17 @@ from recheck.documents.glyphs import UNKNOWN, Engine, Glyphs, Unopened, as_glyph
 # Warnings about colours and fonts of a page would land on the user's terminal.
 logging.getLogger("pdfminer").setLevel(logging.CRITICAL)
 
+_SYMBOL = dict(
+    zip(
+        "abcdefghijklmnopqrstuvwxyzABCDEFGHIKLMNOPQRSTUWXYZ@-~",
+        "αβχδεφγηιϕκλμνοπθρστυϖωξψζΑΒΧΔΕΦΓΗΙΚΛΜΝΟΠΘΡΣΤΥΩΞΨΖ≅−∼",
+        strict=True,
+    )
+)
+_SYMBOL |= dict(zip("¢£¥±³´¶¹º»Öå×", "′≤∞±≥×∂≠≡≈√∑⋅", strict=True))
+"""The built-in encoding of the font Symbol (ISO 32000-1, annex D.5), which the library does not know:
+its code written in Latin-1, and the character shown. Digits and brackets stand where they do in ASCII."""
+
 
 def read(data: bytes, pages: Collection[int] | None = None) -> Engine:
     """Read the glyphs of all pages, or of those asked for (from 1); raises `Unopened`."""
@@ -101,10 +112,7 @@ class _Device(PDFTextDevice):
         ncs: Any,
         graphicstate: Any,
     ) -> float:
-        try:
-            text = font.to_unichr(cid)
-        except PDFUnicodeNotDefined:
-            text = chr(cid) if 0 < cid < 0xD800 else UNKNOWN
+        text = _character(font, cid)
         advance: float = font.char_width(cid) * fontsize * scaling
         a, b, c, d, _, _ = matrix
         if font.is_vertical():
@@ -139,6 +147,16 @@ class _Device(PDFTextDevice):
         """What was collected since `open`."""
         x0, y0, x1, y1 = self._crop
         return as_glyphs(self._number, x1 - x0, y1 - y0, self._rows)
+
+
+def _character(font: Any, cid: int) -> str:
+    name = str(getattr(font, "fontname", "")).split("+")[-1]
+    if name.startswith("Symbol") and font.unicode_map is None and cid < 256:
+        return _SYMBOL.get(chr(cid), chr(cid))
+    try:
+        return str(font.to_unichr(cid))
+    except PDFUnicodeNotDefined:
+        return chr(cid) if 0 < cid < 0xD800 else UNKNOWN
 
 
 def _expanded(text: str) -> str:

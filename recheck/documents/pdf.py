@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import hashlib
-from collections.abc import Collection
+from collections.abc import Callable, Collection
 from typing import Literal
 
 import numpy as np
@@ -16,6 +16,7 @@ from recheck.documents.glyphs import Engine, Glyphs, Unopened, upright
 from recheck.documents.joining import put_together
 from recheck.documents.kinds import classified
 from recheck.documents.lines import Line, lines_of
+from recheck.documents.mending import mended
 from recheck.documents.passages import passages_of, title_of
 from recheck.documents.words import words_of
 from recheck.errors import UnreadableDocument
@@ -74,37 +75,33 @@ def page_lines(pages: list[Glyphs]) -> tuple[list[Line], list[Line]]:
 def _read(
     data: bytes, name: str, reader: Literal["auto", "pdfium", "pdfminer"], pages: Collection[int] | None
 ) -> tuple[Engine, str]:
-    if reader != "pdfminer":
-        try:
-            engine = pdfium.read(data, pages)
-            if engine.count or reader == "pdfium":
-                return _with_pages(engine, name), "pdfium"
-        except Unopened as error:
-            if error.locked:
-                raise _locked(name) from None
-            if reader == "pdfium" or b" obj" not in data:
-                raise _damaged(name) from None
+    attempts = [reader] if reader != "auto" else ["pdfium", "pdfminer"]
+    for content in (data, None):
+        if content is None and (content := mended(data)) is None:
+            break
+        for used in attempts:
+            try:
+                engine = _engine(used)(content, pages)
+            except Unopened as error:
+                if error.locked:
+                    raise _locked(name) from None
+                continue
+            if engine.count:
+                return engine, used
+    raise UnreadableDocument(name, "the PDF is damaged or was cut off", "download or export it again")
+
+
+def _engine(reader: str) -> Callable[[bytes, Collection[int] | None], Engine]:
+    if reader == "pdfium":
+        return pdfium.read
     # Most files never need the second engine, and importing it takes a tenth of a second.
     from recheck.documents import miner
 
-    try:
-        return _with_pages(miner.read(data, pages), name), "pdfminer"
-    except Unopened as error:
-        raise (_locked(name) if error.locked else _damaged(name)) from None
-
-
-def _with_pages(engine: Engine, name: str) -> Engine:
-    if not engine.count:
-        raise _damaged(name)
-    return engine
+    return miner.read
 
 
 def _locked(name: str) -> UnreadableDocument:
     return UnreadableDocument(name, "the PDF is encrypted and needs a password", "save a copy without one")
-
-
-def _damaged(name: str) -> UnreadableDocument:
-    return UnreadableDocument(name, "the PDF is damaged or was cut off", "download or export it again")
 
 
 def _asides(lines: list[Line]) -> list[Passage]:

@@ -123,7 +123,7 @@ def _placed(
     corners = boxes[:, [0, 3, 2, 1]].astype(np.float64)
     origins = np.column_stack((corners[:, 0], base[runs]))
     for at in np.flatnonzero(((dx <= 0) | (dy != 0))[runs]).tolist():
-        corners[at], origins[at] = _turned(text, int(kept[at]))
+        corners[at], origins[at] = _turned(text, int(kept[at]), corners[at])
     along = np.column_stack((dx, dy)) @ matrix[:2]
     turns = np.array([turn_of(x, y) for x, y in along.tolist()], np.int8)
     pieces = np.zeros(len(kept), dtype=bool)
@@ -162,13 +162,16 @@ def _style(text: Any, at: int) -> int:
     return style_of(name.raw[: max(min(length, len(name)) - 1, 0)].decode("utf-8", "replace"))
 
 
-def _turned(text: Any, at: int) -> tuple[tuple[float, ...], tuple[float, float]]:
-    """Box and origin of a character whose loose box is wrong because its line is not level."""
+def _turned(
+    text: Any, at: int, loose: NDArray[np.float64]
+) -> tuple[NDArray[np.float64], tuple[float, float]]:
+    """Box and origin of a character whose line is not level: older engines give it a flat loose box."""
     left, right, bottom, top = (ctypes.c_double() for _ in range(4))
-    raw.FPDFText_GetCharBox(text, at, left, right, bottom, top)
-    box = (left.value, bottom.value, right.value, top.value)
+    if abs(loose[2] - loose[0]) < 0.1 or abs(loose[3] - loose[1]) < 0.1:
+        raw.FPDFText_GetCharBox(text, at, left, right, bottom, top)
+        loose = np.array((left.value, bottom.value, right.value, top.value))
     raw.FPDFText_GetCharOrigin(text, at, left, right)
-    return box, (left.value, right.value)
+    return loose, (left.value, right.value)
 
 
 def _view(page: Any) -> tuple[NDArray[np.float64], float, float]:

@@ -29,7 +29,9 @@ class Interval:
 
     def guarded(self, relative: float = 1e-9) -> Interval:
         """Widen outward by the relative error of a computed end, never by more."""
-        return Interval(self.low - abs(self.low) * relative, self.high + abs(self.high) * relative)
+        low = self.low if math.isinf(self.low) else self.low - abs(self.low) * relative
+        high = self.high if math.isinf(self.high) else self.high + abs(self.high) * relative
+        return Interval(low, high)
 
     def within(self, low: float, high: float) -> Interval:
         """Cut both ends to the range that the quantity can have."""

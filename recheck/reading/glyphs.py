@@ -168,7 +168,8 @@ def _minus_is_digit(passages: Sequence[Passage]) -> bool:
 def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, repairs: Repairs) -> Claim:
     """The claim with a note on each sign that was read by another code, and less confidence where it may be a digit."""
     start, end = span
-    signs = {sign: repairs.table[sign] for at, sign in repairs.places.get(index, {}).items() if start <= at < end}
+    places = repairs.places.get(index, {})
+    signs = {places[at]: repairs.table[places[at]] for at in range(start, end) if at in places} if places else {}
     strange = sorted(MISCODED.intersection(passage.text[start:end]))
     if not signs and not strange:
         return claim

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from recheck.model import Claim
@@ -26,10 +26,10 @@ class Placed:
 
 def linked(placed: Sequence[Placed]) -> list[Claim]:
     """The claims, each test of two groups with the ids of its summaries where these are sure."""
-    summaries = [item for item in placed if _summary(item.claim)]
-    tests = [item for item in placed if _two_groups(item.claim)]
+    summaries = _by_sentence(item for item in placed if _summary(item.claim))
+    tests = _by_sentence(item for item in placed if _two_groups(item.claim))
     found: dict[str, Claim] = {}
-    for test in tests:
+    for test in (test for group in tests.values() for test in group):
         pair, basis, near = _pair(test, summaries, tests)
         if pair:
             confidence = test.claim.confidence if near or test.claim.confidence == "low" else "medium"
@@ -50,27 +50,31 @@ def _two_groups(claim: Claim) -> bool:
     return claim.kind == "F-test" and df1 is not None and df1.value == 1
 
 
-def _pair(
-    test: Placed, summaries: Sequence[Placed], tests: Sequence[Placed]
-) -> tuple[tuple[Placed, ...], str, bool]:
-    here = [s for s in summaries if (s.passage, s.sentence) == (test.passage, test.sentence)]
-    rivals = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence)]
+_Sentences = Mapping[tuple[int, int], list[Placed]]
+
+
+def _by_sentence(items: Iterable[Placed]) -> _Sentences:
+    found: dict[tuple[int, int], list[Placed]] = {}
+    for item in items:
+        found.setdefault((item.passage, item.sentence), []).append(item)
+    return found
+
+
+def _pair(test: Placed, summaries: _Sentences, tests: _Sentences) -> tuple[tuple[Placed, ...], str, bool]:
+    """The two summaries of a test, on what basis, and whether they stand in its own sentence."""
+    place = (test.passage, test.sentence)
+    here, rivals = summaries.get(place, []), tests[place]
     own = _own(test, here, rivals)
     if len(own) == 2 and _alike(own):
         return tuple(own), "the only two group summaries in the same sentence", True
-    if here:
+    if here or len(rivals) != 1:
         return (), "", True
     for step, words in ((-1, "the sentence before"), (1, "the sentence after")):
-        near = [s for s in summaries if (s.passage, s.sentence) == (test.passage, test.sentence + step)]
-        if not near:
-            continue
-        if len(near) != 2 or len(rivals) != 1 or not _alike(near):
-            return (), "", True
-        others = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence + step)]
-        further = [t for t in tests if (t.passage, t.sentence) == (test.passage, test.sentence + 2 * step)]
-        if others or further or not _same_outcome(test, near):
-            return (), "", True
-        return tuple(near), f"the only two group summaries in {words}", False
+        near = summaries.get((test.passage, test.sentence + step), [])
+        if near:
+            others = [k for k in (step, 2 * step) if (test.passage, test.sentence + k) in tests]
+            sure = len(near) == 2 and not others and _alike(near) and _same_outcome(test, near)
+            return (tuple(near), f"the only two group summaries in {words}", False) if sure else ((), "", True)
     return (), "", True
 
 

@@ -69,9 +69,23 @@ def _stop() -> regex.Pattern[str]:
     return regex.compile(r"[.!?][\"'”)\]]{0,3}[²³¹⁰⁴-⁹]{0,6} (?=[\p{Lu}\p{N}(\[“\"*]|[a-z] ?[(=<>])")
 
 
+LONGEST = 2500
+"""Characters of the longest sentence; what is longer is no prose (tables run together) and is cut."""
+
+
 def sentences(view: View) -> Iterator[tuple[int, int]]:
     """Start and end of each sentence of the view."""
-    text = view.text
+    for start, end in _whole_sentences(view.text):
+        while end - start > LONGEST:
+            cut = view.text.rfind("; ", start + LONGEST // 2, start + LONGEST) + 1
+            cut = cut or view.text.rfind(" ", start + LONGEST // 2, start + LONGEST) or start + LONGEST
+            cut = cut if cut > start else start + LONGEST
+            yield start, cut
+            start = cut
+        yield start, end
+
+
+def _whole_sentences(text: str) -> Iterator[tuple[int, int]]:
     start = 0
     for match in _stop().finditer(text, timeout=TIMEOUT):
         if match[0][0] == "." and _abbreviates(text, match.start()):

@@ -24,6 +24,8 @@ def draw_t(rng: Rng) -> Figures:
     """An independent t test with groups, d and interval, printed to two decimals, p to three."""
     a, b = raw.plain_groups(rng, 2, 8, 60)
     test = computing.t_test(a, b, pooled=True)
+    if not computing.finite(test.value, test.error):
+        return draw_t(rng)
     half = stats.t.ppf(0.975, test.df[0]) * test.error
     two = {
         "statistic": test.value, "m1": float(a.mean()), "s1": computing.sd(a), "m2": float(b.mean()),
@@ -194,6 +196,8 @@ def told(hand: Hand, figures: Figures, shows: tuple[str, ...]) -> Sample:
     extras += [hand.interval_told(n["low"], n["high"])] if "ci" in shows else []
     result = hand.join(hand.statistic_told(figures.test, n["statistic"], dfs), p, *extras)
     said = (dict(result.values),)
+    if n.get("s1", 0) < 0 and hand.group_style == "plusminus":
+        hand = replace(hand, group_style="full")  # nobody writes ± before a minus
     if "groups" not in shows:
         return Sample(sentences.lone(hand, result, "the batches were compared"), said)
     first, second = (hand.group_told(n[f"m{i}"], n[f"s{i}"], int(n[f"n{i}"])) for i in (1, 2))

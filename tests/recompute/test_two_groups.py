@@ -1,0 +1,190 @@
+"""t from summaries against published results, scipy and statsmodels on raw data, and searches over boxes."""
+
+import numpy as np
+import pytest
+from hypothesis import assume, given, settings
+from hypothesis import strategies as st
+from scipy import stats
+from scipy.optimize import minimize_scalar
+from statsmodels.stats.weightstats import ttest_ind
+
+from recheck.recompute import two_groups as tg
+from recheck.recompute.tails import t_two_sided
+from tests.recompute.boxes import SHARES, at, holds, intervals
+from tests.reference import rows
+
+SAMPLE = st.lists(st.floats(-1e4, 1e4).map(lambda x: round(x, 3)), min_size=2, max_size=12)
+SD = intervals(0, 9, 0.5)
+MEAN = intervals(-9, 9, 0.5)
+N = st.integers(2, 40)
+BOX = settings(max_examples=150, deadline=None)
+RAW = settings(max_examples=80, deadline=None)
+
+
+@pytest.mark.parametrize("row", rows("two_sample_t"), ids=lambda row: row["label"])
+def test_published_two_sample_results(row):
+    m1, s1, n1, m2, s2, n2 = row.numbers("mean1", "sd1", "n1", "mean2", "sd2", "n2")
+    pooled, welch = tg.t_pooled(m1, s1, n1, m2, s2, n2), tg.t_welch(m1, s1, n1, m2, s2, n2)
+    df = tg.satterthwaite_df(s1, n1, s2, n2)
+    assert pooled == pytest.approx(row.number("t_pooled"), rel=1e-12)
+    assert welch == pytest.approx(row.number("t_welch"), rel=1e-12)
+    assert df == pytest.approx(row.number("df_welch"), rel=1e-12)
+    assert t_two_sided(pooled, n1 + n2 - 2) == pytest.approx(row.number("p_pooled"), rel=1e-10)
+    assert t_two_sided(welch, df) == pytest.approx(row.number("p_welch"), rel=1e-10)
+
+
+@pytest.mark.parametrize("row", rows("one_sample_paired_t"), ids=lambda row: row["label"])
+def test_published_paired_and_one_sample_results(row):
+    difference, spread, n, t = row.numbers("mean_diff", "sd_diff", "n", "t")
+    assert (difference - row.number("mu0")) / (spread / np.sqrt(n)) == pytest.approx(t, rel=1e-12)
+    assert t_two_sided(t, n - 1) == pytest.approx(row.number("p"), rel=1e-10, abs=1e-300)
+    if row["type"] == "paired":
+        s1, s2, r = row.numbers("sd1", "sd2", "r")
+        assert tg.paired_se(s1, s2, r, n) * np.sqrt(n) == pytest.approx(spread, rel=1e-12)
+        assert tg.implied_correlation(difference, s1, s2, n, t) == pytest.approx(r, rel=1e-11)
+
+
+def test_change_score_correlation_of_the_handbook():
+    # Cochrane Handbook 6.5.2.8 (from memory): SDs 6.4, 7.1, of changes 4.5, n = 129: r = 0.78.
+    (row,) = (row for row in rows("conversions") if row["kind"] == "sd_to_r")
+    given = row.given()
+    t = 2.0 / (given["sd_change"] / np.sqrt(given["n"]))
+    r = tg.implied_correlation(2.0, given["sd_baseline"], given["sd_final"], given["n"], t)
+    assert r == pytest.approx(row.number("value"), rel=1e-12)
+
+
+@RAW
+@given(a=SAMPLE, b=SAMPLE)
+def test_summaries_give_the_t_of_the_raw_data(a, b):
+    summary = (np.mean(a), np.std(a, ddof=1), len(a), np.mean(b), np.std(b, ddof=1), len(b))
+    assume(min(summary[1], summary[4]) > 1e-2)
+    t, p, df = ttest_ind(a, b)
+    assert tg.t_pooled(*summary) == pytest.approx(t, rel=1e-6, abs=1e-6)
+    t, p, df = ttest_ind(a, b, usevar="unequal")
+    assert tg.t_welch(*summary) == pytest.approx(t, rel=1e-6, abs=1e-6)
+    assert tg.satterthwaite_df(summary[1], len(a), summary[4], len(b)) == pytest.approx(df, rel=1e-6)
+    assert t_two_sided(tg.t_welch(*summary), df) == pytest.approx(p, rel=1e-5, abs=1e-12)
+    ours = stats.ttest_ind_from_stats(*summary, equal_var=False)
+    assert tg.t_welch(*summary) == pytest.approx(ours.statistic, rel=1e-12)
+
+
+@RAW
+@given(pairs=st.lists(st.tuples(st.integers(1, 70), st.integers(1, 70)), min_size=3, max_size=15))
+def test_paired_summaries_give_the_t_of_the_raw_data(pairs):
+    a, b = np.array(pairs, dtype=float).T
+    s1, s2, spread = np.std(a, ddof=1), np.std(b, ddof=1), np.std(a - b, ddof=1)
+    assume(min(s1, s2, spread) > 0)
+    r = np.corrcoef(a, b)[0, 1]
+    t = stats.ttest_rel(a, b).statistic
+    assert (a.mean() - b.mean()) / tg.paired_se(s1, s2, r, len(a)) == pytest.approx(t, rel=1e-6, abs=1e-9)
+    low, high = tg.paired_t_bounds(*[a.mean()] * 2, s1, s1, *[b.mean()] * 2, s2, s2, len(a))
+    assert low * (1 - 1e-9) <= abs(t) <= high * (1 + 1e-9)
+    if abs(t) > 1e-6:
+        assert tg.implied_correlation(a.mean() - b.mean(), s1, s2, len(a), t) == pytest.approx(r, abs=1e-6)
+
+
+@BOX
+@given(m1=MEAN, s1=SD, n1=N, m2=MEAN, s2=SD, n2=N, shares=st.tuples(*[SHARES] * 4))
+def test_independent_t_bounds(m1, s1, n1, m2, s2, n2, shares):
+    for single, box in ((tg.t_pooled, tg.pooled_t_bounds), (tg.t_welch, tg.welch_t_bounds)):
+        low, high = box(*m1, *s1, n1, *m2, *s2, n2)
+        points = [at(x, share) for x, share in zip((m1, s1, m2, s2), shares, strict=True)]
+        t = float(single(points[0], points[1], n1, points[2], points[3], n2))
+        assert np.isnan(t) or holds((low, high), t)
+        corners = [
+            float(single(a, b, n1, c, d, n2)) for a in m1 for b in s1 for c in m2 for d in s2
+        ]
+        if not np.isnan(corners).any():
+            assert (low, high) == pytest.approx((min(corners), max(corners)), rel=1e-12)
+
+
+def test_t_bounds_of_spreads_that_may_be_zero():
+    low, high = tg.pooled_t_bounds(1.0, 1.2, 0.0, 0.1, 5, 0.9, 1.1, 0.0, 0.1, 5)
+    assert (low, high) == (-np.inf, np.inf)
+    low, high = tg.welch_t_bounds(2.0, 2.2, 0.0, 0.1, 5, 0.9, 1.1, 0.0, 0.1, 5)
+    assert high == np.inf
+    assert low == pytest.approx(float(tg.t_welch(2.0, 0.1, 5, 1.1, 0.1, 5)))
+
+
+@BOX
+@given(s1=SD, n1=N, s2=SD, n2=N, u=SHARES, v=SHARES)
+def test_welch_df_bounds(s1, n1, s2, n2, u, v):
+    low, high = tg.welch_df_bounds(*s1, n1, *s2, n2)
+    df = float(tg.satterthwaite_df(at(s1, u), n1, at(s2, v), n2))
+    assert np.isnan(df) or holds((low, high), df)
+    assert min(n1, n2) - 1 - 1e-9 <= low <= high <= n1 + n2 - 2 + 1e-9
+    if max(s1[0], s2[0]) > 0:
+        corners = [float(tg.satterthwaite_df(a, n1, b, n2)) for a in s1 for b in s2]
+        assert low == pytest.approx(np.nanmin(corners), rel=1e-12)
+    if min(s1[0], s2[0]) > 0:
+        # Only the ratio counts: a search along the edges of the box meets every ratio.
+        edges = [_greatest(lambda x, b=b: tg.satterthwaite_df(x, n1, b, n2), *s1) for b in s2]
+        edges += [_greatest(lambda x, a=a: tg.satterthwaite_df(a, n1, x, n2), *s2) for a in s1]
+        assert high == pytest.approx(max(edges), rel=1e-9)
+
+
+def _greatest(curve, low, high):
+    """Greatest value of a curve with one peak, by Brent's method, and the ends."""
+    ends = max(float(curve(low)), float(curve(high)))
+    if low == high:
+        return ends
+    found = minimize_scalar(lambda x: -float(curve(x)), bounds=(low, high), method="bounded", options={"xatol": 1e-10})
+    return max(ends, -found.fun)
+
+
+def test_satterthwaite_df_where_the_welch_df_is_largest():
+    n1, n2 = 12.0, 30.0
+    ratio = np.sqrt(n1 * (n1 - 1) / (n2 * (n2 - 1)))
+    assert tg.satterthwaite_df(ratio, n1, 1.0, n2) == pytest.approx(n1 + n2 - 2, rel=1e-14)
+    assert np.isnan(tg.satterthwaite_df(0.0, n1, 0.0, n2))
+    assert tg.satterthwaite_df(0.0, n1, 1.0, n2) == pytest.approx(n2 - 1)
+
+
+@BOX
+@given(m1=MEAN, s1=SD, m2=MEAN, s2=SD, n=N, r=st.floats(-1, 1) | st.sampled_from((-1.0, 1.0)), shares=st.tuples(*[SHARES] * 4))
+def test_paired_t_bounds(m1, s1, m2, s2, n, r, shares):
+    low, high = tg.paired_t_bounds(*m1, *s1, *m2, *s2, n)
+    a, b, c, d = (at(x, share) for x, share in zip((m1, s1, m2, s2), shares, strict=True))
+    se = float(tg.paired_se(b, d, r, n))
+    assume(se > 1e-6)
+    assert holds((low, high), abs(a - c) / se, slack=1e-12)
+    distances = [abs(x - y) for x in m1 for y in m2]
+    if s1[0] > s2[1]:
+        assert high == pytest.approx(max(distances) / float(tg.paired_se(s1[0], s2[1], 1.0, n)), rel=1e-9)
+    if m1[0] > m2[1] and s1[1] + s2[1] > 0:
+        assert low == pytest.approx(min(distances) / float(tg.paired_se(s1[1], s2[1], -1.0, n)), rel=1e-9)
+
+
+POSITIVE_SD = intervals(0.05, 9, 0.5)
+T_SIZE = intervals(0.01, 30, 0.5)
+
+
+@BOX
+@given(m1=MEAN, s1=POSITIVE_SD, m2=MEAN, s2=POSITIVE_SD, n=N, t=T_SIZE, shares=st.tuples(*[SHARES] * 5))
+def test_implied_correlation_bounds(m1, s1, m2, s2, n, t, shares):
+    low, high = tg.implied_correlation_bounds(*m1, *s1, *m2, *s2, n, *t)
+    a, b, c, d, e = (at(x, share) for x, share in zip((m1, s1, m2, s2, t), shares, strict=True))
+    assert holds((low, high), float(tg.implied_correlation(a - c, b, d, n, e)), slack=1e-9)
+    distances = [abs(x - y) for x in m1 for y in m2]
+    near = 0.0 if m1[0] <= m2[1] and m2[0] <= m1[1] else min(distances)
+    top = [float(tg.implied_correlation(near, x, y, n, t[1])) for x in s1 for y in s2]
+    assert high == pytest.approx(max(top), rel=1e-9, abs=1e-9)
+    floor = [_greatest(lambda x, y=y: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s1) for y in s2]
+    floor += [_greatest(lambda y, x=x: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s2) for x in s1]
+    assert low == pytest.approx(-max(floor), rel=1e-9, abs=1e-9)
+
+
+def test_a_t_of_zero_leaves_the_correlation_free_below():
+    low, high = tg.implied_correlation_bounds(4.9, 5.1, 1.0, 1.1, 4.9, 5.1, 1.0, 1.1, 20, 0.0, 0.05)
+    assert low == -np.inf
+    assert high >= 1.0
+
+
+def test_two_groups_broadcast():
+    t = tg.t_pooled(np.array([[5.0], [6.0]]), 1.0, np.array([10, 20, 30]), 4.0, 1.2, 12)
+    assert t.shape == (2, 3)
+    low, high = tg.pooled_t_bounds(5, 5.1, [1.0, 2.0], [1.1, 2.1], 10, 4, 4.1, 1, 1.1, 12)
+    assert low.shape == high.shape == (2,)
+    low, high = tg.implied_correlation_bounds(5, 5.1, [1.0, 2.0], [1.1, 2.1], 4, 4.1, 1, 1.1, 12, 2, 2.1)
+    assert low.shape == high.shape == (2,)
+    assert isinstance(tg.t_welch(5, 1, 10, 4, 1, 10), np.ndarray)
