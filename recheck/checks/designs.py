@@ -245,8 +245,10 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
     """Group sizes are not printed: all splits that the df allow, or pairs."""
     if df is None or df.decimals > 0 or df.value < 1:
         return Fit((), "neither group sizes nor whole df are printed")
+    if claim.says("welch"):
+        return Fit((), "Welch's test is said, but group sizes are not printed")
     total = int(df.value) + 2
-    named = claim.says("independent", "pooled") and not claim.says("welch")
+    named = claim.says("independent", "pooled")
     ways = []
     for as_se in (False, True) if groups.unlabelled else (False,):
         extra = (SE_READING,) if as_se else ()

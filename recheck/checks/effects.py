@@ -10,7 +10,7 @@ from typing import Literal
 import numpy as np
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import SE_READING, Groups, fit_designs, known, sds, whole
+from recheck.checks.designs import SE_READING, Fit, Groups, fit_designs, known, sds, whole
 from recheck.checks.groups import link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
@@ -136,26 +136,48 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
         yield unchecked(case, "d-from-groups", name, fit.reason, claims)
         return
     foreign = foreign_model(claims, fitted=fit.sure)
-    printed = unsigned(case.claim.values[name])
-    n1, n2, doubts = groups.n1, groups.n2, link_doubts(case)
-    ways: list[Way] = []
-    independent = fit.design != "paired" and not case.claim.says("paired", "repeated", "one-sample")
-    if independent:
-        if n1 is None or n2 is None:
-            total = (whole(case.claim.values.get("df")) or whole(case.claim.values.get("df2")) or 0) + 2
-            ways += _split_ways(name, groups, total)
-            doubts = (*doubts, "the effect is that of these two groups (their sizes are not printed)")
+    numbers = {name: unsigned(case.claim.values[name]), **groups.numbers}
+    if "t" in case.claim.values:
+        numbers["t"] = unsigned(case.claim.values["t"])
+    sized = groups.n1 is not None and groups.n2 is not None
+    doubts = (
+        *link_doubts(case),
+        *(() if sized else ("the effect is that of these two groups (their sizes are not printed)",)),
+    )
+    comparison = Comparison(
+        check="d-from-groups",
+        quantity=name,
+        numbers=numbers,
+        ways=tuple(_group_ways(case.claim, name, groups, fit)),
+        claims=claims,
+        bounds=Interval(0.0, INFINITY),
+        doubts=doubts,
+        excuses=(foreign,) if foreign else (),
+    )
+    yield judge(case, comparison)
+
+
+def _group_ways(claim: Claim, name: str, groups: Groups, fit: Fit) -> Iterator[Way]:
+    """Ways from the two groups to d: as independent groups, as pairs, by rough formulas from t."""
+    if fit.design != "paired" and not claim.says("paired", "repeated", "one-sample"):
+        if groups.n1 is None or groups.n2 is None:
+            df = whole(claim.values.get("df")) or whole(claim.values.get("df2")) or 0
+            yield from _split_ways(name, groups, df + 2)
         else:
-            ways += _independent_ways(name, groups, n1, n2)
-    if fit.design != "independent" or case.claim.says("paired", "repeated"):
-        ways.append(_paired_way(groups, name, float(n1 or 2)))
-    yield judge(
-        case,
-        Comparison(
-            "d-from-groups", name, {name: printed, **groups.numbers}, tuple(ways), claims,
-            bounds=Interval(0.0, INFINITY), doubts=doubts, excuses=(foreign,) if foreign else (),
-        ),
-    )  # fmt: skip
+            yield from _independent_ways(name, groups, groups.n1, groups.n2)
+            yield from _rough_ways(claim, name, groups.n1 + groups.n2)
+    if fit.design != "independent" or claim.says("paired", "repeated"):
+        yield _paired_way(groups, name, float(groups.n1 or 2))
+
+
+def _rough_ways(claim: Claim, name: str, total: int) -> Iterator[Way]:
+    """d from the printed t by a formula for equal groups, whatever the sizes are."""
+    if "t" not in claim.values or total <= 2:
+        return
+    for words, factor in ((BY_DF, 2 / math.sqrt(total - 2)), (BY_TOTAL, 2 / math.sqrt(total))):
+        for kind, more in _corrections(name):
+            c = correction(kind, total - 2)
+            yield Way(_times_t(factor * c.low, factor * c.high), (words, *more))
 
 
 def _split_ways(name: str, groups: Groups, total: int) -> Iterator[Way]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable, Iterator
+from dataclasses import dataclass
 
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.designs import Groups, fit_designs, sds
@@ -35,22 +36,60 @@ def level_of(claim: Claim) -> tuple[float, bool]:
     return (level, True) if 0.5 <= level < 1 else (0.95, False)
 
 
-def _t_of_ci(
-    level: float, df: float, width: float = 1.0, width_high: float | None = None, by_hand: float = 0.0
-) -> Callable[[Box], tuple[Interval, ...]]:
+@dataclass(frozen=True, slots=True)
+class Slack:
+    """How far an interval may be from the t interval: its centre in its own unit, its width by a factor."""
+
+    shift: float = 0.0
+    narrower: float = 1.0
+    wider: float = 1.0
+
+
+def _t_of_ci(level: float, df: float) -> Callable[[Box], tuple[Interval, ...]]:
     """|t| from the ends of an interval: crit (low + high)/(high − low), over the box of both ends."""
 
     def implied(box: Box) -> tuple[Interval, ...]:
         low, high = box["ci_low"], box["ci_high"]
-        half = by_hand * (high.high - low.low) / 2
-        a, b = Interval(low.low - half, low.high + half), Interval(high.low - half, high.high + half)
-        if a.high >= b.low:
+        if low.high >= high.low:
             return ()
-        least, most = intervals.t_from_ci_bounds(a.low, a.high, b.low, b.high, level, df)
-        t = Interval(float(least), float(most)).absolute()
-        return (Interval(t.low * width, t.high * (width_high or width)),)
+        least, most = intervals.t_from_ci_bounds(low.low, low.high, high.low, high.high, level, df)
+        return (Interval(float(least), float(most)).absolute(),)
 
     return implied
+
+
+def _loose_t(
+    level: float, df: float, slack: Slack, shift_by_width: float = 0.0
+) -> Callable[[Box], tuple[Interval, ...]]:
+    """|t| where centre and width of the interval are known but for some slack."""
+    c = float(t_quantile((1 - level) / 2, df))
+
+    def implied(box: Box) -> tuple[Interval, ...]:
+        low, high = box["ci_low"], box["ci_high"]
+        narrow, broad = (high.low - low.high) / 2, (high.high - low.low) / 2
+        if narrow <= 0:
+            return (Interval(0.0, math.inf),)
+        shift = slack.shift + shift_by_width * broad
+        centre = Interval((low.low + high.low) / 2 - shift, (low.high + high.high) / 2 + shift).absolute()
+        return (Interval(c * centre.low / broad * slack.narrower, c * centre.high / narrow * slack.wider),)
+
+    return implied
+
+
+def _hand_slack(case: Case) -> Slack:
+    """What working the interval out from rounded means and SDs can do to it.
+
+    Two rounded means move the centre by at most one unit of their last digit, a rounded SD the
+    width by its own half unit. Without the groups, the difference and the ends tell the unit, and
+    an SD of two significant digits is taken for granted.
+    """
+    printed = [case.claim.values[n] for n in ("mean_difference", "ci_low") if n in case.claim.values]
+    printed += [group.values["mean"] for group in case.groups]
+    shift = max(float(number.unit) for number in printed)
+    spreads = [group.values[n] for group in case.groups for n in ("sd", "se") if n in group.values]
+    shares = [float(spread.unit) / 2 / max(abs(spread.number), float(spread.unit) / 2) for spread in spreads]
+    relative = min(max((0.05, *shares)), 0.95)
+    return Slack(shift, 1 - relative, 1 + relative)
 
 
 @check(
@@ -72,7 +111,9 @@ def _t_of_ci(
 def t_from_ci(case: Case) -> Iterable[Finding]:
     """Compare |t| with the interval of the mean difference that it belongs to."""
     claim = case.claim
-    bare = claim.interval_of is None and not any(name in claim.values for name in ESTIMATES)
+    bare = (
+        claim.interval_of is None and len(case.groups) == 2 and not any(n in claim.values for n in ESTIMATES)
+    )
     if not (claim.interval_of == "mean_difference" or bare):
         return
     low, high = ends(claim)
@@ -87,7 +128,7 @@ def t_from_ci(case: Case) -> Iterable[Finding]:
         check="t-from-ci",
         quantity="t",
         numbers=numbers,
-        ways=_ci_ways(claim, df),
+        ways=_ci_ways(claim, df, _hand_slack(case)),
         bounds=Interval(0, math.inf),
         excuses=_ci_excuses(claim),
         doubts=tuple(doubts),
@@ -105,16 +146,19 @@ def _ci_excuses(claim: Claim) -> tuple[str, ...]:
     return tuple(reason for word, reason in foreign.items() if claim.suggests(word))[:1]
 
 
-def _ci_ways(claim: Claim, df: float) -> tuple[Way, ...]:
+def _ci_ways(claim: Claim, df: float, slack: Slack) -> tuple[Way, ...]:
     level, printed = level_of(claim)
     unstated = () if printed else (f"the interval is a {level:.0%} one",)
     normal = float(z_quantile((1 - level) / 2)) / float(t_quantile((1 - level) / 2, df))
-    ways = [Way(_t_of_ci(level, df), unstated), Way(_t_of_ci(level, df, normal), (*unstated, NORMAL))]
-    ways.append(Way(_t_of_ci(level, df, min(normal, 0.95), 1.05, 0.1), (*unstated, BY_HAND)))
+    ways = [Way(_t_of_ci(level, df), unstated)]
+    ways.append(Way(_loose_t(level, df, Slack(0.0, normal, normal)), (*unstated, NORMAL)))
+    by_hand = Slack(slack.shift, slack.narrower * min(normal, 1.0), slack.wider)
+    ways.append(Way(_loose_t(level, df, by_hand), (*unstated, BY_HAND)))
     for other in (0.90, 0.95, 0.99):
         if other != level:
             ways.append(Way(_t_of_ci(other, df), (f"the interval is a {other:.0%} one",)))
-    ways.append(Way(_t_of_ci(level, df, NARROWER, WIDER, 0.35), (*unstated, OTHER_METHOD)))
+    other_method = Slack(0.0, NARROWER, WIDER)
+    ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (*unstated, OTHER_METHOD)))
     return tuple(ways)
 
 
@@ -141,7 +185,7 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
     df = claim.values.get("df")
     known = df is not None and df.number > 0
     numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
-    ways = _p_ways(claim, df.number if known and df is not None else None)
+    ways = _p_ways(case, df.number if known and df is not None else None)
     doubts = () if known else ("p and the interval come from one and the same test (no df are printed)",)
     excess = (
         "p may be adjusted for several tests" if claim.suggests("adjusted-p", "adjusted-p-post-hoc") else ""
@@ -161,9 +205,9 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
     )
 
 
-def _p_ways(claim: Claim, df: float | None) -> tuple[Way, ...]:
+def _p_ways(case: Case, df: float | None) -> tuple[Way, ...]:
     ways = []
-    for way in _ci_ways(claim, df if df is not None else 1e9):
+    for way in _ci_ways(case.claim, df if df is not None else 1e9, _hand_slack(case)):
 
         def implied(
             box: Box, inner: Callable[[Box], tuple[Interval, ...]] = way.implied
@@ -179,7 +223,7 @@ def _p_ways(claim: Claim, df: float | None) -> tuple[Way, ...]:
 
         halved = way.unstated
         ways.append(Way(implied, halved))
-        if not claim.suggests("two-tailed") and len(halved) <= 1:
+        if not case.claim.suggests("two-tailed") and len(halved) <= 1:
 
             def one(box: Box, inner: Callable[[Box], tuple[Interval, ...]] = implied) -> tuple[Interval, ...]:
                 return tuple(Interval(i.low / 2, i.high / 2) for i in inner(box))

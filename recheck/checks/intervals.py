@@ -107,12 +107,20 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
     doubts = [f"the interval belongs to {shown(name)}, not to {shown(other)}" for other in others]
     if claim.interval_of is None:
         doubts.append(f"the interval belongs to {shown(name)}")
-    if name in STANDARDIZED and claim.kind != "estimate" and not _surely_of_effect(case, low, high):
-        doubts.append(f"the interval belongs to {shown(name)}, not to a mean or a difference told elsewhere")
+    excuse = ""
+    if name in STANDARDIZED and claim.kind != "estimate":
+        if len(case.groups) != 2:
+            doubts.append(
+                f"the interval belongs to {shown(name)}, not to a mean or difference told elsewhere"
+            )
+        elif not _surely_of_effect(case, low, high):
+            excuse = f"the interval may be that of a mean or of the difference, not of {shown(name)}"
     if ratio and claim.suggests("covariate-adjusted", "multi-regression"):
         doubts.append("ratio and interval come from the same model")
     apart = name in NONCENTRAL or claim.suggests("bayesian", "bootstrap")
-    excuses = (f"an interval of this kind may leave out its own {shown(name)}",) if apart else ()
+    if apart:
+        excuse = f"an interval of this kind may leave out its own {shown(name)}"
+    excuses = (excuse,) if excuse else ()
     ways = (Way(implied),)
     yield judge(
         case, Comparison("ci-holds-estimate", name, numbers, ways, doubts=tuple(doubts), excuses=excuses)
@@ -124,9 +132,7 @@ STANDARDIZED = ("d", "g", "delta", "d_z", "d_av", "d_rm")
 
 def _surely_of_effect(case: Case, low: Printed, high: Printed) -> bool:
     """Tell whether an interval beside a test and its effect can be that of no mean or difference."""
-    means = [group.values["mean"] for group in case.groups if "mean" in group.values]
-    if len(means) != 2:
-        return False
+    means = [group.values["mean"] for group in case.groups]
     interval = Interval(low.interval().low, high.interval().high)
     difference = abs(means[0].number - means[1].number)
     told = (*(mean.number for mean in means), difference, -difference)

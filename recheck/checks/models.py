@@ -7,13 +7,13 @@ from collections.abc import Sequence
 from recheck.model import STATED, Claim
 
 FOREIGN = (
-    "covariate-adjusted", "mixed-model", "imputed", "weighted", "robust", "bootstrap", "bayesian", "contrast",
+    "covariate-adjusted", "mixed-model", "imputed", "transformed", "weighted", "robust", "bootstrap", "bayesian", "contrast",
     "marginal", "within-subject-se", "rank-test", "multi-regression", "disattenuated",
 )  # fmt: skip
 """What makes means and SDs another model's than that of the plain two-group test."""
 
 
-BESIDE_FITTING_DF = ("imputed", "weighted", "robust", "within-subject-se")
+BESIDE_FITTING_DF = ("imputed", "transformed", "weighted", "robust", "within-subject-se")
 """Of those, what leaves the df of the plain two-group test as they are."""
 
 

@@ -8,11 +8,14 @@ from dataclasses import dataclass, field
 from itertools import pairwise
 
 import numpy as np
+import regex
 
 from recheck.documents.joining import is_finished, joined_text
 from recheck.documents.lines import Line
 from recheck.documents.sections import captioned, is_named_section, opens_references
 from recheck.model import PassageKind
+
+_LISTED = regex.compile(r"(?:\[\d{1,3}\]|\d{1,3}[.)])\s+\p{Lu}|[•▪–] ")
 
 
 @dataclass(slots=True, eq=False)
@@ -153,7 +156,7 @@ def _parted(lines: Sequence[Line], at: int, type_: Type, tabular: bool) -> bool:
         return True
     if not ended:
         return (_is_centred(before) and not _is_centred(line)) or _is_label(before, line)
-    return _is_indented(lines, at) or not _fills(lines, at - 1)
+    return _is_indented(lines, at) or not _fills(lines, at - 1) or _LISTED.match(line.text) is not None
 
 
 def _is_label(before: Line, line: Line) -> bool:

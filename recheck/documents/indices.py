@@ -11,6 +11,10 @@ _SMALL = 0.88
 """A glyph below this share of its neighbour's size can be an index; TeX sets 0.7, Word 0.65."""
 
 
+_TALLEST = 40.0
+_MOST_PAIRS = 4_000_000
+
+
 def hosts(words: Words, chosen: NDArray[np.intp], around: NDArray[np.bool_]) -> NDArray[np.intp]:
     """For each word the larger word that it is an index of, or itself."""
     host = np.arange(len(words))
@@ -80,9 +84,13 @@ def pairs(
 ) -> tuple[NDArray[np.intp], NDArray[np.intp]]:
     """Places in `ones` and members of `others` whose base lines are within `reach` em of one another."""
     others = others[np.argsort(words.base[others], kind="stable")]
-    room = reach * float(words.size[others].max())
-    low = np.searchsorted(words.base[others], words.base[ones] - room)
-    counts = np.searchsorted(words.base[others], words.base[ones] + room) - low
+    room = reach * min(float(words.size[others].max()), _TALLEST)
+    while True:
+        low = np.searchsorted(words.base[others], words.base[ones] - room)
+        counts = np.searchsorted(words.base[others], words.base[ones] + room) - low
+        if counts.sum() <= _MOST_PAIRS:
+            break
+        room /= 2  # a figure of many thousand labels must not cost gigabytes
     one = np.repeat(np.arange(len(ones)), counts)
     within = np.arange(len(one)) - np.repeat(np.cumsum(counts) - counts, counts)
     return one, others[np.repeat(low, counts) + within]

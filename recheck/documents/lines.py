@@ -14,6 +14,8 @@ from recheck.documents.indices import hosts, pairs
 from recheck.documents.words import Words, space_gap
 
 SPACE = 0x20
+_LINE_LENGTH = 20000.0
+"""Longer in points than any page is wide: the PDF format allows 14400."""
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -147,13 +149,19 @@ def _stack_keys(words: Words, marks: NDArray[np.uint8], line: NDArray[np.intp]) 
     """Where each word sorts: one stacked under a raised word directly after it."""
     keys = words.x0.copy()
     raised, lowered = np.flatnonzero(marks == RAISED), np.flatnonzero(marks == LOWERED)
-    if len(raised) and len(lowered):
-        apart = np.abs(words.x0[lowered][:, None] - words.x0[raised][None, :])
-        apart = np.where(line[lowered][:, None] == line[raised][None, :], apart, np.inf)
-        best = apart.argmin(axis=1)
-        stacked = apart[np.arange(len(lowered)), best] < 0.45 * words.size[lowered]
-        keys[raised[best[stacked]]] = np.minimum(keys[raised[best[stacked]]], keys[lowered[stacked]])
-        keys[lowered[stacked]] = keys[raised[best[stacked]]]
+    if not len(raised) or not len(lowered):
+        return keys
+    # Both on one long axis, line after line, so that neighbours on it are neighbours in a line.
+    axis = line * _LINE_LENGTH + words.x0.astype(np.float64)
+    raised = raised[np.argsort(axis[raised], kind="stable")]
+    after = np.searchsorted(axis[raised], axis[lowered])
+    before = np.maximum(after - 1, 0)
+    after = np.minimum(after, len(raised) - 1)
+    nearer = np.abs(axis[raised[before]] - axis[lowered]) <= np.abs(axis[raised[after]] - axis[lowered])
+    partner = raised[np.where(nearer, before, after)]
+    stacked = np.abs(axis[partner] - axis[lowered]) < 0.45 * words.size[lowered]
+    np.minimum.at(keys, partner[stacked], words.x0[lowered[stacked]])
+    keys[lowered[stacked]] = keys[partner[stacked]]
     return keys
 
 
@@ -162,7 +170,7 @@ def _gaps(
 ) -> NDArray[np.float32]:
     """The room before each character: from the rightmost edge of its line so far."""
     # Lines are laid one after another on a long axis so that one running maximum serves them all.
-    shift = (number * 20000).astype(np.float64)
+    shift = number * _LINE_LENGTH
     edge = np.maximum.accumulate(frame[:, 2] + shift)
     gap = np.zeros(len(frame), np.float64)
     gap[1:] = frame[1:, 0] + shift[1:] - edge[:-1]

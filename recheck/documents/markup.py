@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import html
+from contextlib import suppress
 
 import numpy as np
 import regex
@@ -39,6 +40,15 @@ def without_markup(text: str) -> tuple[str, str]:
     codes = as_codes(text)
     marks = np.zeros(len(codes), dtype=np.uint8)
     keep = np.ones(len(codes), dtype=bool)
+    with suppress(TimeoutError):  # megabytes of stars in one paragraph are no markup
+        _mark_deleted(text, codes, keep, marks)
+    plain_codes, plain_marks, _ = made_plain(codes[keep], marks[keep])
+    return as_text(plain_codes), mark_string(plain_marks)
+
+
+def _mark_deleted(
+    text: str, codes: NDArray[np.uint32], keep: NDArray[np.bool_], marks: NDArray[np.uint8]
+) -> None:
     for pattern, mark in _COMPILED:
         for match in pattern.finditer(text, timeout=_PATIENCE, overlapped=False):
             _take_pair(match, mark, keep, marks)
@@ -50,15 +60,13 @@ def without_markup(text: str) -> tuple[str, str]:
         if len(became) == 1 and became != "\n":
             codes[match.start()] = ord(became)
             keep[match.start() + 1 : match.end()] = False
-    plain_codes, plain_marks, _ = made_plain(codes[keep], marks[keep])
-    return as_text(plain_codes), mark_string(plain_marks)
 
 
 def _take_pair(
     match: regex.Match[str], mark: int | None, keep: NDArray[np.bool_], marks: NDArray[np.uint8]
 ) -> None:
     opening, closing = match[1], match[2]
-    if opening[0] == closing[0] and len(opening) != len(closing):
+    if opening[0] in "*_`" and len(opening) != len(closing):
         return
     if mark is not None:
         inside = slice(match.end(1), match.start(2))

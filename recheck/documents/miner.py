@@ -113,7 +113,7 @@ class _Device(PDFTextDevice):
         graphicstate: Any,
     ) -> float:
         text = _character(font, cid)
-        advance: float = font.char_width(cid) * fontsize * scaling
+        advance = _width(font, cid, text) * fontsize * scaling
         a, b, c, d, _, _ = matrix
         if font.is_vertical():
             left, low, right, high = -fontsize / 2, -fontsize, fontsize / 2, 0.0
@@ -157,6 +157,11 @@ def _character(font: Any, cid: int) -> str:
         return str(font.to_unichr(cid))
     except PDFUnicodeNotDefined:
         return chr(cid) if 0 < cid < 0xD800 else UNKNOWN
+
+
+def _width(font: Any, cid: int, text: str) -> float:
+    known = font.widths.get(cid, font.widths.get(text))
+    return float(known * font.hscale if isinstance(known, (int, float)) else font.char_width(cid))
 
 
 def _expanded(text: str) -> str:

@@ -15,19 +15,18 @@ from recheck.documents.sections import (
     is_named_section,
     looks_like_reference,
     opens_references,
+    unnumbered,
 )
 from recheck.model import Document, Passage, PassageKind
 
 _ATX = regex.compile(r" {0,3}(#{1,6})[ \t]+(.*?)(?:[ \t]+#+)?[ \t]*(?:\{[^{}]*\})?[ \t]*")
 _UNDERLINE = regex.compile(r" {0,3}(?:={3,}|-{3,})[ \t]*")
 _FENCE = regex.compile(r" {0,3}(```+|~~~+)")
-_RULE = regex.compile(r"\s*\|?\s*:?-{2,}:?\s*(?:\|\s*:?-{2,}:?\s*)*\|?\s*")
-_COMMENT = regex.compile(r"<!--.*?-->", regex.DOTALL)
+_RULE = regex.compile(r"\s*+\|?+\s*+:?-{2,}+:?\s*+(?:\|\s*+:?-{2,}+:?\s*+)*+\|?\s*+")
 _BULLET = regex.compile(r"\s*(?:[-*+•]|\d{1,3}[.)])\s+\S")
 _GAP = regex.compile(r"\S(?:\t| {3,})(?=\S)")
 _FOOTNOTE = regex.compile(r"\[\^[^\]\s]+\]:\s*")
 _STATEMENT = regex.compile(r"[=<>≤≥±]|\d\.\d|\d%|[.?!;:,]$")
-_NUMBERED = regex.compile(r"\s*(?:\d{1,2}(?:\.\d{1,2}){0,3}\.?\s+)?[^\d]*")
 _TITLE = regex.compile(r"title:\s*[\"']?(.*?)[\"']?\s*")
 
 
@@ -71,7 +70,16 @@ def text_document(
 
 def _lines(text: str) -> list[str]:
     text = text.removeprefix("\ufeff").replace("\r\n", "\n").replace("\r", "\n").replace("\f", " ")
-    return _COMMENT.sub(lambda m: "\n" * m[0].count("\n"), text, timeout=5.0).split("\n")
+    return _without_comments(text).split("\n")
+
+
+def _without_comments(text: str) -> str:
+    """Take HTML comments away and leave their line ends; one that is never closed is text."""
+    parts, at = [], 0
+    while (start := text.find("<!--", at)) >= 0 and (end := text.find("-->", start)) >= 0:
+        parts += [text[at:start], "\n" * text.count("\n", start, end)]
+        at = end + 3
+    return "".join([*parts, text[at:]])
 
 
 def _blocks(lines: list[str]) -> Iterator[_Block]:
@@ -160,9 +168,10 @@ def _is_plain_heading(block: _Block) -> bool:
         return False
     if is_named_section(line):
         return True
-    if _STATEMENT.search(line) or not _NUMBERED.fullmatch(line) or _BULLET.match(block.text):
+    name = unnumbered(line)
+    if _STATEMENT.search(name) or any(c.isdigit() for c in name) or (_BULLET.match(line) and name == line):
         return False
-    return len(line.split()) <= 12 and line.lstrip("0123456789. ")[:1].isupper()
+    return len(name.split()) <= 12 and name[:1].isupper()
 
 
 def _passages(blocks: list[_Block]) -> Iterator[Passage]:

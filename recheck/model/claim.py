@@ -32,6 +32,7 @@ STATED = {
     "covariate-adjusted": "means or tests adjusted for covariates (ANCOVA)",
     "mixed-model": "a mixed (multilevel) model",
     "imputed": "multiple imputation",
+    "transformed": "scores transformed before the analysis",
     "weighted": "weights",
     "robust": "robust standard errors",
     "bootstrap": "a bootstrap",

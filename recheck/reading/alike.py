@@ -37,12 +37,36 @@ _ALIKE |= {chr(0x2423 + k): greek for k, greek in enumerate("αβγδεζηθι�
 _ALIKE |= {
     chr(0xF000 + code): char
     for code, char in zip(
-        (0x3D, 0x3C, 0x3E, 0xB1, 0xB4, 0xA3, 0xB3, 0x2D, 0x63, 0x68, 0x61, 0x62, 0x6D, 0x72, 0x77, 0x66, 0xBB, 0x44, 0x2B),
+        (
+            0x3D,
+            0x3C,
+            0x3E,
+            0xB1,
+            0xB4,
+            0xA3,
+            0xB3,
+            0x2D,
+            0x63,
+            0x68,
+            0x61,
+            0x62,
+            0x6D,
+            0x72,
+            0x77,
+            0x66,
+            0xBB,
+            0x44,
+            0x2B,
+        ),
         "=<>±×≤≥-χηαβμρωφ≈Δ+",
         strict=True,
     )
 }
-MISCODED = frozenset("⫽ϭ⬍Ͻ⬎Ͼ⫺Ϫ⫾Ϯ⫻ϫ⫹ϩⱕⱖ") | {chr(0x2423 + k) for k in range(25)} | {chr(0xF000 + k) for k in range(256)}
+MISCODED = (
+    frozenset("⫽ϭ⬍Ͻ⬎Ͼ⫺Ϫ⫾Ϯ⫻ϫ⫹ϩⱕⱖ")
+    | {chr(0x2423 + k) for k in range(25)}
+    | {chr(0xF000 + k) for k in range(256)}
+)
 """Characters that only a wrong code table puts into a manuscript."""
 
 

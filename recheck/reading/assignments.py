@@ -2,53 +2,17 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field, replace
+from dataclasses import replace
 
 from recheck.model import Confidence, Printed, Relation
-from recheck.reading.degrees import bracketed_df, closing, subscript_df
+from recheck.reading.degrees import Values, bracketed_df, closing, subscript_df
+from recheck.reading.following import goes_on, value_after
 from recheck.reading.intervals import ends_at, interval_at
-from recheck.reading.numerals import Line, Number, number_at, piece, relation_at
+from recheck.reading.items import CI, DF, MEAN, SPREADS, Assignment, P
+from recheck.reading.numerals import Line, Number, number_at, piece
 from recheck.reading.spellings import Spelled, spelled_at
 from recheck.reading.symbols import Symbol
-
-
-@dataclass(frozen=True, slots=True)
-class Assignment:
-    """One quantity with its printed number, on the tokens from `first` up to `after` of its line.
-
-    `extra` holds what stands in its brackets (df, n, the ends of an interval); `several` marks a
-    number that tells of more than one result; `loose` one without a relation sign.
-    """
-
-    symbol: Symbol
-    printed: Printed
-    first: int
-    after: int
-    extra: tuple[tuple[str, Printed], ...] = ()
-    label: str = ""
-    stated: tuple[str, ...] = ()
-    several: bool = False
-    loose: bool = False
-    announced: str = ""
-    doubt: Confidence = "high"
-    notes: tuple[str, ...] = field(default=())
-
-    @property
-    def quantity(self) -> str:
-        """The name of the quantity."""
-        return self.symbol.quantity
-
-    @property
-    def part(self) -> str:
-        """What the quantity does in a claim."""
-        return self.symbol.part
-
-
-P = Symbol("p", "p")
-MEAN = Symbol("mean", "centre")
-CI = Symbol("ci", "interval")
-DF = Symbol("df", "df")
-SPREADS = {"sd": Symbol("sd", "spread"), "se": Symbol("se", "spread"), "": Symbol("spread", "spread")}
+from recheck.reading.tokens import words
 
 
 def assignments(line: Line) -> list[Assignment]:
@@ -117,6 +81,8 @@ def _interval(line: Line, index: int) -> list[Assignment]:
 def plus_minus(line: Line, index: int) -> Assignment | None:
     """The spread after a `±` at `index`, with the label that directly follows it."""
     index += line.at(index).text in ("°", "º")
+    bracket = line.at(index).text == "(" and line.at(index + 1).text == "±"
+    index += bracket
     sign = line.at(index)
     after = index + 1
     if sign.text == "+" and line.at(index + 1).text in ("/", "-"):
@@ -131,6 +97,7 @@ def plus_minus(line: Line, index: int) -> Assignment | None:
     if number is None or number.value < 0:
         return None
     after = number.after + (line.at(number.after).text in ("°", "º"))
+    after += bracket and line.at(after).text == ")"
     if not (named and named.symbol.part == "spread"):
         opened = line.at(after).text == "("
         named = spelled_at(line, after + opened)
@@ -143,60 +110,94 @@ def plus_minus(line: Line, index: int) -> Assignment | None:
 
 
 def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
-    symbol, after = spelled.symbol, spelled.after
-    extra, announced = (), ""
-    df = subscript_df(line, spelled)
-    if line.at(after).text == "." and line.at(after + 1).kind == "rel":
-        after += 1
-    if symbol.quantity == "F" and spelled.numbers and df is None and line.at(after).text not in ("(", "["):
+    """`t(22) = 1.71`, `M = 5.00`, `p < .001`; with what belongs to the number itself behind it."""
+    beside = _beside_symbol(line, spelled)
+    if beside is None:
         return []
-    bracket = None
-    if line.at(after).text in ("(", "["):
-        bracket = bracketed_df(line, after, symbol) if symbol.part == "statistic" and df is None else None
-        if bracket:
-            df, after = bracket.values, bracket.after
-        else:
-            past = _words_in_brackets(line, after, symbol)
-            if past is None and not (symbol.bare and line.at(after + 1).kind == "num"):
-                return []
-            if past is None and len(spelled.text) > 4 and symbol.part in ("estimate", "statistic"):
-                after += 1
-            announced = " ".join(t.low for t in line.tokens[after:past]) if past else ""
-            after = past or after
+    df, announced, after = beside
     symbol = _settled(line, spelled, df)
-    extra = df or ()
-    value = _value(line, after, symbol)
+    value = value_after(line, after, symbol)
     if value is None:
         missing = _not_significant(line, index, after, symbol)
         return [missing] if missing else []
     number, relation, loose = value
-    if loose and symbol.part in ("p", "centre") and number.decimals < 2 - (symbol.part == "centre"):
+    if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
+        return []
+    if loose and number.decimals < {"p": 2, "centre": 1, "statistic": 1}.get(symbol.part, 0):
         return []
     item = Assignment(
-        symbol, number.printed(line, relation), index, number.after, extra, spelled.label,
-        symbol.stated + spelled.stated, symbol.several or goes_on(line, number), loose, announced,
+        symbol, number.printed(line, relation), index, number.after, df or (), spelled.label,
+        symbol.stated + spelled.stated, symbol.several or goes_on(line, number) or _plural(spelled, df, relation), loose or spelled.glued, announced,
     )  # fmt: skip
+    df_after = _df_behind(line, item)
+    if df_after:
+        item = replace(item, extra=(("df", df_after[0]),), after=df_after[1], doubt="medium")
     if symbol.quantity == "df":
-        return _two_df(line, item)
+        return [_two_df(line, item) or item]
     following = plus_minus(line, number.after) or _unlabelled(line, item)
     return [item, following] if following else [item]
 
 
-def _two_df(line: Line, item: Assignment) -> list[Assignment]:
+def _plural(spelled: Spelled, df: Values | None, relation: Relation) -> bool:
+    """`rs > .30` tells of several correlations; `rs = .30` is one of ranks."""
+    return spelled.text in ("rs", "ds", "gs", "bs") and df is None and relation != "="
+
+
+def _df_behind(line: Line, item: Assignment) -> tuple[Printed, int] | None:
+    """`t = 2.73 (58)`: degrees of freedom in brackets behind the value."""
+    at = item.after
+    if (
+        item.quantity not in ("t", "chi2")
+        or item.extra
+        or line.at(at).text != "("
+        or line.at(at + 2).text != ")"
+    ):
+        return None
+    number = number_at(line, at + 1) if line.at(at + 1).text.replace(".", "", 1).isdigit() else None
+    return (number.printed(line), at + 3) if number and number.value >= 1 else None
+
+
+def _beside_symbol(line: Line, spelled: Spelled) -> tuple[Values | None, str, int] | None:
+    """Degrees of freedom beside a symbol, words in brackets after it, and the index after both.
+
+    None where brackets of another kind follow: then no number belongs to the symbol.
+    """
+    symbol, after = spelled.symbol, spelled.after
+    df = subscript_df(line, spelled)
+    if line.at(after).text == "." and line.at(after + 1).kind == "rel":
+        after += 1
+    if line.at(after).text not in ("(", "["):
+        lone = symbol.quantity == "F" and spelled.numbers and df is None
+        return None if lone else (df, "", after)
+    bracket = bracketed_df(line, after, symbol) if symbol.part == "statistic" and df is None else None
+    if bracket:
+        return bracket.values, "", bracket.after
+    past = _words_in_brackets(line, after, symbol)
+    if past:
+        return df, " ".join(t.low for t in line.tokens[after:past]), past
+    if symbol.bare and line.at(after + 1).kind == "num":
+        named = len(spelled.text) > 4 and symbol.part in ("estimate", "statistic")
+        return df, "", after + named
+    return None
+
+
+def _two_df(line: Line, item: Assignment) -> Assignment | None:
     """`df = 1, 38` beside an F."""
-    sign, token = line.at(item.after), line.at(item.after - 1)
     if not any(t.text in ("F", "f") for t in line.tokens[max(0, item.first - 12) : item.first]):
-        return [item]
+        return None
+    token = line.at(item.after - 1)
     if token.text.count(",") == 1:
         first, second = token.text.split(",")
-        one, two = piece(line, first, token.start, item.after), piece(line, second, token.end - len(second), item.after)
+        one: Number | None = piece(line, first, token.start, item.after)
+        two: Number | None = piece(line, second, token.end - len(second), item.after)
+    elif line.at(item.after).low in (",", "/", "&", "and", ";"):
+        one, two = number_at(line, item.after - 1), number_at(line, item.after + 1)
     else:
-        one_, two_ = number_at(line, item.after - 1), number_at(line, item.after + 1)
-        if sign.text not in (",", "/", "&", "and", ";") or one_ is None or two_ is None or two_.percent:
-            return [item]
-        one, two = one_, two_
+        return None
+    if one is None or two is None or two.percent:
+        return None
     extra = (("df1", one.printed(line)), ("df2", two.printed(line)))
-    return [replace(item, symbol=Symbol("df12", "df"), extra=extra, after=two.after, several=False)]
+    return replace(item, symbol=Symbol("df12", "df"), extra=extra, after=two.after, several=False)
 
 
 def _unlabelled(line: Line, item: Assignment) -> Assignment | None:
@@ -213,7 +214,9 @@ def _unlabelled(line: Line, item: Assignment) -> Assignment | None:
     extra = (("ci_low", low.printed(line)), ("ci_high", high.printed(line)))
     notes = ("the interval in brackets is not labelled as a confidence interval",)
     doubt: Confidence = "high" if "ci" in item.announced.split() else "medium"
-    return Assignment(CI, extra[0][1], item.after, after, extra, doubt=doubt, notes=notes if doubt == "medium" else ())
+    return Assignment(
+        CI, extra[0][1], item.after, after, extra, doubt=doubt, notes=notes if doubt == "medium" else ()
+    )
 
 
 def _settled(line: Line, spelled: Spelled, df: tuple[tuple[str, Printed], ...] | None) -> Symbol:
@@ -239,80 +242,17 @@ def _words_in_brackets(line: Line, index: int, symbol: Symbol) -> int | None:
     inside = line.tokens[index + 1 : end]
     if any(t.kind == "rel" for t in inside) or not any(t.kind == "word" for t in inside):
         return None
+    if symbol.part == "p":
+        return end + 1 if all(t.kind != "word" or t.low in _OF_P for t in inside) else None
     numbers = sum(t.kind == "num" for t in inside)
     level = numbers == 1 and any(t.text == "%" for t in inside)
-    return end + 1 if numbers == 0 or level or symbol.part == "p" else None
+    return end + 1 if numbers == 0 or level else None
 
 
-_LINKS = frozenset("of was were is are for value statistic equal to being the at as score ratio found".split())
-_AT_LAST = frozenset("of was were is are at as averaged equals equaled equalled equal to value score".split())
-
-
-def _value(line: Line, index: int, symbol: Symbol) -> tuple[Number, Relation, bool] | None:
-    """The number after a symbol, its relation, and whether a relation sign is missing."""
-    relation, after = relation_at(line, index)
-    if relation is not None and symbol.part == "size":
-        chained = spelled_at(line, after)
-        if chained and chained.symbol.part == "size":
-            return _value(line, chained.after, symbol)
-    if relation is not None:
-        number = number_at(line, after)
-        return (number, relation, False) if number else None
-    if line.at(index).kind == "rel":
-        return None
-    comma = line.at(index).text == "," and symbol.bare and symbol.part in ("spread", "estimate")
-    if line.at(index).text == ":" or comma:
-        number = number_at(line, index + 1)
-        if number:
-            return number, "=", True
-        return None
-    most = 8 if symbol.worded else 3
-    return _after_words(line, index, symbol, most)
-
-
-def _after_words(line: Line, index: int, symbol: Symbol, most: int) -> tuple[Number, Relation, bool] | None:
-    after = index
-    while after - index <= most:
-        token = line.at(after)
-        number = number_at(line, after)
-        if number and after > index and token.text in ("-", "+") and not token.spaced:
-            return None
-        if number:
-            direct = after == index
-            linked = not direct and line.at(after - 1).low in _AT_LAST
-            return (number, "=", True) if linked or (direct and symbol.bare and token.spaced) else None
-        relation, past = relation_at(line, after)
-        if relation is not None and after > index:
-            number = number_at(line, past)
-            return (number, relation, False) if number else None
-        if token.text == "-" and not token.spaced and line.at(after + 1).kind == "word" and after > index:
-            after += 1
-            continue
-        if token.kind != "word" or (not symbol.worded and token.low not in _LINKS | {"interaction", "trend"}):
-            return None
-        if spelled_at(line, after) and token.low not in ("age", "score", "a"):
-            return None
-        after += 1
-    return None
-
-
-def goes_on(line: Line, number: Number) -> bool:
-    """Tell whether a list or a range follows: `.41 and 1.92`, `.34 to .92`, `2.1, 2.3`."""
-    after = number.after
-    token = line.at(after)
-    if token.text == "," and line.at(after + 1).low in ("and", "or"):
-        after, token = after + 1, line.at(after + 1)
-    if token.low not in ("and", "or", "to", "vs", "versus", "through", "-", ",", "/", "&"):
-        return False
-    following = number_at(line, after + 1)
-    if following is None or interval_at(line, after + 1) or line.at(following.after).text == "±":
-        return False
-    alike = (following.decimals > 0) == (number.decimals > 0)
-    if token.text == ",":
-        return alike and following.decimals > 0
-    if token.low in ("and", "or") and number.decimals == 0:
-        return alike and line.at(following.after).kind != "word"
-    return alike
+_OF_P = words(
+    "two one tailed sided tail side t exact perm permutation adj adjusted corrected corr bonf bonferroni fdr holm tukey "
+    "uncorrected unadjusted asymptotic mc fisher trend interaction value het sig f chi z"
+)
 
 
 def _not_significant(line: Line, index: int, after: int, symbol: Symbol) -> Assignment | None:

@@ -6,20 +6,21 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from typing import Literal
 
-from recheck.reading.assignments import Assignment
-from recheck.reading.numerals import Line
+from recheck.reading.items import Assignment
+from recheck.reading.numerals import Line, part_of_unit
+from recheck.reading.tokens import words
 
 Gap = Literal["tight", "loose", "apart"]
 
-_CONNECTING = frozenset(
+_CONNECTING = words(
     "and with an a the at is was were effect size sizes of corresponding two tailed one sided exact associated or by "
     "its their value test two-sided uncorrected corrected adjusted bonferroni tukey holm fdr gg greenhouse geisser huynh "
     "feldt for s ms g kg mg cm mm m min h hz years year points ml % cohen cohens hedges partial yielding giving indicating "
     "observed both where as in each group per which had has mean overall model se sd i.e ie such that estimated sided "
     "power respectively however difference age only statistic resulting days hours seconds minutes kcal db μv mv "
-    "participants units percent all large small medium moderate very also approximately about μm μg".split()
+    "participants units percent all large small medium moderate very also approximately about μm μg"
 )
-_TURNS = frozenset("whereas but while although however versus vs than compared unlike".split())
+_TURNS = words("whereas but while although however versus vs than compared unlike")
 
 
 @dataclass(frozen=True, slots=True)
@@ -58,7 +59,7 @@ def drafts(items: Sequence[Assignment], line: Line) -> Iterator[Draft]:
             joins = _joins(current, item, items[index + 1 :], line)
             if joins is None:
                 yield Draft(tuple(current), line, inferred)
-                current, inferred = [], False
+                current, inferred = _carried(current, item, line), False
             elif joins == "loose":
                 inferred = True
         current.append(item)
@@ -66,12 +67,19 @@ def drafts(items: Sequence[Assignment], line: Line) -> Iterator[Draft]:
         yield Draft(tuple(current), line, inferred)
 
 
+def _carried(current: list[Assignment], item: Assignment, line: Line) -> list[Assignment]:
+    """An effect size with an interval of its own stands in a claim of its own as well."""
+    last = current[-1]
+    second = item.quantity == "ci" and last.part in ("effect", "estimate") and len(current) > 1
+    return [last] if second and gap(line, last, item)[0] == "tight" else []
+
+
 def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
     """How closely two assignments stand together, and whether a semicolon divides them."""
     between = line.tokens[last.after : item.first]
     semicolon = any(t.text == ";" for t in between)
     words = [t for t in between if t.kind == "word" and t.low not in _CONNECTING]
-    numbers = sum(t.kind == "num" for t in between)
+    numbers = sum(t.kind == "num" and not part_of_unit(line, k) for k, t in enumerate(between, last.after))
     if any(t.low in _TURNS for t in between):
         return "apart", semicolon
     if not words and numbers == 0 and len(between) <= 12:
@@ -149,34 +157,38 @@ _RESULT = ("statistic", "estimate", "effect")
 
 
 def _statistic(s: Situation) -> bool:
+    """A second statistic is another result, except r as effect size, and z beside U."""
     if not s.tight or s.taken:
         return False
     if s.has("statistic"):
-        names = {item.quantity for item in s.current if item.part == "statistic"}
-        if s.item.quantity == "r":
-            if s.holds("p") and s.coming("p", "statistic"):
-                return False
-            return not s.item.extra and "p" not in {i.quantity for i in s.current[-1:] if s.semicolon}
-        if names <= {"u", "w"} and s.item.quantity == "z":
-            return True
-        if names == {"z"} and s.item.quantity in ("u", "w"):
-            return True
-        if names == {"r"} and not s.holds("df", "p") and s.item.quantity in ("t", "z", "F"):
-            return True
-        return False
+        return _beside_statistic(s)
     if s.has(*_GROUP, "spread") and not s.has("estimate"):
         return False
     if s.has("estimate", "effect"):
-        return not s.holds("p") and not (s.semicolon and not s.has("estimate")) or (
-            s.holds("p") and not s.coming("p", "statistic") and not s.semicolon
-        )
+        if s.holds("p"):
+            return not s.coming("p", "statistic") and not s.semicolon
+        return s.has("estimate") or not s.semicolon
     if s.holds("p"):
         return not s.coming("p", "statistic") and not (s.has("other") and s.semicolon)
     return True
 
 
+def _beside_statistic(s: Situation) -> bool:
+    names = {item.quantity for item in s.current if item.part == "statistic"}
+    if s.item.quantity == "r":
+        own_p = s.holds("p") and (s.coming("p", "statistic") or (s.semicolon and s.current[-1].part == "p"))
+        return not s.item.extra and not own_p
+    if s.item.quantity == "z":
+        return names <= {"u", "w"} or (names == {"r"} and not s.holds("df", "p"))
+    if s.item.quantity in ("u", "w"):
+        return names == {"z"}
+    return names == {"r"} and not s.holds("df", "p") and s.item.quantity in ("t", "F")
+
+
 def _centre(s: Situation) -> bool:
-    return s.tight and not s.has("statistic", "estimate", "effect", "p", "centre", "spread", "interval", "other")
+    return s.tight and not s.has(
+        "statistic", "estimate", "effect", "p", "centre", "spread", "interval", "other"
+    )
 
 
 def _spread(s: Situation) -> bool:
@@ -188,11 +200,11 @@ def _spread(s: Situation) -> bool:
         return False
     if s.item.quantity == "sd":
         return s.holds("mean_difference") and not s.has("statistic")
-    return s.has("statistic", "estimate", "effect") and not s.semicolon or s.has("estimate")
+    return (s.has("statistic", "estimate", "effect") and not s.semicolon) or s.has("estimate")
 
 
 def _estimate(s: Situation) -> bool:
-    if s.taken or not s.tight or s.has(*_GROUP, "spread") and not s.has(*_RESULT):
+    if s.taken or not s.tight or (s.has(*_GROUP, "spread") and not s.has(*_RESULT)):
         return False
     if s.has("statistic"):
         if s.semicolon and s.holds("p"):
@@ -240,7 +252,9 @@ def _size(s: Situation) -> bool:
 def _df(s: Situation) -> bool:
     if s.item.quantity == "df12":
         return s.has("statistic") and not s.holds("df", "df1", "df2")
-    return s.has("statistic") and not s.holds("df", "df1", "df2") or (s.item.quantity == "df2" and s.holds("df1"))
+    return (s.has("statistic") and not s.holds("df", "df1", "df2")) or (
+        s.item.quantity == "df2" and s.holds("df1")
+    )
 
 
 def _other(s: Situation) -> bool:

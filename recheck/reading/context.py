@@ -12,7 +12,7 @@ import regex
 from recheck.model import Context, Printed
 from recheck.reading.groups import announced_spread
 from recheck.reading.numerals import Line, number_at, relation_at
-from recheck.reading.tokens import DIGITS, sentences, tokens
+from recheck.reading.tokens import DIGITS, sentences, tokens, words
 from recheck.reading.views import TIMEOUT, View
 from recheck.reading.wording import stated
 
@@ -38,7 +38,9 @@ def setting_of(views: Sequence[View]) -> Setting:
     alpha, notes = _alpha(views, comma)
     signs, brackets = _announced(views)
     whole = " ".join(view.text for view in views if _tells(view)).lower()
-    credible = "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
+    credible = (
+        "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
+    )
     return Setting(
         Context(alpha, stated(whole), tuple(notes)), signs, brackets,
         credible and "confidence interval" not in whole, comma,
@@ -57,7 +59,9 @@ def _tells(view: View) -> bool:
 
 @cache
 def _decimals() -> regex.Pattern[str]:
-    return regex.compile(r"(?<=[=<>≤≥±] ?-?)(?:\d*(?P<comma>,)(?:\d{1,2}|0\d{2})|\d*(?P<point>[.·])\d+)(?![\d,])")
+    return regex.compile(
+        r"(?<=[=<>≤≥±] ?-?)(?:\d*(?P<comma>,)(?:\d{1,2}|0\d{2})|\d*(?P<point>[.·])\d+)(?![.,]?\d)"
+    )
 
 
 def decimal_comma(texts: Iterable[str]) -> bool:
@@ -108,7 +112,9 @@ def _alpha(views: Sequence[View], comma: bool) -> tuple[Printed | None, list[str
     found: list[tuple[Printed, bool]] = []
     for view in views:
         lowered = view.text.lower()
-        if view.passage.kind == "heading" or not ("signific" in lowered or "alpha" in lowered or "α" in lowered):
+        if view.passage.kind == "heading" or not (
+            "signific" in lowered or "alpha" in lowered or "α" in lowered
+        ):
             continue
         for start, end in sentences(view):
             text = view.text[start:end]
@@ -140,7 +146,9 @@ def _share(level: Printed) -> float:
     return level.number / 100 if level.percent else level.number
 
 
-_AFTER = frozenset("alpha α level significance threshold p set than at significant values value cutoff criterion ps".split())
+_AFTER = words(
+    "alpha α level significance threshold p set than at significant values value cutoff criterion ps"
+)
 
 
 def _level_in(line: Line, low: str) -> Printed | None:
@@ -150,6 +158,8 @@ def _level_in(line: Line, low: str) -> Printed | None:
             continue
         number = number_at(line, index)
         if number is None:
+            continue
+        if line.at(index - 1).text == "=" and line.at(index - 2).low == "p":
             continue
         value = float(number.value) / (100 if number.percent else 1)
         if not 0.0005 <= value <= 0.2 or (value >= 0.01 and not number.percent and number.decimals < 1):

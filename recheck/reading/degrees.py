@@ -6,11 +6,11 @@ from collections.abc import Iterable
 from dataclasses import dataclass, replace
 
 from recheck.model import Printed
+from recheck.reading.alike import FLAT
 from recheck.reading.numerals import Line, number_at, piece
 from recheck.reading.spellings import Spelled, spelled_at
 from recheck.reading.symbols import Symbol
-from recheck.reading.tokens import Token
-from recheck.reading.alike import FLAT
+from recheck.reading.tokens import Token, words
 
 Values = tuple[tuple[str, Printed], ...]
 
@@ -71,9 +71,9 @@ def bracketed_df(line: Line, index: int, symbol: Symbol) -> Bracket | None:
     return None if values is None else Bracket((*values, *named), end + 1)
 
 
-_HARMLESS = frozenset(
+_HARMLESS = words(
     "two tailed one sided welch paired independent unpaired corrected gg and tail side sample samples "
-    "student pooled uncorrected adjusted robust".split()
+    "student pooled uncorrected adjusted robust"
 )
 
 
@@ -96,26 +96,15 @@ def _numbers(line: Line, index: int, end: int) -> tuple[list[Printed], int]:
 
 
 def _split(text: str, line: Line, index: int, end: int) -> list[str] | None:
-    """Split `1,38` at its comma, unless another number follows it in the same brackets."""
+    """Split `1,38` at its comma, unless the comma groups thousands or is a decimal sign.
+
+    Beside another number in the brackets it is one of these: `(3.63, 1,252.61)`, `(1,5; 38,4)`.
+    """
     if "," not in text:
         return None
-    others = any(t.kind == "num" for t in [*line.tokens[index + 1 : end], *line.tokens[max(0, index - 2) : index]])
     first, _, rest = text.partition(",")
-    if others and line.at(index - 1).text in ("(", "[") and all(
-        t.kind != "num" or "," not in t.text for t in line.tokens[index + 1 : end]
-    ) and _has_semicolon(line, index, end):
-        return None
-    if others and line.at(index - 1).text not in ("(", "["):
-        return None
-    if others and (_has_semicolon(line, index, end) or line.decimal_comma):
-        return None
-    if others and len(rest) == 3 and rest.isdigit():
-        return None
-    return [first, rest]
-
-
-def _has_semicolon(line: Line, index: int, end: int) -> bool:
-    return any(t.text == ";" for t in line.tokens[index:end])
+    inside = [*line.tokens[index + 1 : end], *line.tokens[max(0, index - 2) : index]]
+    return None if any(t.kind == "num" for t in inside) else [first, rest]
 
 
 def _pieces(line: Line, token: Token, pieces: Iterable[str]) -> Iterable[Printed]:
@@ -127,6 +116,8 @@ def _pieces(line: Line, token: Token, pieces: Iterable[str]) -> Iterable[Printed
 
 def _named(quantity: str, numbers: list[Printed]) -> Values | None:
     """Name the unlabelled numbers of a bracket by the statistic before it."""
+    if quantity in ("u", "w", "z"):
+        return ()
     if quantity == "F":
         if len(numbers) == 2:
             return (("df1", numbers[0]), ("df2", numbers[1]))

@@ -40,9 +40,7 @@ class Repairs:
 @cache
 def _strange() -> regex.Pattern[str]:
     """A quick look for anything that may be a misread relation."""
-    return regex.compile(
-        r"[\x00-\x08\x0e-\x1f\ue000-\uf8ff\ufffd¼½þ]|[ ][5,.$#][ ]|[pP] ?[o4\\\[]0?\.\d"
-    )
+    return regex.compile(r"[\x00-\x08\x0e-\x1f\ue000-\uf8ff\ufffd¼½þ]|[ ][5,.$#][ ]|[pP] ?[o4\\\[]0?\.\d")
 
 
 @cache
@@ -102,12 +100,16 @@ def _table(texts: Sequence[str]) -> dict[str, str]:
             if relation:
                 table[sign] = relation
     if table:
-        table |= {sign: relation for sign, relation in (("$", "≥"), ("#", "≤")) if signs[sign] and sign not in table}
+        table |= {
+            sign: relation for sign, relation in (("$", "≥"), ("#", "≤")) if signs[sign] and sign not in table
+        }
     return table
 
 
 def _number(text: str) -> Decimal:
-    return Decimal("0" + text.lstrip("-−–2") if text.lstrip("-−–2").startswith(".") else text.strip("-−–") or "0")
+    return Decimal(
+        "0" + text.lstrip("-−–2") if text.lstrip("-−–2").startswith(".") else text.strip("-−–") or "0"
+    )
 
 
 def _equal(signs: Counter[str], after_statistic: Counter[str]) -> str | None:
@@ -131,7 +133,9 @@ def _relation_of_p(sign: str, numbers: list[Decimal], signs: Counter[str], known
         return None
     if greater:
         return ">"
-    return "<" if levels * 3 >= len(numbers) * 2 else None
+    # `p > .05` is as common as `p < .05`: only levels below that tell which of the two a strange sign is.
+    telling = sign in ",\\o\x03" or any(number <= Decimal("0.01") for number in numbers)
+    return "<" if telling and levels * 3 >= len(numbers) * 2 else None
 
 
 def _rewritten(text: str, table: Mapping[str, str]) -> tuple[str, dict[int, str]]:
@@ -161,7 +165,9 @@ def _correlations() -> regex.Pattern[str]:
 def _minus_is_digit(passages: Sequence[Passage]) -> bool:
     """Whether a `2` before a number may be a minus: correlations such as `r = 2.45` say so."""
     return any(
-        match["number"].startswith("2") for p in passages for match in _correlations().finditer(p.text, timeout=TIMEOUT)
+        match["number"].startswith("2")
+        for p in passages
+        for match in _correlations().finditer(p.text, timeout=TIMEOUT)
     )
 
 
@@ -169,7 +175,9 @@ def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, r
     """The claim with a note on each sign that was read by another code, and less confidence where it may be a digit."""
     start, end = span
     places = repairs.places.get(index, {})
-    signs = {places[at]: repairs.table[places[at]] for at in range(start, end) if at in places} if places else {}
+    signs = (
+        {places[at]: repairs.table[places[at]] for at in range(start, end) if at in places} if places else {}
+    )
     strange = sorted(MISCODED.intersection(passage.text[start:end]))
     if not signs and not strange:
         return claim

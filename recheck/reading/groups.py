@@ -6,11 +6,12 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from recheck.model import Printed
-from recheck.reading.assignments import MEAN, SPREADS, Assignment
-from recheck.reading.numerals import Line, Number, number_at
+from recheck.reading.items import MEAN, SPREADS, Assignment
+from recheck.reading.numerals import Line, Number, number_at, part_of_unit
 from recheck.reading.symbols import Symbol
+from recheck.reading.tokens import words
 
-_NOT_UNITS = frozenset("and or whereas while but vs versus than to from with without".split())
+_NOT_UNITS = words("and or whereas while but vs versus than to from with without")
 
 
 def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[Assignment]:
@@ -27,7 +28,8 @@ def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[
         if item.quantity == "ci" and not item.several and not _has_centre(found, item, line):
             number = _mean_before(line, item, found[-1].after if found else 0)
             if number:
-                found.append(replace(number, symbol=ESTIMATE))
+                note = "the number before the interval is taken for its estimate"
+                found.append(replace(number, symbol=ESTIMATE, doubt="medium", notes=(note,)))
         found.append(item)
         pair = _in_brackets(line, item, announced)
         if pair:
@@ -66,7 +68,12 @@ def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None
     at, words, opened = spread.first - 1, 0, False
     while at >= stop:
         token = line.at(at)
+        if part_of_unit(line, at):
+            at -= 1
+            continue
         if token.kind == "num":
+            if line.at(at + 1).text == ")" and line.at(at - 1).text == "(":
+                return None
             return _mean_at(line, at, stop, opened or spread.printed.percent)
         if token.kind == "word":
             words += 1
@@ -86,16 +93,39 @@ def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None
 
 
 def _mean_at(line: Line, at: int, stop: int, opened: bool) -> Assignment | None:
-    first = at - 1 if line.at(at - 1).text in ("-", "+") and line.at(at - 2).kind in ("word", "rel", "sign") else at
+    first = (
+        at - 1
+        if line.at(at - 1).text in ("-", "+") and line.at(at - 2).kind in ("word", "rel", "sign")
+        else at
+    )
     before = line.at(first - 1)
     if first < stop or before.kind == "num" or before.text in ("/", "-"):
         return None
-    if before.low in ("experiment", "study", "figure", "table", "n", "item", "day", "week", "session", "chapter"):
+    if before.low in (
+        "experiment",
+        "study",
+        "figure",
+        "table",
+        "n",
+        "item",
+        "day",
+        "week",
+        "session",
+        "chapter",
+    ):
         return None
     number = number_at(line, first)
     if number is None or (number.decimals == 0 and not opened):
         return None
-    return Assignment(MEAN, number.printed(line), first, number.after, loose=True)
+    told = {t.low for t in line.tokens[max(stop, first - 5) : first]}
+    symbol = ESTIMATE if told & _NO_MEANS else MEAN
+    return Assignment(symbol, number.printed(line), first, number.after, loose=True)
+
+
+_NO_MEANS = words(
+    "difference differences change slope coefficient estimate increase decrease increased decreased gain reduction effect "
+    "gained lost by reduced"
+)
 
 
 def _in_brackets(line: Line, item: Assignment, announced: str) -> Assignment | None:
@@ -106,7 +136,11 @@ def _in_brackets(line: Line, item: Assignment, announced: str) -> Assignment | N
     while line.at(at).kind == "word" and at < item.after + 2 and line.at(at).low not in _NOT_UNITS:
         at += 1
     number = _bracketed(line, at)
-    if number is None or (number.decimals == 0 and item.printed.decimals > 0) or number.percent != item.printed.percent:
+    if (
+        number is None
+        or (number.decimals == 0 and item.printed.decimals > 0)
+        or number.percent != item.printed.percent
+    ):
         return None
     kind = _spread_word(item.announced) or announced
     return Assignment(SPREADS[kind], number.printed(line), at, number.after + 1, loose=True)
@@ -131,14 +165,18 @@ def _announced_pairs(line: Line, items: Sequence[Assignment], announced: str) ->
         number = number_at(line, at)
         if number is None or line.at(at - 1).kind == "rel":
             continue
-        after = number.after + (line.at(number.after).kind == "word" and line.at(number.after).low not in _NOT_UNITS)
+        after = number.after + (
+            line.at(number.after).kind == "word" and line.at(number.after).low not in _NOT_UNITS
+        )
         spread = _bracketed(line, after)
         if spread is None or spread.percent or (spread.decimals == 0 and number.decimals > 0):
             continue
         first = at - 1 if line.at(at - 1).text == "-" and line.at(at - 1).spaced else at
         signed = number_at(line, first) or number
         pairs.append(Assignment(MEAN, signed.printed(line), first, number.after, loose=True))
-        pairs.append(Assignment(SPREADS[announced], spread.printed(line), after, spread.after + 1, loose=True))
+        pairs.append(
+            Assignment(SPREADS[announced], spread.printed(line), after, spread.after + 1, loose=True)
+        )
     return pairs
 
 
@@ -150,8 +188,8 @@ _SPREAD_WORDS = (
 
 def _spread_word(text: str) -> str:
     """`sd` or `se` where the text names one of them, else ""."""
-    for kind, words in _SPREAD_WORDS:
-        for word in words:
+    for kind, names in _SPREAD_WORDS:
+        for word in names:
             at = text.find(word)
             end = at + len(word)
             if at >= 0 and not text[at - 1 : at].isalpha() and not text[end : end + 1].isalpha():
@@ -188,8 +226,7 @@ def announced_spread(text: str) -> tuple[str, str]:
     return after_sign, in_brackets
 
 
-
-_EACH = frozenset("group groups condition conditions arm arms cell cells sample".split())
+_EACH = words("group groups condition conditions arm arms cell cells sample")
 
 
 def size_of_each(items: Sequence[Assignment], line: Line) -> tuple[Printed | None, list[Assignment]]:
@@ -197,6 +234,9 @@ def size_of_each(items: Sequence[Assignment], line: Line) -> tuple[Printed | Non
 
     `n = 20 in each group`, `20 per group`, `24 bakers per condition`.
     """
+    items = [
+        item for item in items if not (item.part == "size" and line.at(item.first - 1).low in ("both", "all"))
+    ]
     for item in items:
         if item.part == "size" and not item.several and _of_each(line, item.after, words=0):
             return item.printed, [other for other in items if other is not item]

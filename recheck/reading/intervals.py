@@ -7,6 +7,7 @@ from decimal import Decimal
 
 from recheck.reading.numerals import Line, Number, number_at, piece
 from recheck.reading.spellings import spelled_at
+from recheck.reading.tokens import words
 
 
 @dataclass(frozen=True, slots=True)
@@ -71,9 +72,9 @@ def _level_after(line: Line, index: int) -> tuple[Number | None, int]:
     return None, index
 
 
-_FILLERS = frozenset(
+_FILLERS = words(
     "of for the was were is from ranged ranging between difference mean in a an around about on limits bounds "
-    "lower upper effect estimate differences ci cis slope".split()
+    "lower upper effect estimate differences ci cis slope"
 )
 
 
@@ -87,7 +88,11 @@ def _to_ends(line: Line, index: int) -> tuple[int, str, bool]:
             break
         if token.text in (":", ","):
             index += 1
-        elif token.text in ("(", "[") and line.at(index + 1).low in ("ci", "cis") and line.at(index + 2).text in (")", "]"):
+        elif (
+            token.text in ("(", "[")
+            and line.at(index + 1).low in ("ci", "cis")
+            and line.at(index + 2).text in (")", "]")
+        ):
             index += 3
         elif token.kind == "word" and token.low in _FILLERS:
             belongs = "difference" if token.low.startswith("difference") else belongs
@@ -127,7 +132,7 @@ def ends_at(line: Line, index: int) -> tuple[Number, Number, int] | None:
     return low, high, after
 
 
-_UNITS = frozenset("g kg mg cm mm m s ms min h points years months days kcal ml l %".split())
+_UNITS = words("g kg mg cm mm m s ms min h points years months days kcal ml l %")
 
 
 def _one_token(line: Line, index: int) -> tuple[Number, Number, int] | None:

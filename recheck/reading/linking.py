@@ -6,6 +6,7 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from recheck.model import Claim
+from recheck.reading.tokens import words
 
 
 @dataclass(frozen=True, slots=True)
@@ -69,12 +70,14 @@ def _pair(test: Placed, summaries: _Sentences, tests: _Sentences) -> tuple[tuple
         return tuple(own), "the only two group summaries in the same sentence", True
     if here or len(rivals) != 1:
         return (), "", True
-    for step, words in ((-1, "the sentence before"), (1, "the sentence after")):
+    for step, where in ((-1, "the sentence before"), (1, "the sentence after")):
         near = summaries.get((test.passage, test.sentence + step), [])
         if near:
             others = [k for k in (step, 2 * step) if (test.passage, test.sentence + k) in tests]
             sure = len(near) == 2 and not others and _alike(near) and _same_outcome(test, near)
-            return (tuple(near), f"the only two group summaries in {words}", False) if sure else ((), "", True)
+            return (
+                (tuple(near), f"the only two group summaries in {where}", False) if sure else ((), "", True)
+            )
     return (), "", True
 
 
@@ -113,7 +116,7 @@ def _same_outcome(test: Placed, near: Sequence[Placed]) -> bool:
     return bool(mine & other) or len(mine) <= 4
 
 
-_COMMON = frozenset(
+_COMMON = words(
     "significant significantly difference between there which their these those groups group conditions condition "
-    "higher lower compared results revealed showed effect where other participants".split()
+    "higher lower compared results revealed showed effect where other participants"
 )

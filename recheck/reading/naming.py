@@ -5,8 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 
 from recheck.model import ClaimKind, Confidence, Printed
-from recheck.reading.assignments import Assignment
 from recheck.reading.claims import Draft
+from recheck.reading.items import Assignment
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,7 +50,7 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
     if kind != "correlation" and "r" in values:
         stated.append("effect-size-r")
     foreign = values.pop("other", None)
-    if foreign is not None and kind == "estimate" and "ci_low" in values:
+    if foreign is not None and "ci_low" in values and not draft.part("estimate", "effect", "statistic"):
         values["estimate"] = foreign
     confidence: Confidence = "high"
     if draft.inferred:
@@ -70,7 +70,7 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
     """The quantities that one assignment gives to its claim."""
     if item.part == "interval":
         ends = {"ci": ("ci_low", "ci_high"), "range": ("min", "max")}.get(item.quantity)
-        if ends is None:
+        if ends is None or (item.quantity == "range" and not draft.part("centre")):
             return []
         given = dict(item.extra)
         level = [("ci_level", given["ci_level"])] if "ci_level" in given and item.quantity == "ci" else []
@@ -115,6 +115,8 @@ def _kind(draft: Draft, values: dict[str, Printed], says: tuple[str, ...]) -> Cl
 def _test_kind(
     quantity: str, kind: ClaimKind, draft: Draft, values: dict[str, Printed], says: tuple[str, ...]
 ) -> ClaimKind | None:
+    if quantity in ("t", "F", "chi2") and not set(values) - {quantity}:
+        return kind if values[quantity].relation == "<" else None
     if quantity == "w":
         cramers = "w" in values and draft.get("w") is not None and abs(values["w"].number) <= 1
         return None if cramers or "p" not in values else "rank-test"
@@ -137,7 +139,9 @@ def _interval_of(draft: Draft) -> str | None:
             if item.label == "difference":
                 return "mean_difference"
             if previous is None or previous.part in ("p", "size", "df", "other", "spread"):
-                spread_first = previous is not None and previous.part == "spread" and draft.part("estimate", "centre")
+                spread_first = (
+                    previous is not None and previous.part == "spread" and draft.part("estimate", "centre")
+                )
                 return spread_first.quantity if spread_first else None
             if previous.part == "statistic" and previous.quantity != "r":
                 return None

@@ -7,8 +7,8 @@ from dataclasses import dataclass
 from decimal import Decimal
 
 from recheck.model import Passage, Printed, Relation
-from recheck.reading.tokens import NOTHING, Token, tokens
 from recheck.reading.alike import FLAT
+from recheck.reading.tokens import NOTHING, Token, tokens
 from recheck.reading.views import View, view_of
 
 RELATION_WORDS: dict[tuple[str, ...], Relation] = {
@@ -68,6 +68,17 @@ def printed(text: str) -> Printed | None:
     if any(t.kind != "sup" and t.text not in ("*", "†", "‡", "§") for t in rest):
         return None
     return number.printed(line, relation or "=")
+
+
+def part_of_unit(line: Line, index: int) -> bool:
+    """Whether a number belongs to a unit: the 1.73 and the 2 of `ml/min/1.73 m2`, the 2 of `g m−2`."""
+    token, before = line.at(index), line.at(index - 1)
+    if token.kind != "num":
+        return False
+    if before.text == "-" and not token.spaced and not before.spaced:
+        return line.at(index - 2).kind == "word" and token.text.isdigit() and len(token.text) == 1
+    attached = before.kind == "word" and not token.spaced and token.text.isdigit() and len(token.text) == 1
+    return attached or (before.text == "/" and not token.spaced)
 
 
 def relation_at(line: Line, index: int) -> tuple[Relation | None, int]:

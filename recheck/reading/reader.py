@@ -8,11 +8,12 @@ from dataclasses import replace
 from hashlib import blake2b
 
 from recheck.model import Claim, Document, Passage, Printed, Reading
-from recheck.reading.assignments import Assignment, assignments, ns_at
+from recheck.reading.assignments import assignments, ns_at
 from recheck.reading.claims import Draft, drafts
 from recheck.reading.context import Setting, setting_of
-from recheck.reading.glyphs import doubted, repaired
+from recheck.reading.glyphs import Repairs, doubted, repaired
 from recheck.reading.groups import announced_spread, size_of_each, with_means
+from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
 from recheck.reading.numerals import Line
@@ -27,7 +28,7 @@ READ = ("body", "heading", "caption", "note")
 def read(document: Document) -> Reading:
     """Read the claims of a document, its context, and what was left unread.
 
-    Raises TimeoutError where a passage takes longer than its patterns may.
+    A passage that takes longer than its patterns may is left out with a note.
     """
     passages, repairs = repaired([passage for passage in document.passages if passage.kind in READ])
     views = [view_of(passage) for passage in passages]
@@ -35,16 +36,28 @@ def read(document: Document) -> Reading:
     left: Counter[str] = Counter()
     placed: list[Placed] = []
     for number, view in enumerate(views):
-        placed += _passage(view, number, setting, left)
-    placed = [replace(item, claim=doubted(item.claim, item.span, passages[item.passage], item.passage, repairs)) for item in placed]
-    placed = _unique(placed)
-    claims = tuple(linked(placed))
-    return Reading(claims, setting.context, _notes(document, left))
+        try:
+            found = list(_passage(view, number, setting, left))
+        except TimeoutError:
+            left["a passage took too long to read"] += 1
+            continue
+        placed += [_doubted(item, passages[number], repairs) for item in found]
+    return Reading(tuple(linked(_unique(placed))), setting.context, _notes(document, left))
+
+
+def _doubted(item: Placed, passage: Passage, repairs: Repairs) -> Placed:
+    claim = doubted(item.claim, item.span, passage, item.passage, repairs)
+    return item if claim is item.claim else replace(item, claim=claim)
 
 
 def _notes(document: Document, left: Counter[str]) -> tuple[str, ...]:
-    skipped = Counter(p.kind for p in document.passages if p.kind not in READ and not DIGITS.isdisjoint(p.text))
-    notes = [f"{count} passages of kind {kind!r} were not read for claims" for kind, count in sorted(skipped.items())]
+    skipped = Counter(
+        p.kind for p in document.passages if p.kind not in READ and not DIGITS.isdisjoint(p.text)
+    )
+    notes = [
+        f"{count} passages of kind {kind!r} were not read for claims"
+        for kind, count in sorted(skipped.items())
+    ]
     notes += [f"{count} places were left out: {reason}" for reason, count in sorted(left.items())]
     return tuple(notes)
 
@@ -55,7 +68,7 @@ def _passage(view: View, number: int, setting: Setting, left: Counter[str]) -> I
         if DIGITS.isdisjoint(text) or (_SIGNS.isdisjoint(text) and not _words_of_results(text)):
             continue
         line = Line(view, tokens(view, start, end), setting.decimal_comma)
-        sentence = Sentence(text, text.lower(), line)
+        sentence = Sentence(text, text.lower(), line, start)
         for draft, name in _sentence(sentence, setting, left):
             first, last = _extent(draft, name)
             claim = _claim(view, first, last, name, setting)
@@ -64,7 +77,7 @@ def _passage(view: View, number: int, setting: Setting, left: Counter[str]) -> I
 
 _SIGNS = frozenset("=<>≤≥≈±")
 _WORDS = ("mean", "average", "deviation", "interval", "ratio", "value", "correlation", "statistic", "difference", "test", "degrees",
-          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d")  # fmt: skip
+          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d", "sd", "se:")  # fmt: skip
 
 
 def _words_of_results(text: str) -> bool:
@@ -75,33 +88,48 @@ def _words_of_results(text: str) -> bool:
     return any(word in low for word in _WORDS)
 
 
-def _sentence(
-    sentence: Sentence, setting: Setting, left: Counter[str]
-) -> Iterator[tuple[Draft, Named]]:
+def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Iterator[tuple[Draft, Named]]:
+    """The claims of one sentence; what was left out is counted by its reason."""
     line = sentence.line
-    sign, brackets = announced_spread(sentence.low) if "±" in sentence.text or "(" in sentence.text else ("", "")
+    sign, brackets = announced_spread(sentence.low)
     items = with_means(_with_ns(assignments(line), line), line, brackets)
     if not items:
         return
     says = stated(sentence.text)
     each, items = size_of_each(items, line)
     for draft in drafts(items, line):
-        label = sign or setting.plus_minus if any(t.text == "±" for t in line.tokens[draft.first : draft.after]) else (
-            brackets or setting.in_brackets
-        )
+        label = (sign or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
         name = named(draft, label, says)
         if name is None:
             continue
-        reason = trapped(draft, sentence)
-        if reason is None and setting.credible and draft.get("ci") and not draft.part("statistic", "p"):
-            reason = "an interval that is no confidence interval"
+        reason = trapped(draft, sentence) or _credible(draft, setting)
         if reason:
             left[reason] += 1
             continue
-        if each and name.kind == "group-summary" and not {"n", "N"} & set(name.values):
-            note = "the size of each group is printed once for all groups"
-            name = replace(name, values={**name.values, "n": each}, notes=(*name.notes, note))
-        yield draft, replace(name, stated=_said(name, says))
+        yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
+
+
+def _after_sign(draft: Draft) -> bool:
+    """Whether an unlabelled spread stands after `±`, not in brackets alone."""
+    spread = draft.get("spread")
+    return spread is not None and any(
+        token.text in ("±", "+") for token in draft.line.tokens[spread.first : spread.first + 2]
+    )
+
+
+def _credible(draft: Draft, setting: Setting) -> str | None:
+    """In a Bayesian manuscript CI means credible interval."""
+    if setting.credible and draft.get("ci") and not draft.part("statistic", "p"):
+        return "an interval that is no confidence interval"
+    return None
+
+
+def _sized(name: Named, each: Printed | None) -> Named:
+    """Give a group summary the n that its sentence prints once for all groups."""
+    if each is None or name.kind != "group-summary" or {"n", "N"} & set(name.values):
+        return name
+    note = "the size of each group is printed once for all groups"
+    return replace(name, values={**name.values, "n": each}, notes=(*name.notes, note))
 
 
 def _extent(draft: Draft, name: Named) -> tuple[int, int]:
@@ -111,12 +139,26 @@ def _extent(draft: Draft, name: Named) -> tuple[int, int]:
     return line.at(held[0].first).start, line.at(max(i.after for i in held) - 1).end
 
 
-def _said(name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
-    """What the claim and its sentence say; adjusted post hoc comparisons are not said of an omnibus test."""
-    df1 = name.values.get("df1")
-    omnibus = name.kind == "F-test" and df1 is not None and df1.value != 1
+def _said(draft: Draft, name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
+    """What the claim and its sentence say.
+
+    Adjusted post hoc comparisons are not said of an omnibus test; where a sentence speaks of one-
+    and of two-tailed tests, only the words beside the numbers count.
+    """
     said = dict.fromkeys((*name.stated, *says))
-    return tuple(word for word in said if not (omnibus and word == "adjusted-p-post-hoc"))
+    df1 = name.values.get("df1")
+    if name.kind == "F-test" and df1 is not None and df1.value != 1:
+        said.pop("adjusted-p-post-hoc", None)
+    p = draft.get("p")
+    if p is not None and draft.line.at(p.first - 1).low in ("uncorrected", "unadjusted", "raw", "nominal"):
+        said = dict.fromkeys(word for word in said if not word.startswith("adjusted-p"))
+    if "one-tailed" in said and "two-tailed" in said:
+        tokens_ = draft.line.tokens[draft.first : draft.after + 5]
+        beside = stated(" ".join(token.text for token in tokens_).replace(" - ", "-"))
+        for word in ("one-tailed", "two-tailed"):
+            if word not in beside or ("one-tailed" in beside and "two-tailed" in beside):
+                said.pop(word)
+    return tuple(said)
 
 
 def _with_ns(items: list[Assignment], line: Line) -> list[Assignment]:
@@ -135,9 +177,9 @@ def _with_ns(items: list[Assignment], line: Line) -> list[Assignment]:
 def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> Claim:
     first, last = view.span(start, end)
     text = view.passage.text
-    if text[last : last + 1] in (")", "]") and text.count("(", first, last) + text.count("[", first, last) > text.count(
-        ")", first, last
-    ) + text.count("]", first, last):
+    if text[last : last + 1] in (")", "]") and text.count("(", first, last) + text.count(
+        "[", first, last
+    ) > text.count(")", first, last) + text.count("]", first, last):
         last += 1
     place = view.passage.place(first, last)
     values = {quantity: _with_alpha(value, setting) for quantity, value in name.values.items()}
@@ -158,7 +200,15 @@ def _with_alpha(value: Printed, setting: Setting) -> Printed:
 
 
 def _id(name: Named, quote: str, passage: Passage) -> str:
-    told = (name.kind, quote, passage.section, passage.table, passage.row, passage.column, *sorted(name.values))
+    told = (
+        name.kind,
+        quote,
+        passage.section,
+        passage.table,
+        passage.row,
+        passage.column,
+        *sorted(name.values),
+    )
     return blake2b(repr(told).encode(), digest_size=5).hexdigest()
 
 

@@ -19,12 +19,15 @@ class Spelled:
     label: str = ""
     numbers: tuple[Token, ...] = ()
     stated: tuple[str, ...] = ()
+    glued: bool = False
 
 
 NUMBERED = Symbol("other", "size")
 """`n1 = 14`, `n2 = 11`: sizes of single groups beside a test."""
 
-_SQUARES = frozenset(("g", "chi2", "eta2", "partial_eta2", "generalized_eta2", "omega2", "r", "F", "r2", "adjusted_r2"))
+_SQUARES = frozenset(
+    ("g", "chi2", "eta2", "partial_eta2", "generalized_eta2", "omega2", "r", "F", "r2", "adjusted_r2")
+)
 _NEEDS_SQUARE = frozenset(("X", "x", "G", "ε", "v", "c", "w", "h"))
 _NEEDS_DF = frozenset(("v", "c", "w"))
 """What a wrong code table makes of χ; only `v2(1)` with its degrees of freedom is taken for it."""
@@ -67,7 +70,7 @@ def _glued(line: Line, index: int) -> Spelled | None:
     symbol, tail = found
     if tail.lower() in ("diff", "difference") and symbol.quantity == "mean":
         symbol = replace(symbol, quantity="mean_difference", part="estimate")
-    return Spelled(symbol, line.at(index).text, index + 1, tail)
+    return Spelled(symbol, line.at(index).text, index + 1, tail, glued=True)
 
 
 def _tail(line: Line, base: Spelled) -> Spelled | None:
@@ -79,7 +82,13 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
         token = line.at(after)
         if token.kind == "sup" and (not token.spaced or token.text == "²"):
             squared = squared or (token.text[0] == "²" and quantity in _SQUARES)
-        elif token.text[:1] == "2" and token.kind == "num" and quantity in _SQUARES and not squared and _is_square(line, after, base):
+        elif (
+            token.text[:1] == "2"
+            and token.kind == "num"
+            and quantity in _SQUARES
+            and not squared
+            and _is_square(line, after, base)
+        ):
             squared = True
             if len(token.text) > 1:
                 numbers.append(token._replace(text=token.text[1:], start=token.start + 1))
@@ -87,10 +96,18 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
             numbers.append(token)
         elif token.kind == "num" and not token.spaced and base.text in ("BF", "I", "Q"):
             pass
+        elif quantity in ("t", "F", "chi2") and _apart(line, after, squared):
+            numbers.append(token)
+        elif token.text == "|" and not token.spaced and not numbers:
+            pass
         elif token.text == "_" and not token.spaced and line.at(after + 1).kind in ("word", "num"):
             after += 1
             label = _subscript(line, after, label, numbers)
-            while line.at(after + 1).text == "-" and line.at(after + 2).kind == "word" and not line.at(after + 2).spaced:
+            while (
+                line.at(after + 1).text == "-"
+                and line.at(after + 2).kind == "word"
+                and not line.at(after + 2).spaced
+            ):
                 after += 2
         elif _is_subscript(line, after, squared or base.symbol.part == "effect"):
             label = token.text
@@ -102,14 +119,27 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
     return _resolved(line, base, squared)
 
 
+def _apart(line: Line, index: int, squared: bool) -> bool:
+    """Whether a lowered number fell to the base line behind a space: `t 22 = 2.31`, `χ2 3 = 8.4`, `F 1,38 = 4.1`."""
+    token, following = line.at(index), line.at(index + 1)
+    whole = token.kind == "num" and token.spaced and token.text.replace(",", "").isdigit()
+    return whole and following.kind == "rel" and (squared or token.text != "2")
+
+
 def _is_square(line: Line, index: int, base: Spelled) -> bool:
     """Whether a `2` after a symbol is its exponent: `χ2(1)`, `R 2 = .31`."""
     token, following = line.at(index), line.at(index + 1)
-    if token.text != "2" and not (base.symbol.quantity == "chi2" and token.text.isdigit() and len(token.text) == 2):
+    if token.text != "2" and not (
+        base.symbol.quantity == "chi2" and token.text.isdigit() and len(token.text) == 2
+    ):
         return False
     if not token.spaced:
         return base.symbol.quantity != "F" or base.text == "f"
-    return following.kind in ("rel", "sub") or following.text in ("(", "[", "_") or following.low in ("p", "g", "adj")
+    return (
+        following.kind in ("rel", "sub")
+        or following.text in ("(", "[", "_")
+        or following.low in ("p", "g", "adj")
+    )
 
 
 def _subscript(line: Line, index: int, label: str, numbers: list[Token]) -> str:
@@ -151,7 +181,7 @@ def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
     """Settle the quantity by square and subscript."""
     symbol, label = spelled.symbol, spelled.label.lower()
     quantity, stated = symbol.quantity, list(spelled.stated)
-    if spelled.text in _NEEDS_SQUARE and not squared:
+    if not squared and (spelled.text in _NEEDS_SQUARE or (spelled.text in ("η", "ω") and not label)):
         return None
     if spelled.text in _NEEDS_DF and line.at(spelled.after).text not in ("(", "["):
         return None

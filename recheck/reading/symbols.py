@@ -6,6 +6,8 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 from typing import Literal
 
+from recheck.reading.tokens import words
+
 Part = Literal["statistic", "centre", "spread", "estimate", "effect", "p", "size", "df", "interval", "other"]
 """What a quantity does in a claim: `centre` is a mean or median, `size` an n, `estimate` a coefficient,
 a difference or a ratio, `effect` an effect size, `other` what stands beside a result and is no result."""
@@ -40,17 +42,25 @@ def _family(part: Part, *, stated: tuple[str, ...] = (), bare: bool = False, wor
 
 # A spelling of one or two letters, or with a capital inside, is taken with its case; the rest in any case.
 _ROWS: list[tuple[str, Symbol]] = [
-    *_family("statistic", t="t|T|t value|t-value|t statistic|t-statistic|t test|t-test|t ratio|t score"),
+    *_family("statistic", stated=("paired",), t="tpaired|tpair"),
+    *_family("statistic", stated=("welch",), t="tWelch|twelch|Welch's t|Welch t"),
+    *_family("statistic", t="t|T|tStudent|tstudent|Student's t|t value|t-value|t statistic|t-statistic|t test|t-test|t ratio|t score"),
     *_family(
         "statistic",
-        F="F|f|F value|F-value|F statistic|F-statistic|F test|F-test|F ratio|F-ratio|ANOVA F",
+        F="F|f|ΔF|Fchange|F change|F value|F-value|F statistic|F-statistic|F test|F-test|F ratio|F-ratio|ANOVA F",
         chi2="chi square|chi-square|chi squared|chi-squared|chisq|chi sq|chisquare|khi2|chi2|chi-2|X|x|v|c|w|χ|chi|Chi"
         "|Wald χ|Pearson χ",
         z="z|Z|z value|z-value|z statistic|z-statistic|z score|z-score|Wald z|Wald Z|z test|z-test|z ratio",
-        r="r|R|Pearson r|Pearson's r|Pearson correlation|Pearson's correlation|Pearson correlation coefficient"
-        "|Pearson's correlation coefficient|correlation coefficient|correlation",
+        r="r|R|Pearson r|Pearson's r",
         u="U|Mann-Whitney U|Mann Whitney U|Mann–Whitney U",
         w="W|Wilcoxon W|Wilcoxon's W|V",
+    ),
+    *_family(
+        "statistic",
+        bare=True,
+        worded=True,
+        r="Pearson correlation|Pearson's correlation|Pearson correlation coefficient|Pearson's correlation coefficient"
+        "|correlation coefficient|correlation",
     ),
     *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal Wallis H|Kruskal-Wallis χ"),
     *_family("statistic", stated=("likelihood-ratio",), chi2="G|G2|G²|LR χ|likelihood ratio χ"),
@@ -63,8 +73,8 @@ _ROWS: list[tuple[str, Symbol]] = [
         "|Spearman correlation coefficient|Spearman's correlation coefficient|Spearman's rs|Spearman rs"
         "|Spearman's rank correlation coefficient|rank correlation coefficient",
     ),
-    *_family("statistic", several=True, t="ts|t values|t-values", F="Fs|F values|F-values", chi2="χs|χ²s",
-             z="zs|Zs|z values|z scores|z-scores", r="correlations|correlation coefficients|Rs"),
+    *_family("statistic", several=True, t="ts|t's|t values|t-values", F="Fs|F's|F values|F-values", chi2="χs|χ²s",
+             z="zs|Zs|z values|z scores|z-scores", r="correlations|correlation coefficients|Rs|r's"),
     *_family("p", p="p|P|p value|p-value|P value|P-value|pvalue|p val|sig|Sig|probability value", bare=True),
     *_family(
         "p",
@@ -73,7 +83,7 @@ _ROWS: list[tuple[str, Symbol]] = [
         "|adjusted p value|adjusted p-value|corrected p value|corrected p-value|Bonferroni-corrected p|Bonferroni p"
         "|Tukey p|Holm p|FDR p|pFWE|pFWER|pHB",
     ),
-    *_family("p", several=True, p="ps|Ps|p values|p-values|P values|P-values|pvalues"),
+    *_family("p", several=True, p="ps|Ps|p's|P's|p values|p-values|P values|P-values|pvalues"),
     *_family("centre", mean="M|x̄|X̄|x̅|X̅|ȳ|Ȳ|mean|average|mean value|mean score|mean age|M age", bare=True, worded=True),
     *_family("centre", median="Mdn|Md|median|Median", bare=True, worded=True),
     *_family("centre", several=True, mean="Ms|means|averages|mean values|mean scores", median="medians|Mdns"),
@@ -84,6 +94,11 @@ _ROWS: list[tuple[str, Symbol]] = [
         sd="SD|Sd|sd|StD|St Dev|StDev|std|standard deviation|std dev|stdev|σ",
         se="SE|SEM|se|sem|SEs|Se|StdErr|standard error|standard error of the mean|standard error of mean|std error|std err",
     ),
+    # ET, DE, DT, DS, DP, MW: French, Spanish, Italian, Portuguese and German manuscripts.
+    *_family("spread", sd="ET|DE|DT|DS|DP|écart-type|écart type|desviación estándar|desviación típica|desvio padrão"
+             "|Standardabweichung|Deviazione standard"),
+    *_family("centre", mean="MW|moyenne|Mittelwert|media|média|promedio"),
+    *_family("spread", se="SE B|SE b|SE β|SEB|SEb|SE beta|SE of b|SE of B|SE of the slope|SE of the mean"),
     *_family("spread", several=True, sd="SDs|standard deviations|sds", se="SEMs|standard errors"),
     *_family("spread", se_difference="SED|SEdiff|SE diff|standard error of the difference"),
     *_family("size", n="n", N="N"),
@@ -97,10 +112,11 @@ _ROWS: list[tuple[str, Symbol]] = [
         rr="RR|aRR|ARR|risk ratio|relative risk|rate ratio|IRR|PR|prevalence ratio|incidence rate ratio|adjusted RR",
         hr="HR|aHR|AHR|hazard ratio|hazards ratio|adjusted hazard ratio",
         rd="risk difference",
-        mean_difference="MD|mean difference|difference in means|mean diff|Mdiff|MDiff|MD diff|difference of means"
+        mean_difference="MD|Mdiff|MDiff|MD diff|difference of means"
         "|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
         "|difference in mean|mean change difference|ΔM",
     ),
+    *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"),
     *_family("estimate", b="b|B|coefficient|coef|slope", estimate="Estimate|estimate|est|Est", beta="β|beta|Beta|bs", intercept="intercept"),
     *_family("estimate", several=True, b="Bs", beta="βs|betas", or_="ORs|odds ratios", hr="HRs|hazard ratios", rr="RRs"),
     *_family(
@@ -147,11 +163,11 @@ _ROWS: list[tuple[str, Symbol]] = [
 GLUED = ("Mean", "SEM", "SD", "SE", "M")
 """Symbols that stand in front of a word without a space where the word was a subscript: `Mage`, `SDcontrol`."""
 
-_NO_SUBSCRIPTS = frozenset(
+_NO_SUBSCRIPTS = words(
     "en an ale ales odel odels ass ax ay ost ore inimum aximum ost onth onths onday ethod ethods easure easures "
     "ixed edian iddle ode oderate other others arch id il ild eta ulti ultiple aterial aterials ajor inor any "
     "icro acro emory orning ind is et ix ole iss aster ajority agnitude ean eans dn d s se ix ap atch ae ade ake "
-    "at ark".split()
+    "at ark"
 )
 
 
@@ -172,7 +188,7 @@ def _lexicon() -> tuple[dict[tuple[str, ...], Symbol], dict[str, int]]:
 def key_of(word: str) -> str:
     """The form under which a word is looked up: short ones with their case, long ones without."""
     word = word.replace(".", "")
-    if word.endswith("'s") or word.endswith("'"):
+    if len(word) > 3 and word.endswith(("'s", "'")):
         word = word.rstrip("s").rstrip("'")
     return word if len(word) <= 3 or word[1:] != word[1:].lower() else word.lower()
 
@@ -193,7 +209,12 @@ def glued(word: str) -> tuple[Symbol, str] | None:
         return None
     for head in GLUED:
         tail = word[len(head) :]
-        if word.startswith(head) and tail and tail.isalpha() and (head != "M" or tail.lower() not in _NO_SUBSCRIPTS):
+        if (
+            word.startswith(head)
+            and tail
+            and tail.isalpha()
+            and (head != "M" or tail.lower() not in _NO_SUBSCRIPTS)
+        ):
             symbol = find((head,))
             if symbol:
                 return symbol, tail

@@ -22,6 +22,11 @@ class Token(NamedTuple):
     spaced: bool
 
 
+def words(text: str) -> frozenset[str]:
+    """The words of a text as a set: for lists that read better without quotes."""
+    return frozenset(text.split())
+
+
 DIGITS = frozenset("0123456789")
 NOTHING = Token("end", "", "", -1, -1, True)
 """Stands for what is before the first and after the last token."""
@@ -57,9 +62,9 @@ def tokens(view: View, start: int, end: int) -> list[Token]:
     return found
 
 
-_ABBREVIATED = frozenset(
+_ABBREVIATED = words(
     "vs e.g i.e fig figs al approx cf dr no nos eq eqs exp expt ca resp st mr mrs ms prof tab sec vol pp p "
-    "et std dev diff min max incl excl stat sig conf int".split()
+    "et std dev diff min max incl excl stat sig conf int"
 )
 
 

@@ -3,24 +3,44 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
-from functools import cache
+from dataclasses import dataclass, field
+from functools import cache, cached_property
 
 import regex
 
-from recheck.reading.assignments import Assignment
 from recheck.reading.claims import Draft
+from recheck.reading.items import Assignment
 from recheck.reading.numerals import Line
+from recheck.reading.tokens import words
 from recheck.reading.views import TIMEOUT
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Sentence:
-    """A sentence as the traps look at it: its text, in lower case too, and its tokens."""
+    """A sentence as the traps look at it: its text, in lower case too, its tokens, its start in the view."""
 
     text: str
     low: str
     line: Line
+    start: int
+    known: dict[tuple[str, ...], bool] = field(default_factory=dict)
+
+    def says(self, words: tuple[str, ...]) -> bool:
+        """Tell whether the sentence has one of the words; each list is looked for once."""
+        if words not in self.known:
+            self.known[words] = any(word in self.low for word in words)
+        return self.known[words]
+
+    @cached_property
+    def citations(self) -> list[regex.Match[str]]:
+        """All citations of the sentence."""
+        return list(_cited().finditer(self.text, timeout=TIMEOUT))
+
+    @cached_property
+    def own(self) -> bool:
+        """Whether the sentence speaks of the manuscript's own work too."""
+        low = f" {self.low} "
+        return any(word in low for word in _OWN)
 
 
 def trapped(draft: Draft, sentence: Sentence) -> str | None:
@@ -42,14 +62,32 @@ def _tested(draft: Draft) -> bool:
 
 
 def _several(draft: Draft, sentence: Sentence) -> bool:
-    core = draft.part("statistic") or draft.part("centre", "estimate", "effect") or draft.part("p", "interval")
+    core = (
+        draft.part("statistic") or draft.part("centre", "estimate", "effect") or draft.part("p", "interval")
+    )
     if core is None or core.several:
         return core is not None
+    if draft.part("statistic") and any(draft.line.at(i.first - 1).low in _EXTREMES for i in draft.items):
+        return True
     before = {t.low for t in draft.line.tokens[max(0, draft.first - 3) : draft.first]}
     return core.printed.relation != "=" and bool(before & {"all", "both", "each", "every", "any", "always"})
 
 
-_CRITICAL = ("critical", "crit", "cutoff", "threshold", "thresholds", "criterion", "quantile", "percentile", "cut-off")
+_EXTREMES = words(
+    "largest smallest highest lowest maximum minimum max min strongest weakest biggest maximal minimal"
+)
+
+_CRITICAL = (
+    "critical",
+    "crit",
+    "cutoff",
+    "threshold",
+    "thresholds",
+    "criterion",
+    "quantile",
+    "percentile",
+    "cut-off",
+)
 
 
 def _critical(draft: Draft, sentence: Sentence) -> bool:
@@ -64,13 +102,20 @@ def _legend(draft: Draft, sentence: Sentence) -> bool:
     """`* p < .05, ** p < .01`."""
     if draft.part("statistic", "estimate", "effect"):
         return False
-    before = draft.line.at(draft.first - 1)
-    closer = draft.line.at(draft.first - 2)
-    if before.text in ("=", ":") and closer.text in ("*", "†", "‡", "§", "#", "a", "b", "c"):
+    p = draft.get("p")
+    if p is None:
+        return False
+    before, closer = draft.line.at(p.first - 1), draft.line.at(p.first - 2)
+    if before.text in ("=", ":", ",") or before.low in _MEANING:
+        return closer.text in _MARKS or closer.low in ("asterisk", "asterisks", "stars", "letters")
+    first = closer.kind == "end" or closer.text in (";", ",", ".")
+    if before.text in "abcdef" and before.kind == "word" and first and p.printed.relation != "=":
         return True
-    marks = before.text in ("*", "†", "‡", "§", "¶") or (before.text == "#" and not before.spaced)
-    return marks and draft.get("p") is not None
+    return before.text in _MARKS and not (before.text in "+#" and before.spaced)
 
+
+_MARKS = frozenset("*†‡§¶#+abc")
+_MEANING = words("indicates indicate denotes denote represents represent means mean marks mark signifies")
 
 _LEVEL_WORDS = (
     "considered", "deemed", "regarded", "significance level", "level of significance", "significance was", "threshold",
@@ -89,24 +134,38 @@ def _level(draft: Draft, sentence: Sentence) -> bool:
     if draft.part("statistic", "estimate", "effect", "interval"):
         return False
     p = draft.get("p")
-    if p and draft.line.at(draft.first - 2).low in ("level", "threshold") and draft.line.at(draft.first - 1).low == "of":
+    if (
+        p
+        and draft.line.at(draft.first - 2).low in ("level", "threshold")
+        and draft.line.at(draft.first - 1).low == "of"
+    ):
         return True
     if p is None or str(abs(p.printed.value)) not in _LEVELS:
         return False
     if draft.line.at(draft.first - 1).text == "(" and draft.line.at(draft.first - 2).low == "significance":
         return True
-    if draft.line.at(draft.first - 1).low == "at" and draft.line.at(draft.first - 2).low in ("significant", "significance"):
+    if draft.line.at(draft.first - 1).low == "at" and draft.line.at(draft.first - 2).low in (
+        "significant",
+        "significance",
+    ):
         return True
     foreign = draft.get("other")
     if foreign is not None and foreign.printed.relation not in ("=", "≈"):
         return True
     if draft.line.at(draft.after).low == "level":
         return True
-    if draft.line.at(draft.first - 1).low in ("if", "when", "at", "where") and p.printed.relation != "=" and _any(
-        sentence.low, ("signific", "reject")
-    ) and not _any(sentence.low, ("differ", "higher", "lower", "increas", "decreas", "effect", "correlat", "associat")):
+    if (
+        draft.line.at(draft.first - 1).low in ("if", "when", "at", "where")
+        and p.printed.relation != "="
+        and sentence.says(("signific", "reject"))
+        and not sentence.says(
+            ("differ", "higher", "lower", "increas", "decreas", "effect", "correlat", "associat")
+        )
+    ):
         return True
-    return _any(sentence.low, _LEVEL_WORDS) and _any(sentence.low, ("signific", "alpha", "α", "p-value", "p value", "level"))
+    return sentence.says(_LEVEL_WORDS) and sentence.says(
+        ("signific", "alpha", "α", "p-value", "p value", "level")
+    )
 
 
 _PLANS = (
@@ -127,11 +186,23 @@ _EXAMPLES = ("for example, if", "for instance, if", "suppose ", "imagine ", "hyp
 def _planned(draft: Draft, sentence: Sentence) -> bool:
     """Values of a power analysis or of a simulation; tests with their df are results all the same."""
     if _tested(draft) and draft.get("p"):
-        return _any(sentence.low, ("suppose ", "imagine ", "hypothetical example", "hypothetical data", "fictitious",
-                                   "would be reported"))
-    if _any(sentence.low, _EXAMPLES):
+        return sentence.says(
+            (
+                "suppose ",
+                "imagine ",
+                "hypothetical example",
+                "hypothetical data",
+                "fictitious",
+                "would be reported",
+            )
+        )
+    if sentence.says(_EXAMPLES):
         return True
-    return _any(sentence.low, _PLANS) and not draft.part("centre") and not (draft.get("t", "F", "chi2") and _tested(draft))
+    return (
+        sentence.says(_PLANS)
+        and not draft.part("centre")
+        and not (draft.get("t", "F", "chi2") and _tested(draft))
+    )
 
 
 _ASSUMPTIONS = ("shapiro", "kolmogorov", "levene", "mauchly", "bartlett", "box's m", "normality", "normal distribution", "normally distributed", "homogeneity of varian",
@@ -141,7 +212,11 @@ _ASSUMPTIONS = ("shapiro", "kolmogorov", "levene", "mauchly", "bartlett", "box's
 
 def _assumption(draft: Draft, sentence: Sentence) -> bool:
     """A test of an assumption, where only its p or its W is printed."""
-    return not draft.get("t", "F", "chi2", "z", "r") and not draft.part("centre", "estimate") and _any(sentence.low, _ASSUMPTIONS)
+    return (
+        not draft.get("t", "F", "chi2", "z", "r")
+        and not draft.part("centre", "estimate")
+        and sentence.says(_ASSUMPTIONS)
+    )
 
 
 _RULES_OF_THUMB = ("small", "medium", "large", "strong", "moderate", "weak", "threshold", "criteri", "considered", "rule of thumb",
@@ -149,25 +224,58 @@ _RULES_OF_THUMB = ("small", "medium", "large", "strong", "moderate", "weak", "th
                    "cut-off", "cutoff", "collinear", "exclud", "remov")  # fmt: skip
 
 
+_DROPPING = ("outlier", "dropped", "were removed", "was removed", "were excluded", "was excluded", "discarded", "were retained",
+             "we removed", "we excluded", "were kept", "excluding")  # fmt: skip
+
+
 def _rule(draft: Draft, sentence: Sentence) -> bool:
     """`r > 0.7`, `small (d = 0.2), medium (d = 0.5)`: rules of thumb."""
     core = draft.part("statistic", "effect", "estimate")
-    if core is not None and core.quantity == "r" and (core.label in ("tt", "xx", "yy", "wg") or _with_unit(draft, core)):
+    if (
+        core is not None
+        and core.quantity == "r"
+        and (core.label in ("tt", "xx", "yy", "wg") or _with_unit(draft, core))
+    ):
         return True
+    if (
+        draft.items[0].printed.relation in ("<", ">", "≤", "≥")
+        and not draft.part("df")
+        and sentence.says(_DROPPING)
+    ):
+        return not (core and core.extra)
     if core is None or draft.part("p", "interval", "df") or core.extra or draft.get("n", "N"):
         return False
+    if core.printed.relation in (">", "≥", "≤") and core.part in ("effect", "estimate"):
+        return True
     if core.printed.relation in ("<", ">", "≤", "≥", "≈"):
         if core.quantity in ("F", "chi2", "t"):
             return core.printed.relation in (">", "≥")
-        return _any(sentence.low, _RULES_OF_THUMB)
+        return sentence.says(_RULES_OF_THUMB)
     sizes = sum(word in sentence.low for word in ("small", "medium", "large", "moderate"))
-    return core.part == "effect" and sizes >= 2 and _any(sentence.low, ("cohen", "considered", "convention", "benchmark", "interpret", "respectively", "represent", "corresponds", "small (", "medium ("))
+    return (
+        core.part == "effect"
+        and sizes >= 2
+        and sentence.says(
+            (
+                "cohen",
+                "considered",
+                "convention",
+                "benchmark",
+                "interpret",
+                "respectively",
+                "represent",
+                "corresponds",
+                "small (",
+                "medium (",
+            )
+        )
+    )
 
 
-_UNITS = frozenset("m cm mm km μm nm s ms min h g kg mg ml l hz khz years km/h mph pixels px deg degrees".split())
+_UNITS = words("m cm mm km μm nm s ms min h g kg mg ml l hz khz years km/h mph pixels px deg degrees")
 
 
-_RATERS = frozenset("interrater rater intercoder coder intraclass reliability retest intrarater".split())
+_RATERS = words("interrater rater intercoder coder intraclass reliability retest intrarater")
 
 
 def _with_unit(draft: Draft, core: Assignment) -> bool:
@@ -184,7 +292,10 @@ def _bayesian(draft: Draft, sentence: Sentence) -> bool:
     interval = draft.get("ci")
     if interval is None:
         return False
-    return "bayesian" in interval.stated or (not draft.part("statistic", "p") and _any(sentence.low, ("credible", "posterior dist", "posterior mean", "hdi")))
+    return "bayesian" in interval.stated or (
+        not draft.part("statistic", "p")
+        and sentence.says(("credible", "posterior dist", "posterior mean", "hdi"))
+    )
 
 
 def _equation(draft: Draft, sentence: Sentence) -> bool:
@@ -192,7 +303,11 @@ def _equation(draft: Draft, sentence: Sentence) -> bool:
     core = draft.part("statistic")
     last = draft.items[-1]
     follows = draft.line.at(last.after).text
-    if follows in ("+", "×", "/", "^", "√", "∑") and draft.line.at(last.after + 1).kind in ("word", "num", "sign"):
+    if follows in ("+", "×", "/", "^", "√", "∑") and draft.line.at(last.after + 1).kind in (
+        "word",
+        "num",
+        "sign",
+    ):
         return True
     if core is not None and core.quantity == "t" and not draft.get("p") and core.extra:
         return core.extra[0][1].value <= 3 and draft.line.at(core.first + 1).text.isdigit()
@@ -207,7 +322,11 @@ def _condition(draft: Draft, sentence: Sentence) -> bool:
     line = draft.line
     after = "".join(t.text for t in line.tokens[draft.after : draft.after + 3])
     before = line.at(draft.first - 1).low
-    return after.startswith(("°", "º", "℃", "C,", "rpm", "Hz", "psi", "bar", "pH")) or before in ("ph", "at", "temperature")
+    return after.startswith(("°", "º", "℃", "C,", "rpm", "Hz", "psi", "bar", "pH")) or before in (
+        "ph",
+        "at",
+        "temperature",
+    )
 
 
 @cache
@@ -236,27 +355,44 @@ def _quoted(draft: Draft, sentence: Sentence) -> bool:
     low = f" {sentence.low} "
     if low.lstrip().startswith(_OTHERS):
         return True
-    own = _any(low, _OWN)
-    base = draft.line.tokens[0].start - (len(sentence.text) - len(sentence.text.lstrip()))
+    own = sentence.own
     start, end = draft.line.at(draft.first).start, draft.line.at(draft.after - 1).end
     tested = _tested(draft)
     found = False
-    for match in _cited().finditer(sentence.text, timeout=TIMEOUT):
+    for match in sentence.citations:
         found = True
         before = sentence.text[: match.start()].rstrip()
         narrative = match["year"][0] in "([" and not before.endswith(("(", ";", "e.g.,"))
         if narrative and not own and _any(low[match.end() : match.end() + 60], _VERBS):
             return True
-        if (not own or not tested) and _beside(draft.line.view.text, start, end, match.start() + base, match.end() + base):
+        if _method(match[0]) and own:
+            continue
+        if (not own or not tested) and _beside(
+            draft.line.view.text, start, end, match.start() + sentence.start, match.end() + sentence.start
+        ):
             return True
     if own or (tested and not found):
         return False
-    return _any(low, _EARLIER) and (found or _any(low, ("meta-analy", "previous", "literature", "earlier"))) and (
-        _any(low, _VERBS) or _any(low, ("meta-analy", "average effect", "overall effect"))
+    return (
+        sentence.says(_EARLIER)
+        and (found or sentence.says(("meta-analy", "previous", "literature", "earlier")))
+        and (sentence.says(_VERBS) or sentence.says(("meta-analy", "average effect", "overall effect")))
     )
 
 
-_BEFORE = regex.compile(r"[)\]]?,? ?(?:was|were|is|of|reported|found|observed|estimated|:|,|;)? ?(?:a|an)? ?[(\[]?")
+def _method(citation: str) -> bool:
+    """Whether a citation is that of an effect size's definition, as in `Cohen's d (Cohen, 1988) was 0.5`."""
+    return citation.startswith(
+        ("Cohen", "Hedges", "Glass", "Lakens", "Cumming", "Rosenthal", "Borenstein", "Morris")
+    )
+
+
+@cache
+def _before() -> regex.Pattern[str]:
+    """What may stand between a citation and the numbers that it gives."""
+    return regex.compile(
+        r"[)\]]?,? ?(?:was|were|is|of|reported|found|observed|estimated|:|,|;)? ?(?:a|an)? ?[(\[]?"
+    )
 
 
 def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
@@ -265,9 +401,15 @@ def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
         between = text[end:first].lstrip(" )]%")
         opened = between.startswith("(") or between.startswith(";")
         names_only = not any(char.isdigit() or char in ")=<>" for char in between)
-        return (opened and names_only and len(between) < 120) or between in ("by ", ", ", "in ", "from ", "; ")
+        return (opened and names_only and len(between) < 120) or between in (
+            "by ",
+            ", ",
+            "in ",
+            "from ",
+            "; ",
+        )
     if last <= start:
-        return bool(_BEFORE.fullmatch(text[last:start]))
+        return bool(_before().fullmatch(text[last:start], timeout=TIMEOUT))
     return False
 
 

@@ -15,6 +15,7 @@ from recheck.reading.alike import LOWERED, RAISED, TABLE
 TIMEOUT = 2.0
 """Seconds that one pattern may take over one passage."""
 
+
 @dataclass(frozen=True, slots=True, eq=False)
 class View:
     """The text that the grammar reads, and for each of its characters the one in the passage.
@@ -113,7 +114,7 @@ def _marked() -> regex.Pattern[str]:
 @cache
 def _filler() -> regex.Pattern[str]:
     """Runs of spaces, characters without width, ligatures, powers written with a caret."""
-    return regex.compile(r"[ ]{2,}|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^\{?(-?\d{1,3})\}?")
+    return regex.compile(r"[ ]{2,}|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^[({]?(-?\d{1,3})[)}]?")
 
 
 _LIGATURES = dict(zip("ﬀﬁﬂﬃﬄﬅ", ("ff", "fi", "fl", "ffi", "ffl", "st"), strict=True))
@@ -154,7 +155,9 @@ def _from_tex(match: _Match) -> str:
         bar = "X" if match["name"] in ("bar", "overline") and match["open"] else ""
         return bar + _TEX_SIGNS.get(match["name"], "")
     if match["sign"]:
-        return {"%": "%", "&": "&", "_": "_", "#": "#"}.get(match["sign"], " " if match["sign"] in ",;: " else "")
+        return {"%": "%", "&": "&", "_": "_", "#": "#"}.get(
+            match["sign"], " " if match["sign"] in ",;: " else ""
+        )
     if match["power"]:
         return "".join(RAISED[char] for char in match["power"])
     if match["sub"] is not None:

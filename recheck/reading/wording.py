@@ -102,7 +102,19 @@ _ADJUSTING = (
 _OF_TESTS = ("multiple", "family", "false", "type i", "spheric", "number of", "violation", "inflat")
 _POST_HOC = ("post hoc", "post-hoc", "posthoc", "pairwise", "pair-wise", "follow-up", "followed up", "multiple comparison",
              "simple effect", "simple main effect", "subsequent comparison")  # fmt: skip
-_NEGATIONS = ("no ", "not ", "without ", "nor ", "never ", "neither ", "rather than ", "instead of ", "un", "non-", "non")
+_NEGATIONS = (
+    "no ",
+    "not ",
+    "without ",
+    "nor ",
+    "never ",
+    "neither ",
+    "rather than ",
+    "instead of ",
+    "un",
+    "non-",
+    "non",
+)
 
 
 def stated(text: str) -> tuple[str, ...]:
@@ -119,7 +131,11 @@ def _says(text: str, stem: str) -> bool:
     at = text.find(stem)
     while at >= 0:
         starts = at == 0 or not text[at - 1].isalpha()
-        if starts and not text[max(0, at - 14) : at].rstrip("-").endswith(_NEGATIONS) and not _undone(text, at, stem):
+        if (
+            starts
+            and not text[max(0, at - 14) : at].rstrip("-").endswith(_NEGATIONS)
+            and not _undone(text, at, stem)
+        ):
             return True
         at = text.find(stem, at + 1)
     return False
@@ -131,4 +147,7 @@ def _undone(text: str, at: int, stem: str) -> bool:
     clause = rest.split(".")[0].split(",")[0].split(";")[0]
     if stem.endswith(" for") and any(word in clause[:30] for word in _OF_TESTS):
         return True
-    return any(no in clause for no in (" not applied", " not used", " not needed", " was not ", " were not ", " unnecessary"))
+    return any(
+        no in clause
+        for no in (" not applied", " not used", " not needed", " was not ", " were not ", " unnecessary")
+    )

@@ -10,6 +10,8 @@ from numpy.typing import ArrayLike, NDArray
 Floats: TypeAlias = NDArray[np.float64]
 Bounds: TypeAlias = tuple[Floats, Floats]
 """Lower and upper ends, each of the shape to which the arguments broadcast."""
+HALF_ULP = 2.0**-53
+"""Relative error of the double nearest to a decimal number, at most."""
 
 
 def floats(*values: ArrayLike) -> tuple[Floats, ...]:
@@ -29,9 +31,22 @@ def quotient(top: ArrayLike, bottom: ArrayLike) -> Floats:
 
 
 def difference_bounds(low1: ArrayLike, high1: ArrayLike, low2: ArrayLike, high2: ArrayLike) -> Bounds:
-    """Range of a - b over a box."""
+    """Range of a - b over a box, outward by what the ends may have lost when they became doubles.
+
+    Between large means that loss can exceed every relative guard. Equal doubles come from equal
+    decimals (of up to 15 digits), so a difference of 0 stays 0.
+    """
     low1, high1, low2, high2 = floats(low1, high1, low2, high2)
-    return np.asarray(low1 - high2), np.asarray(high1 - low2)
+    low, high = low1 - high2, high1 - low2
+    low = low - np.where(low == 0, 0.0, HALF_ULP * (np.abs(low1) + np.abs(high2)))
+    high = high + np.where(high == 0, 0.0, HALF_ULP * (np.abs(high1) + np.abs(low2)))
+    return np.asarray(low), np.asarray(high)
+
+
+def spread_bounds(low: ArrayLike, high: ArrayLike) -> Bounds:
+    """Cut an interval of SDs at 0: a printed 0.00 stands for nothing negative."""
+    low, high = floats(low, high)
+    return np.maximum(low, 0.0), np.maximum(high, 0.0)
 
 
 def quotient_bounds(top_low: Floats, top_high: Floats, bottom_low: Floats, bottom_high: Floats) -> Bounds:

@@ -10,7 +10,12 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from recheck.recompute.arrays import Bounds, Floats, floats, together
-from recheck.recompute.f_shape import greatest_over_df1, greatest_over_epsilon, least_over_df2, least_over_epsilon
+from recheck.recompute.f_shape import (
+    greatest_over_df1,
+    greatest_over_epsilon,
+    least_over_df2,
+    least_over_epsilon,
+)
 from recheck.recompute.tails import chi2_tail, f_tail, r_tail, t_tail, z_tail
 
 

@@ -19,6 +19,7 @@ from recheck.recompute.arrays import (
     floats,
     quotient,
     quotient_bounds,
+    spread_bounds,
     together,
 )
 from recheck.recompute.two_groups import pooled_sd
@@ -174,6 +175,10 @@ def d_bounds(
     The difference and the denominator vary by themselves and each denominator rises with either SD,
     so both ends are corners (see `quotient_bounds`); infinite where the denominator may be 0.
     """
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
     spread = DENOMINATORS[denominator]
     least, most = spread(*floats(sd1_low, n1, sd2_low, n2)), spread(*floats(sd1_high, n1, sd2_high, n2))
     return quotient_bounds(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high), least, most)

@@ -51,7 +51,7 @@ Curve = Callable[..., Floats]
 def least_over_df2(F: Floats, df1: Floats, low: Floats, high: Floats) -> Floats:
     """Least tail for df2 from `low` to `high`; arrays of one shape."""
     least = np.minimum(f_tail(F, df1, low), f_tail(F, df1, high))
-    inside = (low < high) & (F < 1 - 2 / df1)
+    inside = (low < high) & (F + 2 / df1 < 1)
     return _mended(least, inside, lambda x, F, df1: f_tail(F, df1, x), low, high, F, df1, least=True)
 
 
@@ -83,7 +83,13 @@ def _corrected(epsilon: Floats, F: Floats, df1: Floats, df2: Floats) -> Floats:
 
 
 def _mended(
-    ends: Floats, inside: NDArray[np.bool_], curve: Curve, low: Floats, high: Floats, *fixed: Floats, least: bool
+    ends: Floats,
+    inside: NDArray[np.bool_],
+    curve: Curve,
+    low: Floats,
+    high: Floats,
+    *fixed: Floats,
+    least: bool,
 ) -> Floats:
     """The better of the value at the ends and the extremum between them, where there may be one."""
     if not np.any(inside):

@@ -29,7 +29,10 @@ def t_tail(t: ArrayLike, df: ArrayLike) -> Floats:
     t, df = floats(t, df)
     tail = np.asarray(special.stdtr(df, -t))
     odd = (df == 1) | (t > HUGE_T) & np.isfinite(df)
-    return np.where(odd, _odd_t_tail(t, df), tail) if np.any(odd) else tail
+    if np.any(odd):
+        tail, t, df = (np.array(part) for part in together(tail, t, df))
+        tail[odd] = _odd_t_tail(t[odd], df[odd])
+    return tail
 
 
 def _odd_t_tail(t: Floats, df: Floats) -> Floats:
@@ -53,7 +56,8 @@ def chi2_tail(x: ArrayLike, df: ArrayLike) -> Floats:
     Source: Pearson (1900), Philosophical Magazine 50:157-175; Abramowitz & Stegun (1964), 26.4.
     """
     x, df = floats(x, df)
-    return np.where(df > 0, special.chdtrc(df, np.maximum(x, 0.0)), np.nan).astype(np.float64)
+    tail = np.asarray(special.chdtrc(df, np.maximum(x, 0.0)), dtype=np.float64)
+    return np.where(df > 0, tail, np.nan)
 
 
 def f_tail(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
@@ -64,7 +68,7 @@ def f_tail(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
     """
     F, df1, df2 = floats(F, df1, df2)
     F = np.maximum(F, 0.0)
-    tail = np.asarray(special.fdtrc(df1, df2, F))
+    tail = np.asarray(special.fdtrc(df1, df2, F), dtype=np.float64)
     square, endless = df1 == 1, np.isinf(df2)
     if np.any(square):
         tail = np.where(square, t_two_sided(np.sqrt(F), df2), tail)
@@ -151,7 +155,13 @@ def t_quantile(upper_p: ArrayLike, df: ArrayLike) -> Floats:
     with np.errstate(invalid="ignore", divide="ignore"):
         t = np.where(np.isinf(df), -special.ndtri(tail), -special.stdtrit(df, tail))
         t = np.where(tail == 0, np.inf, np.where(tail == 0.5, 0.0, t))
-        inexact = ~(np.abs(t_tail(t, df) - tail) <= 1e-13 * tail) & (tail > 0) & (tail < 0.5) & (df > 0) & np.isfinite(df)
+        inexact = (
+            ~(np.abs(t_tail(t, df) - tail) <= 1e-13 * tail)
+            & (tail > 0)
+            & (tail < 0.5)
+            & (df > 0)
+            & np.isfinite(df)
+        )
     if np.any(inexact):
         t[inexact] = _polished(t[inexact], tail[inexact], df[inexact])
     return np.asarray(np.where(p > 0.5, -t, t))

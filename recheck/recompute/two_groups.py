@@ -1,7 +1,7 @@
 """Two independent or paired groups from means, SDs and ns, and their ranges over boxes of means and SDs.
 
 Differences are group 1 minus group 2; SDs are sample SDs (n - 1); ns are exact. In a box each mean and
-SD has a low and a high end (SDs >= 0) and varies by itself.
+SD has a low and a high end and varies by itself; SDs are cut at 0.
 """
 
 from __future__ import annotations
@@ -9,7 +9,15 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from recheck.recompute.arrays import Bounds, Floats, difference_bounds, floats, quotient, quotient_bounds
+from recheck.recompute.arrays import (
+    Bounds,
+    Floats,
+    difference_bounds,
+    floats,
+    quotient,
+    quotient_bounds,
+    spread_bounds,
+)
 
 
 def pooled_sd(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLike) -> Floats:
@@ -89,6 +97,10 @@ def pooled_t_bounds(
 
     Both ends are corners (see `quotient_bounds`); infinite where both SDs may be 0.
     """
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
     least, most = pooled_se(sd1_low, n1, sd2_low, n2), pooled_se(sd1_high, n1, sd2_high, n2)
     return quotient_bounds(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high), least, most)
 
@@ -98,6 +110,10 @@ def welch_t_bounds(
     mean2_low: ArrayLike, mean2_high: ArrayLike, sd2_low: ArrayLike, sd2_high: ArrayLike, n2: ArrayLike,
 ) -> Bounds:  # fmt: skip
     """Range of the signed Welch t, with corners as in `pooled_t_bounds`."""
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
     least, most = welch_se(sd1_low, n1, sd2_low, n2), welch_se(sd1_high, n1, sd2_high, n2)
     return quotient_bounds(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high), least, most)
 
@@ -114,7 +130,11 @@ def welch_df_bounds(
     is at the w nearest to the vertex, the smallest at one of the two corners. Where both SDs may be 0
     w is free.
     """
-    sd1_low, sd1_high, n1, sd2_low, sd2_high, n2 = floats(sd1_low, sd1_high, n1, sd2_low, sd2_high, n2)
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
+    n1, n2 = floats(n1, n2)
     least, most = _share(sd1_low, n1, sd2_high, n2), _share(sd1_high, n1, sd2_low, n2)
     least, most = np.where(np.isnan(least), 0.0, least), np.where(np.isnan(most), 1.0, most)
     best = np.clip(quotient(n1 - 1, n1 + n2 - 2), least, most)
@@ -132,9 +152,13 @@ def paired_t_bounds(
     the box from the distance of the two SD intervals, 0 where they meet, to the sum of the high
     ends; |t| is |D| sqrt(n) over it, with corners as in `quotient_bounds`.
     """
-    sd1_low, sd1_high, sd2_low, sd2_high, n = floats(sd1_low, sd1_high, sd2_low, sd2_high, n)
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
+    (n,) = floats(n)
     least, most = _absolute(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high))
-    narrow = np.maximum(np.maximum(sd1_low - sd2_high, sd2_low - sd1_high), 0.0)
+    narrow, _ = _absolute(*difference_bounds(sd1_low, sd1_high, sd2_low, sd2_high))
     return quotient_bounds(least, most, narrow / np.sqrt(n), (sd1_high + sd2_high) / np.sqrt(n))
 
 
@@ -150,7 +174,11 @@ def implied_correlation_bounds(
     on an edge, at that point or the end nearest to it; inside, both slopes vanish only for
     K = 0, sd1 = sd2, where r = 1 all along a line that meets the edges. |D| = |t| = 0 leaves K free.
     """
-    sd1_low, sd1_high, sd2_low, sd2_high, n = floats(sd1_low, sd1_high, sd2_low, sd2_high, n)
+    (sd1_low, sd1_high), (sd2_low, sd2_high) = (
+        spread_bounds(sd1_low, sd1_high),
+        spread_bounds(sd2_low, sd2_high),
+    )
+    (n,) = floats(n)
     t_low, t_high = _absolute(*floats(t_low, t_high))
     D_low, D_high = _absolute(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high))
     small = np.where(D_low == 0, 0.0, n * quotient(D_low, t_high) ** 2)
@@ -160,9 +188,7 @@ def implied_correlation_bounds(
     corners = [(sd1, sd2) for sd1 in (sd1_low, sd1_high) for sd2 in (sd2_low, sd2_high)]
     low = [quotient(sd1**2 + sd2**2 - large, 2 * sd1 * sd2) for sd1, sd2 in edges]
     high = [quotient(sd1**2 + sd2**2 - small, 2 * sd1 * sd2) for sd1, sd2 in corners]
-    return np.asarray(np.min(np.broadcast_arrays(*low), axis=0)), np.asarray(
-        np.max(np.broadcast_arrays(*high), axis=0)
-    )
+    return np.fmin.reduce(np.broadcast_arrays(*low)), np.fmax.reduce(np.broadcast_arrays(*high))
 
 
 def _nearest(other: Floats, K: Floats, low: Floats, high: Floats) -> Floats:

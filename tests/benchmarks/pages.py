@@ -21,7 +21,38 @@ from reportlab.pdfgen.canvas import Canvas
 from recheck.documents import pdfium
 from recheck.documents.pdf import page_lines
 
-_WORDS = ["loaf", "height", "crumb", "panel", "apprentice", "bench", "trial", "dough", "starter", "score", "oven", "hydration", "before", "after", "training", "tasting", "rye", "spelt", "the", "of", "and", "in", "was", "rated", "higher", "than", "by", "judges", "each", "week"]
+_WORDS = [
+    "loaf",
+    "height",
+    "crumb",
+    "panel",
+    "apprentice",
+    "bench",
+    "trial",
+    "dough",
+    "starter",
+    "score",
+    "oven",
+    "hydration",
+    "before",
+    "after",
+    "training",
+    "tasting",
+    "rye",
+    "spelt",
+    "the",
+    "of",
+    "and",
+    "in",
+    "was",
+    "rated",
+    "higher",
+    "than",
+    "by",
+    "judges",
+    "each",
+    "week",
+]
 
 
 def sample_pdf(pages: int, *, columns: int = 2) -> bytes:

@@ -61,7 +61,9 @@ def test_published_d_and_g_of_two_samples(row: Reference):
     assert from_t == pytest.approx(row.number("d_s"), rel=1e-12)
 
 
-@pytest.mark.parametrize("row", [r for r in rows("effect_sizes") if r["ci_low"]], ids=lambda row: row["label"])
+@pytest.mark.parametrize(
+    "row", [r for r in rows("effect_sizes") if r["ci_low"]], ids=lambda row: row["label"]
+)
 def test_published_noncentral_intervals(row: Reference):
     t, df, level = row.numbers("t", "df1", "ci_level")
     scale = 1 / np.sqrt(row.number("n1"))

@@ -2,7 +2,7 @@
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 from scipy import stats
 
@@ -78,11 +78,14 @@ def _converted(row: Reference) -> float:
 
 
 @pytest.mark.parametrize(
-    "row", [r for r in rows("conversions") if r["kind"] != "sd_to_r"], ids=lambda r: f"{r['label']}: {r['output']}"
+    "row",
+    [r for r in rows("conversions") if r["kind"] != "sd_to_r"],
+    ids=lambda r: f"{r['label']}: {r['output']}",
 )
 def test_published_conversions(row: Reference):
     value = _converted(row)
-    assert value == pytest.approx(row.number("exact"), rel=1e-9)
+    # The ratio's figures are computed with 1.96 in place of the quantile.
+    assert value == pytest.approx(row.number("exact"), rel=3e-4 if row["kind"] == "ci_to_p_ratio" else 1e-9)
     if row["exact"] == row["value"] and (row["label"], row["output"]) not in {
         # Printed from values that were rounded before: SE 1.37, and limits to three decimals.
         ("Cochrane difference in means, P = 0.008", "sd"),
@@ -121,10 +124,12 @@ def test_t_from_ci_bounds_where_the_ends_may_meet():
 
 
 @settings(max_examples=60, deadline=None)
-@given(t=st.floats(-60, 60), df=st.floats(1, 5000), shift=st.floats(-6, 6))
+@given(t=st.floats(-60, 60).map(lambda x: round(x, 2)), df=st.floats(1, 5000), shift=st.floats(-6, 6))
 def test_noncentral_t_against_scipy(t, df, shift):
     delta = t + shift * (1 + abs(t) / np.sqrt(2 * df))
-    assert noncentral.noncentral_t_cdf(t, df, delta) == pytest.approx(stats.nct.cdf(t, df, delta), abs=2e-9)
+    expected = stats.nct.cdf(t, df, delta)
+    assume(not np.isnan(expected))  # scipy 1.17 gives none at t = -6, df = 1, delta = 9.7
+    assert noncentral.noncentral_t_cdf(t, df, delta) == pytest.approx(expected, abs=2e-9)
 
 
 def test_noncentral_t_of_a_published_table():

@@ -68,7 +68,9 @@ def test_the_exact_tails_agree_with_mpmaths_own_functions():
     assert abs(exact.chi2_tail(20.0, 7.0) / own - 1) < 1e-25
 
 
-@pytest.mark.parametrize("row", [r for r in rows("tail_areas") if r["kind"] == "extreme"], ids=lambda r: r["stat"])
+@pytest.mark.parametrize(
+    "row", [r for r in rows("tail_areas") if r["kind"] == "extreme"], ids=lambda r: r["stat"]
+)
 def test_extreme_tails_of_the_reference_table(row: Reference):
     sides = 2 if row["tail"] == "two-sided" else 1
     p = sides * AREA[row["dist"]](row, row.number("stat"))
@@ -76,7 +78,9 @@ def test_extreme_tails_of_the_reference_table(row: Reference):
     assert p == pytest.approx(row.number("p"), rel=1e-9, abs=1e-308)
 
 
-@pytest.mark.parametrize("row", [r for r in rows("tail_areas") if r["kind"] == "published"], ids=lambda r: r["stat"])
+@pytest.mark.parametrize(
+    "row", [r for r in rows("tail_areas") if r["kind"] == "published"], ids=lambda r: r["stat"]
+)
 def test_published_critical_values(row: Reference):
     sides = 2 if row["tail"] == "two-sided" else 1
     value, p = row.number("exact_value"), row.number("p")
@@ -111,7 +115,12 @@ def test_edges():
 
 
 def test_arrays_broadcast_and_scalars_give_scalars():
-    for value in (tails.t_tail(2, 5), tails.f_tail(200, 2, 50), tails.t_quantile(0.025, 9), tails.z_two_sided(1)):
+    for value in (
+        tails.t_tail(2, 5),
+        tails.f_tail(200, 2, 50),
+        tails.t_quantile(0.025, 9),
+        tails.z_two_sided(1),
+    ):
         assert isinstance(value, np.ndarray)
         assert value.shape == ()
     assert tails.t_tail(np.ones((3, 1)), np.array([1, 2, 5, 9])).shape == (3, 4)

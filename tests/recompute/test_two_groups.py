@@ -1,5 +1,7 @@
 """t from summaries against published results, scipy and statsmodels on raw data, and searches over boxes."""
 
+from fractions import Fraction
+
 import numpy as np
 import pytest
 from hypothesis import assume, given, settings
@@ -91,9 +93,7 @@ def test_independent_t_bounds(m1, s1, n1, m2, s2, n2, shares):
         points = [at(x, share) for x, share in zip((m1, s1, m2, s2), shares, strict=True)]
         t = float(single(points[0], points[1], n1, points[2], points[3], n2))
         assert np.isnan(t) or holds((low, high), t)
-        corners = [
-            float(single(a, b, n1, c, d, n2)) for a in m1 for b in s1 for c in m2 for d in s2
-        ]
+        corners = [float(single(a, b, n1, c, d, n2)) for a in m1 for b in s1 for c in m2 for d in s2]
         if not np.isnan(corners).any():
             assert (low, high) == pytest.approx((min(corners), max(corners)), rel=1e-12)
 
@@ -104,6 +104,24 @@ def test_t_bounds_of_spreads_that_may_be_zero():
     low, high = tg.welch_t_bounds(2.0, 2.2, 0.0, 0.1, 5, 0.9, 1.1, 0.0, 0.1, 5)
     assert high == np.inf
     assert low == pytest.approx(float(tg.t_welch(2.0, 0.1, 5, 1.1, 0.1, 5)))
+
+
+def test_t_bounds_keep_the_decimal_corner_of_large_means():
+    # 1234567.88 and 1234567.87, ends 1234567.885 and 1234567.865: the difference is at most 0.02.
+    box = (1234567.875, 1234567.885, 0.525, 0.535, 10, 1234567.865, 1234567.875, 0.525, 0.535, 10)
+    exact = float(Fraction(2, 100)) / float(tg.pooled_se(0.525, 10, 0.525, 10))
+    for bounds in (tg.pooled_t_bounds, tg.welch_t_bounds):
+        low, high = bounds(*box)
+        assert low == 0
+        assert exact * (1 - 1e-12) <= high <= exact * (1 + 1e-7)
+
+
+def test_negative_ends_of_spreads_are_cut():
+    low, high = tg.pooled_t_bounds(1.0, 1.0, -0.005, 0.005, 5, 0.5, 0.5, -0.005, 0.005, 5)
+    assert high == np.inf
+    assert low == pytest.approx(float(tg.t_pooled(1.0, 0.005, 5, 0.5, 0.005, 5)))
+    assert tg.welch_df_bounds(-0.1, 0.1, 5, 1, 1, 9)[0] == pytest.approx(8)
+    assert tg.paired_t_bounds(1, 1, -0.2, 0.1, 0, 0, 0.5, 0.6, 4)[1] == pytest.approx(1 / 0.4 * 2)
 
 
 @BOX
@@ -128,7 +146,9 @@ def _greatest(curve, low, high):
     ends = max(float(curve(low)), float(curve(high)))
     if low == high:
         return ends
-    found = minimize_scalar(lambda x: -float(curve(x)), bounds=(low, high), method="bounded", options={"xatol": 1e-10})
+    found = minimize_scalar(
+        lambda x: -float(curve(x)), bounds=(low, high), method="bounded", options={"xatol": 1e-10}
+    )
     return max(ends, -found.fun)
 
 
@@ -141,7 +161,15 @@ def test_satterthwaite_df_where_the_welch_df_is_largest():
 
 
 @BOX
-@given(m1=MEAN, s1=SD, m2=MEAN, s2=SD, n=N, r=st.floats(-1, 1) | st.sampled_from((-1.0, 1.0)), shares=st.tuples(*[SHARES] * 4))
+@given(
+    m1=MEAN,
+    s1=SD,
+    m2=MEAN,
+    s2=SD,
+    n=N,
+    r=st.floats(-1, 1) | st.sampled_from((-1.0, 1.0)),
+    shares=st.tuples(*[SHARES] * 4),
+)
 def test_paired_t_bounds(m1, s1, m2, s2, n, r, shares):
     low, high = tg.paired_t_bounds(*m1, *s1, *m2, *s2, n)
     a, b, c, d = (at(x, share) for x, share in zip((m1, s1, m2, s2), shares, strict=True))
@@ -169,8 +197,12 @@ def test_implied_correlation_bounds(m1, s1, m2, s2, n, t, shares):
     near = 0.0 if m1[0] <= m2[1] and m2[0] <= m1[1] else min(distances)
     top = [float(tg.implied_correlation(near, x, y, n, t[1])) for x in s1 for y in s2]
     assert high == pytest.approx(max(top), rel=1e-9, abs=1e-9)
-    floor = [_greatest(lambda x, y=y: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s1) for y in s2]
-    floor += [_greatest(lambda y, x=x: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s2) for x in s1]
+    floor = [
+        _greatest(lambda x, y=y: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s1) for y in s2
+    ]
+    floor += [
+        _greatest(lambda y, x=x: -tg.implied_correlation(max(distances), x, y, n, t[0]), *s2) for x in s1
+    ]
     assert low == pytest.approx(-max(floor), rel=1e-9, abs=1e-9)
 
 

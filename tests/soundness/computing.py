@@ -30,6 +30,11 @@ def finite(*values: float) -> bool:
     return bool(np.all(np.isfinite(values)))
 
 
+def ratio(part: float, whole: float) -> float:
+    """A share, not a number where there is nothing to share."""
+    return part / whole if whole > 0 else float("nan")
+
+
 def sd(x: Values) -> float:
     return float(np.std(x, ddof=1)) if len(x) > 1 else float("nan")
 
@@ -84,7 +89,7 @@ def f_by_dropping(design: Values, y: Values, columns: list[int]) -> Test:
     df1, df2 = len(columns), len(y) - design.shape[1]
     with np.errstate(all="ignore"):
         value = float(np.float64((less - full) / df1) / (full / df2))
-    return Test(value, (df1, df2), float(stats.f.sf(value, df1, df2)), (less - full) / less, full / df2)
+    return Test(value, (df1, df2), float(stats.f.sf(value, df1, df2)), ratio(less - full, less), full / df2)
 
 
 def one_way(groups: list[Values]) -> Test:
@@ -95,7 +100,7 @@ def one_way(groups: list[Values]) -> Test:
         result = stats.f_oneway(*groups)
         within = sum(float(np.sum((g - g.mean()) ** 2)) for g in groups)
         total = float(np.sum((every - every.mean()) ** 2))
-    eta2 = (total - within) / total if total > 0 else float("nan")
+    eta2 = ratio(total - within, total)
     return Test(float(result.statistic), df, float(result.pvalue), eta2, within / df[1] if df[1] else np.nan)
 
 
@@ -133,7 +138,7 @@ def repeated_measures(x: Values) -> tuple[Test, dict[str, float]]:
     s = centring @ covariance @ centring
     gg = float(np.trace(s) ** 2 / ((k - 1) * np.sum(s * s))) if np.any(s) else 1.0
     hf = (n * (k - 1) * gg - 2) / ((k - 1) * (n - 1 - (k - 1) * gg))
-    test = Test(value, df, float(stats.f.sf(value, *df)), between / (between + error), error / df[1])
+    test = Test(value, df, float(stats.f.sf(value, *df)), ratio(between, between + error), error / df[1])
     return test, {"gg": gg, "hf": float(min(max(hf, gg), 1.0)), "lower": 1 / (k - 1)}
 
 

@@ -189,7 +189,7 @@ def two_way_f(rng: np.random.Generator) -> Sample:
     cut = min(map(len, flat)) if balanced else max(low, 3)
     cells = [[flat[i * b + j][: max(cut, 2)] for j in range(b)] for i in range(a)]
     tests = computing.two_way(cells)
-    if not finite(*(t.value for t in tests), *(t.p for t in tests)):
+    if not finite(*(v for t in tests for v in (t.value, t.p, t.effect))):
         return descriptives_only(hand, flat[:2])
     results = [
         hand.join(
@@ -214,7 +214,7 @@ def repeated_f(rng: np.random.Generator) -> Sample:
     n, k = int(rng.integers(3, 50)), int(rng.integers(2, 6))
     x = raw.repeated(rng, n, k)
     test, epsilons = computing.repeated_measures(x)
-    if not finite(test.value, test.p) or test.error < 1e-12:
+    if not finite(test.value, test.p, test.effect) or test.error < 1e-12:
         return descriptives_only(hand, [x[:, 0]])
     df, p, said = test.df, test.p, ""
     if rng.random() < 0.4 and k > 2:

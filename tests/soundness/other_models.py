@@ -9,6 +9,7 @@ from tests.soundness.other_counts import OTHER_COUNTS
 from tests.soundness.other_effects import OTHER_EFFECTS
 from tests.soundness.other_f import OTHER_F
 from tests.soundness.other_rounding import OTHER_ROUNDING
+from tests.soundness.other_scores import OTHER_SCORES
 from tests.soundness.other_t import OTHER_T
 from tests.soundness.samples import Generator, Sample, make
 
@@ -19,6 +20,7 @@ OTHER_MODELS: dict[str, Generator] = {
     **OTHER_COUNTS,
     **OTHER_EFFECTS,
     **OTHER_ROUNDING,
+    **OTHER_SCORES,
 }
 
 

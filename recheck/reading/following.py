@@ -1,0 +1,86 @@
+"""What follows a symbol: its relation and number, directly or after words, alone or in a list."""
+
+from __future__ import annotations
+
+from recheck.model import Relation
+from recheck.reading.intervals import interval_at
+from recheck.reading.numerals import Line, Number, number_at, relation_at
+from recheck.reading.spellings import spelled_at
+from recheck.reading.symbols import Symbol
+from recheck.reading.tokens import words
+
+_LINKS = words("of was were is are for value statistic equal to being the at as score ratio found")
+_AT_LAST = words("of was were is are at as averaged equals equaled equalled equal to value score")
+
+
+def value_after(line: Line, index: int, symbol: Symbol) -> tuple[Number, Relation, bool] | None:
+    """The number after a symbol, its relation, and whether a relation sign is missing."""
+    relation, after = relation_at(line, index)
+    if relation is not None and symbol.part == "size":
+        chained = spelled_at(line, after)
+        if chained and chained.symbol.part == "size":
+            return value_after(line, chained.after, symbol)
+    if relation is not None:
+        number = number_at(line, after)
+        return (number, relation, False) if number else None
+    if line.at(index).kind == "rel":
+        return None
+    comma = line.at(index).text == "," and symbol.bare and symbol.part in ("spread", "estimate")
+    if line.at(index).text == ":" or comma:
+        number = number_at(line, index + 1)
+        if number:
+            return number, "=", True
+        return None
+    most = 8 if symbol.worded else 3
+    return _after_words(line, index, symbol, most)
+
+
+def _after_words(line: Line, index: int, symbol: Symbol, most: int) -> tuple[Number, Relation, bool] | None:
+    after = index
+    while after - index <= most:
+        token = line.at(after)
+        number = number_at(line, after)
+        if number and after > index and token.text in ("-", "+") and not token.spaced:
+            return None
+        if number:
+            direct = after == index
+            linked = not direct and line.at(after - 1).low in _AT_LAST
+            return (
+                (number, "=", True)
+                if linked or (direct and symbol.bare and (token.spaced or line.at(index - 1).text == "("))
+                else None
+            )
+        relation, past = relation_at(line, after)
+        if relation is not None and after > index:
+            number = number_at(line, past)
+            return (number, relation, False) if number else None
+        if token.text == "-" and not token.spaced and line.at(after + 1).kind == "word" and after > index:
+            after += 1
+            continue
+        if token.kind != "word" or (not symbol.worded and token.low not in _LINKS | {"interaction", "trend"}):
+            return None
+        if spelled_at(line, after) and token.low not in ("age", "score", "a"):
+            return None
+        after += 1
+    return None
+
+
+def goes_on(line: Line, number: Number) -> bool:
+    """Tell whether a list or a range follows: `.41 and 1.92`, `.34 to .92`, `2.1, 2.3`."""
+    after = number.after
+    token = line.at(after)
+    if token.text == "," and line.at(after + 1).low in ("and", "or"):
+        after, token = after + 1, line.at(after + 1)
+    if token.low == "vs" and line.at(after + 1).text == ".":
+        after += 1
+    if token.low not in ("and", "or", "to", "vs", "versus", "through", "-", ",", "/", "&"):
+        return False
+    following = number_at(line, after + 1)
+    if following is None or interval_at(line, after + 1) or line.at(following.after).text == "±":
+        return False
+    alike = (following.decimals > 0) == (number.decimals > 0)
+    if token.text == ",":
+        return alike and following.decimals > 0
+    if token.low in ("and", "or") and number.decimals == 0:
+        return alike and line.at(following.after).kind != "word"
+    return alike
