@@ -204,18 +204,19 @@ def find(words: tuple[str, ...]) -> Symbol | None:
 
 
 def glued(word: str) -> tuple[Symbol, str] | None:
-    """A symbol with its subscript printed as one word: `Mage`, `SDage`, `SEM_pre`."""
-    if word[0] not in "MS":
+    """A symbol with its subscript printed as one word: `Mage`, `SDage`, `MRye`; no abbreviation (`MAF`)."""
+    if word[0] not in "MS" or not word.isalpha():
         return None
     for head in GLUED:
         tail = word[len(head) :]
         if (
-            word.startswith(head)
-            and tail
-            and tail.isalpha()
-            and (head != "M" or tail.lower() not in _NO_SUBSCRIPTS)
+            not tail
+            or not word.startswith(head)
+            or tail[1:] != tail[1:].lower()
+            or (len(tail) < 3 and tail[0].isupper())
         ):
-            symbol = find((head,))
-            if symbol:
-                return symbol, tail
+            continue
+        symbol = None if head == "M" and tail.lower() in _NO_SUBSCRIPTS else find((head,))
+        if symbol:
+            return symbol, tail
     return None

@@ -1,8 +1,8 @@
 """The noncentral t distribution.
 
 The library's own function depends on its version: in scipy 1.11 P = 0.00096 at t = 30, df = 50, delta = 40
-is off by 7e-4 of itself, in 1.17 it is right but for nan here and there (t = -6, df = 1, delta = 9.7). The quadrature here
-does not depend on it and takes t and delta of thousands.
+is off by 7e-4 of itself; 1.17 is right there, but gives nan at t = -6, df = 1, delta = 9.7. The quadrature
+here does not depend on it and takes t and delta of thousands.
 """
 
 from __future__ import annotations
