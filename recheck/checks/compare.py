@@ -132,7 +132,7 @@ def impossible(
         quantity=quantity, printed=printed_text(printed), implied=(Implied(implied.low, implied.high),),
         message=message, place=case.claim.place, tolerance=stands_for({quantity: printed}), gap=gap,
         confidence=case.claim.confidence, assumptions=doubts, reconciled_by=remedies,
-        question=question_for(case.claim, quantity, printed, (Implied(implied.low, implied.high),)),
+        question=question_for(case.claim, quantity, printed),
     )  # fmt: skip
 
 

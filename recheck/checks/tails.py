@@ -232,7 +232,7 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
 
     ways = [Way(lambda box: p_of(box["chi2"], box["df"]))]
     one_df = numbers["df"].value == 1 and numbers["df"].decimals <= 0
-    if not claim.suggests("model-fit"):
+    if not claim.suggests("model-fit") and not claim.suggests("uncorrected-chi2"):
         ways.append(Way(lambda box: p_of(_other_chi2(box["chi2"], one_df), box["df"]), (OTHER_CHI2,)))
     if one_df and not claim.suggests("two-tailed"):
         halved = (
@@ -294,7 +294,7 @@ def p_from_F(case: Case) -> Iterable[Finding]:
     if all(whole) and numbers["df1"].value > 1 and not between:
         stated = claim.suggests("corrected-df")
         words = "p is corrected for sphericity beside the uncorrected df"
-        ways.append(Way(corrected, () if stated else (words,), (words,) if stated else ()))
+        ways.append(Way(corrected, () if stated else (words,), (words,) if stated else (), costly=True))
     if numbers["df1"].value == 1:
         ways += _halved(claim, p_of)
     if whole[1]:

@@ -75,7 +75,7 @@ def tell(
     return sentence
 
 
-def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied]) -> str:
+def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied] = ()) -> str:
     """A neutral question to the authors about one printed number."""
     plain = next((row for row in implied if not row.assuming), implied[0] if implied else None)
     where = f" on page {claim.place.page}" if claim.place.page else ""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -28,10 +30,10 @@ def hosts(words: Words, chosen: NDArray[np.intp], around: NDArray[np.bool_]) -> 
         if not (found >= 0).any():
             break
         host[free[found >= 0]] = host[found[found >= 0]]
-    _extend(words, small, host)
     # A host may itself hang on a larger word; sizes only grow along the way, so it ends.
     while (host[host] != host).any():
         host = host[host]
+    _extend(words, small, host)
     return host
 
 
@@ -98,9 +100,16 @@ def pairs(
 
 def _extend(words: Words, small: NDArray[np.intp], host: NDArray[np.intp]) -> None:
     """Let an index of several words ("1, 2") hang on the host of its neighbour on either side."""
+    # A word on which others hang is a base itself, and moving it would leave them on nothing.
+    bases = set(host[small[host[small] != small]].tolist())
     for order in (small, small[::-1]):
-        for one, other in zip(order[:-1].tolist(), order[1:].tolist(), strict=True):
-            if host[one] == one or host[other] != other or words.rows[one] != words.rows[other]:
+        for one, other in pairwise(order.tolist()):
+            if (
+                host[one] == one
+                or host[other] != other
+                or other in bases
+                or words.rows[one] != words.rows[other]
+            ):
                 continue
             left, right = min(one, other), max(one, other)
             if words.x0[right] - words.x1[left] < 0.5 * words.size[one]:

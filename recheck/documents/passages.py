@@ -42,7 +42,9 @@ def _joined(blocks: list[Block]) -> list[Block]:
         if taken[at]:
             continue
         found.append(block)
-        if block.kind not in ("body", "references", "note"):
+        if block.kind not in ("body", "references", "note") or not any(
+            _is_filled(line) for line in block.lines
+        ):
             continue
         last = at
         while (following := _continuation(blocks, taken, block, last)) is not None:
@@ -83,6 +85,11 @@ def _stops_search(other: Block, end: Line) -> bool:
     """Whether a block is running text of its own, not a label, a note or a row that is passed by."""
     same_size = abs(other.lines[0].size - end.size) < 0.06 * end.size
     return same_size and sum(is_prose(line) for line in other.lines) > 1
+
+
+def _is_filled(line: Line) -> bool:
+    """Whether a line has most of its column's width and no gap, as text has and labels have not."""
+    return line.x1 - line.x0 > 0.6 * (line.right - line.left) and not line.gaps
 
 
 def _elsewhere(end: Line, first: Line) -> bool:

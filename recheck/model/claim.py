@@ -46,6 +46,7 @@ STATED = {
     "partial": "a partial correlation",
     "disattenuated": "a correlation corrected for unreliability or between latent variables",
     "yates": "the continuity correction",
+    "uncorrected-chi2": "Pearson's χ² without continuity correction",
     "likelihood-ratio": "a likelihood-ratio test",
     "fisher-exact": "Fisher's exact test",
     "multi-regression": "a regression with several predictors",

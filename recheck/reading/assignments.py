@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
+from decimal import Decimal
 
 from recheck.model import Confidence, Printed, Relation
 from recheck.reading.degrees import Values, bracketed_df, closing, subscript_df
@@ -112,7 +113,8 @@ def plus_minus(line: Line, index: int) -> Assignment | None:
 def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     """`t(22) = 1.71`, `M = 5.00`, `p < .001`; with what belongs to the number itself behind it."""
     beside = _beside_symbol(line, spelled)
-    if beside is None:
+    # χ²/df is a ratio of its own.
+    if beside is None or (spelled.symbol.part == "df" and line.at(index - 1).text == "/"):
         return []
     df, announced, after = beside
     symbol = _settled(line, spelled, df)
@@ -121,6 +123,10 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
         missing = _not_significant(line, index, after, symbol)
         return [missing] if missing else []
     number, relation, loose = value
+    if symbol.quantity == "mean" and [t.low for t in line.tokens[max(0, index - 2) : index]] == ["by", "a"]:
+        symbol = replace(symbol, quantity="mean_difference", part="estimate")
+    if spelled.text == "V" and abs(number.value) <= 1:
+        symbol = Symbol("cramers_v", "effect")
     if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
         return []
     if loose and number.decimals < {"p": 2, "centre": 1, "statistic": 1}.get(symbol.part, 0):
@@ -224,7 +230,7 @@ def _settled(line: Line, spelled: Spelled, df: tuple[tuple[str, Printed], ...] |
     symbol, text = spelled.symbol, spelled.text
     if text == "f":
         return symbol if df and len(df) > 1 else replace(symbol, quantity="f", part="effect")
-    if text in ("T", "H") and not df and not _df_follows(line, spelled.after):
+    if text in ("T", "H", "Wald", "Wald statistic") and not df and not _df_follows(line, spelled.after):
         return Symbol("other", "other")
     return symbol
 
@@ -265,17 +271,15 @@ def _not_significant(line: Line, index: int, after: int, symbol: Symbol) -> Assi
 def ns_at(line: Line, index: int, first: int) -> Assignment | None:
     """`ns`, `n.s.` or `not significant` at `index`, standing in the place of p."""
     token = line.at(index)
-    words = 1
+    size = 1
     if token.low == "not" and line.at(index + 1).low in ("significant", "sig"):
-        words = 2
+        size = 2
     elif token.low != "ns" or token.kind != "word":
         return None
-    if line.at(index + words).kind in ("rel", "num", "word"):
+    if line.at(index + size).kind in ("rel", "num", "word"):
         return None
-    from decimal import Decimal
-
-    start, end = token.start, line.at(index + words - 1).end
+    start, end = token.start, line.at(index + size - 1).end
     page, box = line.view.box(start, end)
     # The level itself is put in where the document's alpha is known.
     value = Printed(line.view.printed_text(start, end), Decimal("0.05"), 2, ">", page=page, box=box)
-    return Assignment(P, value, first, index + words, notes=("not significant is read as p > alpha",))
+    return Assignment(P, value, first, index + size, notes=("not significant is read as p > alpha",))

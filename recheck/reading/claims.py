@@ -84,8 +84,9 @@ def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
         return "apart", semicolon
     if not words and numbers == 0 and len(between) <= 12:
         return "tight", semicolon
+    clause = any(t.low in (",", ";", "and", "but") for t in between[:1])
     inside = not any(t.text in "()[]" for t in between)
-    if len(words) <= (4 if inside else 3) and numbers <= 1 and len(between) <= 12:
+    if len(words) <= (4 if inside else 3) and numbers <= 1 and len(between) <= 12 and not clause:
         return "loose", semicolon
     return "apart", semicolon
 
@@ -96,6 +97,14 @@ def _joins(
     """Whether an assignment belongs to the current claim, and how surely."""
     distance, semicolon = gap(line, current[-1], item)
     if distance == "apart":
+        return None
+    # An n in brackets of its own belongs to what stands before it.
+    sizes_only = all(other.part == "size" for other in current)
+    if (
+        sizes_only
+        and item.part != "size"
+        and any(t.text in ")]" for t in line.tokens[current[-1].after : item.first])
+    ):
         return None
     rule = _RULES[item.part]
     if not rule(Situation(current, item, rest, semicolon, distance, line)):
@@ -177,7 +186,10 @@ def _beside_statistic(s: Situation) -> bool:
     names = {item.quantity for item in s.current if item.part == "statistic"}
     if s.item.quantity == "r":
         own_p = s.holds("p") and (s.coming("p", "statistic") or (s.semicolon and s.current[-1].part == "p"))
-        return not s.item.extra and not own_p
+        between = {t.low for t in s.line.tokens[s.current[-1].after : s.item.first]}
+        between.add(s.line.at(s.item.after).low)
+        # `…, p = .03, and r = .41 between height and mass` is a result of its own.
+        return not s.item.extra and not own_p and not between & {"and", "between", "with"}
     if s.item.quantity == "z":
         return names <= {"u", "w"} or (names == {"r"} and not s.holds("df", "p"))
     if s.item.quantity in ("u", "w"):
@@ -186,6 +198,8 @@ def _beside_statistic(s: Situation) -> bool:
 
 
 def _centre(s: Situation) -> bool:
+    if s.tight and [item.part for item in s.current] == ["spread"] and not s.coming("spread", "centre"):
+        return True
     return s.tight and not s.has(
         "statistic", "estimate", "effect", "p", "centre", "spread", "interval", "other"
     )
@@ -207,9 +221,9 @@ def _estimate(s: Situation) -> bool:
     if s.taken or not s.tight or (s.has(*_GROUP, "spread") and not s.has(*_RESULT)):
         return False
     if s.has("statistic"):
-        if s.semicolon and s.holds("p"):
-            return False
-        return not (s.holds("p") and s.coming("statistic", "p"))
+        if not s.holds("p"):
+            return True
+        return not (s.semicolon or s.coming("statistic", "p") or s.coming("p", "statistic"))
     if s.has("estimate", "effect"):
         return not s.holds("p") and not (s.semicolon and s.has("interval"))
     if s.holds("p"):
@@ -244,6 +258,13 @@ def _interval(s: Situation) -> bool:
 
 
 def _size(s: Situation) -> bool:
+    if (
+        s.has(*_GROUP)
+        and s.has("spread")
+        and not s.holds("n", "N")
+        and s.line.at(s.item.first - 1).text in ("(", "[")
+    ):
+        return not s.semicolon
     if s.item.quantity == "other" or (s.holds("u", "w") and s.tight):
         return s.tight and s.has("statistic")
     return s.tight and not s.holds("n", "N") and not (s.semicolon and s.has("p") and not s.has("statistic"))

@@ -12,7 +12,7 @@ import regex
 from recheck.model import Context, Printed
 from recheck.reading.groups import announced_spread
 from recheck.reading.numerals import Line, number_at, relation_at
-from recheck.reading.tokens import DIGITS, sentences, tokens, words
+from recheck.reading.tokens import DIGITS, Spans, tokens, words
 from recheck.reading.views import TIMEOUT, View
 from recheck.reading.wording import stated
 
@@ -32,10 +32,10 @@ class Setting:
     decimal_comma: bool = False
 
 
-def setting_of(views: Sequence[View]) -> Setting:
-    """Read the context of a document."""
+def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
+    """Read the context of a document from its passages and the spans of their sentences."""
     comma = decimal_comma(view.text for view in views)
-    alpha, notes = _alpha(views, comma)
+    alpha, notes = _alpha(zip(views, spans, strict=True), comma)
     signs, brackets = _announced(views)
     whole = " ".join(view.text for view in views if _tells(view)).lower()
     credible = (
@@ -59,9 +59,7 @@ def _tells(view: View) -> bool:
 
 @cache
 def _decimals() -> regex.Pattern[str]:
-    return regex.compile(
-        r"(?<=[=<>≤≥±] ?-?)(?:\d*(?P<comma>,)(?:\d{1,2}|0\d{2})|\d*(?P<point>[.·])\d+)(?![.,]?\d)"
-    )
+    return regex.compile(r"[=<>≤≥±] ?-?\d*(?:(?P<comma>,)(?:\d{1,2}|0\d{2})|(?P<point>[.·])\d+)(?![.,]?\d)")
 
 
 def decimal_comma(texts: Iterable[str]) -> bool:
@@ -107,16 +105,16 @@ _SPECIAL = ("bonferroni", "corrected", "adjusted", "post hoc", "post-hoc", "inte
             "exploratory", "pairwise", "multiple comparisons", "sample size", "interaction", "cluster", "voxel")  # fmt: skip
 
 
-def _alpha(views: Sequence[View], comma: bool) -> tuple[Printed | None, list[str]]:
+def _alpha(views: Iterable[tuple[View, Spans]], comma: bool) -> tuple[Printed | None, list[str]]:
     """The level for the main tests, with a note where the document gives several."""
     found: list[tuple[Printed, bool]] = []
-    for view in views:
+    for view, spans in views:
         lowered = view.text.lower()
         if view.passage.kind == "heading" or not (
             "signific" in lowered or "alpha" in lowered or "α" in lowered
         ):
             continue
-        for start, end in sentences(view):
+        for start, end in spans:
             text = view.text[start:end]
             low = text.lower()
             if DIGITS.isdisjoint(text) or any(word in low for word in _NO_LEVEL):

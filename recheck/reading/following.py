@@ -9,8 +9,12 @@ from recheck.reading.spellings import spelled_at
 from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import words
 
-_LINKS = words("of was were is are for value statistic equal to being the at as score ratio found")
-_AT_LAST = words("of was were is are at as averaged equals equaled equalled equal to value score")
+_LINKS = words(
+    "of was were is are for value statistic equal to being the at as score ratio found interaction trend"
+)
+_AT_LAST = words(
+    "change difference differences of was were is are at as averaged equals equaled equalled equal to value score"
+)
 
 
 def value_after(line: Line, index: int, symbol: Symbol) -> tuple[Number, Relation, bool] | None:
@@ -36,33 +40,38 @@ def value_after(line: Line, index: int, symbol: Symbol) -> tuple[Number, Relatio
 
 
 def _after_words(line: Line, index: int, symbol: Symbol, most: int) -> tuple[Number, Relation, bool] | None:
-    after = index
-    while after - index <= most:
+    """The number after up to `most` words: `t value of 2.31`, `mean loaf height was 12.3`, `p for trend = .02`."""
+    for after in range(index, index + most + 1):
         token = line.at(after)
         number = number_at(line, after)
-        if number and after > index and token.text in ("-", "+") and not token.spaced:
-            return None
         if number:
-            direct = after == index
-            linked = not direct and line.at(after - 1).low in _AT_LAST
-            return (
-                (number, "=", True)
-                if linked or (direct and symbol.bare and (token.spaced or line.at(index - 1).text == "("))
-                else None
-            )
+            return (number, "=", True) if _linked(line, index, after, symbol) else None
         relation, past = relation_at(line, after)
         if relation is not None and after > index:
             number = number_at(line, past)
             return (number, relation, False) if number else None
-        if token.text == "-" and not token.spaced and line.at(after + 1).kind == "word" and after > index:
-            after += 1
-            continue
-        if token.kind != "word" or (not symbol.worded and token.low not in _LINKS | {"interaction", "trend"}):
+        hyphen = (
+            token.text == "-" and not token.spaced and line.at(after + 1).kind == "word" and after > index
+        )
+        if not hyphen and not _passed_over(line, after, symbol):
             return None
-        if spelled_at(line, after) and token.low not in ("age", "score", "a"):
-            return None
-        after += 1
     return None
+
+
+def _linked(line: Line, index: int, after: int, symbol: Symbol) -> bool:
+    """Whether a number without a relation sign belongs to the symbol: directly behind it, or after `of` or `was`."""
+    token = line.at(after)
+    if after > index:
+        return line.at(after - 1).low in _AT_LAST and (token.spaced or token.text not in "-+")
+    return symbol.bare and (token.spaced or line.at(index - 1).text == "(")
+
+
+def _passed_over(line: Line, index: int, symbol: Symbol) -> bool:
+    """Whether a word may stand between a symbol and its number; another symbol may not."""
+    token = line.at(index)
+    if token.kind != "word" or (not symbol.worded and token.low not in _LINKS):
+        return False
+    return token.low in ("age", "score", "a") or spelled_at(line, index) is None
 
 
 def goes_on(line: Line, number: Number) -> bool:

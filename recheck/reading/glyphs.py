@@ -40,7 +40,9 @@ class Repairs:
 @cache
 def _strange() -> regex.Pattern[str]:
     """A quick look for anything that may be a misread relation."""
-    return regex.compile(r"[\x00-\x08\x0e-\x1f\ue000-\uf8ff\ufffd¼½þ]|[ ][5,.$#][ ]|[pP] ?[o4\\\[]0?\.\d")
+    return regex.compile(
+        r"[\x00-\x08\x0e-\x1f\ue000-\uf8ff\ufffd¼½þ]|[ ][5,.$#][ ][-−2]?\d*\.\d|[pP] ?[o4\\\[]0?\.\d"
+    )
 
 
 @cache

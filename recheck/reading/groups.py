@@ -26,10 +26,9 @@ def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[
             if mean:
                 found.append(mean)
         if item.quantity == "ci" and not item.several and not _has_centre(found, item, line):
-            number = _mean_before(line, item, found[-1].after if found else 0)
+            number = _estimate_before(line, item, found[-1].after if found else 0)
             if number:
-                note = "the number before the interval is taken for its estimate"
-                found.append(replace(number, symbol=ESTIMATE, doubt="medium", notes=(note,)))
+                found.append(number)
         found.append(item)
         pair = _in_brackets(line, item, announced)
         if pair:
@@ -49,6 +48,22 @@ def _has_centre(found: Sequence[Assignment], interval: Assignment, line: Line) -
         return False
     between = line.tokens[found[-1].after : interval.first]
     return len(between) <= 6 and not any(t.kind == "num" and len(t.text) > 1 for t in between)
+
+
+def _estimate_before(line: Line, interval: Assignment, stop: int) -> Assignment | None:
+    """The number before an interval that nobody names, where it may be the estimate: it, or its
+    negative, lies in the interval and is printed as finely."""
+    number = _mean_before(line, interval, stop) if interval.label in ("", "difference") else None
+    if number is None:
+        return None
+    ends = dict(interval.extra)
+    low, high, value = ends["ci_low"], ends["ci_high"], number.printed.value
+    inside = low.value <= value <= high.value or low.value <= -value <= high.value
+    if not inside or (number.printed.decimals == 0 and min(low.decimals, high.decimals) > 0):
+        return None
+    note = "the number before the interval is taken for its estimate"
+    loose = line.at(number.first - 1).kind != "rel"
+    return replace(number, symbol=ESTIMATE, doubt="medium", notes=(note,), loose=loose)
 
 
 def _has_mean(found: Sequence[Assignment], spread: Assignment, line: Line) -> bool:
@@ -252,7 +267,8 @@ def _of_each(line: Line, index: int, words: int) -> bool:
     for at in range(index, index + words + 1):
         low = line.at(at).low
         if low == "per" or (low == "each" and at == index):
-            return line.at(at + 1).low in _EACH
+            alone = low == "each" and line.at(at + 1).kind != "word"
+            return alone or line.at(at + 1).low in _EACH
         if low == "in" and line.at(at + 1).low in ("each", "both", "every"):
             return line.at(at + 2).low in _EACH
         if line.at(at).kind != "word":

@@ -35,15 +35,15 @@ def interval_at(line: Line, index: int) -> Interval | None:
     at = spelled.after
     if level is None:
         level, at = _level_after(line, at)
-    at, belongs, several = _to_ends(line, at)
-    ends = ends_at(line, at)
+    at, belongs = _to_ends(line, at)
+    ends = ends_at(line, at) or _named_ends(line, at)
     if ends is None:
         return None
     low, high, after = ends
     listed = line.at(after).low in ("and", "vs") and ends_at(line, after + 1) is not None
     return Interval(
         low, high, after, level, spelled.symbol.quantity, spelled.symbol.stated, belongs,
-        several or listed or spelled.symbol.several,
+        listed or spelled.symbol.several,
     )  # fmt: skip
 
 
@@ -59,10 +59,12 @@ def _level(line: Line, index: int) -> tuple[Number | None, int]:
 
 def _level_after(line: Line, index: int) -> tuple[Number | None, int]:
     """A level behind the word: `CI95%`, `CI 95%`, `CI (95%)`, `CI_95`."""
-    opened = line.at(index).text in ("(", "_", "[")
+    opened = line.at(index).text in ("(", "_", "[", ".")
     number, after = _level(line, index + opened)
     if number is None:
         return None, index
+    if opened and line.at(index).text == ".":
+        return (number, after) if not line.at(index + 1).spaced else (None, index)
     if opened and line.at(index).text in ("(", "["):
         if not number.percent or line.at(after).text not in (")", "]"):
             return None, index
@@ -78,7 +80,7 @@ _FILLERS = words(
 )
 
 
-def _to_ends(line: Line, index: int) -> tuple[int, str, bool]:
+def _to_ends(line: Line, index: int) -> tuple[int, str]:
     """Pass over `(CI)`, `for the difference`, `:`, `=`; tell what the interval is said to belong to."""
     belongs = ""
     for _ in range(9):
@@ -94,12 +96,19 @@ def _to_ends(line: Line, index: int) -> tuple[int, str, bool]:
             and line.at(index + 2).text in (")", "]")
         ):
             index += 3
+        elif (
+            token.low in ("for", "of")
+            and (owner := spelled_at(line, index + 1))
+            and owner.symbol.part != "interval"
+        ):
+            belongs = owner.symbol.quantity
+            index = owner.after
         elif token.kind == "word" and token.low in _FILLERS:
             belongs = "difference" if token.low.startswith("difference") else belongs
             index += 1
         else:
             break
-    return index, belongs, False
+    return index, belongs
 
 
 def ends_at(line: Line, index: int) -> tuple[Number, Number, int] | None:
@@ -132,6 +141,23 @@ def ends_at(line: Line, index: int) -> tuple[Number, Number, int] | None:
     return low, high, after
 
 
+def _named_ends(line: Line, index: int) -> tuple[Number, Number, int] | None:
+    """`LL = 0.02, UL = 1.30`, `lower = 0.02, upper = 1.30`."""
+    index += line.at(index).text in ("(", "[")
+    low = (
+        number_at(line, index + 2)
+        if line.at(index).low in _LOWER and line.at(index + 1).kind == "rel"
+        else None
+    )
+    if low is None:
+        return None
+    at = low.after + (line.at(low.after).text in (",", ";"))
+    high = number_at(line, at + 2) if line.at(at).low in _UPPER and line.at(at + 1).kind == "rel" else None
+    return (low, high, high.after) if high else None
+
+
+_LOWER = words("ll lower low llci lcl lb")
+_UPPER = words("ul upper high ulci ucl ub")
 _UNITS = words("g kg mg cm mm m s ms min h points years months days kcal ml l %")
 
 

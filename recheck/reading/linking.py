@@ -33,9 +33,11 @@ def linked(placed: Sequence[Placed]) -> list[Claim]:
     for test in (test for group in tests.values() for test in group):
         pair, basis, near = _pair(test, summaries, tests)
         if pair:
-            confidence = test.claim.confidence if near or test.claim.confidence == "low" else "medium"
             found[test.claim.id] = replace(
-                test.claim, groups=tuple(item.claim.id for item in pair), link=basis, confidence=confidence
+                test.claim,
+                groups=tuple(item.claim.id for item in pair),
+                link=basis,
+                link_confidence="high" if near else "medium",
             )
     return [found.get(item.claim.id, item.claim) for item in placed]
 
@@ -68,6 +70,8 @@ def _pair(test: Placed, summaries: _Sentences, tests: _Sentences) -> tuple[tuple
     own = _own(test, here, rivals)
     if len(own) == 2 and _alike(own):
         return tuple(own), "the only two group summaries in the same sentence", True
+    if len(here) == 1 and len(rivals) == 1:
+        return _with_the_one_before(test, here[0], summaries, tests)
     if here or len(rivals) != 1:
         return (), "", True
     for step, where in ((-1, "the sentence before"), (1, "the sentence after")):
@@ -79,6 +83,18 @@ def _pair(test: Placed, summaries: _Sentences, tests: _Sentences) -> tuple[tuple
                 (tuple(near), f"the only two group summaries in {where}", False) if sure else ((), "", True)
             )
     return (), "", True
+
+
+def _with_the_one_before(
+    test: Placed, here: Placed, summaries: _Sentences, tests: _Sentences
+) -> tuple[tuple[Placed, ...], str, bool]:
+    """`Rye was lowest (M = 80, SD = 5). It fell short of wheat (M = 91, SD = 8), t(34) = …`."""
+    before = (test.passage, test.sentence - 1)
+    near = summaries.get(before, [])
+    pair = [*near, here]
+    if len(near) != 1 or before in tests or not _alike(pair) or not _same_outcome(test, pair):
+        return (), "", True
+    return tuple(pair), "the group summaries in the same sentence and in the one before", False
 
 
 def _own(test: Placed, here: list[Placed], rivals: list[Placed]) -> list[Placed]:
@@ -102,18 +118,40 @@ def _alike(pair: Sequence[Placed]) -> bool:
     """Two summaries of one outcome have the same spread, unit and similar precision."""
     one, two = (item.claim.values for item in pair)
     same = ("sd" in one) == ("sd" in two) and one["mean"].percent == two["mean"].percent
-    return same and not _about_age(pair[0].text) and not _about_age(pair[1].text)
+    return same and not any(_about_age(item) for item in pair)
 
 
-def _about_age(text: str) -> bool:
-    return "age" in text.lower().split() or "mage" in text.lower()
+_AGES = frozenset(("age", "aged", "ages", "mage", "years", "year", "old"))
+
+
+def _about_age(item: Placed) -> bool:
+    """Whether the numbers, or the words right before them, speak of age."""
+    quote = item.claim.place.quote
+    at = item.text.find(quote[:12])
+    before = item.text[max(0, at - 20) : max(0, at)].lower().split()[-2:]
+    own = quote.lower().replace("_", " ").split()
+    return bool(_AGES.intersection(word.strip("(,;:=") for word in (*before, *own)))
 
 
 def _same_outcome(test: Placed, near: Sequence[Placed]) -> bool:
-    """Whether the sentences share a word that can name the outcome, or the test's names none of its own."""
+    """Whether the sentences share a word that can name the outcome, or the test's names none of its own.
+
+    A difference that is printed with the test must be that of the two means as printed.
+    """
+    if not _same_difference(test.claim, [item.claim for item in near]):
+        return False
     mine = {w for w in test.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
     other = {w for s in near for w in s.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
     return bool(mine & other) or len(mine) <= 4
+
+
+def _same_difference(test: Claim, pair: Sequence[Claim]) -> bool:
+    printed = test.values.get("mean_difference")
+    if printed is None or len(pair) != 2:
+        return True
+    one, two = (claim.values["mean"] for claim in pair)
+    slack = printed.unit + one.unit / 2 + two.unit / 2
+    return abs(abs(printed.value) - abs(one.value - two.value)) <= slack
 
 
 _COMMON = words(

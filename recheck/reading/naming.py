@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from recheck.model import ClaimKind, Confidence, Printed
 from recheck.reading.claims import Draft
 from recheck.reading.items import Assignment
+from recheck.reading.tokens import words
 
 
 @dataclass(frozen=True, slots=True)
@@ -25,7 +26,6 @@ _KINDS: tuple[tuple[str, ClaimKind], ...] = (
     ("t", "t-test"), ("F", "F-test"), ("chi2", "chi2-test"), ("u", "rank-test"), ("z", "z-test"), ("w", "rank-test"),
     ("r", "correlation"),
 )  # fmt: skip
-_COEFFICIENTS = ("b", "beta", "or", "rr", "hr", "rd", "intercept", "estimate")
 
 
 def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | None:
@@ -78,6 +78,8 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
     name = item.quantity
     if name == "spread":
         name = label or "sd"
+    if item.part == "centre" and item.loose and draft.line.at(item.after).low in _COMPARING:
+        name = "estimate"
     if name == "se" and draft.get("mean_difference") and not draft.get("b", "beta", "mean"):
         name = "se_difference"
     if name == "df12":
@@ -118,8 +120,7 @@ def _test_kind(
     if quantity in ("t", "F", "chi2") and not set(values) - {quantity}:
         return kind if values[quantity].relation == "<" else None
     if quantity == "w":
-        cramers = "w" in values and draft.get("w") is not None and abs(values["w"].number) <= 1
-        return None if cramers or "p" not in values else "rank-test"
+        return "rank-test" if "p" in values else None
     if quantity == "z":
         if "p" not in values and not set(values) & {"b", "beta", "se", "u", "w", "or", "ci_low", "n", "N"}:
             return None
@@ -131,13 +132,31 @@ def _test_kind(
     return kind
 
 
+_COMPARING = words(
+    "lower higher less more greater fewer smaller larger shorter longer reduction decrease reduced decreased decline faster "
+    "slower worse better below above"
+)
+
+
+def _other_sign(value: Assignment, interval: Assignment, draft: Draft) -> bool:
+    """`0.50 lower (95% CI −0.90 to −0.10)`: the words carry the sign that the interval prints."""
+    between = draft.line.tokens[value.after : interval.first]
+    if any(token.low in _COMPARING for token in between):
+        return True
+    ends = dict(interval.extra)
+    low, high, number = ends["ci_low"].value, ends["ci_high"].value, value.printed.value
+    return value.loose and not low <= number <= high and low <= -number <= high
+
+
 def _interval_of(draft: Draft) -> str | None:
     """The quantity directly before the interval, or the one that the interval is said to belong to."""
     previous: Assignment | None = None
     for item in draft.items:
         if item.quantity == "ci":
-            if item.label == "difference":
-                return "mean_difference"
+            if item.label:
+                return {"difference": "mean_difference", "other": None}.get(item.label, item.label)
+            if previous is not None and _other_sign(previous, item, draft):
+                return None
             if previous is None or previous.part in ("p", "size", "df", "other", "spread"):
                 spread_first = (
                     previous is not None and previous.part == "spread" and draft.part("estimate", "centre")

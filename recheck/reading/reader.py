@@ -17,7 +17,7 @@ from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
 from recheck.reading.numerals import Line
-from recheck.reading.tokens import DIGITS, sentences, tokens
+from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import Sentence, trapped
 from recheck.reading.views import View, view_of
 from recheck.reading.wording import stated
@@ -32,12 +32,13 @@ def read(document: Document) -> Reading:
     """
     passages, repairs = repaired([passage for passage in document.passages if passage.kind in READ])
     views = [view_of(passage) for passage in passages]
-    setting = setting_of(views)
+    spans = [tuple(sentences(view)) for view in views]
+    setting = setting_of(views, spans)
     left: Counter[str] = Counter()
     placed: list[Placed] = []
     for number, view in enumerate(views):
         try:
-            found = list(_passage(view, number, setting, left))
+            found = list(_passage(view, spans[number], number, setting, left))
         except TimeoutError:
             left["a passage took too long to read"] += 1
             continue
@@ -62,10 +63,10 @@ def _notes(document: Document, left: Counter[str]) -> tuple[str, ...]:
     return tuple(notes)
 
 
-def _passage(view: View, number: int, setting: Setting, left: Counter[str]) -> Iterator[Placed]:
-    for order, (start, end) in enumerate(sentences(view)):
+def _passage(view: View, spans: Spans, number: int, setting: Setting, left: Counter[str]) -> Iterator[Placed]:
+    for order, (start, end) in enumerate(spans):
         text = view.text[start:end]
-        if DIGITS.isdisjoint(text) or (_SIGNS.isdisjoint(text) and not _words_of_results(text)):
+        if DIGITS.isdisjoint(text) or not (any(sign in text for sign in _SIGNS) or _words_of_results(text)):
             continue
         line = Line(view, tokens(view, start, end), setting.decimal_comma)
         sentence = Sentence(text, text.lower(), line, start)
@@ -75,9 +76,9 @@ def _passage(view: View, number: int, setting: Setting, left: Counter[str]) -> I
             yield Placed(claim, number, order, first, last, text, view.span(first, last))
 
 
-_SIGNS = frozenset("=<>≤≥≈±")
+_SIGNS = "=<>≤≥≈±"
 _WORDS = ("mean", "average", "deviation", "interval", "ratio", "value", "correlation", "statistic", "difference", "test", "degrees",
-          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d", "sd", "se:")  # fmt: skip
+          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d", "sd", "se:", "cohen", "hedges")  # fmt: skip
 
 
 def _words_of_results(text: str) -> bool:
@@ -146,6 +147,10 @@ def _said(draft: Draft, name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
     and of two-tailed tests, only the words beside the numbers count.
     """
     said = dict.fromkeys((*name.stated, *says))
+    if name.kind in ("t-test", "F-test") and any(
+        t.low in ("t", "anova") for t in draft.line.tokens[: draft.first]
+    ):
+        said.pop("rank-test", None)
     df1 = name.values.get("df1")
     if name.kind == "F-test" and df1 is not None and df1.value != 1:
         said.pop("adjusted-p-post-hoc", None)
@@ -181,7 +186,10 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
         "[", first, last
     ) > text.count(")", first, last) + text.count("]", first, last):
         last += 1
-    place = view.passage.place(first, last)
+    raw = text[first:last]
+    marked_up = any(sign in raw for sign in ("\\", "$", "</", "_{", "^{")) or ("&" in raw and ";" in raw)
+    quote = " ".join(view.text[start:end].split()) if marked_up else None
+    place = view.passage.place(first, last, quote)
     values = {quantity: _with_alpha(value, setting) for quantity, value in name.values.items()}
     return Claim(
         _id(name, place.quote, view.passage), name.kind, place, values, name.stated,

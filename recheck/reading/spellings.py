@@ -26,9 +26,22 @@ NUMBERED = Symbol("other", "size")
 """`n1 = 14`, `n2 = 11`: sizes of single groups beside a test."""
 
 _SQUARES = frozenset(
-    ("g", "chi2", "eta2", "partial_eta2", "generalized_eta2", "omega2", "r", "F", "r2", "adjusted_r2")
+    (
+        "g",
+        "chi2",
+        "eta2",
+        "partial_eta2",
+        "generalized_eta2",
+        "omega2",
+        "epsilon2",
+        "r",
+        "F",
+        "f",
+        "r2",
+        "adjusted_r2",
+    )
 )
-_NEEDS_SQUARE = frozenset(("X", "x", "G", "ε", "v", "c", "w", "h"))
+_NEEDS_SQUARE = frozenset(("X", "x", "G", "ε", "epsilon", "omega", "v", "c", "w", "h", "khi"))
 _NEEDS_DF = frozenset(("v", "c", "w"))
 """What a wrong code table makes of χ; only `v2(1)` with its degrees of freedom is taken for it."""
 _LOWERED = frozenset(("t", "F", "chi2", "r", "n", "N", "df"))
@@ -181,12 +194,14 @@ def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
     """Settle the quantity by square and subscript."""
     symbol, label = spelled.symbol, spelled.label.lower()
     quantity, stated = symbol.quantity, list(spelled.stated)
-    if not squared and (spelled.text in _NEEDS_SQUARE or (spelled.text in ("η", "ω") and not label)):
+    if not squared and (
+        spelled.text in _NEEDS_SQUARE or (spelled.text in ("η", "ω", "eta", "np") and not label)
+    ):
         return None
     if spelled.text in _NEEDS_DF and line.at(spelled.after).text not in ("(", "["):
         return None
     if squared:
-        quantity = {"r": "r2", "F": "f2", "g": "eta2"}.get(quantity, quantity)
+        quantity = {"r": "r2", "F": "f2", "f": "f2", "g": "eta2"}.get(quantity, quantity)
     if squared and spelled.text in ("g", "h") and label not in ("p", "g"):
         return None
     quantity = _VARIANTS.get((quantity, label), quantity)

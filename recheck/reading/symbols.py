@@ -40,50 +40,49 @@ def _family(part: Part, *, stated: tuple[str, ...] = (), bare: bool = False, wor
     ]
 
 
-# A spelling of one or two letters, or with a capital inside, is taken with its case; the rest in any case.
-_ROWS: list[tuple[str, Symbol]] = [
+# Words of up to three letters, or with a capital inside, are taken with their case, longer ones in any case.
+# A hyphen may stand for a space, and a possessive s is passed over. Squares (`η²`, `R2`), subscripts (`η²p`,
+# `r_s`, `d_z`) and numbers (`df1`, `BF10`) are read after the name, not listed here.
+SPELLINGS: list[tuple[str, Symbol]] = [
     *_family("statistic", stated=("paired",), t="tpaired|tpair"),
-    *_family("statistic", stated=("welch",), t="tWelch|twelch|Welch's t|Welch t"),
-    *_family("statistic", t="t|T|tStudent|tstudent|Student's t|t value|t-value|t statistic|t-statistic|t test|t-test|t ratio|t score"),
+    *_family("statistic", stated=("welch",), t="tWelch|twelch|Welch t"),
+    *_family("statistic", t="t|T|tStudent|tstudent|Student t|t value|t statistic|t test|t ratio|t score"),
     *_family(
         "statistic",
-        F="F|f|ΔF|Fchange|F change|F value|F-value|F statistic|F-statistic|F test|F-test|F ratio|F-ratio|ANOVA F",
-        chi2="chi square|chi-square|chi squared|chi-squared|chisq|chi sq|chisquare|khi2|chi2|chi-2|X|x|v|c|w|χ|chi|Chi"
-        "|Wald χ|Pearson χ",
-        z="z|Z|z value|z-value|z statistic|z-statistic|z score|z-score|Wald z|Wald Z|z test|z-test|z ratio",
-        r="r|R|Pearson r|Pearson's r",
-        u="U|Mann-Whitney U|Mann Whitney U|Mann–Whitney U",
-        w="W|Wilcoxon W|Wilcoxon's W|V",
+        F="F|f|ΔF|Fchange|F change|F value|F statistic|F test|F ratio|ANOVA F",
+        chi2="chi square|chi squared|chisq|chi sq|chisquare|khi|X|x|v|c|w|χ|chi|Chi"
+        "|Wald χ|Pearson χ|Wald|Wald statistic",
+        z="z|Z|z value|z statistic|z score|Wald z|Wald Z|z test|z ratio",
+        r="r|R|Pearson r",
+        u="U|Mann-Whitney U",
+        w="W|Wilcoxon W|V",
     ),
     *_family(
         "statistic",
         bare=True,
         worded=True,
-        r="Pearson correlation|Pearson's correlation|Pearson correlation coefficient|Pearson's correlation coefficient"
-        "|correlation coefficient|correlation",
+        r="Pearson correlation|Pearson correlation coefficient|correlation coefficient|correlation",
     ),
-    *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal Wallis H|Kruskal-Wallis χ"),
-    *_family("statistic", stated=("likelihood-ratio",), chi2="G|G2|G²|LR χ|likelihood ratio χ"),
+    *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal-Wallis χ"),
+    *_family("statistic", stated=("likelihood-ratio",), chi2="G|LR χ|likelihood ratio χ"),
     *_family("statistic", stated=("model-fit",), chi2="Δχ"),
     *_family(
         "statistic",
         stated=("spearman",),
-        r="rs|rS|ρ|rho|Spearman r|Spearman's r|Spearman rho|Spearman's rho|Spearman ρ|Spearman's ρ|r rho"
-        "|Spearman correlation|Spearman's correlation|Spearman rank correlation|Spearman's rank correlation"
-        "|Spearman correlation coefficient|Spearman's correlation coefficient|Spearman's rs|Spearman rs"
-        "|Spearman's rank correlation coefficient|rank correlation coefficient",
+        r="rs|rS|ρ|rho|Spearman r|Spearman rho|Spearman ρ|Spearman rs|Spearman correlation|Spearman rank correlation"
+        "|Spearman correlation coefficient|Spearman rank correlation coefficient|rank correlation coefficient",
     ),
-    *_family("statistic", several=True, t="ts|t's|t values|t-values", F="Fs|F's|F values|F-values", chi2="χs|χ²s",
-             z="zs|Zs|z values|z scores|z-scores", r="correlations|correlation coefficients|Rs|r's"),
-    *_family("p", p="p|P|p value|p-value|P value|P-value|pvalue|p val|sig|Sig|probability value", bare=True),
+    *_family("statistic", several=True, t="ts|t's|t values", F="Fs|F's|F values", chi2="χs",
+             z="zs|Zs|z values|z scores", r="correlations|correlation coefficients|Rs|r's"),
+    *_family("p", p="p|P|p value|P value|pvalue|p val|sig|Sig|probability value", bare=True),
     *_family(
         "p",
         stated=("adjusted-p",),
         p="padj|pbonf|pBonf|pBonferroni|ptukey|pTukey|pholm|pHolm|pfdr|pFDR|pcorr|pcorrected|pcor|adjusted p|corrected p"
-        "|adjusted p value|adjusted p-value|corrected p value|corrected p-value|Bonferroni-corrected p|Bonferroni p"
+        "|adjusted p value|corrected p value|Bonferroni-corrected p|Bonferroni p"
         "|Tukey p|Holm p|FDR p|pFWE|pFWER|pHB",
     ),
-    *_family("p", several=True, p="ps|Ps|p's|P's|p values|p-values|P values|P-values|pvalues"),
+    *_family("p", several=True, p="ps|Ps|p's|P's|p values|P values|pvalues"),
     *_family("centre", mean="M|x̄|X̄|x̅|X̅|ȳ|Ȳ|mean|average|mean value|mean score|mean age|M age", bare=True, worded=True),
     *_family("centre", median="Mdn|Md|median|Median", bare=True, worded=True),
     *_family("centre", several=True, mean="Ms|means|averages|mean values|mean scores", median="medians|Mdns"),
@@ -103,7 +102,7 @@ _ROWS: list[tuple[str, Symbol]] = [
     *_family("spread", se_difference="SED|SEdiff|SE diff|standard error of the difference"),
     *_family("size", n="n", N="N"),
     *_family("size", several=True, n="ns", N="Ns"),
-    *_family("df", df="df|DF|d.f.|degrees of freedom|degree of freedom|dof", df1="df1|dfn", df2="df2|dfd"),
+    *_family("df", df="df|DF|degrees of freedom|degree of freedom|dof", df1="dfn", df2="dfd"),
     *_family("df", several=True, df="dfs"),
     *_family(
         "estimate",
@@ -114,47 +113,49 @@ _ROWS: list[tuple[str, Symbol]] = [
         rd="risk difference",
         mean_difference="MD|Mdiff|MDiff|MD diff|difference of means"
         "|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
-        "|difference in mean|mean change difference|ΔM",
+        "|difference in mean|ΔM",
     ),
-    *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"),
+    *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"
+             "|mean change|average change|mean increase|mean decrease|mean gain|mean reduction|mean improvement"),
     *_family("estimate", b="b|B|coefficient|coef|slope", estimate="Estimate|estimate|est|Est", beta="β|beta|Beta|bs", intercept="intercept"),
     *_family("estimate", several=True, b="Bs", beta="βs|betas", or_="ORs|odds ratios", hr="HRs|hazard ratios", rr="RRs"),
     *_family(
         "effect",
-        d="d|Cohen d|Cohen's d|Cohens d|ds|d s|effect size d|Cohen's ds",
-        d_z="dz|Cohen's dz|dZ|d z",
-        d_av="dav|Cohen's dav|d av",
-        d_rm="drm|Cohen's drm|d rm",
-        g="g|Hedges g|Hedges' g|Hedge's g|Hedges's g|gs|ghedges",
-        eta2="h|eta squared|eta-squared|η2|η²|eta2|eta²|η|eta",
-        partial_eta2="partial eta squared|partial eta-squared|ηp|η2p|η²p|ηp2|ηp²|pη|pη2|pη²|partial η|eta p|eta2p|np2|pes"
+        d="d|Cohen d|Cohens d|ds|effect size d|Cohen ds",
+        d_z="dz|Cohen dz|dZ",
+        d_av="dav|Cohen dav",
+        d_rm="drm|Cohen drm",
+        g="g|Hedges g|Hedge g|gs|ghedges",
+        eta2="h|eta squared|η|eta",
+        partial_eta2="partial eta squared|ηp|pη|partial η|eta p|np|pes"
         "|partial eta|ηP|ηpartial|gp|hp|ɳp|ŋp|ῃp",
-        generalized_eta2="generalized eta squared|generalised eta squared|generalized eta-squared|generalised eta-squared"
+        generalized_eta2="generalized eta squared|generalised eta squared"
         "|ηG|ηg|ges|generalized η|generalised η|eta G|gG|hG",
-        omega2="omega squared|omega-squared|ω|ωp|partial ω|partial omega squared|omega2",
-        epsilon2="epsilon squared|epsilon-squared|ε²|ε2",
-        f2="f2|f²|Cohen's f2|Cohen's f²",
-        f="Cohen's f",
+        omega2="omega squared|omega|ω|ωp|partial ω|partial omega squared",
+        epsilon2="epsilon squared|epsilon|ε",
+        f="Cohen f",
         r_pb="rpb|point-biserial r|point biserial r",
         phi="φ|phi|phi coefficient",
-        cramers_v="Cramer's V|Cramér's V|Cramers V|Cramer V|Cramér V|Cramer's φ|Cramér's φ|φc|φC",
-        r2="R2|R²|r2|r²|R-squared|R squared|R-square|R square|r-squared|r squared|Nagelkerke R|Nagelkerke's R"
-        "|pseudo R|Rsq|RSquared",
-        adjusted_r2="R2adj|R²adj|adjusted R2|adjusted R²|adjusted R-squared|adj R2|adj R²|Radj|adjusted R|adj R|R̄2",
-        delta="Glass's Δ|Glass Δ|Glass' Δ|Glass's delta|Glass delta",
+        cramers_v="Cramer V|Cramér V|Cramers V|Cramer φ|Cramér φ|φc|φC",
+        r2="R squared|R square|r squared|Nagelkerke R|pseudo R|Rsq|RSquared",
+        adjusted_r2="adjusted R squared|adjusted R square|Radj|adjusted R|adj R",
+        delta="Glass Δ|Glass delta",
     ),
-    *_family("effect", several=True, partial_eta2="ηps|ηs", d="Cohen's ds'"),
-    *_family("other", mse="MSE|MSe|MS|mean square error|mean squared error|mean square"),
+    *_family("effect", several=True, partial_eta2="ηps|ηs"),
+    *_family("other", mse="MSE|MSe|mean square error|mean squared error|mean square"),
     *_family("other", several=True, mse="MSEs"),
-    *_family("other", alpha="α|alpha|significance level", power="power|1-β|1 - β"),
+    *_family("other", alpha="α|alpha|significance level", power="power"),
     *_family(
         "other",
-        other="ΔR|BF|BF10|BF01|AIC|BIC|AUC|ICC|κ|kappa|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|τ|tau|Λ|ε|epsilon|Q|I2|I²|I"
-        "|rtt|KR-20|intraclass correlation|intraclass correlation coefficient|intra-class correlation coefficient|concordance correlation|concordance correlation coefficient|canonical correlation|multiple correlation|Matthews correlation coefficient|intra-class correlation|cophenetic correlation|intraclass r|test-retest r|ω total|pMCMC|logBF|RT|ER|H2|h2|C|D|S|A|E|K|L|J|k|m|y|q|ELPD|LOOIC|Q1|Q3|PPV|NPV|sensitivity|specificity",
+        other="ΔR|BF|AIC|BIC|AUC|ICC|κ|kappa|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|τ|tau|Λ|Q|I|MS|SS|rtt|KR"
+        "|intraclass correlation|intraclass correlation coefficient|intra-class correlation|intraclass r|test-retest r"
+        "|intra-class correlation coefficient|concordance correlation|concordance correlation coefficient"
+        "|canonical correlation|multiple correlation|Matthews correlation coefficient|cophenetic correlation"
+        "|pMCMC|logBF|RT|ER|C|D|S|A|E|K|L|J|k|m|y|q|ELPD|LOOIC|PPV|NPV|sensitivity|specificity",
     ),
-    *_family("interval", ci="CI|CIs|IC|KI|C.I.|confidence interval|confidence limits|confidence intervals|CI's|Conf Int|conf int"),
+    *_family("interval", ci="CI|CIs|IC|KI|confidence interval|confidence limits|confidence intervals|CI's|Conf Int|conf int"),
     *_family("interval", stated=("bayesian",), ci="CrI|CrIs|HDI|HDIs|HPD|HPDI|HPDs|credible interval|credible intervals|PI"
-             "|highest density interval|highest-density interval|credibility interval|posterior interval|ETI|CRI|PPI|UI"
+             "|highest density interval|credibility interval|posterior interval|ETI|CRI|PPI|UI"
              "|prediction interval|limits of agreement|LoA|tolerance interval|reference range|CrL"),
     *_family("interval", range="range|Range|age range|ranging|range of"),
     *_family("interval", iqr="IQR|interquartile range|inter-quartile range|quartiles|interquartile interval"),
@@ -176,7 +177,7 @@ def _lexicon() -> tuple[dict[tuple[str, ...], Symbol], dict[str, int]]:
     """Spellings as tuples of words, and for each first word the length of its longest spelling."""
     exact: dict[tuple[str, ...], Symbol] = {}
     longest: dict[str, int] = {}
-    for text, symbol in _ROWS:
+    for text, symbol in SPELLINGS:
         words = tuple(text.replace("-", " ").replace("–", " ").split())
         key = tuple(key_of(word) for word in words)
         exact[key] = symbol

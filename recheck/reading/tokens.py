@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from functools import cache
 from typing import NamedTuple
 
@@ -73,6 +73,9 @@ def _stop() -> regex.Pattern[str]:
     """A full stop that may end a sentence: the next one starts with a capital, a digit or a bracket."""
     return regex.compile(r"[.!?][\"'”)\]]{0,3}[²³¹⁰⁴-⁹]{0,6} (?=[\p{Lu}\p{N}(\[“\"*]|[a-z] ?[(=<>])")
 
+
+Spans = Sequence[tuple[int, int]]
+"""Start and end of each sentence of a view."""
 
 LONGEST = 2500
 """Characters of the longest sentence; what is longer is no prose (tables run together) and is cut."""

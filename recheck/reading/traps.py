@@ -94,7 +94,9 @@ def _critical(draft: Draft, sentence: Sentence) -> bool:
     """`t_crit = 2.13`, `the critical F(1, 40) is 4.08`, `a threshold of r = .30`."""
     if any(item.label.lower().startswith(("crit", "cut", "thresh", "tab")) for item in draft.items):
         return True
-    before = [t.low for t in draft.line.tokens[max(0, draft.first - 4) : draft.first]]
+    before = [t.low for t in draft.line.tokens[max(0, draft.first - 8) : draft.first]]
+    for stop in (",", ";", "(", "."):
+        before = before[len(before) - before[::-1].index(stop) :] if stop in before else before
     return bool(set(before) & set(_CRITICAL)) or before[-1:] == ["than"]
 
 
@@ -363,7 +365,9 @@ def _quoted(draft: Draft, sentence: Sentence) -> bool:
         found = True
         before = sentence.text[: match.start()].rstrip()
         narrative = match["year"][0] in "([" and not before.endswith(("(", ";", "e.g.,"))
-        if narrative and not own and _any(low[match.end() : match.end() + 60], _VERBS):
+        # A sentence that starts with its citation tells what those authors did.
+        reach = 60 if before else len(low)
+        if narrative and not own and _any(low[match.end() : match.end() + reach], _VERBS):
             return True
         if _method(match[0]) and own:
             continue

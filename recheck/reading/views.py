@@ -49,14 +49,15 @@ def view_of(passage: Passage) -> View:
     at: Sequence[int] = range(len(text) + 1)
     if passage.marks.strip():
         text, at = _with_marks(text, passage.marks, at)
-    if "\\" in text or "$" in text:
+    if "\\" in text or "$" in text or "_{" in text or "^{" in text:
         text, at = _replaced(text, at, _tex(), _from_tex)
     if "&" in text and ";" in text:
         text, at = _replaced(text, at, _entity(), _from_entity)
     for sign, pattern, function in _MARKUP:
         if sign in text:
             text, at = _replaced(text, at, pattern(), function)
-    text, at = _replaced(text, at, _filler(), _from_filler)
+    if "  " in text or not _FILLERS.isdisjoint(text):
+        text, at = _replaced(text, at, _filler(), _from_filler)
     return View(text, at, passage)
 
 
@@ -77,8 +78,9 @@ def _replaced(
             continue
         parts += (text[last:start], new)
         places += at[last:start]
-        # A replacement as long as the match's tail keeps the tail's places: a digit stays where it is.
-        places += [at[max(start, end - len(new) + k)] for k in range(len(new))]
+        # A sign stands where its markup starts; of several characters the last stands where it ends.
+        first = start if len(new) == 1 else max(start, end - len(new))
+        places += [at[min(first + k, end - 1)] for k in range(len(new))]
         last = end
     if not parts:
         return text, at
@@ -111,10 +113,17 @@ def _marked() -> regex.Pattern[str]:
     return regex.compile(r"\^+|_+")
 
 
+_FILLERS = frozenset(
+    "\u0302\u0303\u030c^ﬀﬁﬂﬃﬄﬅ\u00ad\u200b\u200c\u200d\u200e\u200f\u2060\u2061\u2062\u2063\u2064\ufeff"
+)
+
+
 @cache
 def _filler() -> regex.Pattern[str]:
-    """Runs of spaces, characters without width, ligatures, powers written with a caret."""
-    return regex.compile(r"[ ]{2,}|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^[({]?(-?\d{1,3})[)}]?")
+    """Runs of spaces, hats, characters without width, ligatures, powers written with a caret."""
+    return regex.compile(
+        r"[ ]{2,}|(?<=[ηωεχβ])[\u0302\u0303\u030c]|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^[({]?(-?\d{1,3})[)}]?"
+    )
 
 
 _LIGATURES = dict(zip("ﬀﬁﬂﬃﬄﬅ", ("ff", "fi", "fl", "ffi", "ffl", "st"), strict=True))

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+from functools import cache
+
 # Stems are looked for at the start of a word, in lower case; a stem that ends in a space is a whole word.
 STEMS: dict[str, tuple[str, ...]] = {
     "two-tailed": ("two-tailed", "two tailed", "two-sided", "two sided", "2-tailed", "2-sided"),
@@ -78,6 +81,8 @@ STEMS: dict[str, tuple[str, ...]] = {
     "disattenuated": ("disattenuat", "corrected for attenuation", "corrected for unreliability", "latent variable",
                       "latent correlation", "latent factor"),
     "yates": ("yates' ", "yates's", "yates corr", "yates cont", "continuity correct", "continuity-correct"),
+    "uncorrected-chi2": ("without yates", "without continuity", "without a continuity", "no continuity correction",
+                         "no yates", "uncorrected chi", "uncorrected pearson", "uncorrected χ"),
     "likelihood-ratio": ("likelihood ratio", "likelihood-ratio", "log-likelihood", "g-test", "deviance"),
     "fisher-exact": ("fisher's exact", "fisher exact", "fisher-exact", "fishers exact"),
     "multi-regression": ("multiple regression", "multiple linear regression", "multivariable", "multivariate regression",
@@ -115,30 +120,61 @@ _NEGATIONS = (
     "non-",
     "non",
 )
+_UNDONE = (" not applied", " not used", " not needed", " not necessary", " not required", " not performed", " not corrected",
+           " not made", " not adjusted", " unnecessary")  # fmt: skip
+_NEAR = 150
+"""Characters around a correction within which post hoc comparisons are looked for: about a sentence."""
 
 
 def stated(text: str) -> tuple[str, ...]:
     """Keys of `STATED` that the text says, in their order; negated ones are left out."""
     text = text.lower().replace("–", "-").replace("’", "'") + " "
-    found = [key for key, stems in STEMS.items() if any(_says(text, stem) for stem in stems)]
-    if any(_says(text, stem) for stem in _ADJUSTING):
-        found.append("adjusted-p-post-hoc" if any(stem in text for stem in _POST_HOC) else "adjusted-p")
-    return tuple(found)
+    starts = {word[:3] for word in text.translate(_APART).split()}
+    by_start = _by_start()
+    found = {
+        key
+        for start in starts.intersection(by_start)
+        for key, stem in by_start[start]
+        if next(_said(text, stem), None) is not None
+    }
+    if _ADJUSTED in found:
+        found.remove(_ADJUSTED)
+        found |= {_of_what(text, at) for stem in _ADJUSTING for at in _said(text, stem)}
+    return tuple(key for key in (*STEMS, "adjusted-p", "adjusted-p-post-hoc") if key in found)
 
 
-def _says(text: str, stem: str) -> bool:
-    """Tell whether the stem starts a word somewhere and is not negated there."""
+_ADJUSTED = "adjusted"
+
+
+_APART = str.maketrans(dict.fromkeys("-/()[]{}.,;:'\"“”*_=<>+%&", " "))
+
+
+@cache
+def _by_start() -> dict[str, list[tuple[str, str]]]:
+    """All stems by the first letters of their first word: most texts have few of them."""
+    table: dict[str, list[tuple[str, str]]] = {}
+    for key, stems in (*STEMS.items(), (_ADJUSTED, _ADJUSTING)):
+        for stem in stems:
+            start = stem.translate(_APART).split()[0][:3]
+            table.setdefault(start, []).append((key, stem))
+    return table
+
+
+def _said(text: str, stem: str) -> Iterator[int]:
+    """Where the stem starts a word and is not negated."""
     at = text.find(stem)
     while at >= 0:
         starts = at == 0 or not text[at - 1].isalpha()
-        if (
-            starts
-            and not text[max(0, at - 14) : at].rstrip("-").endswith(_NEGATIONS)
-            and not _undone(text, at, stem)
-        ):
-            return True
+        negated = text[max(0, at - 14) : at].rstrip("-").endswith(_NEGATIONS)
+        if starts and not negated and not _undone(text, at, stem):
+            yield at
         at = text.find(stem, at + 1)
-    return False
+
+
+def _of_what(text: str, at: int) -> str:
+    """Whether a correction is said of post hoc comparisons."""
+    near = text[max(0, at - _NEAR) : at + _NEAR]
+    return "adjusted-p-post-hoc" if any(stem in near for stem in _POST_HOC) else "adjusted-p"
 
 
 def _undone(text: str, at: int, stem: str) -> bool:
@@ -147,7 +183,4 @@ def _undone(text: str, at: int, stem: str) -> bool:
     clause = rest.split(".")[0].split(",")[0].split(";")[0]
     if stem.endswith(" for") and any(word in clause[:30] for word in _OF_TESTS):
         return True
-    return any(
-        no in clause
-        for no in (" not applied", " not used", " not needed", " was not ", " were not ", " unnecessary")
-    )
+    return any(word in clause for word in _UNDONE)

@@ -63,7 +63,7 @@ def chi2_tail(x: ArrayLike, df: ArrayLike) -> Floats:
 def f_tail(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
     """Upper tail of F; df1, df2 > 0 may be fractional, df2 infinite; 1 where F <= 0, nan where a df is.
 
-    Decreasing in F; not monotone in df1 or df2: see `bounds`. Source: Fisher (1924), Proceedings of
+    Decreasing in F; not monotone in df1 or df2: see `f_shape`. Source: Fisher (1924), Proceedings of
     the International Congress of Mathematics, Toronto, 2:805-813; Abramowitz & Stegun (1964), 26.6.
     """
     F, df1, df2 = floats(F, df1, df2)

@@ -25,11 +25,13 @@ class Way:
     `implied` maps the intervals of all numbers to the intervals that the checked quantity may lie
     in; an empty tuple says that this way cannot be followed with these numbers. `unstated` holds
     the assumptions that the text leaves open, `given` those that it states or the numbers fit.
+    A `costly` way is left out where many corrections of a number are tried.
     """
 
     implied: Callable[[Box], tuple[Interval, ...]]
     unstated: tuple[str, ...] = ()
     given: tuple[str, ...] = ()
+    costly: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -93,8 +95,7 @@ def first_agreement(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> Att
 
 
 def agrees_as_printed(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> bool:
-    """Tell whether the numbers agree with nothing assumed that the text does not state."""
+    """Tell whether the numbers agree with nothing assumed that the text does not state, by a cheap way."""
     box = box_of(numbers)
-    return any(
-        box[quantity].meets(interval) for way in ways if not way.unstated for interval in way.implied(box)
-    )
+    plain = (way for way in ways if not (way.unstated or way.costly))
+    return any(box[quantity].meets(interval) for way in plain for interval in way.implied(box))

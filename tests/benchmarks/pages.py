@@ -120,17 +120,17 @@ def default_extraction(data: bytes) -> int:
 
 def loop_ratio(data: bytes, *, rounds: int = 5) -> float:
     """Time of glyphs and lines over that of the bare loop; at most 1.6 is wanted."""
-    ours, bare = _interleaved((lambda: glyphs_and_lines(data), lambda: bare_loop(data)), rounds)
+    ours, bare = interleaved((lambda: glyphs_and_lines(data), lambda: bare_loop(data)), rounds)
     return ours / bare
 
 
 def extraction_ratio(data: bytes, *, rounds: int = 2) -> float:
     """Time of pdfminer's default extraction over that of glyphs and lines; at least 3 is wanted."""
-    ours, theirs = _interleaved((lambda: glyphs_and_lines(data), lambda: default_extraction(data)), rounds)
+    ours, theirs = interleaved((lambda: glyphs_and_lines(data), lambda: default_extraction(data)), rounds)
     return theirs / ours
 
 
-def _interleaved(works: Sequence[Callable[[], object]], rounds: int) -> list[float]:
+def interleaved(works: Sequence[Callable[[], object]], rounds: int) -> list[float]:
     """The shortest time of each piece of work, in turns, so that a busy machine slows all alike."""
     best = [float("inf")] * len(works)
     for _ in range(rounds):

@@ -2,7 +2,12 @@
 
 from __future__ import annotations
 
+import random
+from collections import Counter
+
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from tests.documents.making import (
     BOLD,
@@ -249,3 +254,28 @@ def test_the_same_file_gives_the_same_document():
 
     data = pdf(page, page)
     assert [p.text for p in opened(data).passages] == [p.text for p in opened(data).passages]
+
+
+@settings(max_examples=25, deadline=None)
+@given(st.integers(0, 10**6), st.integers(1, 400))
+def test_no_character_is_lost_or_doubled(seed, count):
+    chance = random.Random(seed)
+    labels = [
+        (
+            chance.choice(("ab", "17", "c", "2.5", "loaf", "x")),
+            chance.uniform(40, 540),
+            chance.uniform(60, 800),
+            chance.choice((3, 4, 7, 10, 10, 30)),
+        )
+        for _ in range(count)
+    ]
+
+    def page(canvas):
+        for text, x, y, size in labels:
+            line(canvas, x, y, text, size=size)
+
+    found = Counter(quoted(opened(pdf(page)).passages))
+    drawn = Counter("".join(text for text, *_ in labels))
+    # Two labels may happen to lie on one another; then one of them is read.
+    assert all(found[char] <= drawn[char] for char in drawn)
+    assert sum(found[char] for char in drawn) >= 0.97 * sum(drawn.values()) - 2

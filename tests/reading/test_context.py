@@ -101,7 +101,7 @@ def test_credible_intervals_called_ci_are_no_claims() -> None:
         ("pairwise comparisons with Tukey's HSD", "adjusted-p-post-hoc"),
         ("an ANCOVA controlling for oven", "covariate-adjusted"), ("a mixed-effects model", "mixed-model"),
         ("Greenhouse–Geisser corrected", "corrected-df"), ("one-sided tests", "one-tailed"),
-        ("with Yates' correction", "yates"), ("a permutation test", "permutation"),
+        ("with Yates' correction", "yates"), ("without continuity correction", "uncorrected-chi2"), ("a permutation test", "permutation"),
         ("estimated marginal means", "marginal"), ("multiple imputation", "imputed"),
         ("a test of non-inferiority", "equivalence"), ("bootstrapped intervals", "bootstrap"),
         ("Mann–Whitney tests", "rank-test"), ("robust standard errors", "robust"),
@@ -117,7 +117,7 @@ def test_words_are_understood(text: str, word: str) -> None:
         ("no Bonferroni correction was made", "adjusted-p"), ("p values are uncorrected", "adjusted-p"),
         ("Bonferroni correction was not applied", "adjusted-p"), ("adjusted for multiple comparisons", "covariate-adjusted"),
         ("in contrast to rye", "contrast"), ("loaves paired with butter", "paired"),
-        ("wheat grown in a greenhouse", "corrected-df"), ("a robust effect", "robust"),
+        ("wheat grown in a greenhouse", "corrected-df"), ("a robust effect", "robust"), ("without continuity correction", "yates"),
         ("a glass of water", "glass-delta"), ("the posterior edge", "bayesian"), ("T1-weighted images", "weighted"),
     ],
 )  # fmt: skip

@@ -95,7 +95,7 @@ def test_link_to_the_sentence_before() -> None:
     )
     test = next(claim for claim in found.claims if claim.kind == "t-test")
     assert test.groups == tuple(claim.id for claim in found.claims if claim.kind == "group-summary")
-    assert test.link and test.confidence == "medium"
+    assert test.link and (test.confidence, test.link_confidence) == ("high", "medium")
 
 
 def test_no_link_where_three_compete() -> None:

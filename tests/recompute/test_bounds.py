@@ -7,7 +7,7 @@ from itertools import pairwise
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 from scipy.optimize import minimize_scalar
 from scipy.special import lambertw
@@ -22,6 +22,7 @@ BOX = settings(max_examples=150, deadline=None)
 
 @BOX
 @given(t=intervals(-9, 9, 2), df=DF, sides=TAILS, u=SHARES, v=SHARES)
+@example(t=(-2.0, -1.0), df=(3.0, 5.0), sides=1, u=1.0, v=0.0)
 def test_p_from_t(t, df, sides, u, v):
     box = bounds.p_from_t_bounds(*t, *df, sides)
     t_here = at(t, u) if sides == 1 else max(at(t, u), 0.0)
@@ -51,6 +52,8 @@ def test_p_from_chi2(chi2, df, u, v):
 
 @BOX
 @given(r=intervals(-1, 1, 0.3), df=DF, sides=TAILS, u=SHARES, v=SHARES)
+@example(r=(-0.5, -0.2), df=(3.0, 5.0), sides=1, u=1.0, v=0.0)
+@example(r=(0.98, 1.02), df=(3.0, 3.0), sides=2, u=1.0, v=0.0)
 def test_p_from_r(r, df, sides, u, v):
     box = bounds.p_from_r_bounds(*r, *df, sides)
     floor = 0.0 if sides == 2 else -1.0

@@ -60,6 +60,12 @@ def test_z_tail_keeps_twelve_digits(z):
         assert error(tails.z_tail(z), mp.erfc(mpf(z) / mp.sqrt(2)) / 2) < 1e-12
 
 
+@pytest.mark.parametrize("r", (0.3, 0.999, 1 - 1e-6, 1 - 1e-10, 1 - 2**-52))
+def test_r_tail_keeps_its_digits_near_one(r):
+    true = exact.beta_tail(mpf(7) / 2, mpf(1) / 2, 1 - mpf(r) ** 2)
+    assert error(tails.r_two_sided(-r, 7), true) < 1e-12
+
+
 def test_the_exact_tails_agree_with_mpmaths_own_functions():
     for a, b, x in ((0.5, 3.5, 0.2), (12, 0.5, 0.9), (40, 7, 0.5)):
         own = mp.betainc(a, b, 0, mpf(x), regularized=True)

@@ -30,7 +30,9 @@ SYMBOLS = {
     "math": {"t": ["𝑡"], "F": ["𝐹"], "r": ["𝑟"], "z": ["𝑧"], "chi2": ["𝜒2", "𝜒²"], "p": ["𝑝"], "d": ["𝑑"]},
     "tex": {
         "chi2": [r"\chi^2"], "eta2": [r"\eta^2"], "partial_eta2": [r"\eta_p^2", r"\eta^2_p"],
-        "d_z": ["d_z"], "omega2": [r"\omega^2"], "phi": [r"\phi"], "beta": [r"\beta"],
+        "d_z": ["d_z"], "omega2": [r"\omega^2"], "phi": [r"\phi"], "beta": [r"\beta"], "or": ["OR"], "se": ["SE"],
+        "cramers_v": ["V", "V_C"], "epsilon2": [r"\epsilon^2"], "d_av": ["d_{av}"], "d_rm": ["d_{rm}"],
+        "delta": [r"\Delta"],
     },
 }  # fmt: skip
 BOUNDED = {"p", "r", "eta2", "partial_eta2", "omega2", "epsilon2", "phi", "cramers_v", "beta"}
@@ -78,7 +80,8 @@ class Hand:
         """One spelling of a quantity's symbol in this author's letters."""
         table = SYMBOLS[self.letters].get(quantity)
         if table is None:
-            table = [quantity] if self.letters == "tex" else SYMBOLS["plain"].get(quantity, [quantity])
+            single = self.letters == "tex" and len(quantity) == 1
+            table = [quantity] if single else SYMBOLS["plain"].get(quantity, [quantity])
         return one(self.rng, table)
 
     def relation(self, sign: str) -> str:
