@@ -13,7 +13,7 @@ from recheck.reading.tokens import words
 Gap = Literal["tight", "loose", "apart"]
 
 _CONNECTING = words(
-    "and with an a the at is was were effect size sizes of corresponding two tailed one sided exact associated or by "
+    "paired unpaired independent samples sample welch welch's student student's t anova and with an a the at is was were effect size sizes of corresponding two tailed one sided exact associated or by "
     "its their value test two-sided uncorrected corrected adjusted bonferroni tukey holm fdr gg greenhouse geisser huynh "
     "feldt for s ms g kg mg cm mm m min h hz years year points ml % cohen cohens hedges partial yielding giving indicating "
     "observed both where as in each group per which had has mean overall model se sd i.e ie such that estimated sided "
@@ -109,7 +109,7 @@ def _joins(
     rule = _RULES[item.part]
     if not rule(Situation(current, item, rest, semicolon, distance, line)):
         return None
-    return "tight" if distance == "tight" else "loose"
+    return "tight" if distance == "tight" or item.part == "size" else "loose"
 
 
 @dataclass(frozen=True, slots=True)

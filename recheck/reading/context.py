@@ -59,7 +59,13 @@ def _tells(view: View) -> bool:
 
 @cache
 def _decimals() -> regex.Pattern[str]:
-    return regex.compile(r"[=<>≤≥±] ?-?\d*(?:(?P<comma>,)(?:\d{1,2}|0\d{2})|(?P<point>[.·])\d+)(?![.,]?\d)")
+    return regex.compile(
+        r"""[=<>≤≥±]\ ?-?(?:
+            (?P<comma>0?,\d+ | \d+,(?:\d{1,2}|0\d{2}|\d{4,}))  # 2,1  0,102  1,05  112,4848: no thousands
+            | (?P<point>\d*[.·]\d+)
+        )(?![.,]?\d)""",
+        regex.VERBOSE,
+    )
 
 
 def decimal_comma(texts: Iterable[str]) -> bool:

@@ -10,15 +10,16 @@ from hashlib import blake2b
 from recheck.model import Claim, Document, Passage, Printed, Reading
 from recheck.reading.assignments import assignments, ns_at
 from recheck.reading.claims import Draft, drafts
-from recheck.reading.context import Setting, setting_of
+from recheck.reading.context import Setting, decimal_comma, setting_of
 from recheck.reading.glyphs import Repairs, doubted, repaired
 from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
 from recheck.reading.numerals import Line
+from recheck.reading.quoting import Sentence
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
-from recheck.reading.traps import Sentence, trapped
+from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
 from recheck.reading.wording import stated
 
@@ -68,7 +69,8 @@ def _passage(view: View, spans: Spans, number: int, setting: Setting, left: Coun
         text = view.text[start:end]
         if DIGITS.isdisjoint(text) or not (any(sign in text for sign in _SIGNS) or _words_of_results(text)):
             continue
-        line = Line(view, tokens(view, start, end), setting.decimal_comma)
+        comma = setting.decimal_comma or ("," in text and decimal_comma((text,)))
+        line = Line(view, tokens(view, start, end), comma)
         sentence = Sentence(text, text.lower(), line, start)
         for draft, name in _sentence(sentence, setting, left):
             first, last = _extent(draft, name)
@@ -191,11 +193,22 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
     quote = " ".join(view.text[start:end].split()) if marked_up else None
     place = view.passage.place(first, last, quote)
     values = {quantity: _with_alpha(value, setting) for quantity, value in name.values.items()}
+    confidence, notes = name.confidence, name.notes
+    if any(_maybe_decimal(quantity, value) for quantity, value in values.items()):
+        confidence, notes = "low", (*notes, "a comma may be a decimal sign or group thousands")
     return Claim(
         _id(name, place.quote, view.passage), name.kind, place, values, name.stated,
         tuple(word for word in setting.context.background if word not in name.stated),
-        name.interval_of, name.confidence, notes=name.notes,
+        name.interval_of, confidence, notes=notes,
     )  # fmt: skip
+
+
+_SELDOM_LARGE = frozenset(("t", "z", "r", "d", "g", "p"))
+
+
+def _maybe_decimal(quantity: str, value: Printed) -> bool:
+    """Tell whether a number taken for thousands (`1,663`) is more likely one with a decimal comma."""
+    return quantity in _SELDOM_LARGE and abs(value.value) >= 1000 and value.text.count(",") == 1
 
 
 def _with_alpha(value: Printed, setting: Setting) -> Printed:

@@ -51,6 +51,14 @@ STEMS: dict[str, tuple[str, ...]] = {
         "generalized estimating", "generalised estimating", "nlme", "proc mixed", "lmm ", "lmms", "linear mixed",
     ),
     "imputed": ("imputed", "imputation"),
+    "transformed": (
+        "log-transform", "log transform", "ln-transform", "ln transform", "logarithm", "log10", "log-10", "square-root transform",
+        "square root transform", "root-transform", "root transform", "arcsine", "arcsin", "logit-transform", "logit transform",
+        "box-cox", "rank-transform", "rank transform", "inverse-transform", "inverse transform", "reciprocal transform",
+        "reciprocals of", "were transformed", "was transformed", "transformed before", "transformed prior", "transformed for",
+        "transformed scores", "transformed values", "transformed data", "transformed times", "log-scale", "log scale",
+        "normalising transform", "normalizing transform", "power transform", "transformations were", "transformation was",
+    ),
     "weighted": (
         "weighted least", "weighted regression", "weighted analys", "weighted by", "weighted data", "weighted estimat",
         "weighted mean", "survey weight", "sampling weight", "inverse probability", "inverse-probability", "weights were",

@@ -1,0 +1,136 @@
+"""Results of other people: citations, and the sentences that tell what others found."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from functools import cache, cached_property
+
+import regex
+
+from recheck.reading.claims import Draft
+from recheck.reading.numerals import Line
+from recheck.reading.views import TIMEOUT
+
+
+@dataclass(frozen=True)
+class Sentence:
+    """A sentence as the traps look at it: its text, in lower case too, its tokens, its start in the view."""
+
+    text: str
+    low: str
+    line: Line
+    start: int
+    known: dict[tuple[str, ...], bool] = field(default_factory=dict)
+
+    def says(self, words: tuple[str, ...]) -> bool:
+        """Tell whether the sentence has one of the words; each list is looked for once."""
+        if words not in self.known:
+            self.known[words] = any(word in self.low for word in words)
+        return self.known[words]
+
+    @cached_property
+    def citations(self) -> list[regex.Match[str]]:
+        """All citations of the sentence."""
+        return list(_cited().finditer(self.text, timeout=TIMEOUT))
+
+    @cached_property
+    def own(self) -> bool:
+        """Whether the sentence speaks of the manuscript's own work too."""
+        low = f" {self.low} "
+        return any(word in low for word in _OWN)
+
+
+@cache
+def _cited() -> regex.Pattern[str]:
+    """A citation: `Baker (2012)`, `(Baker et al., 2012)`, `Baker and Loaf [12]`, `Baker et al., in press`."""
+    return regex.compile(
+        r"\p{Lu}[\p{L}'-]{1,24}(?:,? (?:and|&) \p{Lu}[\p{L}'-]{1,24}| et al\.?| and colleagues)?"
+        r"(?:'s)?,? ?(?P<year>[(\[]?(?:19|20)\d\d[a-z]?\b|\[\d{1,3}[\d, -]{0,12}\]"
+        r"|[(]?(?:[Ii]n[ -]press|[Aa]ccepted|[Ss]ubmitted|in prep|personal communication)\b)"
+    )
+
+
+_VERBS = ("found", "reported", "report ", "observed", "showed", "shown", "obtained", "estimated", "demonstrated", "documented",
+          "reveal", "concluded", "noted", "described", "yielded", "indicated", "suggested", "measured", "published")  # fmt: skip
+_OWN = (" we ", " our ", "present study", "current study", "this study", "present experiment", "current experiment", " us ",
+        "in the present", "replicat", "consistent with", "in line with", "similar to", "following ", "using ", "used ",
+        "according to", "in contrast to", "unlike", "as in ", "scale", "questionnaire", "adapted", "developed by")  # fmt: skip
+_EARLIER = ("previous", "prior ", "earlier", "past ", "meta-analy", "meta analy", "literature", "original study", "original effect",
+            "other studies", "other authors", "elsewhere", "systematic review", "et al")  # fmt: skip
+_OTHERS = ("they found", "they reported", "they observed", "they showed", "the authors found", "the authors reported",
+           "these authors", "their results", "their study", "their meta-analysis")  # fmt: skip
+
+
+def quoted(draft: Draft, sentence: Sentence) -> bool:
+    """Results of other people: a citation with a verb of reporting, or right beside the numbers."""
+    low = f" {sentence.low} "
+    if low.lstrip().startswith(_OTHERS):
+        return True
+    own = sentence.own
+    start, end = draft.line.at(draft.first).start, draft.line.at(draft.after - 1).end
+    is_tested = tested(draft)
+    found = False
+    for match in sentence.citations:
+        found = True
+        before = sentence.text[: match.start()].rstrip()
+        narrative = match["year"][0] in "([" and not before.endswith(("(", ";", "e.g.,"))
+        # A sentence that starts with its citation tells what those authors did.
+        reach = 60 if before else len(low)
+        if narrative and not own and _any(low[match.end() : match.end() + reach], _VERBS):
+            return True
+        if _method(match[0]) and own:
+            continue
+        if (not own or not is_tested) and _beside(
+            draft.line.view.text, start, end, match.start() + sentence.start, match.end() + sentence.start
+        ):
+            return True
+    if own or (is_tested and not found):
+        return False
+    return (
+        sentence.says(_EARLIER)
+        and (found or sentence.says(("meta-analy", "previous", "literature", "earlier")))
+        and (sentence.says(_VERBS) or sentence.says(("meta-analy", "average effect", "overall effect")))
+    )
+
+
+def _method(citation: str) -> bool:
+    """Whether a citation is that of an effect size's definition, as in `Cohen's d (Cohen, 1988) was 0.5`."""
+    return citation.startswith(
+        ("Cohen", "Hedges", "Glass", "Lakens", "Cumming", "Rosenthal", "Borenstein", "Morris")
+    )
+
+
+@cache
+def _before() -> regex.Pattern[str]:
+    """What may stand between a citation and the numbers that it gives."""
+    return regex.compile(
+        r"[)\]]?,? ?(?:was|were|is|of|reported|found|observed|estimated|:|,|;)? ?(?:a|an)? ?[(\[]?"
+    )
+
+
+def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
+    """Tell whether a citation stands in the brackets of the numbers, or directly before or after them."""
+    if first >= end:
+        between = text[end:first].lstrip(" )]%")
+        opened = between.startswith("(") or between.startswith(";")
+        names_only = not any(char.isdigit() or char in ")=<>" for char in between)
+        return (opened and names_only and len(between) < 120) or between in (
+            "by ",
+            ", ",
+            "in ",
+            "from ",
+            "; ",
+        )
+    if last <= start:
+        return bool(_before().fullmatch(text[last:start], timeout=TIMEOUT))
+    return False
+
+
+def _any(text: str, words: tuple[str, ...]) -> bool:
+    return any(word in text for word in words)
+
+
+def tested(draft: Draft) -> bool:
+    """Tell whether a statistic stands with its degrees of freedom or its p."""
+    statistic = draft.part("statistic")
+    return statistic is not None and (bool(statistic.extra) or draft.get("df", "p", "n", "N") is not None)
