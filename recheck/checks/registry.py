@@ -10,7 +10,7 @@ from importlib import import_module
 from recheck.errors import UnknownCheck
 from recheck.model import Claim, ClaimKind, Context, Finding, Settings
 
-FAMILIES = ("tails", "groups", "effects", "intervals", "interval_tests", "sizes", "ranges")
+FAMILIES = ("tails", "correlations", "groups", "effects", "intervals", "interval_tests", "sizes", "ranges")
 """Modules of checks, in the order in which they are listed and run."""
 
 

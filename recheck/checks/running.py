@@ -31,7 +31,7 @@ def _run(check: Check, case: Case) -> Iterator[Finding]:
         return
     missing = [name for name in check.needs if name not in values]
     if missing:
-        if all(name.startswith("df") for name in missing):
+        if check.quantity in values and all(name.startswith("df") for name in missing):
             yield unchecked(
                 case, check.name, check.quantity, f"{', '.join(shown(m) for m in missing)} not printed"
             )

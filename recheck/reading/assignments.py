@@ -125,6 +125,10 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     number, relation, loose = value
     if symbol.quantity == "mean" and [t.low for t in line.tokens[max(0, index - 2) : index]] == ["by", "a"]:
         symbol = replace(symbol, quantity="mean_difference", part="estimate")
+    if spelled.text.lower() in ("difference", "diff") and (
+        number.percent or line.at(index - 1).low in _OTHER_MEANS
+    ):
+        symbol = Symbol("estimate", "estimate")
     if spelled.text == "V" and abs(number.value) <= 1:
         symbol = Symbol("cramers_v", "effect")
     if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
@@ -142,6 +146,11 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
         return [_two_df(line, item) or item]
     following = plus_minus(line, number.after) or _unlabelled(line, item)
     return [item, following] if following else [item]
+
+
+_OTHER_MEANS = words(
+    "median risk rate proportion percentage relative standardized standardised geometric log"
+)
 
 
 def _plural(spelled: Spelled, df: Values | None, relation: Relation) -> bool:

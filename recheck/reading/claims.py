@@ -133,6 +133,12 @@ class Situation:
         return bool(held & set(quantities))
 
     @property
+    def divided(self) -> bool:
+        """Whether a semicolon divides results here, not the numbers of one result: `t = 2.3; p = .03; d = 0.9`."""
+        pairs = zip(self.current, self.current[1:], strict=False)
+        return self.semicolon and not any(gap(self.line, one, two)[1] for one, two in pairs)
+
+    @property
     def taken(self) -> bool:
         """Whether the item's own place in the claim is taken."""
         return self.holds(self.item.quantity)
@@ -175,8 +181,8 @@ def _statistic(s: Situation) -> bool:
         return False
     if s.has("estimate", "effect"):
         if s.holds("p"):
-            return not s.coming("p", "statistic") and not s.semicolon
-        return s.has("estimate") or not s.semicolon
+            return not s.coming("p", "statistic")
+        return s.has("estimate") or not s.divided
     if s.holds("p"):
         return not s.coming("p", "statistic") and not (s.has("other") and s.semicolon)
     return True
@@ -223,7 +229,7 @@ def _estimate(s: Situation) -> bool:
     if s.has("statistic"):
         if not s.holds("p"):
             return True
-        return not (s.semicolon or s.coming("statistic", "p") or s.coming("p", "statistic"))
+        return not (s.divided or s.coming("statistic", "p") or s.coming("p", "statistic"))
     if s.has("estimate", "effect"):
         return not s.holds("p") and not (s.semicolon and s.has("interval"))
     if s.holds("p"):

@@ -59,7 +59,7 @@ def bracketed_df(line: Line, index: int, symbol: Symbol) -> Bracket | None:
         elif token.kind == "word" and _harmless(token):
             at += 1
             continue
-        pieces, past = _numbers(line, past, end)
+        pieces, past = _numbers(line, past, end, symbol)
         if not pieces:
             return None
         if name in ("", "df"):
@@ -81,14 +81,17 @@ def _harmless(token: Token) -> bool:
     return token.low in _HARMLESS or token.low == "-"
 
 
-def _numbers(line: Line, index: int, end: int) -> tuple[list[Printed], int]:
-    """One number, or the several that one token such as `1,38` or `3.63,1252.61` holds."""
+def _numbers(line: Line, index: int, end: int, symbol: Symbol) -> tuple[list[Printed], int]:
+    """One number, or the several that one token such as `1,38` or `3.63,1252.61` holds.
+
+    t and r have one df only: the comma of `t(46,12)` is a decimal sign.
+    """
     token = line.at(index)
     if token.text == "-" and line.at(index - 1).kind == "word":
         return [], index
     if token.kind != "num":
         return [], index
-    pieces = _split(token.text, line, index, end)
+    pieces = None if symbol.quantity in ("t", "r") else _split(token.text, line, index, end)
     if pieces is None:
         number = number_at(line, index, grouped=True)
         return ([number.printed(line)], number.after) if number and number.value >= 0 else ([], index)

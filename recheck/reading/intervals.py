@@ -27,8 +27,10 @@ class Interval:
 def interval_at(line: Line, index: int) -> Interval | None:
     """The interval announced at `index`: `95% CI [a, b]`, `CI95% = a, b`, `(a to b)` after its name."""
     level, at = _level(line, index)
-    if level is not None and line.at(at).text == "-":
-        at += 1
+    if level is not None:
+        at += line.at(at).text == "-"
+        while line.at(at).low in _METHODS and at < index + 6:
+            at += 1
     spelled = spelled_at(line, at)
     if spelled is None or spelled.symbol.part != "interval":
         return None
@@ -45,6 +47,12 @@ def interval_at(line: Line, index: int) -> Interval | None:
         low, high, after, level, spelled.symbol.quantity, spelled.symbol.stated, belongs,
         listed or spelled.symbol.several,
     )  # fmt: skip
+
+
+_METHODS = words(
+    "bootstrap bootstrapped bca percentile profile wald simultaneous exact two sided - bias corrected accelerated "
+    "likelihood asymptotic robust parametric tukey bonferroni adjusted"
+)
 
 
 def _level(line: Line, index: int) -> tuple[Number | None, int]:

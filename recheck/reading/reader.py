@@ -174,7 +174,7 @@ def _with_ns(items: list[Assignment], line: Line) -> list[Assignment]:
     for index, item in enumerate(items):
         found.append(item)
         following = items[index + 1] if index + 1 < len(items) else None
-        if item.part == "statistic" and line.at(item.after).text in (",", "(", ";"):
+        if item.part in ("statistic", "df") and line.at(item.after).text in (",", "(", ";"):
             ns = ns_at(line, item.after + 1, item.after + 1)
             if ns and not (following and following.part == "p" and following.first <= ns.after + 2):
                 found.append(ns)

@@ -112,7 +112,7 @@ SPELLINGS: list[tuple[str, Symbol]] = [
         hr="HR|aHR|AHR|hazard ratio|hazards ratio|adjusted hazard ratio",
         rd="risk difference",
         mean_difference="MD|Mdiff|MDiff|MD diff|difference of means"
-        "|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
+        "|difference|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
         "|difference in mean|ΔM",
     ),
     *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"

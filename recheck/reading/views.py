@@ -122,7 +122,7 @@ _FILLERS = frozenset(
 def _filler() -> regex.Pattern[str]:
     """Runs of spaces, hats, characters without width, ligatures, powers written with a caret."""
     return regex.compile(
-        r"[ ]{2,}|(?<=[ηωεχβ])[\u0302\u0303\u030c]|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^[({]?(-?\d{1,3})[)}]?"
+        r"[ ]{2,}|(?<=[ηωεχβ])[\u0302\u0303\u030c]|[\u00ad\u200b-\u200f\u2060-\u2064\ufeff]|[ﬀ-ﬅ]|\^[({]?(-?\d{1,3})[)}^]?"
     )
 
 

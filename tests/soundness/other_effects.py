@@ -67,12 +67,12 @@ def welch_d(rng: np.random.Generator) -> Sample:
 
 
 def approximate_g(rng: np.random.Generator) -> Sample:
-    """g with the approximate factor, with another SD below, or called g without any factor."""
+    """g with the approximate factor, of another d (root-mean-square SD, 2t/√df), or without any factor."""
     hand, a, b, test = two(rng)
     df, d = len(a) + len(b) - 2, test.effect / pooled_sd(a, b)
-    rms = other_d(a, b, test.value)["rms"]
+    other = other_d(a, b, test.value)
     factor = 1 - 3 / (4 * df - 1)
-    value = [d * factor, d, rms * factor, d * (1 - 3 / (4 * (df + 2) - 1))][rng.integers(4)]
+    value = [d * factor, d, other["rms"] * factor, other["df"] * factor][rng.integers(4)]
     return compared(hand, a, b, with_t(hand, test, hand.effect("g", float(value))))
 
 

@@ -1,0 +1,34 @@
+"""One fault loses one check on one claim, and what is missing is named."""
+
+from dataclasses import replace
+
+from recheck.checks import registry
+from recheck.checks.running import run_checks
+from recheck.model import Context, Settings
+from tests.checks.claims import claim
+
+
+def test_a_fault_is_one_unchecked_finding(monkeypatch):
+    def fails(case):
+        raise ZeroDivisionError("no reason")
+
+    checks = tuple(replace(c, run=fails) if c.name == "p-from-t" else c for c in registry.all_checks())
+    monkeypatch.setattr("recheck.checks.running.all_checks", lambda: checks)
+    found = run_checks([claim("t-test", t="2.20", df="28", p=".036", d="0.8")], Context(), Settings())
+    verdicts = {f.check: f.verdict for f in found}
+    assert verdicts["p-from-t"] == "unchecked"
+    assert verdicts["d-from-t"] == "agrees"
+    assert "no reason" in next(f.message for f in found if f.check == "p-from-t")
+
+
+def test_missing_df_is_named():
+    (found,) = run_checks([claim("t-test", t="2.20", p=".036")], Context(), Settings())
+    assert (found.verdict, found.check) == ("unchecked", "p-from-t")
+    assert "df" in found.message
+
+
+def test_ids_are_stable():
+    claims = [claim("t-test", t="2.20", df="28", p=".036")]
+    first = run_checks(claims, Context(), Settings())
+    again = run_checks(claims, Context(), Settings())
+    assert [f.id for f in first] == [f.id for f in again]

@@ -1,0 +1,48 @@
+"""The whole way from text or bytes to a ranked audit."""
+
+import io
+
+import pytest
+
+import recheck
+from recheck.errors import RecheckError, UnreadableDocument
+
+TEXT = "All tests were two-tailed with alpha set at .01. The loaves differed, t(28) = 2.20, p = .003."
+
+
+def test_text_with_a_stated_level():
+    audit = recheck.audit_text(TEXT)
+    assert (audit.settings.alpha, audit.settings.alpha_source) == (0.01, "stated")
+    first = audit.findings[0]
+    assert (first.verdict, first.reversal, first.rank) == ("inconsistent", True, 1)
+    assert first.place.line == 1
+    assert audit.summary()["reversals"] == 1
+
+
+def test_asked_level_goes_before_the_stated_one():
+    audit = recheck.audit_text(TEXT, alpha=0.05)
+    assert (audit.settings.alpha_source, audit.findings[0].reversal) == ("asked", False)
+
+
+def test_same_bytes_give_the_same_audit(tmp_path):
+    path = tmp_path / "loaves.txt"
+    path.write_text(TEXT, encoding="utf-8")
+    by_path, by_bytes = recheck.audit(path), recheck.audit(TEXT.encode(), name="loaves.txt")
+    by_file = recheck.audit(io.BytesIO(TEXT.encode()), name="loaves.txt")
+    assert (
+        [f.id for f in by_path.findings]
+        == [f.id for f in by_bytes.findings]
+        == [f.id for f in by_file.findings]
+    )
+    assert by_path.document.sha256 == by_bytes.document.sha256
+
+
+def test_a_missing_file_is_one_clear_sentence(tmp_path):
+    with pytest.raises(UnreadableDocument, match=r"there is no such file; check the path\.$") as caught:
+        recheck.audit(tmp_path / "nothing.pdf")
+    assert isinstance(caught.value, RecheckError)
+
+
+def test_text_without_statistics_has_nothing_to_check():
+    audit = recheck.audit_text("Bread is baked every morning.")
+    assert (audit.claims, audit.findings) == ((), ())
