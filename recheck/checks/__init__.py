@@ -1,1 +1,1 @@
-"""."""
+"""Checks: claims become findings; the only giver of verdicts."""

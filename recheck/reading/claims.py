@@ -191,7 +191,7 @@ def _statistic(s: Situation) -> bool:
 def _beside_statistic(s: Situation) -> bool:
     names = {item.quantity for item in s.current if item.part == "statistic"}
     if s.item.quantity == "r":
-        own_p = s.holds("p") and (s.coming("p", "statistic") or (s.semicolon and s.current[-1].part == "p"))
+        own_p = s.holds("p") and (s.coming("p", "statistic") or (s.divided and s.current[-1].part == "p"))
         between = {t.low for t in s.line.tokens[s.current[-1].after : s.item.first]}
         between.add(s.line.at(s.item.after).low)
         # `…, p = .03, and r = .41 between height and mass` is a result of its own.

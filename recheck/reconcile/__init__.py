@@ -1,1 +1,1 @@
-"""."""
+"""Readings, roundings and slips: what would reconcile printed numbers. Gives no verdict."""
