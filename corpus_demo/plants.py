@@ -57,7 +57,7 @@ PLANTS = (
     Plant(
         COACHING, "usual", "lo", "−3.3",
         "95% CI {usual[lo]} to {usual[hi]}; paired t test, t~{usual[df]}~={usual[t]}, P{usual[p]}",
-        "p", "inconsistent", True, "CI of a mean change that holds 0 beside P<0.001: a sign is added",
+        "p", "inconsistent", False, "CI of a mean change that holds 0 beside P<0.001: a sign is added",
     ),
     Plant(
         COACHING, "passed", "p", "=0.12",

@@ -3,14 +3,15 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import dataclass
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import Groups, fit_designs, sds
 from recheck.checks.groups import link_doubts, linked_groups, unsigned
 from recheck.checks.intervals import ESTIMATES, OFF_CENTRE, OTHER_METHOD, ends
 from recheck.checks.models import foreign_model
+from recheck.checks.p_values import ONE_TAILED, P_RANGE, UNIT_DF, as_interval
 from recheck.checks.registry import Case, check
 from recheck.model import VERDICTS, Claim, Finding, Interval
 from recheck.recompute import bounds, intervals, two_groups
@@ -114,7 +115,7 @@ def t_from_ci(case: Case) -> Iterable[Finding]:
     bare = (
         claim.interval_of is None and len(case.groups) == 2 and not any(n in claim.values for n in ESTIMATES)
     )
-    if not (claim.interval_of == "mean_difference" or bare):
+    if not (claim.interval_of in ("mean_difference", "b") or bare):
         return
     low, high = ends(claim)
     df = claim.values["df"].number
@@ -162,74 +163,97 @@ def _ci_ways(claim: Claim, df: float, slack: Slack) -> tuple[Way, ...]:
     return tuple(ways)
 
 
+LINEAR = ("mean_difference", "b", "rd")
+RATIOS = ("or", "rr", "hr")
+OPEN_DF = (5.0, 8.0, 15.0, 40.0, UNIT_DF)
+"""df that are tried where none are printed; p moves steadily from one to the next."""
+
+
 @check(
     "p-from-ci",
-    title="p against the confidence interval of the mean difference",
-    kinds=("t-test", "comparison"),
+    title="p against the confidence interval of a difference, slope or ratio",
+    kinds=("t-test", "comparison", "estimate"),
     quantity="p",
     needs=("p", "ci_low", "ci_high"),
-    formula="|t| = c |low + high|/(high − low); p = 2 P(T > |t|)",
+    formula="|t| = c |low + high|/(high − low), ends of ratios as logarithms; p = 2 P(T > |t|)",
     source="Altman & Bland (2011) How to obtain the P value from a confidence interval, BMJ 343:d2304",
-    limits="Same method, two-sided, unadjusted only. Without df the verdict is conditional at most.",
-    agrees=("Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .003.",),
-    conditional=("Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .30.",),
+    limits="Same method, two-sided, unadjusted only. Without df, and for ratios, the verdict is conditional at most.",
+    agrees=(
+        "Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .003.",
+        "Steam halved collapse (OR = 0.50, 95% CI 0.28 to 0.90, p = .02).",
+    ),
+    conditional=(
+        "Steamed loaves rose higher, mean difference = 6.4 mm, 95% CI [2.4, 10.4], p = .30.",
+        "Steam halved collapse (OR = 0.50, 95% CI 0.28 to 0.90, p = .38).",
+    ),
 )
 def p_from_ci(case: Case) -> Iterable[Finding]:
-    """Compare p with the interval of the mean difference, over all df where none are printed."""
-    claim = case.claim
-    if claim.interval_of != "mean_difference" or {"t", "df"} <= claim.values.keys():
-        return
+    """Compare p with the interval of its estimate, over all df where none are printed."""
+    claim, ratio = case.claim, case.claim.interval_of in RATIOS
     low, high = ends(claim)
-    if low.interval().low > high.interval().high:
+    if claim.interval_of not in (*LINEAR, *RATIOS) or low.interval().low > high.interval().high:
+        return
+    if ratio and low.interval().low <= 0:
+        yield unchecked(case, "p-from-ci", "p", "the lower end of the ratio's interval may be 0")
         return
     df = claim.values.get("df")
-    known = df is not None and df.number > 0
-    numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
-    ways = _p_ways(case, df.number if known and df is not None else None)
+    known = df is not None and df.number > 0 and not ratio
     doubts = () if known else ("p and the interval come from one and the same test (no df are printed)",)
-    excess = (
-        "p may be adjusted for several tests" if claim.suggests("adjusted-p", "adjusted-p-post-hoc") else ""
+    if ratio:
+        doubts = (
+            "p is the Wald test of the interval, not that of another test (log-rank, likelihood ratio)",
+        )
+    adjusted = claim.suggests("adjusted-p", "adjusted-p-post-hoc")
+    comparison = Comparison(
+        check="p-from-ci",
+        quantity="p",
+        numbers={"p": claim.values["p"], "ci_low": low, "ci_high": high},
+        ways=_p_ways(case, (df.number,) if known and df is not None else OPEN_DF, ratio=ratio),
+        bounds=P_RANGE,
+        doubts=doubts,
+        excuses=_ci_excuses(claim),
+        excess="p may be adjusted for several tests" if adjusted else "",
     )
-    yield judge(
-        case,
-        Comparison(
-            "p-from-ci",
-            "p",
-            numbers,
-            ways,
-            bounds=Interval(0.0, 1.0),
-            doubts=doubts,
-            excuses=_ci_excuses(claim),
-            excess=excess,
-        ),
+    yield judge(case, comparison)
+
+
+def _p_ways(case: Case, dfs: Sequence[float], *, ratio: bool) -> tuple[Way, ...]:
+    """Each way from the interval to t, carried on to p: over all df, two- and one-tailed."""
+    slack = _log_slack(case) if ratio else _hand_slack(case)
+    by_df = [_ci_ways(case.claim, df, slack) for df in dfs]
+    tails_used = (2,) if case.claim.suggests("two-tailed") else (2, 1)
+    return tuple(
+        _carried_on(same, dfs, used, ratio=ratio) for used in tails_used for same in zip(*by_df, strict=True)
     )
 
 
-def _p_ways(case: Case, df: float | None) -> tuple[Way, ...]:
-    ways = []
-    for way in _ci_ways(case.claim, df if df is not None else 1e9, _hand_slack(case)):
+def _carried_on(same: Sequence[Way], dfs: Sequence[float], used: int, *, ratio: bool) -> Way:
+    """One way from the interval to t at each df, carried on to p."""
 
-        def implied(
-            box: Box, inner: Callable[[Box], tuple[Interval, ...]] = way.implied
-        ) -> tuple[Interval, ...]:
-            out = []
-            for t in inner(box):
-                least, most = (df, df) if df is not None else (5.0, 1e9)
-                if df is None:
-                    t = Interval(t.low, t.high * float(t_quantile(0.025, 5.0)) / 1.959963984540054)
-                p_low, p_high = bounds.p_from_t_bounds(t.low, t.high, least, most, 2)
-                out.append(Interval(float(p_low), float(p_high)))
-            return tuple(out)
+    def implied(box: Box) -> tuple[Interval, ...]:
+        if ratio:
+            box = {**box, "ci_low": _logs(box["ci_low"]), "ci_high": _logs(box["ci_high"])}
+        found = [
+            as_interval(bounds.p_from_t_bounds(t.low, t.high, df, df, 2))
+            for way, df in zip(same, dfs, strict=True)
+            for t in way.implied(box)
+        ]
+        if not found:
+            return ()
+        return (Interval(used / 2 * min(p.low for p in found), used / 2 * max(p.high for p in found)),)
 
-        halved = way.unstated
-        ways.append(Way(implied, halved))
-        if not case.claim.suggests("two-tailed") and len(halved) <= 1:
+    unstated = same[0].unstated
+    return Way(implied, unstated if used == 2 else (*unstated, ONE_TAILED))
 
-            def one(box: Box, inner: Callable[[Box], tuple[Interval, ...]] = implied) -> tuple[Interval, ...]:
-                return tuple(Interval(i.low / 2, i.high / 2) for i in inner(box))
 
-            ways.append(Way(one, (*halved, "p is one-tailed")))
-    return tuple(ways)
+def _logs(interval: Interval) -> Interval:
+    return Interval(math.log(max(interval.low, 1e-300)), math.log(max(interval.high, 1e-300)))
+
+
+def _log_slack(case: Case) -> Slack:
+    """On the log scale a unit of the last digit counts as its share of the lower end."""
+    low = case.claim.values["ci_low"]
+    return Slack(float(low.unit) / max(low.number, float(low.unit)), 0.95, 1.05)
 
 
 @check(

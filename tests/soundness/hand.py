@@ -151,9 +151,9 @@ class Hand:
         decimals, draw = self.places["p"], self.rng.random()
         thresholds = [a for a in (0.001, 0.01, 0.05) if p < a]
         if thresholds and draw < 0.2:
-            return self._p_side("<", Decimal(str(self.rng.choice(thresholds))))
+            return self.p_bound("<", Decimal(str(self.rng.choice(thresholds))))
         if p > alpha and draw < 0.08:
-            return self._p_side(">", Decimal(str(self.rng.choice([a for a in (0.05, 0.10, 0.25) if p > a]))))
+            return self.p_bound(">", Decimal(str(self.rng.choice([a for a in (0.05, 0.10, 0.25) if p > a]))))
         if p > alpha and draw < 0.14:
             return Piece(one(self.rng, ["ns", "n.s.", "not significant"]))
         value = self.rounded(p, decimals)
@@ -161,7 +161,7 @@ class Hand:
             return self._tiny_p(p, value)
         if value == 1 and p < 1 and draw < 0.6:
             return (
-                self._p_side(">", Decimal(1) - Decimal(1).scaleb(-decimals))
+                self.p_bound(">", Decimal(1) - Decimal(1).scaleb(-decimals))
                 if p > 1 - 10**-decimals
                 else self.p_told(value)
             )
@@ -174,7 +174,8 @@ class Hand:
             return Piece(text, {"p": ("=", value)})
         return self.told("p", value)
 
-    def _p_side(self, sign: str, value: Decimal) -> Piece:
+    def p_bound(self, sign: str, value: Decimal) -> Piece:
+        """A p told as a bound; some write ≤ for <."""
         if sign == "<" and self.rng.random() < 0.05:
             sign = "≤"
         shown = r"\leq" if sign == "≤" and self.letters == "tex" else sign
@@ -187,7 +188,7 @@ class Hand:
         if draw < 0.6:
             bound = Decimal(1).scaleb(-max(2, self.places["p"]))
             if p < bound:
-                return self._p_side("<", bound)
+                return self.p_bound("<", bound)
         if draw < 0.8 or p < 1e-300:
             return self.told("p", abs(value))
         mantissa, exponent = f"{p:.1e}".split("e")
@@ -199,12 +200,12 @@ class Hand:
         }.get(self.letters, one(self.rng, [f"{mantissa}e{power:03d}", f"{mantissa} × 10−{abs(power)}", f"{mantissa}×10^{power}"]))  # fmt: skip
         return Piece(f"{self.symbol('p')}{self.relation('=')}{shown}", {"p": ("=", value)})
 
-    def interval(self, low: float, high: float, level: float = 0.95, of: str = "") -> Piece:
+    def interval(self, low: float, high: float, level: float = 0.95) -> Piece:
         """A confidence interval."""
         ends = [self.rounded(v, self.places["ci"]) for v in (low, high)]
-        return self.interval_told(ends[0], ends[1], level, of)
+        return self.interval_told(ends[0], ends[1], level)
 
-    def interval_told(self, low: Decimal, high: Decimal, level: float = 0.95, of: str = "") -> Piece:
+    def interval_told(self, low: Decimal, high: Decimal, level: float = 0.95) -> Piece:
         """A confidence interval whose ends are already as printed."""
         a, b, percent = (
             self.number(low),
@@ -213,9 +214,9 @@ class Hand:
         )
         joint = "; " if self.comma else ", "
         shown = {
-            "square": f"{percent} CI{of} [{a}{joint}{b}]", "to": f"{percent} CI{of} {a} to {b}",
-            "equals": f"{percent} CI{of} = [{a}{joint}{b}]", "colon": f"{percent} CI{of}: {a} to {b}",
-            "round": f"{percent} CI{of} ({a}{joint}{b})", "semicolon": f"{percent} CI{of} [{a}; {b}]",
+            "square": f"{percent} CI [{a}{joint}{b}]", "to": f"{percent} CI {a} to {b}",
+            "equals": f"{percent} CI = [{a}{joint}{b}]", "colon": f"{percent} CI: {a} to {b}",
+            "round": f"{percent} CI ({a}{joint}{b})", "semicolon": f"{percent} CI [{a}; {b}]",
         }[self.ci_style]  # fmt: skip
         return Piece(shown, {"ci_low": ("=", low), "ci_high": ("=", high)})
 

@@ -14,7 +14,7 @@ from tests.soundness import computing, raw, sentences
 from tests.soundness.deciding import Figures, contradicted
 from tests.soundness.hand import Hand, draw_hand, one
 from tests.soundness.rounding import rounded
-from tests.soundness.samples import Generator, Piece, Sample
+from tests.soundness.samples import Sample
 
 Rng = np.random.Generator
 Slip = Callable[[Rng, Figures], Figures | None]
@@ -190,7 +190,7 @@ def told(hand: Hand, figures: Figures, shows: tuple[str, ...]) -> Sample:
     """Write a result down; what is not shown is left out of the text."""
     n = figures.numbers
     dfs = [n["df1"], n["df2"]] if figures.test == "F" else [n["df"]] if "df" in n else []
-    p = hand.p_told(n["p"]) if figures.relation == "=" else hand._p_side("<", n["p"])
+    p = hand.p_told(n["p"]) if figures.relation == "=" else hand.p_bound("<", n["p"])
     extras = [hand.told("d", n["d"])] if "d" in shows else []
     extras += [hand.told("mean_difference", n["gap"], "mean difference")] if "gap" in shows else []
     extras += [hand.interval_told(n["low"], n["high"])] if "ci" in shows else []
@@ -232,11 +232,3 @@ def plant(name: str, rng: Rng) -> tuple[Sample, bool]:
             break
     hand = replace(draw_hand(rng), rng=rng, letters="plain", minus="−")
     return told(hand, changed, kind.shows), contradicted(changed)
-
-
-def planted(name: str) -> Generator:
-    """The texts alone, as a generator."""
-    return lambda rng: plant(name, rng)[0]
-
-
-__all__ = ["PLANTS", "Piece", "plant", "planted"]
