@@ -204,12 +204,17 @@ def _fit_known(claim: Claim, groups: Groups, box: Box, df: Printed | None, n1: i
         _known_ways(claim, groups, n1, n2, pooled=pooled, welch=welch, paired=paired, same_df=df is not None)
     )
     named = claim.says("independent", "pooled", "welch", "paired")
-    fractional = df is not None and df.decimals > 0
-    stated = claim.says("welch") or (fractional and claim.suggests("welch"))
+    telling = df is not None and df.decimals > 0 and _telling(welch_df(box, groups))
+    stated = claim.says("welch") or (telling and claim.suggests("welch"))
     by_welch_df = not (pooled or paired or stated)
     doubt = WELCH_DF if by_welch_df else "" if df is not None or named else UNNAMED
     design = "" if paired and (pooled or welch) else "paired" if paired else "independent"
     return Fit(ways, "", (doubt,) if doubt else (), design, sure=not doubt)
+
+
+def _telling(df: Interval) -> bool:
+    """Tell whether Satterthwaite df are known closely enough for a printed one to show the design."""
+    return df.high - df.low <= 1.0
 
 
 WELCH_DF = "these df are Welch's, not those of a model with covariates, of fewer cases or of more groups"

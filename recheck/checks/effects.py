@@ -92,19 +92,23 @@ def _independent_ways(name: str, groups: Groups, n1: float, n2: float) -> Iterat
 
 
 def _paired_way(groups: Groups, name: str, n: float) -> Way:
-    """d_z, d_av or d_rm with a correlation that is not printed: bounded below alone."""
+    """d_z, d_av or d_rm with a correlation that is not printed: bounded above alone.
+
+    d_z is t/√n; d_av and d_rm divide the difference by at least the smaller SD, since the variance
+    of the differences is at least 2 s1 s2 (1 − r). As r nears 1, d_rm goes to 0; the rough 2t/√df of
+    two groups, worked out for pairs, is the largest.
+    """
 
     def implied(box: Box) -> tuple[Interval, ...]:
         s, a, b = sds(box, groups, n, n, as_se=False), box["mean1"], box["mean2"]
+        if "t" not in box or n < 2:
+            return (Interval(0.0, INFINITY),)
         D = Interval(a.low - b.high, a.high - b.low).absolute()
-        widest = s.high1 + s.high2
-        low = D.low / widest if widest > 0 else 0.0
-        return (Interval(low * correction("approximate", max(n - 1, 2)).low, INFINITY),)
+        smallest = min(s.low1, s.low2)
+        by_sd = D.high / smallest if smallest > 0 else INFINITY
+        return (Interval(0.0, max(2 * box["t"].absolute().high / math.sqrt(n - 1), by_sd)),)
 
-    return Way(
-        implied,
-        ("the effect is that of paired differences (d_z, d_av or d_rm)",) if name in ("d", "g") else (),
-    )
+    return Way(implied, (PAIRS,) if name in ("d", "g") else ())
 
 
 @check(

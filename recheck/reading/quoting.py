@@ -36,8 +36,12 @@ class Sentence:
     @cached_property
     def own(self) -> bool:
         """Whether the sentence speaks of the manuscript's own work too."""
-        low = f" {self.low} "
-        return any(word in low for word in _OWN)
+        return self.ours or _any(f" {self.low} ", _COMPARING)
+
+    @cached_property
+    def ours(self) -> bool:
+        """Whether the sentence says that its results are the authors' own."""
+        return _any(f" {self.low} ", _OURS)
 
 
 @cache
@@ -52,9 +56,11 @@ def _cited() -> regex.Pattern[str]:
 
 _VERBS = ("found", "reported", "report ", "observed", "showed", "shown", "obtained", "estimated", "demonstrated", "documented",
           "reveal", "concluded", "noted", "described", "yielded", "indicated", "suggested", "measured", "published")  # fmt: skip
-_OWN = (" we ", " our ", "present study", "current study", "this study", "present experiment", "current experiment", " us ",
-        "in the present", "replicat", "consistent with", "in line with", "similar to", "following ", "using ", "used ",
-        "according to", "in contrast to", "unlike", "as in ", "scale", "questionnaire", "adapted", "developed by")  # fmt: skip
+_OURS = (" we ", " our ", "present study", "current study", "this study", "present experiment", "current experiment", " us ",
+         "in the present")  # fmt: skip
+_COMPARING = ("replicat", "consistent with", "in line with", "similar to", "following ", "using ", "used ", "according to",
+              "in contrast to", "contrary to", "unlike", "as in ", "scale", "questionnaire", "adapted", "developed by", "in keeping with",
+              "agree with", "agreement with", "compared with earlier", "compared to earlier", "extend")  # fmt: skip
 _EARLIER = ("previous", "prior ", "earlier", "past ", "meta-analy", "meta analy", "literature", "original study", "original effect",
             "other studies", "other authors", "elsewhere", "systematic review", "et al")  # fmt: skip
 _OTHERS = ("they found", "they reported", "they observed", "they showed", "the authors found", "the authors reported",
@@ -80,6 +86,8 @@ def quoted(draft: Draft, sentence: Sentence) -> bool:
             return True
         if _method(match[0]) and own:
             continue
+        if not sentence.ours and is_tested and _closing(draft, match, sentence):
+            return True
         if (not own or not is_tested) and _beside(
             draft.line.view.text, start, end, match.start() + sentence.start, match.end() + sentence.start
         ):
@@ -124,6 +132,51 @@ def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
     if last <= start:
         return bool(_before().fullmatch(text[last:start], timeout=TIMEOUT))
     return False
+
+
+@cache
+def _bracket() -> regex.Pattern[str]:
+    """What may stand between the numbers and a citation that is the whole of the brackets behind them."""
+    return regex.compile(r"(?:[)\]]? ?[(\[]|[;,] )(?:(?:\p{L}|[',.&;-]| |\d{4}[a-z]?\b){0,80}[,;] )?(?:\p{Lu}[\p{L}'-]+,? (?:and|&) )?")
+
+
+def _closing(draft: Draft, citation: regex.Match[str], sentence: Sentence) -> bool:
+    """Whether the brackets right behind the numbers hold a citation and nothing else: `p = .02 (Crumb & Crust, 2014)`.
+
+    `(cf. Crumb, 2014)` and `(replicating Crumb, 2014)` tell whom the result is compared with.
+    """
+    text = sentence.text
+    end = draft.line.at(draft.after - 1).end - sentence.start
+    between, behind = text[end : citation.start()], text[citation.end() : citation.end() + 1]
+    return (
+        citation.start() >= end
+        and behind in (")", "]", ";", ",")
+        and bool(_bracket().fullmatch(between, timeout=TIMEOUT))
+        and not _any(between.lower(), _COMPARED)
+    )
+
+
+_COMPARED = ("cf", "see", "also", "repl", "compar", "like", "unlike", "consist", "contra", "after ", "follow", "method", "test", "using")
+"""Beginnings of brackets that tell whom a result is compared with, or whose method was used."""
+
+
+def of_earlier_work(sentence: Sentence) -> bool:
+    """Whether the sentence opens by naming earlier work, without a citation: `In the original study, …`."""
+    return not sentence.ours and bool(_opening().match(sentence.low, timeout=TIMEOUT))
+
+
+@cache
+def _opening() -> regex.Pattern[str]:
+    return regex.compile(
+        r"""(?:(?:however|indeed|yet|moreover|thus|but|and|for\ example|for\ instance|for\ comparison|by\ comparison),?\ )?
+        (?:(?:in|from|by|among|across|according\ to)\ )?
+        (?:(?:the|a|an|one|another|two|three|some|several|many|most|much|their|his|her|that|those|these|only)\ ){0,2}
+        (?:[\w-]+\ )?
+        (?:original|earlier|previous|prior|past|seminal|classic|published|former|first\ published)\ (?:[\w-]+\ ){0,2}?
+        (?:stud(?:y|ies)|works?|research|experiments?|trials?|reports?|papers?|articles?|authors?|investigations?|findings?
+          |evidence|literature|surveys?|team|group|samples?|data|replications?|meta-analys[ei]s|reviews?|results?)\b""",
+        regex.VERBOSE,
+    )
 
 
 def _any(text: str, words: tuple[str, ...]) -> bool:

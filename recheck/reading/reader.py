@@ -7,7 +7,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from hashlib import blake2b
 
-from recheck.model import Claim, Document, Passage, Printed, Reading
+from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading
 from recheck.reading.assignments import assignments, ns_at
 from recheck.reading.claims import Draft, drafts
 from recheck.reading.context import Setting, decimal_comma, setting_of
@@ -17,7 +17,7 @@ from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
 from recheck.reading.numerals import Line
-from recheck.reading.quoting import Sentence
+from recheck.reading.quoting import Sentence, of_earlier_work
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
@@ -99,6 +99,7 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     if not items:
         return
     says = stated(sentence.text)
+    earlier = of_earlier_work(sentence)
     each, items = size_of_each(items, line)
     for draft in drafts(items, line):
         label = (sign or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
@@ -109,7 +110,15 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
         if reason:
             left[reason] += 1
             continue
+        name = _of_earlier_work(name) if earlier else name
         yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
+
+
+def _of_earlier_work(name: Named) -> Named:
+    """Doubt a result that may be that of an earlier study."""
+    note = "the sentence speaks of earlier work"
+    confidence: Confidence = "low" if name.confidence == "low" else "medium"
+    return replace(name, confidence=confidence, notes=(*name.notes, note))
 
 
 def _after_sign(draft: Draft) -> bool:
