@@ -269,8 +269,8 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
                 Way(by_splits, extra, (f"{POOLED}, group sizes not printed: all splits of {total} tried",))
             )
         if not claim.says("independent", "pooled", "welch", "between-groups"):
-            stated = claim.says("paired", "repeated")
-            ways.append(Way(by_pairs, extra if stated else (*extra, PAIRED), (PAIRED,) if stated else ()))
+            # One sample measured twice is as natural here as two groups: neither size is printed.
+            ways.append(Way(by_pairs, extra, (f"{PAIRED}, with a correlation that is not printed",)))
     doubts = (
         ()
         if named

@@ -86,17 +86,22 @@ def _is_row(line: Line) -> bool:
     if ". . . ." in line.text or "....." in line.text:
         return True
     wide = [gap for gap in line.gaps if gap > 1.7]
-    filled = line.x1 - line.x0 > 0.9 * (line.right - line.left)
-    if (
-        filled
-        and len(wide) == line.text.count(" ")
-        and sum(c.isalpha() for c in line.text) > 0.6 * len(line.text)
-    ):
-        return False  # one loosely justified line
+    if _is_loose(line, wide):
+        return False
     if len(wide) >= 2 or (wide and max(wide) > 4 and len(line.text.split()) < 9):
         return True
     digits = sum(c.isdigit() for c in line.text)
     return len(line.gaps) >= 2 and digits > 0.3 * len(line.text)
+
+
+def _is_loose(line: Line, wide: list[float]) -> bool:
+    """Whether a line is running text of a few long words, justified loosely: "[M = 3.82], t(35) = −3.06, p = .004,"."""
+    if line.x1 - line.x0 <= 0.9 * (line.right - line.left):
+        return False
+    if len(wide) == line.text.count(" ") and sum(c.isalpha() for c in line.text) > 0.6 * len(line.text):
+        return True
+    even = len(line.gaps) == line.text.count(" ") > 0 and max(line.gaps) - min(line.gaps) < 0.2
+    return even and any(word[-1] in ",;" for word in line.text.split())
 
 
 def is_prose(line: Line) -> bool:
@@ -148,7 +153,7 @@ def _parted(lines: Sequence[Line], at: int, type_: Type, tabular: bool) -> bool:
     changes = (line.bold > 0.8) != (before.bold > 0.8) and min(len(line.text), len(before.text)) > 3
     if changes and (ended or not _fills(lines, at - 1)):
         return True
-    if opens_references(line.text) or opens_references(before.text) or is_named_section(line.text):
+    if opens_references(before.text) or (_names_section(line) and not _ends_text(before, line, ended)):
         return True
     if step > 1.28 * usual + 0.8:
         return ended or not line.text[:1].islower()
@@ -157,6 +162,15 @@ def _parted(lines: Sequence[Line], at: int, type_: Type, tabular: bool) -> bool:
     if not ended:
         return (_is_centred(before) and not _is_centred(line)) or _is_label(before, line)
     return _is_indented(lines, at) or not _fills(lines, at - 1) or _LISTED.match(line.text) is not None
+
+
+def _names_section(line: Line) -> bool:
+    return opens_references(line.text) or is_named_section(line.text)
+
+
+def _ends_text(before: Line, line: Line, ended: bool) -> bool:
+    """Whether the name of a section is the end of the sentence above it: "… in the Supplementary / Methods."."""
+    return line.text.rstrip()[-1:] == "." and not ended and (line.bold > 0.8) == (before.bold > 0.8)
 
 
 def _is_label(before: Line, line: Line) -> bool:

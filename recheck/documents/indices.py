@@ -109,8 +109,15 @@ def _extend(words: Words, small: NDArray[np.intp], host: NDArray[np.intp]) -> No
                 or host[other] != other
                 or other in bases
                 or words.rows[one] != words.rows[other]
+                or not _alike(words, one, other)
             ):
                 continue
             left, right = min(one, other), max(one, other)
             if words.x0[right] - words.x1[left] < 0.5 * words.size[one]:
                 host[other] = host[one]
+
+
+def _alike(words: Words, one: int, other: int) -> bool:
+    """Whether two words have one size: on a page that is scanned askew an index shares the row of its text."""
+    small, large = sorted((float(words.size[one]), float(words.size[other])))
+    return small > _SMALL * large

@@ -26,7 +26,7 @@ _PAIRS = (
 )
 _TAGS = r"</?(?:i|b|em|strong|u|span|font|p|br|div|center)(?:\s[^<>]{0,200})?/?>"
 _ENTITY = r"&(?:[a-zA-Z]{2,10}|#\d{2,6}|#x[0-9a-fA-F]{2,5});"
-_ESCAPE = r"\\(?=[*_<>#~^`|&$%])"
+_ESCAPE = r"\\(?=[*_<>#~^`|&$%=+.]|-\d)"
 _COMPILED = tuple((regex.compile(pattern), mark) for pattern, mark in _PAIRS)
 _DELETED = tuple(regex.compile(pattern, regex.IGNORECASE) for pattern in (_TAGS, _ESCAPE))
 _ENTITIES = regex.compile(_ENTITY)

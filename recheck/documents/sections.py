@@ -44,7 +44,7 @@ _PATIENCE = 1.0
 
 def opens_references(heading: str) -> bool:
     """Tell whether a line is the heading of a list of references."""
-    return _REFERENCES.fullmatch(heading.strip(), timeout=_PATIENCE) is not None
+    return not _ends_a_sentence(heading) and bool(_REFERENCES.fullmatch(heading.strip(), timeout=_PATIENCE))
 
 
 def closes_references(heading: str) -> bool:
@@ -54,7 +54,12 @@ def closes_references(heading: str) -> bool:
 
 def is_named_section(line: str) -> bool:
     """Tell whether a line is nothing but the usual name of a section."""
-    return _NAMED.fullmatch(line.strip(), timeout=_PATIENCE) is not None
+    return not _ends_a_sentence(line) and bool(_NAMED.fullmatch(line.strip(), timeout=_PATIENCE))
+
+
+def _ends_a_sentence(line: str) -> bool:
+    """Whether a line is the last word of a paragraph: "… were not filled in by any / method."."""
+    return line.rstrip()[-1:] == "." and unnumbered(line)[:1].islower()
 
 
 def unnumbered(heading: str) -> str:

@@ -8,6 +8,7 @@ from dataclasses import dataclass, replace
 
 import regex
 
+from recheck.documents.abreast import stretches
 from recheck.documents.markup import without_markup
 from recheck.documents.sections import (
     captioned,
@@ -17,6 +18,7 @@ from recheck.documents.sections import (
     opens_references,
     unnumbered,
 )
+from recheck.documents.typed import as_typed
 from recheck.model import Document, Passage, PassageKind
 
 _ATX = regex.compile(r" {0,3}(#{1,6})[ \t]+(.*?)(?:[ \t]+#+)?[ \t]*(?:\{[^{}]*\})?[ \t]*")
@@ -55,7 +57,13 @@ def text_document(
     """
     digest = hashlib.sha256(text.encode("utf-8", "surrogatepass") if data is None else data).hexdigest()
     lines = _lines(text)
-    blocks = _headed(list(_blocks(lines)))
+    blocks = _headed(
+        [
+            replace(block, line=block.line + stretch.first)
+            for stretch in stretches(lines)
+            for block in _blocks(stretch.lines)
+        ]
+    )
     return Document(
         name=name,
         format=format or ("markdown" if any(block.level for block in blocks) else "text"),
@@ -70,7 +78,7 @@ def text_document(
 
 def _lines(text: str) -> list[str]:
     text = text.removeprefix("\ufeff").replace("\r\n", "\n").replace("\r", "\n").replace("\f", " ")
-    return _without_comments(text).split("\n")
+    return as_typed(_without_comments(text).split("\n"))
 
 
 def _without_comments(text: str) -> str:

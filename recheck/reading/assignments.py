@@ -10,7 +10,7 @@ from recheck.reading.degrees import Values, bracketed_df, closing, subscript_df
 from recheck.reading.following import goes_on, value_after
 from recheck.reading.intervals import ends_at, interval_at
 from recheck.reading.items import CI, DF, MEAN, SPREADS, Assignment, P
-from recheck.reading.numerals import Line, Number, number_at, piece
+from recheck.reading.numerals import Line, Number, number_at, piece, whole
 from recheck.reading.spellings import Spelled, spelled_at
 from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import words
@@ -95,7 +95,7 @@ def plus_minus(line: Line, index: int) -> Assignment | None:
     if named and named.symbol.part == "spread":
         after = named.after + (line.at(named.after).kind == "rel")
     number = number_at(line, after)
-    if number is None or number.value < 0:
+    if number is None or (number.value < 0 and line.at(after + 1).spaced):
         return None
     after = number.after + (line.at(number.after).text in ("°", "º"))
     after += bracket and line.at(after).text == ")"
@@ -123,6 +123,7 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
         missing = _not_significant(line, index, after, symbol)
         return [missing] if missing else []
     number, relation, loose = value
+    number = whole(number) if symbol.part == "size" else number
     if symbol.quantity == "mean" and [t.low for t in line.tokens[max(0, index - 2) : index]] == ["by", "a"]:
         symbol = replace(symbol, quantity="mean_difference", part="estimate")
     if spelled.text.lower() in ("difference", "diff") and (
@@ -132,6 +133,8 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     if spelled.text == "V" and abs(number.value) <= 1:
         symbol = Symbol("cramers_v", "effect")
     if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
+        return []
+    if loose and symbol.worded and symbol.quantity in _RATIOS and not _sure(line, after, number):
         return []
     if loose and number.decimals < {"p": 2, "centre": 1, "statistic": 1}.get(symbol.part, 0):
         return []
@@ -146,6 +149,16 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
         return [_two_df(line, item) or item]
     following = plus_minus(line, number.after) or _unlabelled(line, item)
     return [item, following] if following else [item]
+
+
+_RATIOS = frozenset(("or", "rr", "hr", "rd"))
+
+
+def _sure(line: Line, index: int, number: Number) -> bool:
+    """A whole number behind several words is a ratio only where an interval follows: `the odds ratio of burning was 2 (95% CI …`."""
+    near = line.tokens[index : number.after - 1]
+    opened = line.at(number.after).text in ("(", "[", ",", ";")
+    return len(near) <= 1 or number.decimals > 0 or (opened and interval_at(line, number.after + 1) is not None)
 
 
 _OTHER_MEANS = words(

@@ -79,7 +79,10 @@ def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
     between = line.tokens[last.after : item.first]
     semicolon = any(t.text == ";" for t in between)
     words = [t for t in between if t.kind == "word" and t.low not in _CONNECTING]
-    numbers = sum(t.kind == "num" and not part_of_unit(line, k) for k, t in enumerate(between, last.after))
+    numbers = sum(
+        t.kind == "num" and not part_of_unit(line, k) and not _of_tails(line, k)
+        for k, t in enumerate(between, last.after)
+    )
     if any(t.low in _TURNS for t in between):
         return "apart", semicolon
     if not words and numbers == 0 and len(between) <= 12:
@@ -89,6 +92,12 @@ def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
     if len(words) <= (4 if inside else 3) and numbers <= 1 and len(between) <= 12 and not clause:
         return "loose", semicolon
     return "apart", semicolon
+
+
+def _of_tails(line: Line, index: int) -> bool:
+    """Whether a number is that of `2-tailed` or `1 sided`."""
+    hyphen = line.at(index + 1).text == "-"
+    return line.at(index + 1 + hyphen).low in ("tailed", "sided", "tail", "tails")
 
 
 def _joins(
@@ -271,6 +280,9 @@ def _size(s: Situation) -> bool:
         and s.line.at(s.item.first - 1).text in ("(", "[")
     ):
         return not s.semicolon
+    opens = s.line.at(s.item.first - 1).text in ("(", "[")
+    if opens and s.rest and s.rest[0].part == "centre" and s.rest[0].first == s.item.after + 1:
+        return False
     if s.item.quantity == "other" or (s.holds("u", "w") and s.tight):
         return s.tight and s.has("statistic")
     return s.tight and not s.holds("n", "N") and not (s.semicolon and s.has("p") and not s.has("statistic"))

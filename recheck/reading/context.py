@@ -14,7 +14,7 @@ from recheck.reading.groups import announced_spread
 from recheck.reading.numerals import Line, number_at, relation_at
 from recheck.reading.tokens import DIGITS, Spans, tokens, words
 from recheck.reading.views import TIMEOUT, View
-from recheck.reading.wording import stated
+from recheck.reading.wording import background, pairs_alone
 
 
 @dataclass(frozen=True, slots=True)
@@ -22,7 +22,8 @@ class Setting:
     """The context, with what the reader itself needs of it.
 
     `plus_minus` and `in_brackets` are what an unlabelled spread is said to be; `credible` tells
-    that the document's intervals are credible intervals, also where it writes CI.
+    that the document's intervals are credible intervals, also where it writes CI; `pairs_alone`
+    that all its corrections for several tests are those of comparisons of pairs.
     """
 
     context: Context
@@ -30,6 +31,7 @@ class Setting:
     in_brackets: str = ""
     credible: bool = False
     decimal_comma: bool = False
+    pairs_alone: bool = False
 
 
 def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
@@ -42,8 +44,8 @@ def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
         "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
     )
     return Setting(
-        Context(alpha, stated(whole), tuple(notes)), signs, brackets,
-        credible and "confidence interval" not in whole, comma,
+        Context(alpha, background(whole), tuple(notes)), signs, brackets,
+        credible and "confidence interval" not in whole, comma, pairs_alone(whole),
     )  # fmt: skip
 
 
@@ -141,7 +143,7 @@ def _chosen(found: list[tuple[Printed, bool]]) -> tuple[Printed | None, list[str
     values = {_share(level) for level in main}
     if len(values) > 1:
         printed = ", ".join(dict.fromkeys(level.text for level in main))
-        return None, [f"several levels of significance are stated ({printed}); none is taken for all tests"]
+        return None, [f"Several levels of significance are stated ({printed}); none is taken for all tests."]
     del counts
     return main[0], []
 

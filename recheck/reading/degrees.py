@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 
 from recheck.model import Printed
 from recheck.reading.alike import FLAT
-from recheck.reading.numerals import Line, number_at, piece
+from recheck.reading.numerals import Line, number_at, piece, whole
 from recheck.reading.spellings import Spelled, spelled_at
 from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import Token, words
@@ -59,7 +59,7 @@ def bracketed_df(line: Line, index: int, symbol: Symbol) -> Bracket | None:
         elif token.kind == "word" and _harmless(token):
             at += 1
             continue
-        pieces, past = _numbers(line, past, end, symbol)
+        pieces, past = _numbers(line, past, end, symbol, counted=name in ("n", "N"))
         if not pieces:
             return None
         if name in ("", "df"):
@@ -81,7 +81,7 @@ def _harmless(token: Token) -> bool:
     return token.low in _HARMLESS or token.low == "-"
 
 
-def _numbers(line: Line, index: int, end: int, symbol: Symbol) -> tuple[list[Printed], int]:
+def _numbers(line: Line, index: int, end: int, symbol: Symbol, *, counted: bool) -> tuple[list[Printed], int]:
     """One number, or the several that one token such as `1,38` or `3.63,1252.61` holds.
 
     t and r have one df only: the comma of `t(46,12)` is a decimal sign.
@@ -91,9 +91,10 @@ def _numbers(line: Line, index: int, end: int, symbol: Symbol) -> tuple[list[Pri
         return [], index
     if token.kind != "num":
         return [], index
-    pieces = None if symbol.quantity in ("t", "r") else _split(token.text, line, index, end)
+    pieces = None if symbol.quantity in ("t", "r") or counted else _split(token.text, line, index, end)
     if pieces is None:
         number = number_at(line, index, grouped=True)
+        number = whole(number) if number and counted else number
         return ([number.printed(line)], number.after) if number and number.value >= 0 else ([], index)
     return list(_pieces(line, token, pieces)), index + 1
 

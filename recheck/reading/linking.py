@@ -121,7 +121,7 @@ def _alike(pair: Sequence[Placed]) -> bool:
     return same and not any(_about_age(item) for item in pair)
 
 
-_AGES = frozenset(("age", "aged", "ages", "mage", "years", "year", "old"))
+_AGES = frozenset(("age", "aged", "ages", "mage", "years", "year"))
 
 
 def _about_age(item: Placed) -> bool:
@@ -130,7 +130,10 @@ def _about_age(item: Placed) -> bool:
     at = item.text.find(quote[:12])
     before = item.text[max(0, at - 20) : max(0, at)].lower().split()[-2:]
     own = quote.lower().replace("_", " ").split()
-    return bool(_AGES.intersection(word.strip("(,;:=") for word in (*before, *own)))
+    told = [word.strip("(,;:=") for word in (*before, *own)]
+    return bool(_AGES.intersection(told)) or any(
+        word == "old" and told[at - 1] in ("years", "months", "weeks") for at, word in enumerate(told) if at
+    )
 
 
 def _same_outcome(test: Placed, near: Sequence[Placed]) -> bool:

@@ -49,6 +49,8 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
         stated.append("spread-unlabelled")
     if kind != "correlation" and "r" in values:
         stated.append("effect-size-r")
+    if kind == "group-summary" and "N" in values and "n" not in values and _in_own_brackets(draft):
+        values["n"] = values.pop("N")
     foreign = values.pop("other", None)
     if foreign is not None and "ci_low" in values and not draft.part("estimate", "effect", "statistic"):
         values["estimate"] = foreign
@@ -60,6 +62,17 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
     doubts = {item.doubt for item in draft.items} | ({"low"} if _roughly(values) else set())
     confidence = "low" if "low" in doubts else "medium" if "medium" in doubts else confidence
     return Named(kind, values, tuple(dict.fromkeys(stated)), _interval_of(draft), confidence, tuple(notes))
+
+
+def _in_own_brackets(draft: Draft) -> bool:
+    """Whether N stands in brackets that hold this summary alone: `(N = 39, M = 27.3, SD = 6.8)`."""
+    tokens = [t.text for t in draft.line.tokens[draft.first - 1 : draft.after]]
+    size = draft.get("N")
+    if size is None or draft.first == 0 or draft.line.at(draft.after).text not in (")", "]"):
+        return False
+    opened = [at for at, text in enumerate(tokens, draft.first - 1) if text in ("(", "[")]
+    closed = sum(text in (")", "]") for text in tokens)
+    return bool(opened) and closed < len(opened) and opened[-1] < size.first
 
 
 def _roughly(values: dict[str, Printed]) -> bool:

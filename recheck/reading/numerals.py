@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from decimal import Decimal
 
 from recheck.model import Passage, Printed, Relation
@@ -130,6 +130,13 @@ def number_at(line: Line, index: int, *, grouped: bool = False) -> Number | None
     percent = line.at(after).text == "%"
     start, end = line.at(first).start, line.at(after - 1).end
     return Number(value, decimals, start, end, after + percent, percent, ambiguous)
+
+
+def whole(number: Number) -> Number:
+    """The number of a quantity that counts: what looks like three decimals (`1,200`, `1.200`) groups thousands."""
+    if number.decimals != 3 or number.percent or number.end - number.start not in (5, 6, 7) or abs(number.value) < 1:
+        return number
+    return replace(number, value=(number.value * 1000).to_integral_value(), decimals=0, ambiguous=False)
 
 
 def piece(line: Line, text: str, start: int, after: int, sign: int = 1) -> Number:

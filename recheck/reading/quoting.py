@@ -92,6 +92,8 @@ def quoted(draft: Draft, sentence: Sentence) -> bool:
             draft.line.view.text, start, end, match.start() + sentence.start, match.end() + sentence.start
         ):
             return True
+    if not sentence.ours and _numbered_study(sentence, end - sentence.start):
+        return True
     if own or (is_tested and not found):
         return False
     return (
@@ -132,6 +134,28 @@ def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
     if last <= start:
         return bool(_before().fullmatch(text[last:start], timeout=TIMEOUT))
     return False
+
+
+def _numbered_study(sentence: Sentence, end: int) -> bool:
+    """`In a trial of coached bakers scores rose by 9.0 points (P = 0.02),[2] …`: a study, its numbers, its number."""
+    behind = _number().search(sentence.text, end, timeout=TIMEOUT)
+    return behind is not None and bool(_study().match(sentence.low, timeout=TIMEOUT))
+
+
+@cache
+def _number() -> regex.Pattern[str]:
+    """A numbered citation: `[2]`, `[3, 7-9]`, or the raised number behind a stop."""
+    return regex.compile(r"\[\d{1,3}(?:[,-] ?\d{1,3}){0,9}\]|[\p{Ll}.,;)][⁰¹²³⁴-⁹]{1,3}(?:,[⁰¹²³⁴-⁹]{1,3}){0,5}(?= |$)")
+
+
+@cache
+def _study() -> regex.Pattern[str]:
+    return regex.compile(
+        r"""(?:(?:however|indeed|moreover|for\ example|for\ instance|similarly|likewise),?\ )?(?:(?:in|from|by)\ )?
+        (?:an?|one|another|two|the\ only|some|several|the\ largest)\ (?:[\w-]+\ ){0,4}
+        (?:stud(?:y|ies)|trials?|surveys?|cohorts?|reviews?|meta-analys[ei]s|series|audits?|experiments?|reports?)\b""",
+        regex.VERBOSE,
+    )
 
 
 @cache

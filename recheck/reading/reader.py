@@ -16,6 +16,7 @@ from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
+from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
 from recheck.reading.quoting import Sentence, of_earlier_work
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
@@ -41,7 +42,7 @@ def read(document: Document) -> Reading:
         try:
             found = list(_passage(view, spans[number], number, setting, left))
         except TimeoutError:
-            left["a passage took too long to read"] += 1
+            left[TOO_LONG] += 1
             continue
         placed += [_doubted(item, passages[number], repairs) for item in found]
     return Reading(tuple(linked(_unique(placed))), setting.context, _notes(document, left))
@@ -53,15 +54,8 @@ def _doubted(item: Placed, passage: Passage, repairs: Repairs) -> Placed:
 
 
 def _notes(document: Document, left: Counter[str]) -> tuple[str, ...]:
-    skipped = Counter(
-        p.kind for p in document.passages if p.kind not in READ and not DIGITS.isdisjoint(p.text)
-    )
-    notes = [
-        f"{count} passages of kind {kind!r} were not read for claims"
-        for kind, count in sorted(skipped.items())
-    ]
-    notes += [f"{count} places were left out: {reason}" for reason, count in sorted(left.items())]
-    return tuple(notes)
+    kinds = (p.kind for p in document.passages if p.kind not in READ and not DIGITS.isdisjoint(p.text))
+    return notes_of(kinds, left)
 
 
 def _passage(view: View, spans: Spans, number: int, setting: Setting, left: Counter[str]) -> Iterator[Placed]:
@@ -132,7 +126,7 @@ def _after_sign(draft: Draft) -> bool:
 def _credible(draft: Draft, setting: Setting) -> str | None:
     """In a Bayesian manuscript CI means credible interval."""
     if setting.credible and draft.get("ci") and not draft.part("statistic", "p"):
-        return "an interval that is no confidence interval"
+        return "credible"
     return None
 
 
@@ -205,9 +199,11 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
     confidence, notes = name.confidence, name.notes
     if any(_maybe_decimal(quantity, value) for quantity, value in values.items()):
         confidence, notes = "low", (*notes, "a comma may be a decimal sign or group thousands")
+    # Tukey's and Dunnett's tests compare pairs: their p are not printed with an F.
+    but = ("adjusted-p-post-hoc",) if setting.pairs_alone and name.kind == "F-test" else ()
     return Claim(
         _id(name, place.quote, view.passage), name.kind, place, values, name.stated,
-        tuple(word for word in setting.context.background if word not in name.stated),
+        tuple(word for word in setting.context.background if word not in name.stated and word not in but),
         name.interval_of, confidence, notes=notes,
     )  # fmt: skip
 

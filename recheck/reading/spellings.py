@@ -113,6 +113,8 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
             numbers.append(token)
         elif token.text == "|" and not token.spaced and not numbers:
             pass
+        elif token.text == "_" and not token.spaced and line.at(after + 1).text in ("(", "["):
+            pass
         elif token.text == "_" and not token.spaced and line.at(after + 1).kind in ("word", "num"):
             after += 1
             label = _subscript(line, after, label, numbers)

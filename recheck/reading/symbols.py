@@ -107,13 +107,21 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family(
         "estimate",
         bare=True,
-        or_="OR|aOR|AOR|odds ratio|adjusted odds ratio|ORadj|crude OR|OR adj",
-        rr="RR|aRR|ARR|risk ratio|relative risk|rate ratio|IRR|PR|prevalence ratio|incidence rate ratio|adjusted RR",
-        hr="HR|aHR|AHR|hazard ratio|hazards ratio|adjusted hazard ratio",
-        rd="risk difference",
+        or_="OR|aOR|AOR|ORadj|crude OR|OR adj",
+        rr="RR|aRR|ARR|IRR|PR|adjusted RR",
+        hr="HR|aHR|AHR",
         mean_difference="MD|Mdiff|MDiff|MD diff|difference of means"
         "|difference|mean of the differences|mean of differences|difference between means|mean differences|M diff|MDdiff|diff|Diff"
         "|difference in mean|ΔM",
+    ),
+    *_family(
+        "estimate",
+        bare=True,
+        worded=True,
+        or_="odds ratio|adjusted odds ratio|crude odds ratio|unadjusted odds ratio",
+        rr="risk ratio|relative risk|rate ratio|prevalence ratio|incidence rate ratio|adjusted relative risk|adjusted risk ratio",
+        hr="hazard ratio|hazards ratio|adjusted hazard ratio",
+        rd="risk difference",
     ),
     *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"
              "|mean change|average change|mean increase|mean decrease|mean gain|mean reduction|mean improvement"),

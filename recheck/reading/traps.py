@@ -11,7 +11,7 @@ from recheck.reading.tokens import words
 
 
 def trapped(draft: Draft, sentence: Sentence) -> str | None:
-    """Why the numbers are no result of this manuscript, or None where they are one."""
+    """Why the numbers are no result of this manuscript, a key of `notes.LEFT_OUT`; None where they are one."""
     for reason, trap in _TRAPS.items():
         if trap(draft, sentence):
             return reason
@@ -289,15 +289,15 @@ def _condition(draft: Draft, sentence: Sentence) -> bool:
 
 
 _TRAPS: dict[str, Callable[[Draft, Sentence], bool]] = {
-    "several results told together": _several,
-    "a legend": _legend,
-    "a critical value or threshold": _critical,
-    "a level of significance": _level,
-    "values of a plan or an example": _planned,
-    "a test of an assumption": _assumption,
-    "a rule of thumb": _rule,
-    "an interval that is no confidence interval": _bayesian,
-    "an equation": _equation,
-    "a setting with its tolerance": _condition,
-    "results of another study": quoted,
+    "several": _several,
+    "legend": _legend,
+    "critical": _critical,
+    "level": _level,
+    "plan": _planned,
+    "assumption": _assumption,
+    "rule": _rule,
+    "credible": _bayesian,
+    "equation": _equation,
+    "setting": _condition,
+    "other study": quoted,
 }

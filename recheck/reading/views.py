@@ -10,7 +10,7 @@ import regex
 
 from recheck.model import Passage
 from recheck.model.printed import Box
-from recheck.reading.alike import LOWERED, RAISED, TABLE
+from recheck.reading.alike import FLAT, LOWERED, RAISED, TABLE
 
 TIMEOUT = 2.0
 """Seconds that one pattern may take over one passage."""
@@ -56,12 +56,25 @@ def view_of(passage: Passage) -> View:
     for sign, pattern, function in _MARKUP:
         if sign in text:
             text, at = _replaced(text, at, pattern(), function)
+    if "(" in text and not _LOWERED_DIGITS.isdisjoint(text):
+        text = _in_brackets().sub(_on_base_line, text, timeout=TIMEOUT)
     if "  " in text or not _FILLERS.isdisjoint(text):
         text, at = _replaced(text, at, _filler(), _from_filler)
     return View(text, at, passage)
 
 
 _Match = regex.Match[str]
+_LOWERED_DIGITS = frozenset(LOWERED.values())
+
+
+@cache
+def _in_brackets() -> regex.Pattern[str]:
+    """Degrees of freedom that are lowered although they stand in brackets, or together with these: `F₍₁,₂₆₎`."""
+    return regex.compile(r"(?<=[\p{L}²⁰-⁹] ?)\((?=[^)]*[₀-₉])(?:[₀-₉.,·;= ]|df){1,24}\)")
+
+
+def _on_base_line(match: _Match) -> str:
+    return match[0].translate(FLAT)
 
 
 def _replaced(
@@ -78,8 +91,9 @@ def _replaced(
             continue
         parts += (text[last:start], new)
         places += at[last:start]
-        # A sign stands where its markup starts; of several characters the last stands where it ends.
-        first = start if len(new) == 1 else max(start, end - len(new))
+        # A sign stands where its markup starts; several characters where they are found again, else at its end.
+        again = match[0].find(new[1:]) if len(new) > 1 else 1
+        first = start + again - 1 if again > 0 else max(start, end - len(new))
         places += [at[min(first + k, end - 1)] for k in range(len(new))]
         last = end
     if not parts:
@@ -110,7 +124,7 @@ def _with_marks(text: str, marks: str, at: Sequence[int]) -> tuple[str, Sequence
 
 @cache
 def _marked() -> regex.Pattern[str]:
-    return regex.compile(r"\^+|_+")
+    return regex.compile(r"\^+|_+(?: _+)*")
 
 
 _FILLERS = frozenset(
@@ -205,8 +219,19 @@ def _from_emphasis(match: _Match) -> str:
     return match[2]
 
 
+@cache
+def _lowered() -> regex.Pattern[str]:
+    """A subscript between tildes, which stand for `≈` here: `F~(1,26)~ = 6.45`, `t~13~ = 2.1`."""
+    return regex.compile(r"(?<=[\p{L}²*_])≈([\w(][\w.,; =)]{0,16})≈(?=[*_]? ?[=<>≤≥(])")
+
+
+def _from_lowered(match: _Match) -> str:
+    return "_" + match[1]
+
+
 _MARKUP: tuple[tuple[str, Callable[[], regex.Pattern[str]], Callable[[_Match], str]], ...] = (
     ("</", _tag, _from_tag),
     ("*", _emphasis, _from_emphasis),
     ("_", _emphasis, _from_emphasis),
+    ("≈", _lowered, _from_lowered),
 )

@@ -112,6 +112,8 @@ _ADJUSTING = (
     "corrected for the number of", "multiplicity", "adjustment for multiple", "hommel", "p-values were adjusted",
     "p values were adjusted", "p values were corrected", "p-values were corrected", "multiple-comparison correct",
 )  # fmt: skip
+_OF_PAIRS = ("tukey", "dunnett", "games", "newman", "dunn's")
+"""Corrections that are made for comparisons of pairs alone: an omnibus F has none of them."""
 _OF_TESTS = ("multiple", "family", "false", "type i", "spheric", "number of", "violation", "inflat")
 _POST_HOC = ("post hoc", "post-hoc", "posthoc", "pairwise", "pair-wise", "follow-up", "followed up", "multiple comparison",
              "simple effect", "simple main effect", "subsequent comparison")  # fmt: skip
@@ -136,18 +138,42 @@ _NEAR = 150
 
 def stated(text: str) -> tuple[str, ...]:
     """Keys of `STATED` that the text says, in their order; negated ones are left out."""
-    text = text.lower().replace("–", "-").replace("’", "'") + " "
+    return _stated(text, background=False)
+
+
+def background(text: str) -> tuple[str, ...]:
+    """What a whole document says of all its tests.
+
+    A word that speaks of something else is left out: permutations of clusters or features, the
+    bootstrap of a mediation or of a tree, a Bayesian information criterion.
+    """
+    return _stated(text, background=True)
+
+
+def pairs_alone(text: str) -> bool:
+    """Whether all corrections that a text speaks of are made for comparisons of pairs alone (Tukey, Dunnett)."""
+    text = _plain(text)
+    made = [stem for stem in _ADJUSTING if next(_said(text, stem), None) is not None]
+    return bool(made) and all(stem.startswith(_OF_PAIRS) for stem in made)
+
+
+def _plain(text: str) -> str:
+    return text.lower().replace("–", "-").replace("’", "'") + " "
+
+
+def _stated(text: str, *, background: bool) -> tuple[str, ...]:
+    text = _plain(text)
     starts = {word[:3] for word in text.translate(_APART).split()}
     by_start = _by_start()
     found = {
         key
         for start in starts.intersection(by_start)
         for key, stem in by_start[start]
-        if next(_said(text, stem), None) is not None
+        if any(not (background and _of_else(text, at, key)) for at in _said(text, stem))
     }
     if _ADJUSTED in found:
         found.remove(_ADJUSTED)
-        found |= {_of_what(text, at) for stem in _ADJUSTING for at in _said(text, stem)}
+        found |= {_of_what(text, at, stem) for stem in _ADJUSTING for at in _said(text, stem)}
     return tuple(key for key in (*STEMS, "adjusted-p", "adjusted-p-post-hoc") if key in found)
 
 
@@ -179,8 +205,28 @@ def _said(text: str, stem: str) -> Iterator[int]:
         at = text.find(stem, at + 1)
 
 
-def _of_what(text: str, at: int) -> str:
+_ELSE = {
+    "permutation": ("cluster", "importance", "entropy", "voxel", "permanova", "permutational multivariate", "tfce", "null model"),
+    "bootstrap": ("indirect effect", "mediat", "aggregat", "bagging", "bootstrap support", "phylogen", "cross-valid", "clades"),
+    "bayesian": ("information criteri", "bayesian optimi", "bayesian network", "bayes factor"),
+    "transformed": ("fourier", "wavelet", "fisher", "coordinates", "figure", "y-axis", "x-axis"),
+}
+"""What a word of the first column speaks of where one of the second stands in its sentence: not of the t tests."""
+_OF_ALL = ("p value", "p-value", "all test", "all analys", "all comparison", "all stat", "t test", "t-test", "f test", "f-test", "anova")
+
+
+def _of_else(text: str, at: int, key: str) -> bool:
+    """Whether the sentence around a word says that it speaks of something else than the tests."""
+    if key not in _ELSE:
+        return False
+    sentence = text[text.rfind(". ", 0, at) + 1 : (text.find(". ", at) + 1 or len(text))]
+    return any(word in sentence for word in _ELSE[key]) and not any(word in sentence for word in _OF_ALL)
+
+
+def _of_what(text: str, at: int, stem: str) -> str:
     """Whether a correction is said of post hoc comparisons."""
+    if stem.startswith(_OF_PAIRS):
+        return "adjusted-p-post-hoc"
     near = text[max(0, at - _NEAR) : at + _NEAR]
     return "adjusted-p-post-hoc" if any(stem in near for stem in _POST_HOC) else "adjusted-p"
 

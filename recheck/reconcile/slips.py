@@ -11,6 +11,7 @@ from recheck.model import Printed, Remedy, shown
 from recheck.reconcile.readings import Numbers, is_exact
 
 MINUS = "−"
+SIGNS = "-−–+"
 THRESHOLDS = frozenset(Decimal(text) for text in ("0.1", "0.05", "0.01", "0.005", "0.001", "0.0001"))
 """Values that p is commonly printed to lie below (common practice, no source)."""
 GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for i in "12")
@@ -37,6 +38,8 @@ def _printable(text: str) -> bool:
 def _with_digits(printed: Printed, text: str) -> Printed:
     """The same number with other digits, its sign kept."""
     negative = printed.value < 0
+    if printed.text.lstrip(SIGNS).startswith((".", ",")):
+        text = text.removeprefix("0")
     value = -Decimal(text) if negative else Decimal(text)
     return replace(printed, text=MINUS + text if negative else text, value=value, decimals=_decimals(text))
 
@@ -48,7 +51,7 @@ def _decimals(text: str) -> int:
 def _digits(printed: Printed) -> str:
     """The digits with their point, as a plain decimal without sign, leading zero as printed."""
     text = f"{abs(printed.value):f}" if printed.decimals >= 0 else f"{abs(printed.value):.0f}"
-    return text[1:] if text.startswith("0.") and printed.text.lstrip("-−–").startswith((".", ",")) else text
+    return text.removeprefix("0") if printed.text.lstrip(SIGNS).startswith((".", ",")) else text
 
 
 def _relations(printed: Printed) -> list[tuple[Printed, str]]:

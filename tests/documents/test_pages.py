@@ -279,3 +279,27 @@ def test_no_character_is_lost_or_doubled(seed, count):
     # Two labels may happen to lie on one another; then one of them is read.
     assert all(found[char] <= drawn[char] for char in drawn)
     assert sum(found[char] for char in drawn) >= 0.97 * sum(drawn.values()) - 2
+
+
+def test_indices_on_a_page_scanned_askew(engine):
+    """The index shares the row of the text after it, for the whole line drifts; it stays alone in being raised."""
+
+    def draw(canvas):
+        line(canvas, 60, 40, "Bench scores", BOLD, 16)
+        canvas.rotate(0.5)
+        end = rich(
+            canvas, 60, 90, ("The share of rye loaves rose, χ"[:-1], ROMAN, 10, 0), ("c", SYMBOL, 10, 0)
+        )
+        end = rich(
+            canvas,
+            end,
+            90,
+            ("2", ROMAN, 6.8, 3.5),
+            ("(1) = .02, p = .89, and then fell again.", ROMAN, 10, 0),
+        )
+        wrapped(canvas, 60, 104, 475, prose(1), leading=14)
+
+    passage = containing(opened(pdf(draw), reader=engine), "(1) = .02")
+    at = passage.text.index("(1) = .02")
+    assert passage.marks[at - 1] == "^"
+    assert set(passage.marks[at:]) == {" "}

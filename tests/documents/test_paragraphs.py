@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import pytest
 
-from tests.documents.making import BOLD, PROSE, containing, line, opened, pdf, prose, texts, wrapped
+from tests.documents.making import BOLD, PROSE, containing, line, opened, pdf, prose, quoted, texts, wrapped
 
 RESULT = "Loaf height rose after the training, t(22) = 2.31, p = .031, and stayed high."
 
@@ -147,3 +147,33 @@ def test_double_spaced_manuscripts():
     document = opened(pdf(*[page(number) for number in range(1, 5)], size=(612, 792)))
     assert sum(RESULT in text for text in texts(document)) == 4
     assert not any("SOURDOUGH" in text for text in texts(document))
+
+
+def test_a_loosely_justified_line_of_results_is_no_row():
+    """A line of four long words is spaced wide and evenly: text, though it is mostly numbers."""
+
+    def draw(canvas):
+        end = wrapped(canvas, 60, 60, 235, prose(1) + " The trained bench was higher than the other bench")
+        words = ("[M(SD)=3.82(1.28)],", "t(35)=-3.06,", "p=.004,", "d=-1.01,")
+        room = (235 - sum(canvas.stringWidth(word, "Times-Roman", 10) for word in words)) / 3
+        x = 60.0
+        for word in words:
+            line(canvas, x, end, word)
+            x += canvas.stringWidth(word, "Times-Roman", 10) + room
+        line(canvas, 60, end + 12, "95%CI[-1.70, -0.32].")
+        wrapped(canvas, 60, end + 24, 235, prose(2), indent=10)
+
+    passage = containing(opened(pdf(draw)), "t(35)=-3.06, p=.004, d=-1.01, 95%CI")
+    assert passage.kind == "body"
+
+
+@pytest.mark.parametrize("ending", ["method.", "results.", "references."])
+def test_the_last_word_of_a_paragraph_is_no_heading(ending):
+    def draw(canvas):
+        end = wrapped(canvas, 60, 60, 300, prose(1).rstrip(".") + " and were not filled in by any other")
+        line(canvas, 60, end, ending)
+        wrapped(canvas, 60, end + 12, 300, prose(2) + " " + RESULT, indent=10)
+
+    document = opened(pdf(draw))
+    assert not texts(document, "heading", "references")
+    assert f"by any other {ending}" in quoted(document.passages)

@@ -87,6 +87,7 @@ def test_lines_are_counted_inside_a_passage():
         ("M = 5&nbsp;cm", "M = 5 cm", ""),
         ("p &lt; .05", "p < .05", ""),
         (r"p \< .05 and 3 \* 4", "p < .05 and 3 * 4", ""),
+        (r"t(40) \= 1.10 and 2.5 \+ 3", "t(40) = 1.10 and 2.5 + 3", ""),
         ("a [link](https://bench.org) here", "a link here", ""),
         ("**M** = 5 and ***p*** = .1", "M = 5 and p = .1", ""),
         ("about 2½ loaves", "about 2½ loaves", ""),

@@ -61,10 +61,15 @@ def test_lowered_words_are_subscripts() -> None:
     assert {k: v.text for k, v in claim.values.items()} == {"mean": "20.6", "sd": "2.45"}
 
 
-@pytest.mark.parametrize("kind", ["references", "aside", "table", "figure"])
-def test_kinds_that_are_not_read_are_counted(kind: str) -> None:
+@pytest.mark.parametrize("kind", ["references", "table", "figure"])
+def test_kinds_that_are_not_read_are_told(kind: str) -> None:
     found = reading(Passage(text=TEXT, kind=kind))  # type: ignore[arg-type]
     assert not found.claims and any(kind in note for note in found.notes)
+
+
+def test_running_heads_are_not_told() -> None:
+    found = reading(Passage(text=TEXT, kind="aside"))
+    assert not found.claims and not found.notes
 
 
 @pytest.mark.parametrize("kind", ["body", "heading", "caption", "note"])
@@ -83,7 +88,14 @@ def test_notes_count_what_was_left_out() -> None:
     found = reading(
         Passage(text="All others were alike, all ps > .31."), Passage(text="* p < .05, ** p < .01.")
     )
-    assert not found.claims and found.notes
+    assert not found.claims
+    assert found.notes == ("Left out as no single results of this study: 2 legends of marks.",)
+
+
+def test_what_is_not_read_is_one_sentence() -> None:
+    kinds = ("references", "figure", "table", "aside", "table")
+    found = reading(*(Passage(text=TEXT, kind=kind) for kind in kinds))  # type: ignore[arg-type]
+    assert found.notes == ("Not read for results: the text of tables, the text of figures, the references.",)
 
 
 PAIR = "Trained apprentices (M = 5.0, SD = 1.1) baked higher loaves than others (M = 4.2, SD = 1.3)."
