@@ -188,13 +188,16 @@ def _gap(printed: Printed, interval: Interval, implied: Sequence[Interval]) -> f
 
 
 def _reverses(case: Case, comparison: Comparison, tried: Sequence[Attempt]) -> bool:
-    """Tell whether printed and implied p lie on opposite sides of alpha under every reading tried."""
+    """Tell whether printed and implied p lie on opposite sides of alpha under every reading tried.
+
+    Pairs of unstated assumptions were tried for an agreement, and gave none.
+    """
     if comparison.quantity != "p":
         return False
     alpha = case.settings.alpha
     printed = comparison.numbers["p"]
     interval = next(iter(tried)).printed
-    implied = [i for a in tried for i in a.implied]
+    implied = [i for a in tried if len(a.unstated) <= 1 for i in a.implied]
     strict = printed.relation in ("<", ">")
     below = interval.high < alpha or (strict and interval.high <= alpha)
     above = interval.low > alpha or (strict and interval.low >= alpha)

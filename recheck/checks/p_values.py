@@ -15,7 +15,7 @@ UNIT_DF = 1e9
 """Degrees of freedom at which t is normal to double precision."""
 
 ONE_TAILED = "p is one-tailed"
-WRONG_DIRECTION = "p is one-tailed and the effect goes against the stated direction"
+WRONG_DIRECTION = "the effect goes against the predicted direction"
 ROUNDED_DF = "the printed df are a rounded or floored fractional df"
 NORMAL_P = "p comes from the normal distribution"
 FLOOR = "p is the smallest that the program prints, so smaller ones are printed alike"
@@ -24,11 +24,17 @@ ANY_DF = "p rests on another approximation to the df, as mixed models allow"
 
 def tails_tried(claim: Claim) -> tuple[tuple[int, bool], ...]:
     """Numbers of tails to try, each with whether it is stated."""
-    if claim.suggests("one-tailed") and not claim.says("two-tailed"):
-        return ((1, claim.says("one-tailed")), (2, not claim.says("one-tailed")))
-    if claim.suggests("two-tailed") and not claim.says("equivalence"):
-        return ((2, True),)
-    return ((2, True), (1, False))
+    if claim.says("one-tailed"):
+        return ((1, True), (2, False))
+    if _of_equivalence(claim) or (claim.suggests("one-tailed") and not claim.says("two-tailed")):
+        return ((2, True), (1, True))
+    return ((2, True),) if claim.suggests("two-tailed") else ((2, True), (1, False))
+
+
+def _of_equivalence(claim: Claim) -> bool:
+    """Tests of equivalence are one-tailed by definition; a heading may say that they are ones."""
+    section = (claim.place.section or "").lower()
+    return claim.says("equivalence") or "equivalence" in section or "inferiority" in section
 
 
 def with_p(claim: Claim, *names: str) -> Numbers:
@@ -79,12 +85,15 @@ def tail_ways(
                 p = p_of(box, 1)
                 return (Interval(1.0 - p.high, 1.0 - p.low),)
 
-            yield Way(against, (*words, WRONG_DIRECTION))
+            # Two assumptions where the text states neither: rarely what is meant.
+            yield Way(against, (*words, *mark, WRONG_DIRECTION))
 
 
 def _excuses(claim: Claim) -> tuple[str, ...]:
     """Why p cannot be rebuilt from the statistic at all."""
     reasons = []
+    if claim.values["p"].interval().low > 1:
+        reasons.append("p lies outside 0 to 1")
     if claim.suggests("permutation"):
         reasons.append("p comes from a permutation or exact test")
     if claim.says("bootstrap"):

@@ -108,7 +108,7 @@ def _misprints(name: str, printed: Printed, allowed: Interval) -> tuple[Remedy, 
     kinds=("t-test", "F-test", "chi2-test", "correlation"),
     quantity="df",
     needs=(),
-    formula="df > 0; df of a correlation, of χ² and numerator df uncorrected are whole numbers from 1",
+    formula="df > 0",
     source="by definition of each test",
     limits="Satterthwaite df below 1 and fractional corrected df are honest.",
     impossible=("The loaves differed, t(0) = 2.20, p = .036.",),
@@ -121,4 +121,6 @@ def df_positive(case: Case) -> Iterable[Finding]:
             if printed.decimals > 0 and printed.interval().high > 0:
                 continue
             text = f"{shown(name)} {printed_text(printed)}: no test has as few degrees of freedom."
-            yield impossible(case, "df-positive", name, text, Interval(math.ulp(0.0), math.inf))
+            yield impossible(
+                case, "df-positive", name, text, Interval(1.0 if printed.decimals <= 0 else 0.0, math.inf)
+            )

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import logging
 from collections.abc import Iterator, Sequence
+from dataclasses import replace
 
 from recheck.checks.compare import unchecked
 from recheck.checks.registry import Case, Check, all_checks
@@ -14,6 +15,7 @@ logger = logging.getLogger("recheck")
 
 def run_checks(claims: Sequence[Claim], context: Context, settings: Settings) -> tuple[Finding, ...]:
     """Give the findings of all checks on all claims, in reading order; one fault loses one check only."""
+    claims = [_as_shares(claim) for claim in claims]
     by_id = {claim.id: claim for claim in claims}
     findings: list[Finding] = []
     for claim in claims:
@@ -23,6 +25,37 @@ def run_checks(claims: Sequence[Claim], context: Context, settings: Settings) ->
             if claim.kind in check.kinds:
                 findings += _run(check, case)
     return tuple(findings)
+
+
+SHARES = frozenset(
+    (
+        "p",
+        "alpha",
+        "power",
+        "r2",
+        "adjusted_r2",
+        "eta2",
+        "partial_eta2",
+        "generalized_eta2",
+        "omega2",
+        "epsilon2",
+    )
+)
+"""Quantities between 0 and 1 that are sometimes printed as percentages."""
+
+
+def _as_shares(claim: Claim) -> Claim:
+    """The claim with `p = 3.6%` as .036, to as many decimals more."""
+    percents = {n: v for n, v in claim.values.items() if v.percent and n in SHARES}
+    if not percents:
+        return claim
+    shares = {
+        n: replace(
+            v, text=v.text.rstrip("% ") + "%", value=v.value / 100, decimals=v.decimals + 2, percent=False
+        )
+        for n, v in percents.items()
+    }
+    return replace(claim, values={**claim.values, **shares})
 
 
 def _run(check: Check, case: Case) -> Iterator[Finding]:

@@ -50,12 +50,30 @@ def open_document(
 
         return pdf_document(data, name=name, reader=reader, pages=pages)
     text, notes = decoded(data, name)
+    markup = _markup(text)
+    if markup:
+        raise UnreadableDocument(
+            name, f"it is {markup}, which is not read", "save it as PDF or as UTF-8 text"
+        )
     return text_document(text, name=name, format="", data=data, notes=notes)
 
 
 def is_pdf(head: bytes) -> bool:
     """Tell whether a file that begins so is a PDF: readers allow junk before the mark."""
     return b"%PDF-" in head[:HEAD]
+
+
+_MARKUPS = {
+    "HTML": ("<!doctype html", "<html"),
+    "XML": ("<?xml", "<!doctype article", "<article"),
+    "RTF": ("{\\rtf",),
+}
+
+
+def _markup(text: str) -> str:
+    """The name of a markup language that a text begins with, "" for plain text and Markdown."""
+    start = text[:HEAD].lstrip("\ufeff \t\r\n").lower()
+    return next((kind for kind, marks in _MARKUPS.items() if start.startswith(marks)), "")
 
 
 def shown_name(name: str) -> str:

@@ -86,7 +86,8 @@ def captioned(text: str, *, sure: bool = False) -> PassageKind | None:
 
 def looks_like_reference(text: str) -> bool:
     """Tell whether a paragraph reads like one entry of a list of references."""
+    start = text[:400]
     return (
-        _AUTHOR.match(text, timeout=_PATIENCE) is not None
-        and _ENTRY.search(text[:400], timeout=_PATIENCE) is not None
+        _AUTHOR.match(start, timeout=_PATIENCE) is not None
+        and _ENTRY.search(start, timeout=_PATIENCE) is not None
     )

@@ -158,7 +158,9 @@ def _sure(line: Line, index: int, number: Number) -> bool:
     """A whole number behind several words is a ratio only where an interval follows: `the odds ratio of burning was 2 (95% CI …`."""
     near = line.tokens[index : number.after - 1]
     opened = line.at(number.after).text in ("(", "[", ",", ";")
-    return len(near) <= 1 or number.decimals > 0 or (opened and interval_at(line, number.after + 1) is not None)
+    return (
+        len(near) <= 1 or number.decimals > 0 or (opened and interval_at(line, number.after + 1) is not None)
+    )
 
 
 _OTHER_MEANS = words(
@@ -197,9 +199,11 @@ def _beside_symbol(line: Line, spelled: Spelled) -> tuple[Values | None, str, in
     if line.at(after).text not in ("(", "["):
         lone = symbol.quantity == "F" and spelled.numbers and df is None
         return None if lone else (df, "", after)
-    bracket = bracketed_df(line, after, symbol) if symbol.part == "statistic" and df is None else None
-    if bracket:
+    bracket = bracketed_df(line, after, symbol) if symbol.part == "statistic" else None
+    if bracket and (df is None or _numbered(df, bracket.values)):
         return bracket.values, "", bracket.after
+    if bracket and df and bracket.values and {name for name, _ in bracket.values} <= {"n", "N"}:
+        return (*df, *bracket.values), "", bracket.after
     past = _words_in_brackets(line, after, symbol)
     if past:
         return df, " ".join(t.low for t in line.tokens[after:past]), past
@@ -207,6 +211,14 @@ def _beside_symbol(line: Line, spelled: Spelled) -> tuple[Values | None, str, in
         named = len(spelled.text) > 4 and symbol.part in ("estimate", "statistic")
         return df, "", after + named
     return None
+
+
+def _numbered(lowered: Values, bracketed: Values) -> bool:
+    """Whether a lowered 1 or 2 only numbers the test, its df standing in brackets: `t1(31)` by subjects, `t2(47)` by items."""
+    return any(name == "df" for name, _ in bracketed) and [value.text for _, value in lowered] in (
+        ["1"],
+        ["2"],
+    )
 
 
 def _two_df(line: Line, item: Assignment) -> Assignment | None:

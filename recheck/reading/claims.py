@@ -115,10 +115,27 @@ def _joins(
         and any(t.text in ")]" for t in line.tokens[current[-1].after : item.first])
     ):
         return None
+    p_only = all(other.part == "p" for other in current)
+    if p_only and item.part in _RESULT and _left_behind(line, current[-1], item, semicolon):
+        return None
     rule = _RULES[item.part]
     if not rule(Situation(current, item, rest, semicolon, distance, line)):
         return None
     return "tight" if distance == "tight" or item.part == "size" else "loose"
+
+
+def _left_behind(line: Line, p: Assignment, item: Assignment, semicolon: bool) -> bool:
+    """Whether a p belongs to the words before it, not to the result that follows.
+
+    `B did not differ from C (p = .71), F(2, 57) = 6.88`: its brackets are closed; or words follow a semicolon.
+    """
+    depth = 0
+    between = line.tokens[p.after : item.first]
+    for token in between:
+        depth += (token.text in ("(", "[")) - (token.text in (")", "]"))
+        if depth < 0:
+            return True
+    return semicolon and any(token.kind == "word" for token in between)
 
 
 @dataclass(frozen=True, slots=True)
@@ -156,6 +173,14 @@ class Situation:
     def tight(self) -> bool:
         """Whether nothing but connecting words stands between."""
         return self.distance == "tight"
+
+    @property
+    def compared(self) -> bool:
+        """Whether the claim is the second of two that are set against each other: `42.1 (…) vs 41.5 (…)`."""
+        first = self.current[0].first
+        return any(
+            t.low in ("vs", "versus", "v", "than") for t in self.line.tokens[max(0, first - 3) : first]
+        )
 
     def coming(self, part: str, before: str) -> bool:
         """Tell whether a `part` follows tightly before the next `before` does."""
@@ -240,7 +265,8 @@ def _estimate(s: Situation) -> bool:
             return True
         return not (s.divided or s.coming("statistic", "p") or s.coming("p", "statistic"))
     if s.has("estimate", "effect"):
-        return not s.holds("p") and not (s.semicolon and s.has("interval"))
+        again = s.has("interval") and (s.semicolon or s.holds("estimate") or s.coming("interval", "estimate"))
+        return not s.holds("p") and not again
     if s.holds("p"):
         return not s.coming("p", "estimate") and not s.semicolon
     return True
@@ -258,7 +284,7 @@ def _p(s: Situation) -> bool:
     if s.holds("p"):
         return False
     if s.has(*_GROUP):
-        return s.tight and s.has("interval")
+        return s.tight and s.has("interval") and not s.compared
     if s.has("statistic"):
         return True
     return s.tight and s.has("estimate", "effect", "interval", "other", "df")

@@ -91,12 +91,20 @@ def _numbers(line: Line, index: int, end: int, symbol: Symbol, *, counted: bool)
         return [], index
     if token.kind != "num":
         return [], index
-    pieces = None if symbol.quantity in ("t", "r") or counted else _split(token.text, line, index, end)
+    one_df = symbol.quantity in ("t", "r")
+    if one_df and not line.decimal_comma and _two_in_one(token.text):
+        return [], index
+    pieces = None if one_df or counted else _split(token.text, line, index, end)
     if pieces is None:
         number = number_at(line, index, grouped=True)
         number = whole(number) if number and counted else number
         return ([number.printed(line)], number.after) if number and number.value >= 0 else ([], index)
     return list(_pieces(line, token, pieces)), index + 1
+
+
+def _two_in_one(text: str) -> bool:
+    """Whether `1,58` is no number of a document with decimal points: a t has one df, and 58 may be meant."""
+    return text.count(",") == 1 and len(text.partition(",")[2].partition(".")[0]) != 3
 
 
 def _split(text: str, line: Line, index: int, end: int) -> list[str] | None:

@@ -16,6 +16,7 @@ import regex
 
 from recheck.model import Claim, Confidence, Passage, Printed
 from recheck.reading.alike import MISCODED
+from recheck.reading.tokens import words
 from recheck.reading.views import TIMEOUT
 
 LEAST = 3
@@ -199,7 +200,8 @@ def _beside_equals(chars: list[str], replaced: dict[int, str], coded: str) -> No
 @cache
 def _codes(coded: str) -> regex.Pattern[str]:
     sides = "|".join(
-        rf"(?<=(?<![\d.])\d{{1,4}}\.\d{{{k}}} ?)(?P<both>{coded})(?= ?\d{{1,4}}\.\d{{{k}}}(?![\d.]))" for k in (1, 2, 3)
+        rf"(?<=(?<![\d.])\d{{1,4}}\.\d{{{k}}} ?)(?P<both>{coded})(?= ?\d{{1,4}}\.\d{{{k}}}(?!\d|\.\d))"
+        for k in (1, 2, 3)
     )
     return regex.compile(
         rf"(?P<minus>[À\x01])(?=\d|\.\d) | (?<![\w])(?P<chi>[vwcxX])(?=[2²]\ ?[=(\[]) "
@@ -239,7 +241,12 @@ def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, r
     values = dict(claim.values)
     if repairs.minus_is_digit:
         for name, value in claim.values.items():
-            if name not in _UNSIGNED and value.text.startswith("2") and len(value.text) > 1 and value.decimals > 0:
+            if (
+                name not in _UNSIGNED
+                and value.text.startswith("2")
+                and len(value.text) > 1
+                and value.decimals > 0
+            ):
                 values[name], note = _signed(name, value)
                 notes.append(note)
                 confidence = "low"
@@ -247,7 +254,7 @@ def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, r
     return replace(claim, values=values, notes=(*claim.notes, *notes), confidence=confidence)
 
 
-_UNSIGNED = frozenset(("F", "chi2", "p", "sd", "se", "n", "N", "df", "df1", "df2", "or", "rr", "hr", "ci_level", "u", "w", "r2", "partial_eta2"))
+_UNSIGNED = words("F chi2 p sd se n N df df1 df2 or rr hr ci_level u w r2 partial_eta2")
 """What a minus never stands before."""
 
 
@@ -271,7 +278,11 @@ def _ordered(values: Mapping[str, Printed], interval_of: str | None) -> dict[str
 
 def _negative(value: Printed) -> Printed:
     """The number behind its first digit, taken for a minus."""
-    return replace(value, value=-Decimal(value.text[1:])) if value.text[1:2].isdigit() or value.text[1:2] == "." else value
+    return (
+        replace(value, value=-Decimal(value.text[1:]))
+        if value.text[1:2].isdigit() or value.text[1:2] == "."
+        else value
+    )
 
 
 def _signed(name: str, value: Printed) -> tuple[Printed, str]:

@@ -63,7 +63,12 @@ def _estimate_before(line: Line, interval: Assignment, stop: int) -> Assignment 
         return None
     note = "the number before the interval is taken for its estimate"
     loose = line.at(number.first - 1).kind != "rel"
+    if any(t.low in _AGAINST for t in line.tokens[max(stop, number.first - 3) : number.first]):
+        return replace(number, doubt="medium", loose=loose)
     return replace(number, symbol=ESTIMATE, doubt="medium", notes=(note,), loose=loose)
+
+
+_AGAINST = words("vs versus v than")
 
 
 def _has_mean(found: Sequence[Assignment], spread: Assignment, line: Line) -> bool:
@@ -86,6 +91,10 @@ def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None
         if part_of_unit(line, at):
             at -= 1
             continue
+        scale = _scale(line, at) if token.kind == "num" else None
+        if scale is not None:
+            at = scale
+            continue
         if token.kind == "num":
             if line.at(at + 1).text == ")" and line.at(at - 1).text == "(":
                 return None
@@ -105,6 +114,27 @@ def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None
             return None
         at -= 1
     return None
+
+
+def _scale(line: Line, at: int) -> int | None:
+    """Index before the words that make a number the end of a scale: `out of 7`, `from 1 to 5`, `of 10 items`, `on a 7-point scale`."""
+    one, two, three = (line.at(at - k).low for k in (1, 2, 3))
+    following = line.at(at + 1).low
+    if following == "-" and line.at(at + 2).low in ("point", "item", "level", "step"):
+        return at - 1
+    if one == "of" and two in ("out", "maximum", "minimum", "max", "total"):
+        return at - 3
+    if one == "possible":
+        return at - 2 - (two == "a") - (line.at(at - 2 - (two == "a")).low == "of")
+    if one == "of" and following in _ITEMS:
+        return at - 2
+    if one in ("to", "-", "and") and line.at(at - 2).kind == "num" and three in _SPANS:
+        return at - 3 - (three != "scale")
+    return at - 2 if one == "/" and line.at(at - 2).kind == "num" else None
+
+
+_ITEMS = words("items points questions trials words tasks answers statements possible sentences pictures")
+_SPANS = words("from between scale range of")
 
 
 def _mean_at(line: Line, at: int, stop: int, opened: bool) -> Assignment | None:
@@ -133,7 +163,8 @@ def _mean_at(line: Line, at: int, stop: int, opened: bool) -> Assignment | None:
     if number is None or (number.decimals == 0 and not opened):
         return None
     told = {t.low for t in line.tokens[max(stop, first - 5) : first]}
-    symbol = ESTIMATE if told & _NO_MEANS else MEAN
+    letters = before.kind == "rel" and line.at(first - 2).kind == "word" and len(line.at(first - 2).text) <= 2
+    symbol = ESTIMATE if told & _NO_MEANS or (letters and line.at(first - 2).text.islower()) else MEAN
     return Assignment(symbol, number.printed(line), first, number.after, loose=True)
 
 

@@ -62,7 +62,7 @@ def _level(line: Line, index: int) -> tuple[Number | None, int]:
     number = number_at(line, index)
     if number is None or not Decimal(50) <= number.value < 100:
         return None, index
-    return number, number.after
+    return number, number.after + (line.at(number.after).low == "percent")
 
 
 def _level_after(line: Line, index: int) -> tuple[Number | None, int]:

@@ -134,7 +134,12 @@ def number_at(line: Line, index: int, *, grouped: bool = False) -> Number | None
 
 def whole(number: Number) -> Number:
     """The number of a quantity that counts: what looks like three decimals (`1,200`, `1.200`) groups thousands."""
-    if number.decimals != 3 or number.percent or number.end - number.start not in (5, 6, 7) or abs(number.value) < 1:
+    if (
+        number.decimals != 3
+        or number.percent
+        or number.end - number.start not in (5, 6, 7)
+        or abs(number.value) < 1
+    ):
         return number
     return replace(number, value=(number.value * 1000).to_integral_value(), decimals=0, ambiguous=False)
 

@@ -9,6 +9,7 @@ import regex
 
 from recheck.reading.claims import Draft
 from recheck.reading.numerals import Line
+from recheck.reading.tokens import words
 from recheck.reading.views import TIMEOUT
 
 
@@ -55,7 +56,7 @@ def _cited() -> regex.Pattern[str]:
 
 
 _VERBS = ("found", "reported", "report ", "observed", "showed", "shown", "obtained", "estimated", "demonstrated", "documented",
-          "reveal", "concluded", "noted", "described", "yielded", "indicated", "suggested", "measured", "published")  # fmt: skip
+          "reveal", "shows", "reports", "finds", "presents", "lists", "concluded", "noted", "described", "yielded", "indicated", "suggested", "measured", "published")  # fmt: skip
 _OURS = (" we ", " our ", "present study", "current study", "this study", "present experiment", "current experiment", " us ",
          "in the present")  # fmt: skip
 _COMPARING = ("replicat", "consistent with", "in line with", "similar to", "following ", "using ", "used ", "according to",
@@ -86,6 +87,9 @@ def quoted(draft: Draft, sentence: Sentence) -> bool:
             return True
         if _method(match[0]) and own:
             continue
+        precedes = match.end() + sentence.start <= start
+        if narrative and not own and precedes and _source().search(before.lower()):
+            return True
         if not sentence.ours and is_tested and _closing(draft, match, sentence):
             return True
         if (not own or not is_tested) and _beside(
@@ -145,7 +149,9 @@ def _numbered_study(sentence: Sentence, end: int) -> bool:
 @cache
 def _number() -> regex.Pattern[str]:
     """A numbered citation: `[2]`, `[3, 7-9]`, or the raised number behind a stop."""
-    return regex.compile(r"\[\d{1,3}(?:[,-] ?\d{1,3}){0,9}\]|[\p{Ll}.,;)][⁰¹²³⁴-⁹]{1,3}(?:,[⁰¹²³⁴-⁹]{1,3}){0,5}(?= |$)")
+    return regex.compile(
+        r"\[\d{1,3}(?:[,-] ?\d{1,3}){0,9}\]|[\p{Ll}.,;)][⁰¹²³⁴-⁹]{1,3}(?:,[⁰¹²³⁴-⁹]{1,3}){0,5}(?= |$)"
+    )
 
 
 @cache
@@ -161,7 +167,9 @@ def _study() -> regex.Pattern[str]:
 @cache
 def _bracket() -> regex.Pattern[str]:
     """What may stand between the numbers and a citation that is the whole of the brackets behind them."""
-    return regex.compile(r"(?:[)\]]? ?[(\[]|[;,] )(?:(?:\p{L}|[',.&;-]| |\d{4}[a-z]?\b){0,80}[,;] )?(?:\p{Lu}[\p{L}'-]+,? (?:and|&) )?")
+    return regex.compile(
+        r"(?:[)\]]? ?[(\[]|[;,] )(?:(?:\p{L}|[',.&;-]| |\d{4}[a-z]?\b){0,80}[,;] )?(?:\p{Lu}[\p{L}'-]+,? (?:and|&) )?"
+    )
 
 
 def _closing(draft: Draft, citation: regex.Match[str], sentence: Sentence) -> bool:
@@ -176,17 +184,42 @@ def _closing(draft: Draft, citation: regex.Match[str], sentence: Sentence) -> bo
         citation.start() >= end
         and behind in (")", "]", ";", ",")
         and bool(_bracket().fullmatch(between, timeout=TIMEOUT))
-        and not _any(between.lower(), _COMPARED)
+        and not any(word in between.lower() for word in _COMPARED)
     )
 
 
-_COMPARED = ("cf", "see", "also", "repl", "compar", "like", "unlike", "consist", "contra", "after ", "follow", "method", "test", "using")
+_COMPARED = words("cf see also repl compar like unlike consist contra after follow method test using")
 """Beginnings of brackets that tell whom a result is compared with, or whose method was used."""
 
 
 def of_earlier_work(sentence: Sentence) -> bool:
     """Whether the sentence opens by naming earlier work, without a citation: `In the original study, …`."""
     return not sentence.ours and bool(_opening().match(sentence.low, timeout=TIMEOUT))
+
+
+@cache
+def _source() -> regex.Pattern[str]:
+    """Whose numbers they are: `Table 2 of`, `the trial by`, before a citation."""
+    return regex.compile(
+        r"\b(?:tables?|fig(?:ures?|s?\.)|stud(?:y|ies)|trials?|results?|findings?|experiments?|meta-analys[ei]s|reviews?|work|papers?"
+        r"|reports?|estimates?|effects?)(?: \d{1,2}[a-z]?)? (?:of|by|from|in)$"
+    )
+
+
+def beside_earlier_work(draft: Draft, sentence: Sentence) -> bool:
+    """Whether the words right before the numbers name earlier work: `that of a recent meta-analysis (g = 0.42 …`."""
+    start = draft.line.at(draft.first).start - sentence.start
+    return bool(_named().search(sentence.low[max(0, start - 90) : start], timeout=TIMEOUT))
+
+
+@cache
+def _named() -> regex.Pattern[str]:
+    return regex.compile(
+        r"""\b(?:recent|previous|earlier|prior|past|published|original|seminal|former)\ (?:[\w-]+\ ){0,2}?
+        (?:stud(?:y|ies)|work|research|trials?|meta-analys[ei]s|reviews?|reports?|papers?|literature|findings?|estimates?|results?)
+        (?:\ (?:of|on|in|with|among)(?:\ [\w-]+){1,4})?(?:\ (?:was|were|is|of|gave|found))?,?\ ?[(\[]?$""",
+        regex.VERBOSE,
+    )
 
 
 @cache

@@ -18,7 +18,7 @@ from recheck.reading.linking import Placed, linked
 from recheck.reading.naming import Named, named
 from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
-from recheck.reading.quoting import Sentence, of_earlier_work
+from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
@@ -104,7 +104,8 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
         if reason:
             left[reason] += 1
             continue
-        name = _of_earlier_work(name) if earlier else name
+        if earlier or beside_earlier_work(draft, sentence):
+            name = _of_earlier_work(name)
         yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
 
 

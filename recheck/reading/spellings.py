@@ -111,9 +111,9 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
             pass
         elif quantity in ("t", "F", "chi2") and _apart(line, after, squared):
             numbers.append(token)
-        elif token.text == "|" and not token.spaced and not numbers:
-            pass
-        elif token.text == "_" and not token.spaced and line.at(after + 1).text in ("(", "["):
+        elif (token.text == "|" and not token.spaced and not numbers) or (
+            token.text == "_" and not token.spaced and line.at(after + 1).text in ("(", "[")
+        ):
             pass
         elif token.text == "_" and not token.spaced and line.at(after + 1).kind in ("word", "num"):
             after += 1

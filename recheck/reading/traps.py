@@ -24,7 +24,10 @@ def _several(draft: Draft, sentence: Sentence) -> bool:
     )
     if core is None or core.several:
         return core is not None
-    if draft.part("statistic") and any(draft.line.at(i.first - 1).low in _EXTREMES for i in draft.items):
+    p = draft.get("p")
+    whole = bool(core.extra) and p is not None and p.printed.relation == "="
+    told = draft.items[1:] if whole else draft.items
+    if draft.part("statistic", "p") and any(draft.line.at(i.first - 1).low in _EXTREMES for i in told):
         return True
     before = {t.low for t in draft.line.tokens[max(0, draft.first - 3) : draft.first]}
     return core.printed.relation != "=" and bool(before & {"all", "both", "each", "every", "any", "always"})
@@ -153,6 +156,12 @@ def _planned(draft: Draft, sentence: Sentence) -> bool:
                 "hypothetical data",
                 "fictitious",
                 "would be reported",
+                "simulated data",
+                "simulated sample",
+                "simulated run",
+                "in one run",
+                "random draw",
+                "such draws",
             )
         )
     if sentence.says(_EXAMPLES):

@@ -206,13 +206,13 @@ def _said(text: str, stem: str) -> Iterator[int]:
 
 
 _ELSE = {
-    "permutation": ("cluster", "importance", "entropy", "voxel", "permanova", "permutational multivariate", "tfce", "null model"),
-    "bootstrap": ("indirect effect", "mediat", "aggregat", "bagging", "bootstrap support", "phylogen", "cross-valid", "clades"),
-    "bayesian": ("information criteri", "bayesian optimi", "bayesian network", "bayes factor"),
-    "transformed": ("fourier", "wavelet", "fisher", "coordinates", "figure", "y-axis", "x-axis"),
+    "permutation": "cluster|importance|entropy|voxel|permanova|permutational multivariate|tfce|null model",
+    "bootstrap": "indirect effect|mediat|aggregat|bagging|bootstrap support|phylogen|cross-valid|clades",
+    "bayesian": "information criteri|bayesian optimi|bayesian network|bayes factor",
+    "transformed": "fourier|wavelet|fisher|coordinates|figure|y-axis|x-axis",
 }
 """What a word of the first column speaks of where one of the second stands in its sentence: not of the t tests."""
-_OF_ALL = ("p value", "p-value", "all test", "all analys", "all comparison", "all stat", "t test", "t-test", "f test", "f-test", "anova")
+_OF_ALL = "p value|p-value|all test|all analys|all comparison|all stat|t test|t-test|f test|f-test|anova"
 
 
 def _of_else(text: str, at: int, key: str) -> bool:
@@ -220,7 +220,8 @@ def _of_else(text: str, at: int, key: str) -> bool:
     if key not in _ELSE:
         return False
     sentence = text[text.rfind(". ", 0, at) + 1 : (text.find(". ", at) + 1 or len(text))]
-    return any(word in sentence for word in _ELSE[key]) and not any(word in sentence for word in _OF_ALL)
+    of_all = any(word in sentence for word in _OF_ALL.split("|"))
+    return not of_all and any(word in sentence for word in _ELSE[key].split("|"))
 
 
 def _of_what(text: str, at: int, stem: str) -> str:

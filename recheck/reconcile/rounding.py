@@ -53,10 +53,7 @@ def _padded(printed: Printed) -> Interval:
         return printed.interval()
     decimals = printed.decimals
     shown = int(printed.value.scaleb(decimals))
-    if not shown:
-        decimals = min(decimals, 1)
-    while decimals > 0 and shown and shown % 10 == 0:
-        shown //= 10
+    if shown % 10 == 0:
         decimals -= 1
     half = HALF.scaleb(-decimals)
     return Interval(float(printed.value - half), float(printed.value + half))

@@ -12,6 +12,9 @@ from recheck.reconcile.readings import Numbers, is_exact
 
 MINUS = "−"
 SIGNS = "-−–+"
+SMALLEST_TURNED = Decimal("0.05")
+"""`p > .001` says nothing: below the usual level no author writes a lower bound."""
+SIGNED = frozenset(("mean", "mean_difference", "ci_low", "ci_high", "b", "estimate", "rd"))
 THRESHOLDS = frozenset(Decimal(text) for text in ("0.1", "0.05", "0.01", "0.005", "0.001", "0.0001"))
 """Values that p is commonly printed to lie below (common practice, no source)."""
 GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for i in "12")
@@ -20,14 +23,20 @@ GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for
 
 def candidates(printed: Printed) -> Iterator[tuple[Printed, str]]:
     """Yield what the number may have been before the slip, with the slip's name; likeliest first."""
-    seen = {(printed.value, printed.decimals, printed.relation)}
+    seen = {(printed.value, printed.relation)}
     texts = (*_swapped(printed), *_moved(printed), *_dropped(printed), *_wrong(printed))
+    turned = replace(printed, text=_turned(printed.text), value=-printed.value)
+    sign = ((turned, "sign lost" if printed.value > 0 else "sign added"),)
     numbers = ((_with_digits(printed, text), words) for text, words in texts if _printable(text))
-    for number, words in (*_relations(printed), *numbers):
-        key = (number.value, number.decimals, number.relation)
+    for number, words in (*_relations(printed), *sign, *numbers):
+        key = (number.value, number.relation)
         if key not in seen:
             seen.add(key)
             yield number, words
+
+
+def _turned(text: str) -> str:
+    return text.lstrip(SIGNS) if text[:1] in SIGNS else MINUS + text
 
 
 def _printable(text: str) -> bool:
@@ -56,7 +65,7 @@ def _digits(printed: Printed) -> str:
 
 def _relations(printed: Printed) -> list[tuple[Printed, str]]:
     other = {"<": ">", ">": "<", "≤": "≥", "≥": "≤"}.get(printed.relation)
-    if other:
+    if other and printed.value >= SMALLEST_TURNED:
         return [(replace(printed, relation=other), f"{printed.relation} for {other}")]  # type: ignore[arg-type]
     if printed.relation == "=" and printed.value in THRESHOLDS:
         return [(replace(printed, relation="<"), "= for <")]
@@ -119,10 +128,13 @@ def slip_remedies(
 def _sensible(name: str, printed: Printed, number: Printed, words: str) -> bool:
     """Tell whether a correction leaves a number of its kind.
 
-    A relation turned is a slip of p alone, a decimal point moved one of numbers that have one.
+    A relation turned is a slip of p alone, a sign lost one of numbers that can have either, a
+    decimal point moved one of numbers that have one.
     """
     if number.relation != printed.relation:
         return name == "p"
+    if words.startswith("sign "):
+        return name.rstrip("12") in SIGNED
     return not is_exact(name, printed) or (words != "decimal point moved" and number.value >= 1)
 
 

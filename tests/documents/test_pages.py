@@ -282,21 +282,14 @@ def test_no_character_is_lost_or_doubled(seed, count):
 
 
 def test_indices_on_a_page_scanned_askew(engine):
-    """The index shares the row of the text after it, for the whole line drifts; it stays alone in being raised."""
+    """The line drifts until an index shares the row of the text after it; that text is not raised with it."""
 
     def draw(canvas):
         line(canvas, 60, 40, "Bench scores", BOLD, 16)
-        canvas.rotate(0.5)
-        end = rich(
-            canvas, 60, 90, ("The share of rye loaves rose, χ"[:-1], ROMAN, 10, 0), ("c", SYMBOL, 10, 0)
-        )
-        end = rich(
-            canvas,
-            end,
-            90,
-            ("2", ROMAN, 6.8, 3.5),
-            ("(1) = .02, p = .89, and then fell again.", ROMAN, 10, 0),
-        )
+        canvas.rotate(0.6)
+        end = rich(canvas, 60, 90, ("Rye: ", ROMAN, 10, 0), ("χ", SYMBOL, 10, 0), ("2", ROMAN, 6.8, 3.5))
+        rest = "(1) = .02, p = .89, and the share of the loaves of rye fell again when the cellar had been cooled down"
+        rich(canvas, end, 90, (rest, ROMAN, 10, 0))
         wrapped(canvas, 60, 104, 475, prose(1), leading=14)
 
     passage = containing(opened(pdf(draw), reader=engine), "(1) = .02")

@@ -153,15 +153,15 @@ def test_a_loosely_justified_line_of_results_is_no_row():
     """A line of four long words is spaced wide and evenly: text, though it is mostly numbers."""
 
     def draw(canvas):
-        end = wrapped(canvas, 60, 60, 235, prose(1) + " The trained bench was higher than the other bench")
+        end = wrapped(canvas, 60, 60, 290, prose(1) + " The trained bench was higher than the other bench")
         words = ("[M(SD)=3.82(1.28)],", "t(35)=-3.06,", "p=.004,", "d=-1.01,")
-        room = (235 - sum(canvas.stringWidth(word, "Times-Roman", 10) for word in words)) / 3
+        room = (290 - sum(canvas.stringWidth(word, "Times-Roman", 10) for word in words)) / 3
         x = 60.0
         for word in words:
             line(canvas, x, end, word)
             x += canvas.stringWidth(word, "Times-Roman", 10) + room
         line(canvas, 60, end + 12, "95%CI[-1.70, -0.32].")
-        wrapped(canvas, 60, end + 24, 235, prose(2), indent=10)
+        wrapped(canvas, 60, end + 24, 290, prose(2), indent=10)
 
     passage = containing(opened(pdf(draw)), "t(35)=-3.06, p=.004, d=-1.01, 95%CI")
     assert passage.kind == "body"

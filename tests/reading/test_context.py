@@ -112,6 +112,31 @@ def test_words_are_understood(text: str, word: str) -> None:
 
 
 @pytest.mark.parametrize(
+    ("methods", "word", "spoken"),
+    [
+        ("A cluster-based permutation test found a cluster between 620 and 1480 ms.", "permutation", False),
+        ("Permutation importance ranked the flours.", "permutation", False),
+        ("All p values come from cluster-based permutation tests.", "permutation", True),
+        ("Permutation tests were used.", "permutation", True),
+        ("Indirect effects had bootstrapped intervals.", "bootstrap", False),
+        ("Intervals were bootstrapped.", "bootstrap", True),
+        ("The Bayesian information criterion chose the model.", "bayesian", False),
+        ("A Bayesian analysis was made.", "bayesian", True),
+        ("One-way ANOVA was followed by Tukey's HSD.", "adjusted-p", False),
+        ("One-way ANOVA was followed by Tukey's HSD.", "adjusted-p-post-hoc", True),
+    ],
+)
+def test_background_words_must_speak_of_the_tests(methods: str, word: str, spoken: bool) -> None:
+    found = reading(methods, "Loaves rose, t(19) = 2.21, p = .040.")
+    assert (word in found.claims[-1].background) == spoken
+
+
+def test_comparisons_of_pairs_say_nothing_of_an_omnibus_test() -> None:
+    found = reading("One-way ANOVA was followed by Tukey's HSD.", "Loaves rose (F(1, 34) = 4.83, P = 0.035).")
+    assert "adjusted-p-post-hoc" not in found.claims[0].background
+
+
+@pytest.mark.parametrize(
     ("text", "word"),
     [
         ("no Bonferroni correction was made", "adjusted-p"), ("p values are uncorrected", "adjusted-p"),

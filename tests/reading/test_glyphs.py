@@ -74,6 +74,72 @@ def test_minus_as_two_lowers_confidence() -> None:
     assert t.confidence == "low"
 
 
+def test_five_for_equals_without_spaces() -> None:
+    found = claims(
+        "Crusts were lighter (39.1 [SD 9.9] vs 45.0 [SD 12.1]; difference 25.9, 95% CI 29.9 to 21.9; p50.0041).",
+        "Days were 6.262.0 with steam and 7.762.1 without (t524.01, df5117, P50.0001).",
+        "Fewer burnt (v254.81, df51, P50.028; OR 0.38, 95% CI 0.16–0.91).",
+    )
+    difference, first, second, t, chi2 = found[2:7]
+    assert [difference.values[q].number for q in ("mean_difference", "ci_low", "ci_high")] == [
+        -5.9,
+        -9.9,
+        -1.9,
+    ]
+    assert [(c.values["mean"].text, c.values["sd"].text) for c in (first, second)] == [
+        ("6.2", "2.0"),
+        ("7.7", "2.1"),
+    ]
+    assert (t.values["t"].number, t.values["df"].number) == (-4.01, 117)
+    assert (chi2.values["chi2"].text, chi2.values["df"].text, chi2.values["p"].text) == ("4.81", "1", "0.028")
+    assert all(claim.confidence != "high" for claim in (difference, t, chi2))
+
+
+def test_five_for_equals_beside_lowered_df() -> None:
+    found = claims(
+        "Loaves rose, F2,33 5 6.30, P 5 0.005; t35 5 3.86, P 5 0.0005; χ2 5 3.27, d.f. 5 2, P 5 0.195.",
+        "The mean change 5 1.21, 95% CI [0.78, 1.65].",
+    )
+    assert values(found) == [
+        [("F", "=", "6.30"), ("df1", "=", "2"), ("df2", "=", "33"), ("p", "=", "0.005")],
+        [("t", "=", "3.86"), ("df", "=", "35"), ("p", "=", "0.0005")],
+        [("chi2", "=", "3.27"), ("df", "=", "2"), ("p", "=", "0.195")],
+        [
+            ("mean_difference", "=", "1.21"),
+            ("ci_low", "=", "0.78"),
+            ("ci_high", "=", "1.65"),
+            ("ci_level", "=", "95"),
+        ],
+    ]
+
+
+def test_a_single_spaceless_five_makes_a_turned_interval_doubtful() -> None:
+    found = claims("The difference was 25.9 (95% CI 29.9 to 21.9; p50.0041).")
+    assert all(claim.confidence == "low" for claim in found if "ci_low" in claim.values)
+    plain = claims("The difference was 25.9 (95% CI 29.9 to 21.9; p = .0041).")
+    assert plain[0].confidence == "high"
+
+
+def test_quarter_sign_with_its_minus_less_greater_eta_and_plus_minus() -> None:
+    found = claims(
+        "Loaves rose, t(62.17) ¼ À3.90, p o .001; F(1, 63) ¼ 5.37, p ¼ .024, Z2p ¼ .079; r(63) ¼ À.55, p o .001.",
+        "Crusts did not (t¼0.01, df¼117, P40.05), (w2¼4.81, df¼1, P¼0.028), and days were 6.272.0.",
+    )
+    plain = claims(
+        "Loaves rose, t(62.17) = -3.90, p < .001; F(1, 63) = 5.37, p = .024, η2p = .079; r(63) = -.55, p < .001.",
+        "Crusts did not (t=0.01, df=117, P>0.05), (χ2=4.81, df=1, P=0.028), and days were 6.2±2.0.",
+    )
+    assert [{(q, v.value) for q, v in claim.values.items()} for claim in found] == [
+        {(q, v.value) for q, v in claim.values.items()} for claim in plain
+    ]
+    assert all(claim.confidence == "high" for claim in found)
+
+
+def test_french_capitals_and_oxygen_pressures_are_left_alone() -> None:
+    text = "À 25 °C le P50 moyen était de 26.6 (SD = 2.1, n = 12), t(22) = 2.31, p = .030."
+    assert all(claim.confidence == "high" and not claim.notes for claim in claims(text))
+
+
 def test_one_stray_sign_is_no_table() -> None:
     found = claims(
         "The loaves rose, t(22) = 2.31, p = .030.", "In group 5 5.2 loaves were sold, p , .05 or not."

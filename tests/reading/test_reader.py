@@ -44,6 +44,29 @@ def test_raised_and_lowered_marks() -> None:
     assert {k: v.text for k, v in second.values.items()} == {"chi2": "4.50", "df": "1", "p": ".034"}
 
 
+def test_lowered_df_with_their_brackets() -> None:
+    text = "Heights: F(1, 26) = 6.45; p = .017; t(13) = 4.43, p = .001."
+    marks = text
+    for lowered in ("(1,", "26)", "(13)"):
+        marks = marks.replace(lowered, "_" * len(lowered))
+    marks = "".join(mark if mark == "_" else " " for mark in marks)
+    first, second = reading(Passage(text=text, marks=marks)).claims
+    assert {k: v.text for k, v in first.values.items()} == {"F": "6.45", "df1": "1", "df2": "26", "p": ".017"}
+    assert {k: v.text for k, v in second.values.items()} == {"t": "4.43", "df": "13", "p": ".001"}
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "In the original study, loaves rose, t(38) = 3.41, p = .21, but replications were mixed.",
+        "Our result contrasts with that of a recent meta-analysis (g = 0.42, 95% CI [0.55, 0.61]).",
+    ],
+)
+def test_results_of_earlier_work_are_doubted(text: str) -> None:
+    claim = reading(Passage(text=text)).claims[0]
+    assert claim.confidence != "high" and claim.notes
+
+
 def test_a_footnote_mark_is_not_part_of_n() -> None:
     text = "Heights were taken (M = 4.10, SD = 1.20, n = 361)."
     marks = " " * (text.index("361") + 2) + "^" + " " * 2

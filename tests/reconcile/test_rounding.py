@@ -33,11 +33,11 @@ def test_twice_rounded_interval_holds_every_value(value, decimals, how):
     assert TWICE.interval(printed_at(first, decimals, how)).guarded(1e-12).holds(float(value))
 
 
-@given(VALUES, PLACES, st.integers(1, 3))
-def test_padded_interval_holds_values_rounded_more_coarsely(value, decimals, zeros):
+@given(VALUES, PLACES)
+def test_padded_interval_holds_values_rounded_more_coarsely(value, decimals):
     coarse = value.quantize(Decimal(1).scaleb(-decimals), rounding=ROUND_HALF_UP)
-    padded = Printed(str(coarse) + "0" * zeros, coarse, decimals + zeros)
-    if coarse and decimals + zeros > 0:
+    padded = Printed(f"{coarse}0", coarse, decimals + 1)
+    if coarse:
         assert PADDED.interval(padded).guarded(1e-12).holds(float(value))
 
 
