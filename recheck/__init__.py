@@ -23,6 +23,10 @@ _HOMES = {
 }
 
 
+def __dir__() -> list[str]:
+    return sorted({*globals(), *__all__})
+
+
 def __getattr__(name: str) -> Any:
     """Import a public name when it is first asked for: numpy and scipy cost a third of a second."""
     if name not in _HOMES:

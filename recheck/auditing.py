@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from pathlib import Path
-from typing import BinaryIO, Literal
+from typing import BinaryIO, Literal, get_args
 
 from recheck.checks.registry import all_checks
 from recheck.checks.running import run_checks
@@ -26,8 +26,12 @@ def audit(
 ) -> Audit:
     """Audit one manuscript: a path, its bytes, or an open binary file.
 
-    `alpha` overrides the significance level that the text states. Raises `UnreadableDocument`.
+    `alpha` overrides the significance level that the text states. Raises `UnreadableDocument`, and
+    `ValueError` for an alpha outside 0 to 1 or an unknown reader.
     """
+    if reader not in get_args(ReaderChoice):
+        raise ValueError(f"reader must be one of {', '.join(get_args(ReaderChoice))} (got {reader!r})")
+    _check_alpha(alpha)
     if hasattr(source, "read"):
         name, source = name or str(getattr(source, "name", "")) or None, source.read()
     document = open_document(source, name=name, reader=reader)
@@ -35,8 +39,18 @@ def audit(
 
 
 def audit_text(text: str, *, name: str = "text", alpha: float | None = None) -> Audit:
-    """Audit a text that is at hand as a string."""
+    """Audit a text that is at hand as a string. Raises `TypeError` for anything else."""
+    if not isinstance(text, str):
+        raise TypeError(
+            f"text must be a string (got {type(text).__name__}); recheck.audit takes bytes and paths"
+        )
+    _check_alpha(alpha)
     return _audit(text_document(text, name=name), None, alpha, "auto")
+
+
+def _check_alpha(alpha: float | None) -> None:
+    if alpha is not None and not (isinstance(alpha, (int, float)) and 0 < alpha < 1):
+        raise ValueError(f"alpha must be a number between 0 and 1 (got {alpha!r})")
 
 
 def _audit(

@@ -231,7 +231,6 @@ def _finding(
             given,
             match.unstated if match else (),
             doubts,
-            reversal=reversal,
         ),
         place=case.claim.place,
         tolerance=stands_for(comparison.numbers),

@@ -25,6 +25,7 @@ from recheck.reconcile.readings import Box, Way
     kinds=("correlation",),
     quantity="p",
     needs=("r", "p"),
+    beside="df or n",
     formula="t = r √(df / (1 − r²)) with df = n − 2; p = 2 P(T > |t|)",
     source="Fisher (1915) Biometrika 10:507-521; Best & Roberts (1975) Applied Statistics 24:377-379 for rank correlations",
     limits="Needs df or n. Partial correlations have fewer df than n − 2.",

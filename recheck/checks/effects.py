@@ -117,6 +117,7 @@ def _paired_way(groups: Groups, name: str, n: float) -> Way:
     kinds=("t-test", "F-test"),
     quantity="d",
     needs=(),
+    beside="d or g; two linked groups, each with mean and SD or SE; n of each, else whole df",
     formula="d = (M1 − M2) / s, s pooled; g = J d, J = Γ(m/2) / (√(m/2) Γ((m − 1)/2)), m = n1 + n2 − 2",
     source="Hedges (1981) Journal of Educational Statistics 6:107-128; Cohen (1988) Statistical Power Analysis",
     limits="Other denominators are readings. Adjusted effects are not rebuilt.",
@@ -299,12 +300,13 @@ def _other_denominators(n1: int, n2: int, exact: float) -> tuple[float, float]:
     kinds=("t-test",),
     quantity="d",
     needs=("t", "df"),
+    beside="d or g",
     formula="d = t √(1/n1 + 1/n2) for two groups, d_z = t/√n for pairs; g = J d",
     source="Hedges (1981) Journal of Educational Statistics 6:107-128; Rosenthal (1991) Meta-Analytic Procedures for Social Research, from memory",
     limits="Welch's t, adjusted means and mixed models give another ratio of d to t.",
     agrees=(
         "An independent-samples t test showed a difference, t(34) = 3.23, p = .003, d = 1.08.",
-        "The apprentices improved, paired t(19) = 2.47, d = 0.55.",
+        "The apprentices improved, paired t(23) = 2.94, d = 0.60.",
     ),
     inconsistent=("An independent-samples t test showed a difference, t(34) = 3.23, p = .003, d = 0.28.",),
 )

@@ -280,6 +280,7 @@ def _logs(interval: Interval) -> Interval:
     kinds=("t-test",),
     quantity="ci_low",
     needs=("ci_low", "ci_high", "df"),
+    beside="two linked groups, each with mean, SD and n",
     formula="(M1 − M2) ∓ c SE, SE pooled or Welch, c the critical value of t with df at the level of the interval",
     source="Welch (1938) Biometrika 29:350-362; Altman, Machin, Bryant & Gardner (2000) Statistics with Confidence, ch. 4, from memory",
     limits="Independent groups of printed size only; otherwise as for t against its interval.",

@@ -50,7 +50,7 @@ def ends(claim: Claim) -> tuple[Printed, Printed]:
     quantity="ci_low",
     needs=("ci_low", "ci_high"),
     formula="lower end ≤ upper end",
-    source="Neyman (1937) Philosophical Transactions A 236:333-380",
+    source="by definition",
     limits="A dash between two numbers can be read as a minus; then the reading is in doubt and the verdict conditional.",
     impossible=("The difference was 4.1 mm, 95% CI [6.3, 1.9].",),
 )
@@ -77,6 +77,7 @@ def ci_order(case: Case) -> Iterable[Finding]:
     kinds=ALL_KINDS,  # type: ignore[arg-type]
     quantity="ci_low",
     needs=("ci_low", "ci_high"),
+    beside="the estimate that the interval belongs to",
     formula="lower end ≤ estimate ≤ upper end",
     source="common practice, no source: Wald, t, score, profile and Fisher z intervals all hold their estimate",
     limits="Noncentral intervals of η², R², V and the like may leave out their estimate; bootstrap and credible intervals too.",
@@ -97,29 +98,21 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
         return
     if low.interval().low > high.interval().high:
         return
-    ratio = name in ("or", "rr", "hr")
     others = [n for n in printed if n != name and _inside(claim.values[n], low, high)]
 
     def implied(box: Box) -> tuple[Interval, ...]:
         return (Interval(box["ci_low"].low, box["ci_high"].high),)
 
     numbers = {name: claim.values[name], "ci_low": low, "ci_high": high}
-    doubts = [f"the interval belongs to {shown(name)}, not to {shown(other)}" for other in others]
-    if claim.interval_of is None:
-        doubts.append(f"the interval belongs to {shown(name)}")
-    excuse = ""
-    if name in STANDARDIZED and claim.kind != "estimate":
-        if len(case.groups) != 2:
-            doubts.append(
-                f"the interval belongs to {shown(name)}, not to a mean or difference told elsewhere"
-            )
-        elif not _surely_of_effect(case, low, high):
-            excuse = f"the interval may be that of a mean or of the difference, not of {shown(name)}"
-    if ratio and claim.suggests("covariate-adjusted", "multi-regression"):
+    doubts, excuse = _belonging(case, name, low, high, others)
+    if name in ("or", "rr", "hr") and claim.suggests("covariate-adjusted", "multi-regression"):
         doubts.append("ratio and interval come from the same model")
-    apart = name in NONCENTRAL or claim.suggests("bayesian", "bootstrap")
-    if apart:
-        excuse = f"an interval of this kind may leave out its own {shown(name)}"
+    if claim.suggests("bayesian", "bootstrap"):
+        excuse = (
+            f"a bootstrap or credible interval, of which the text speaks, may leave out its own {shown(name)}"
+        )
+    if name in NONCENTRAL:
+        excuse = f"a noncentral interval may leave out its own {shown(name)}"
     excuses = (excuse,) if excuse else ()
     ways = (Way(implied),)
     yield judge(
@@ -128,6 +121,22 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
 
 
 STANDARDIZED = ("d", "g", "delta", "d_z", "d_av", "d_rm")
+
+
+def _belonging(
+    case: Case, name: str, low: Printed, high: Printed, others: list[str]
+) -> tuple[list[str], str]:
+    """Doubts whether an interval belongs to an estimate, and the reason where it seems not to."""
+    claim, named = case.claim, shown(name)
+    doubts = [f"the interval belongs to {named}, not to {shown(other)}" for other in others]
+    if name in STANDARDIZED and claim.kind != "estimate":
+        if len(case.groups) != 2:
+            return [f"the interval belongs to {named}, not to a mean or difference told elsewhere"], ""
+        if not _surely_of_effect(case, low, high):
+            return [], f"the interval may be that of a mean or of the difference, not of {named}"
+    if claim.interval_of is None and not doubts:
+        doubts.append(f"the interval belongs to {named}")
+    return doubts, ""
 
 
 def _surely_of_effect(case: Case, low: Printed, high: Printed) -> bool:
@@ -181,7 +190,7 @@ def ci_centre(case: Case) -> Iterable[Finding]:
     numbers = {"mean_difference": printed, "ci_low": low, "ci_high": high}
     foreign = claim.suggests("bootstrap", "bayesian")
     excuses = ("an interval of this kind need not be symmetric",) if foreign else ()
-    doubts = ("the interval is a symmetric one, from t or z",)
+    doubts = ("the interval is a symmetric one, from t or z; a bootstrap or profile interval need not be",)
     yield judge(
         case, Comparison("ci-centre", "mean_difference", numbers, ways, excuses=excuses, doubts=doubts)
     )

@@ -28,7 +28,8 @@ class Case:
 class Check:
     """One relation between printed numbers.
 
-    `needs` names the quantities without which the check does not run; the examples are whole
+    `needs` names the quantities without which the check does not run, `beside` what else must be
+    read with them, in words; the examples are whole
     passages with the verdict that each must get.
     """
 
@@ -41,6 +42,7 @@ class Check:
     source: str
     limits: str
     run: Callable[[Case], Iterable[Finding]]
+    beside: str = ""
     agrees: tuple[str, ...] = ()
     conditional: tuple[str, ...] = ()
     inconsistent: tuple[str, ...] = ()
@@ -61,6 +63,7 @@ def check(
     formula: str,
     source: str,
     limits: str,
+    beside: str = "",
     **examples: tuple[str, ...],
 ) -> Callable[[Callable[[Case], Iterable[Finding]]], Callable[[Case], Iterable[Finding]]]:
     """Declare a check; the decorated function yields its findings for one case."""
@@ -70,7 +73,7 @@ def check(
             raise ValueError(f"two checks are named {name!r}")
         _CHECKS[name] = Check(
             name=name, title=title, kinds=kinds, quantity=quantity, needs=needs,
-            formula=formula, source=source, limits=limits, run=run, **examples,
+            formula=formula, source=source, limits=limits, run=run, beside=beside, **examples,
         )  # fmt: skip
         return run
 

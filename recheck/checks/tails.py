@@ -32,7 +32,7 @@ from recheck.reconcile.readings import Box, Way
     quantity="p",
     needs=("t", "df", "p"),
     formula="p = 2 P(T > |t|), T with df degrees of freedom; one-tailed P(T > |t|)",
-    source="Student (1908) The probable error of a mean, Biometrika 6:1-25",
+    source="Student (1908) Biometrika 6:1-25; Fisher (1925) Applications of Student's distribution, Metron 5:90-104",
     limits="A p from a permutation test, a bootstrap or an adjustment for several tests does not follow from t.",
     agrees=("The loaves differed, t(28) = 2.20, p = .036.", "The loaves differed, t(28) = −2.20, p < .05."),
     conditional=("The loaves differed, t(28) = 2.20, p = .018.",),
@@ -106,7 +106,7 @@ def _exact_z(z: Interval) -> Interval:
     quantity="p",
     needs=("chi2", "df", "p"),
     formula="p = P(X > χ²), X chi-squared with df degrees of freedom",
-    source="Pearson (1900) Philosophical Magazine 50:157-175",
+    source="Pearson (1900) Philosophical Magazine 50:157-175; Fisher (1922) J. R. Stat. Soc. 85:87-94 for df",
     limits="Exact, permutation or robust versions of the test have a p of their own.",
     agrees=("Collapse depended on the oven, χ²(1, N = 120) = 4.50, p = .034.",),
     inconsistent=("Collapse depended on the oven, χ²(3) = 4.50, p = .004.",),
@@ -124,7 +124,9 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
     ways = [Way(lambda box: p_of(box["chi2"], box["df"]))]
     one_df = numbers["df"].value == 1 and numbers["df"].decimals <= 0
     if not claim.suggests("model-fit") and not claim.suggests("uncorrected-chi2"):
-        ways.append(Way(lambda box: p_of(_other_chi2(box["chi2"], one_df), box["df"]), (OTHER_CHI2,)))
+        ways.append(
+            Way(lambda box: p_of(_other_chi2(box["chi2"], one_df), box["df"]), (_other_words(claim, one_df),))
+        )
     if one_df and not claim.suggests("two-tailed"):
         halved = (
             Way(
@@ -136,7 +138,13 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
     yield judge_p(case, "p-from-chi2", ways, numbers, omnibus=not one_df)
 
 
-OTHER_CHI2 = "p belongs to another statistic of the same table (Yates, N − 1, likelihood ratio or Fisher)"
+def _other_words(claim: Claim, one_df: bool) -> str:
+    """The reading of a p that is not Pearson's, in the words of what it can be."""
+    if claim.suggests("rank-test"):
+        return "p of the rank test is exact, or the statistic is corrected for ties"
+    if one_df:
+        return "p belongs to another statistic of the same table (Yates, N − 1, likelihood ratio or Fisher)"
+    return "p is an exact one or that of the likelihood ratio"
 
 
 def _other_chi2(chi2: Interval, one_df: bool) -> Interval:

@@ -37,11 +37,14 @@ def _expected(implied: Sequence[Implied]) -> str:
 
 def inputs(quantity: str, numbers: Numbers) -> str:
     """Name the numbers that one is compared with; a group's mean, SD and n stand together."""
+    grouped = any(n in GROUP_NUMBERS for n in numbers)
     rest = [
         f"{label(n)} {printed_text(p)}"
         for n, p in numbers.items()
-        if n != quantity and n not in GROUP_NUMBERS
+        if n not in (quantity, "ci_low", "ci_high") and n not in GROUP_NUMBERS and not (grouped and n == "t")
     ]
+    if {"ci_low", "ci_high"} <= numbers.keys() - {quantity}:
+        rest.append(f"the interval {numbers['ci_low'].text} to {numbers['ci_high'].text}")
     for i in "12":
         group = [
             f"{shown(n[:-1])} {printed_text(p)}"
@@ -55,24 +58,22 @@ def inputs(quantity: str, numbers: Numbers) -> str:
 
 def tell(
     quantity: str, numbers: Numbers, verdict: Verdict, implied: Sequence[Implied],
-    given: Sequence[str], unstated: Sequence[str], doubts: Sequence[str], *, reversal: bool = False,
+    given: Sequence[str], unstated: Sequence[str], doubts: Sequence[str],
 ) -> str:  # fmt: skip
     """One or two sentences: what is printed, what the other numbers imply, what was assumed."""
     others = inputs(quantity, numbers)
+    imply = "imply" if ", " in others or " and " in others else "implies"
     printed = f"{label(quantity)} {printed_text(numbers[quantity])}"
     if verdict == "agrees":
         said = f" ({'; '.join(given)})" if given else ""
         return f"{_capital(printed)} agrees with {others}{said}."
     if verdict == "conditional":
         first = implied[0]
-        start = f"{_capital(printed)} is printed, but {others} imply {span(first.low, first.high)}."
+        start = f"{_capital(printed)} is printed, but {others} {imply} {span(first.low, first.high)}."
         if unstated:
             return f"{start} The numbers agree if {'; and if '.join(unstated)}, which the text does not say."
         return f"{start} That is a contradiction only if {'; and if '.join(doubts)}."
-    sentence = f"{_capital(printed)} is printed, but {others} imply {_expected(implied)}."
-    if reversal:
-        sentence += " Printed and implied p lie on opposite sides of the significance level."
-    return sentence
+    return f"{_capital(printed)} is printed, but {others} {imply} {_expected(implied)}."
 
 
 def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied] = ()) -> str:

@@ -122,7 +122,8 @@ def _notes(data: bytes, engine: Engine, used: str, asked: str) -> tuple[str, ...
         notes.append(f"Damaged and not read: page {_listed(engine.failed)}.")
     empty = [glyphs.page for glyphs in engine.pages if not len(glyphs) and glyphs.page not in engine.failed]
     if empty:
-        notes.append(f"Without a text layer, so not read: page {_listed(empty)}.")
+        lost = "Lost or without" if b"%%EOF" not in data[-2048:] else "Without"
+        notes.append(f"{lost} a text layer, so not read: page {_listed(empty)}.")
     return tuple(notes)
 
 

@@ -49,5 +49,7 @@ def interval_text(interval: Interval, digits: int = 4) -> str:
 
 def printed_text(printed: Printed) -> str:
     """Write a printed number with its relation, as it stands."""
+    if printed.text[:1].isalpha():
+        return f"{printed.text} ({printed.relation} {printed.value})"
     sign = "" if printed.percent is False or "%" in printed.text else "%"
     return f"{printed.relation} {printed.text}{sign}"

@@ -109,6 +109,10 @@ class Audit:
             counts[verdict] = sum(f.verdict == verdict for f in self.findings)
         return counts
 
+    def __repr__(self) -> str:
+        counts = ", ".join(f"{number} {name}" for name, number in self.summary().items() if number)
+        return f"<Audit of {self.document.name}: {counts or 'nothing to check'}>"
+
     @property
     def discrepant(self) -> bool:
         """Tell whether anything is impossible or inconsistent."""

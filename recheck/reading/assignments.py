@@ -56,10 +56,28 @@ def _number_first(line: Line, index: int) -> list[Assignment]:
     if spread:
         mean = Assignment(MEAN, number.printed(line), index, number.after, loose=True)
         return [mean, spread]
+    both = _on_two_df(line, number)
+    if both:
+        return [both]
     spelled = spelled_at(line, number.after)
     if spelled and spelled.symbol.quantity == "df" and line.at(spelled.after).kind != "rel":
         return [Assignment(DF, number.printed(line), index, spelled.after, loose=True)]
     return []
+
+
+def _on_two_df(line: Line, first: Number) -> Assignment | None:
+    """`F = 5.34 on 1 and 38 df`."""
+    if line.at(first.after).low not in ("and", ",", "&"):
+        return None
+    second = number_at(line, first.after + 1)
+    spelled = spelled_at(line, second.after) if second else None
+    start = first.after - 1
+    start -= line.at(start - 1).low == "on"
+    named = any(t.text == "F" for t in line.tokens[max(0, start - 8) : start])
+    if second is None or spelled is None or spelled.symbol.quantity != "df" or not named:
+        return None
+    extra = (("df1", first.printed(line)), ("df2", second.printed(line)))
+    return Assignment(Symbol("df12", "df"), second.printed(line), start, spelled.after, extra, loose=True)
 
 
 def _interval(line: Line, index: int) -> list[Assignment]:
@@ -131,7 +149,8 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     ):
         symbol = Symbol("estimate", "estimate")
     if spelled.text == "V" and abs(number.value) <= 1:
-        symbol = Symbol("cramers_v", "effect")
+        near = {t.low for t in line.tokens[max(0, index - 4) : index]}
+        symbol = Symbol("other", "other") if near & _TRACES else Symbol("cramers_v", "effect")
     if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
         return []
     if loose and symbol.worded and symbol.quantity in _RATIOS and not _sure(line, after, number):
@@ -151,6 +170,7 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     return [item, following] if following else [item]
 
 
+_TRACES = words("pillai pillai's trace wilks manova pillai-bartlett bartlett")
 _RATIOS = frozenset(("or", "rr", "hr", "rd"))
 
 

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from typing import Literal
 
 from recheck.reading.items import Assignment
+from recheck.reading.listed import marked, of_another_test, of_several
 from recheck.reading.numerals import Line, part_of_unit
 from recheck.reading.tokens import words
 
@@ -20,7 +21,9 @@ _CONNECTING = words(
     "power respectively however difference age only statistic resulting days hours seconds minutes kcal db μv mv "
     "participants units percent all large small medium moderate very also approximately about μm μg"
 )
-_TURNS = words("whereas but while although however versus vs than compared unlike")
+_TURNS = words(
+    "levene levene's shapiro mauchly mauchly's bartlett bartlett's normality sphericity whereas but while although however versus vs than compared unlike"
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -52,6 +55,7 @@ class Draft:
 
 def drafts(items: Sequence[Assignment], line: Line) -> Iterator[Draft]:
     """Put the assignments of a line together."""
+    items = of_several(items, line)
     current: list[Assignment] = []
     inferred = False
     for index, item in enumerate(items):
@@ -114,6 +118,8 @@ def _joins(
         and item.part != "size"
         and any(t.text in ")]" for t in line.tokens[current[-1].after : item.first])
     ):
+        return None
+    if item.part == "p" and marked(line, item):
         return None
     p_only = all(other.part == "p" for other in current)
     if p_only and item.part in _RESULT and _left_behind(line, current[-1], item, semicolon):
@@ -287,6 +293,8 @@ def _p(s: Situation) -> bool:
         return s.tight and s.has("interval") and not s.compared
     if s.has("statistic"):
         return True
+    if of_another_test(s.line, s.item):
+        return False
     return s.tight and s.has("estimate", "effect", "interval", "other", "df")
 
 

@@ -15,6 +15,7 @@ from recheck.reading.glyphs import Repairs, doubted, repaired
 from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
 from recheck.reading.linking import Placed, linked
+from recheck.reading.listed import corrected
 from recheck.reading.naming import Named, named
 from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
@@ -163,6 +164,8 @@ def _said(draft: Draft, name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
     p = draft.get("p")
     if p is not None and draft.line.at(p.first - 1).low in ("uncorrected", "unadjusted", "raw", "nominal"):
         said = dict.fromkeys(word for word in said if not word.startswith("adjusted-p"))
+    if p is not None and corrected(draft.line, p):
+        said["adjusted-p"] = None
     if "one-tailed" in said and "two-tailed" in said:
         tokens_ = draft.line.tokens[draft.first : draft.after + 5]
         beside = stated(" ".join(token.text for token in tokens_).replace(" - ", "-"))

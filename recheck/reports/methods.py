@@ -42,6 +42,10 @@ class Described(Protocol):
         """Quantities without which it does not run."""
 
     @property
+    def beside(self) -> str:
+        """What else must be read with them, in words."""
+
+    @property
     def formula(self) -> str:
         """The relation that must hold."""
 
@@ -91,7 +95,10 @@ def method_text(check: Described, look: Look) -> str:
     parts = [
         ("looks at", listed(KINDS[kind][1] for kind in check.kinds)),
         ("judges", shown(check.quantity)),
-        ("needs", listed(shown(quantity) for quantity in check.needs)),
+        (
+            "needs",
+            "; ".join(filter(None, (listed(shown(quantity) for quantity in check.needs), check.beside))),
+        ),
         ("formula", check.formula),
         ("source", check.source),
         ("limits", check.limits),

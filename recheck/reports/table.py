@@ -7,8 +7,9 @@ from typing import Any
 
 from recheck.model import Audit, Finding, shown
 from recheck.reports.look import clean
-from recheck.reports.words import CAUTION, implied_range, whereabouts
+from recheck.reports.words import CAUTION, counted, implied_range, whereabouts
 
+MOST_IMPLIED = 2
 COLUMNS = ("verdict", "place", "quote", "quantity", "printed", "implied", "what to ask", "check")
 
 
@@ -19,6 +20,7 @@ def records(audit: Audit) -> list[dict[str, Any]]:
     """
     return [
         {
+            "document": audit.document.name,
             "rank": finding.rank,
             "verdict": finding.verdict,
             "reversal": finding.reversal,
@@ -33,8 +35,11 @@ def records(audit: Audit) -> list[dict[str, Any]]:
             "implied_high": finding.implied[0].high if finding.implied else None,
             "gap": finding.gap,
             "confidence": finding.confidence,
+            "assumptions": "; ".join(finding.assumptions),
+            "mended_by": "; ".join(remedy.text for remedy in finding.reconciled_by),
             "message": finding.message,
             "question": finding.question,
+            "id": finding.id,
         }
         for finding in audit.findings
     ]
@@ -58,10 +63,13 @@ def findings_table(audit: Audit) -> str:
 
 
 def _row(finding: Finding) -> str:
-    implied = "<br>".join(
-        _html(implied_range(each) + (f", assuming {each.assuming}" if each.assuming else ""))
-        for each in finding.implied
-    )
+    shown_first = finding.implied[:MOST_IMPLIED]
+    rows = [
+        implied_range(each) + (f", assuming {each.assuming}" if each.assuming else "") for each in shown_first
+    ]
+    more = len(finding.implied) - len(rows)
+    rows += [f"and {counted(more, 'other reading', 'other readings')}"] if more > 0 else []
+    implied = "<br>".join(map(_html, rows))
     verdict = f"{finding.verdict} (reversal)" if finding.reversal else finding.verdict
     cells = (
         f"<b>{_html(verdict)}</b>",

@@ -148,3 +148,8 @@ def test_a_passage_stands_where_its_line_says(blocks):
     lines = text.split("\n")
     for passage in passages(text):
         assert lines[passage.line - 1].lstrip("# ") == passage.text.split("\n")[0]
+
+
+def test_a_paragraph_of_megabytes_takes_no_time():
+    document = text_document("Loaves " + " ".join(["x" + " " * 50] * 20_000))
+    assert len(document.passages) == 1
