@@ -253,6 +253,7 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
     if claim.says("welch"):
         return Fit((), "Welch's test is said, but group sizes are not printed")
     total = int(df.value) + 2
+    two_groups_fit = whole(claim.values.get("N")) == total
     named = claim.says("independent", "pooled")
     ways = []
     for as_se in (False, True) if groups.unlabelled else (False,):
@@ -268,7 +269,7 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
             ways.append(
                 Way(by_splits, extra, (f"{POOLED}, group sizes not printed: all splits of {total} tried",))
             )
-        if not claim.says("independent", "pooled", "welch", "between-groups"):
+        if not (two_groups_fit or claim.says("independent", "pooled", "welch", "between-groups")):
             # One sample measured twice is as natural here as two groups: neither size is printed.
             ways.append(Way(by_pairs, extra, (f"{PAIRED}, with a correlation that is not printed",)))
     doubts = (

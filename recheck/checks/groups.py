@@ -9,8 +9,8 @@ from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import Groups, fit_designs, groups_of
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed
-from recheck.reconcile.readings import Box, Way, box_of
+from recheck.model import DISCREPANT, Claim, Finding, Interval, Printed, Remedy, shown
+from recheck.reconcile.readings import Box, Way, agrees_as_printed, box_of
 
 
 def linked_groups(case: Case) -> tuple[Groups, tuple[Claim, ...]] | None:
@@ -42,20 +42,44 @@ def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Ite
         yield unchecked(case, name, quantity, fit.reason, claims)
         return
     foreign = foreign_model(claims, fitted=fit.sure)
-    ways = tuple(replace(way, implied=_squared(way) if squared else way.implied) for way in fit.ways)
+    numbers = {**numbers, quantity: unsigned(case.claim.values[quantity])}
     comparison = Comparison(
         check=name,
         quantity=quantity,
         numbers=numbers,
-        ways=ways,
+        ways=_followed(fit.ways, squared=squared),
         claims=claims,
         bounds=Interval(0.0, float("inf")),
         doubts=(*fit.doubts, *link_doubts(case)),
         excuses=(foreign,) if foreign else (),
     )
-    yield judge(
-        case, replace(comparison, numbers={**numbers, quantity: unsigned(case.claim.values[quantity])})
-    )
+    finding = judge(case, comparison)
+    if finding.verdict in DISCREPANT:
+        finding = replace(
+            finding, reconciled_by=(*_spread_slip(case, groups, quantity, squared), *finding.reconciled_by)
+        )
+    yield finding
+
+
+def _followed(ways: Iterable[Way], *, squared: bool) -> tuple[Way, ...]:
+    """Ways to t, or to F as its square."""
+    return tuple(replace(way, implied=_squared(way)) if squared else way for way in ways)
+
+
+def _spread_slip(case: Case, groups: Groups, quantity: str, squared: bool) -> tuple[Remedy, ...]:
+    """The slip of a wrong label: standard errors printed as SDs, or the other way round."""
+    other = {"sd": "se", "se": "sd"}
+    if groups.spreads[0] != groups.spreads[1] or groups.unlabelled:
+        return ()
+    now, then = groups.spreads[0], other[groups.spreads[0]]
+    renamed = {k.replace(now, then) if k.startswith(now) else k: v for k, v in groups.numbers.items()}
+    turned = replace(groups, numbers=renamed, spreads=(then, then))
+    numbers = {**renamed, quantity: unsigned(case.claim.values[quantity])}
+    ways = _followed(fit_designs(case.claim, turned, box_of(renamed)).ways, squared=squared)
+    if not agrees_as_printed(quantity, numbers, ways):
+        return ()
+    text = f"if what is printed as {shown(now)} were {shown(then)} in both groups, the numbers would agree"
+    return (Remedy("slip", now, text, change=f"{shown(now)} → {shown(then)}"),)
 
 
 def unsigned(printed: Printed) -> Printed:

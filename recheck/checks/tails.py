@@ -54,7 +54,7 @@ def p_from_t(case: Case) -> Iterable[Finding]:
         )
     normal = Interval(UNIT_DF, UNIT_DF)
     ways += tail_ways(claim, True, lambda box, used: p_of(box, used, normal), words=(NORMAL_P,))
-    if claim.suggests("mixed-model"):
+    if claim.says("mixed-model"):
         ways += tail_ways(
             claim, True, lambda box, used: p_of(box, used, Interval(1.0, UNIT_DF)), words=(ANY_DF,)
         )
@@ -204,9 +204,13 @@ def p_from_F(case: Case) -> Iterable[Finding]:
                 (ROUNDED_DF,),
             )
         )
-    if claim.suggests("mixed-model"):
+    ways.append(Way(lambda box: p_of(box, None, Interval(UNIT_DF, UNIT_DF)), (NORMAL_F,)))
+    if claim.says("mixed-model"):
         ways.append(Way(lambda box: p_of(box, None, Interval(1.0, UNIT_DF)), (ANY_DF,)))
     yield judge_p(case, "p-from-F", ways, numbers, omnibus=numbers["df1"].value > 1)
+
+
+NORMAL_F = "p comes from the χ² distribution, as if df2 had no limit"
 
 
 def _halved(claim: Claim, p_of: Callable[[Box], tuple[Interval, ...]]) -> list[Way]:

@@ -111,13 +111,11 @@ def _joins(
     distance, semicolon = gap(line, current[-1], item)
     if distance == "apart":
         return None
-    # An n in brackets of its own belongs to what stands before it.
+    # An n in brackets of its own belongs to what stands before it, unless a colon follows: `Rye (n = 20): 5.1 ± 1.1`.
     sizes_only = all(other.part == "size" for other in current)
-    if (
-        sizes_only
-        and item.part != "size"
-        and any(t.text in ")]" for t in line.tokens[current[-1].after : item.first])
-    ):
+    between = [t.text for t in line.tokens[current[-1].after : item.first]]
+    closed = bool({")", "]"} & set(between)) and not (item.part == "centre" and between[1:] == [":"])
+    if sizes_only and item.part != "size" and closed:
         return None
     if item.part == "p" and marked(line, item):
         return None

@@ -51,11 +51,12 @@ def _strange() -> regex.Pattern[str]:
 def _context() -> regex.Pattern[str]:
     """A symbol, the sign in the place of its relation, and the number after it."""
     return regex.compile(
-        r"""(?:\b(?P<p>[pP])
+        r"""(?:\b(?P<p>[pP](?:adj|corr|bonf|fdr|holm|tukey)?)
               |(?P<stat>(?:\b[tFr]|[χ²2v]|\b[zZ])[ ]?[(\[][\d., =dfNn]{1,24}[)\]]
-                |\b[tF]\d[\d.,]{0,12}(?=[ ]5[ ]) | (?:χ|\b[vwcxX])[2²](?=[ ]?[5¼]))
+                |\b[tF]\d[\d.,]{0,12}(?=[ ]5[ ]) | (?:χ|\b[vwcxX])[2²](?:\d{1,2}(?=[ ]))?(?=[ ]?[5¼]))
               |\b(?P<symbol>M|Mean|SD|S\.D\.|SE|S\.E\.|SEM|n|N|df|d\.f\.|d|r|t|F|z|Z|β|b|OR|CI|MSE|[ηghZ][p²2]{1,2}))
-            (?: [ ]?(?P<sign>[=<>≤≥≈]) | (?P<tight>[5o4\\\[]|(?(p)[,.](?=0?\.\d)|(?!))) | [ ](?P<spaced>[5,.$\#o4])[ ]
+            (?: [ ]?(?P<sign>[=<>≤≥≈]) | (?P<tight>5|(?(p)[o4\\\[]|(?(stat)[o4\\\[]|(?!)))|(?(p)[,.](?=0?\.\d)|(?!)))
+              | [ ](?P<spaced>[5,.$\#]|(?(p)[o4]|(?(stat)[o4]|(?!))))[ ]
               | [ ]?(?P<odd>[^\w\s.,;:()\[\]\-−–*%/'"’]|[¼½þ]) )
             [ ]?(?P<number>[-−–2À\x00-\x1f]?(?:\d+\.\d+|\.\d+|\d+))""",
         regex.VERBOSE,
@@ -204,7 +205,7 @@ def _codes(coded: str) -> regex.Pattern[str]:
         for k in (1, 2, 3)
     )
     return regex.compile(
-        rf"(?P<minus>[À\x01])(?=\d|\.\d) | (?<![\w])(?P<chi>[vwcxX])(?=[2²]\ ?[=(\[]) "
+        rf"(?P<minus>[À\x01])(?=\d|\.\d) | (?<![\w])(?P<chi>[vwcxX])(?=[2²](?:\d{{1,2}}\ )?\ ?[=(\[]) "
         rf"| (?<![\w])(?P<eta>Z)(?=(?:[2²]p?|p[2²])\ ?=) | {sides.replace(' ', '[ ]')}",
         regex.VERBOSE,
     )

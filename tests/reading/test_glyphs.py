@@ -135,6 +135,27 @@ def test_quarter_sign_with_its_minus_less_greater_eta_and_plus_minus() -> None:
     assert all(claim.confidence == "high" for claim in found)
 
 
+def test_the_word_to_is_no_t_that_is_less() -> None:
+    found = claims(
+        "Crumb was 8.1 and 7.2, mean difference 0.9 (95% CI 0.3 to 1.5), P¼0.004, from 3 to 5.",
+        "Ovens differed (w2¼4.81, df¼1, P¼0.028), flours did (Po0.001, t¼4.01, df¼117).",
+    )
+    assert [claim.kind for claim in found] == ["comparison", "chi2-test", "t-test"]
+    assert found[0].values["ci_high"].text == "1.5"
+
+
+def test_a_lowered_df_and_a_lowered_word_before_the_sign() -> None:
+    text = "Loaves rose, v23 5 14.9, P 5 0.002; t(23) 5 6.02, padj , .001; F(1, 44) 5 3.18, p 5 .081."
+    marks = list(" " * len(text))
+    at, word = text.index("v23"), text.index("adj")
+    marks[at + 1 : at + 3] = "^_"
+    marks[word : word + 3] = "___"
+    passages = (Passage(text=text, marks="".join(marks)),)
+    chi2, t, _ = read(Document(name="d", format="pdf", sha256="", passages=passages)).claims
+    assert {q: v.text for q, v in chi2.values.items()} == {"chi2": "14.9", "df": "3", "p": "0.002"}
+    assert (t.values["p"].relation, t.values["p"].text) == ("<", ".001") and t.says("adjusted-p")
+
+
 def test_french_capitals_and_oxygen_pressures_are_left_alone() -> None:
     text = "À 25 °C le P50 moyen était de 26.6 (SD = 2.1, n = 12), t(22) = 2.31, p = .030."
     assert all(claim.confidence == "high" and not claim.notes for claim in claims(text))

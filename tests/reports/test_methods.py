@@ -26,7 +26,7 @@ def a_check(name, module, **more):
         "limits": "No permutation p.",
         **more,
     }
-    return SimpleNamespace(name=name, run=SimpleNamespace(__module__=module), **facts)
+    return SimpleNamespace(name=name, run=SimpleNamespace(__module__=module), **{"beside": "", **facts})
 
 
 def test_the_list_names_every_check_once_under_its_family():
