@@ -161,6 +161,18 @@ def _other_sign(value: Assignment, interval: Assignment, draft: Draft) -> bool:
     return value.loose and not low <= number <= high and low <= -number <= high
 
 
+def _before_effect(interval: Assignment, draft: Draft) -> bool:
+    """Whether an interval beside a test stands before d, and so is that of a mean or difference told elsewhere."""
+    at = draft.items.index(interval)
+    before, behind = draft.items[:at], draft.items[at + 1 :]
+    standardized = any(item.quantity in ("d", "g", "delta", "d_z", "d_av", "d_rm") for item in behind)
+    return (
+        standardized
+        and bool(before)
+        and all(item.part in ("statistic", "p", "df", "size") for item in before)
+    )
+
+
 def _interval_of(draft: Draft) -> str | None:
     """The quantity directly before the interval, or the one that the interval is said to belong to."""
     previous: Assignment | None = None
@@ -170,6 +182,8 @@ def _interval_of(draft: Draft) -> str | None:
                 return {"difference": "mean_difference", "other": None}.get(item.label, item.label)
             if previous is not None and _other_sign(previous, item, draft):
                 return None
+            if _before_effect(item, draft):
+                return "mean"
             if previous is None or previous.part in ("p", "size", "df", "other", "spread"):
                 spread_first = (
                     previous is not None and previous.part == "spread" and draft.part("estimate", "centre")

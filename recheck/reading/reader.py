@@ -20,6 +20,7 @@ from recheck.reading.naming import Named, named
 from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
+from recheck.reading.significance import told_in_words
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
@@ -96,6 +97,8 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     says = stated(sentence.text)
     earlier = of_earlier_work(sentence)
     each, items = size_of_each(items, line)
+    parts = [item.part for item in items]
+    worded = "p" not in parts and parts.count("statistic") == 1
     for draft in drafts(items, line):
         label = (sign or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
         name = named(draft, label, says)
@@ -105,6 +108,8 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
         if reason:
             left[reason] += 1
             continue
+        if worded:
+            name = told_in_words(draft, name, sentence)
         if earlier or beside_earlier_work(draft, sentence):
             name = _of_earlier_work(name)
         yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
@@ -221,9 +226,9 @@ def _maybe_decimal(quantity: str, value: Printed) -> bool:
 
 
 def _with_alpha(value: Printed, setting: Setting) -> Printed:
-    """`ns` is larger than the document's own level."""
+    """`ns` is larger than the document's own level, `significant` smaller."""
     alpha = setting.context.alpha
-    if value.text[:1].isalpha() and value.relation == ">" and alpha is not None:
+    if value.text[:1].isalpha() and value.relation in "<>" and alpha is not None:
         share = alpha.value / 100 if alpha.percent else alpha.value
         return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
     return value
