@@ -236,7 +236,7 @@ def _finding(
         tolerance=stands_for(comparison.numbers),
         question=""
         if verdict == "agrees"
-        else question_for(case.claim, comparison.quantity, printed, implied),
+        else question_for(case.claim, comparison.quantity, printed, implied, comparison.numbers),
         gap=None if verdict == "agrees" else _gap(printed, interval, plain),
         reversal=reversal,
         confidence=lowest(claims),

@@ -76,12 +76,23 @@ def tell(
     return f"{_capital(printed)} is printed, but {others} {imply} {_expected(implied)}."
 
 
-def question_for(claim: Claim, quantity: str, printed: Printed, implied: Sequence[Implied] = ()) -> str:
-    """A neutral question to the authors about one printed number."""
+def question_for(
+    claim: Claim,
+    quantity: str,
+    printed: Printed,
+    implied: Sequence[Implied] = (),
+    numbers: Numbers | None = None,
+) -> str:
+    """A neutral question to the authors about one printed number, and the interval it is compared with."""
     plain = next((row for row in implied if not row.assuming), implied[0] if implied else None)
-    where = f" on page {claim.place.page}" if claim.place.page else ""
+    where = f"“{claim.place.quote}”" + (f" on page {claim.place.page}" if claim.place.page else "")
+    asked = f"{label(quantity)} {printed_text(printed)}"
+    if numbers and plain and {"ci_low", "ci_high"} <= numbers.keys() - {quantity}:
+        interval = f"the interval {numbers['ci_low'].text} to {numbers['ci_high'].text}"
+        expected = f"{label(quantity)} of {span(plain.low, plain.high)}"
+        return f"Could you check {interval} and {asked} in {where}? From the interval we expect {expected}; how were they computed?"
     expected = f", where we expect {span(plain.low, plain.high)} from the other numbers" if plain else ""
-    return f"Could you check {label(quantity)} {printed_text(printed)} in “{claim.place.quote}”{where}{expected}, and say how it was computed?"
+    return f"Could you check {asked} in {where}{expected}, and say how it was computed?"
 
 
 def _capital(text: str) -> str:
