@@ -110,8 +110,8 @@ class Audit:
         return counts
 
     def __repr__(self) -> str:
-        counts = ", ".join(f"{number} {name}" for name, number in self.summary().items() if number)
-        return f"<Audit of {self.document.name}: {counts or 'nothing to check'}>"
+        counts = ", ".join(f"{verdict}: {n}" for verdict, n in self.summary().items() if n)
+        return f"<Audit of {self.document.name}; {counts or 'nothing to check'}>"
 
     @property
     def discrepant(self) -> bool:

@@ -202,7 +202,7 @@ def _source() -> regex.Pattern[str]:
     """Whose numbers they are: `Table 2 of`, `the trial by`, before a citation."""
     return regex.compile(
         r"\b(?:tables?|fig(?:ures?|s?\.)|stud(?:y|ies)|trials?|results?|findings?|experiments?|meta-analys[ei]s|reviews?|work|papers?"
-        r"|reports?|estimates?|effects?)(?: \d{1,2}[a-z]?)? (?:of|by|from|in)$"
+        r"|reports?|estimates?|effects?|samples?|data|cohorts?)(?: \d{1,2}[a-z]?)? (?:of|by|from|in)$"
     )
 
 
@@ -231,7 +231,7 @@ def _opening() -> regex.Pattern[str]:
         (?:[\w-]+\ )?
         (?:original|earlier|previous|prior|past|seminal|classic|published|former|first\ published)\ (?:[\w-]+\ ){0,2}?
         (?:stud(?:y|ies)|works?|research|experiments?|trials?|reports?|papers?|articles?|authors?|investigations?|findings?
-          |evidence|literature|surveys?|team|group|samples?|data|replications?|meta-analys[ei]s|reviews?|results?)\b""",
+          |evidence|literature|surveys?|replications?|meta-analys[ei]s|reviews?|results?)\b""",
         regex.VERBOSE,
     )
 

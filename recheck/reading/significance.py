@@ -12,6 +12,7 @@ from recheck.model import Confidence, Printed, Relation
 from recheck.reading.claims import Draft
 from recheck.reading.naming import Named
 from recheck.reading.quoting import Sentence
+from recheck.reading.tokens import words
 from recheck.reading.views import TIMEOUT
 
 _TESTS = frozenset(("t-test", "F-test", "chi2-test", "correlation", "z-test"))
@@ -41,6 +42,11 @@ def told_in_words(draft: Draft, name: Named, sentence: Sentence) -> Named:
     return replace(name, values={**name.values, "p": p}, confidence=confidence, notes=notes)
 
 
+_TURNING = words("but although though while whereas however it did yet")
+_RELATIVE = words("although though while whereas which who whose that despite")
+"""Words that put `significant` into another clause than the test."""
+
+
 @cache
 def _words() -> regex.Pattern[str]:
     return regex.compile(
@@ -68,7 +74,9 @@ def _relation(draft: Draft, sentence: Sentence) -> Relation | None:
         between = low[match.end() : start] if match.end() <= start else low[end : match.start()]
         near = _NEAR_BEFORE if match.end() <= start else _NEAR_BEHIND
         attribute = low[: match.start()].endswith(("the ", "this ", "that ", "these ", "more ", "most "))
-        if len(between) > near or ";" in between or attribute:
+        turns = not _TURNING.isdisjoint(between.replace(",", " ").split()) or between.count(",") > 1
+        related = not _RELATIVE.isdisjoint(low[: match.start()].split()[-5:])
+        if len(between) > near or ";" in between or attribute or turns or related:
             return None
         negated = match["none"] or _negated().search(low[: match.start()], timeout=TIMEOUT)
         said.add(">" if negated else "<")

@@ -1,4 +1,4 @@
-"""How long finding claims and checking them takes beside getting glyphs and lines from the pages."""
+"""How long finding claims and checking them takes beside what reading the pages takes."""
 
 from __future__ import annotations
 
@@ -6,15 +6,16 @@ from recheck.checks.running import run_checks
 from recheck.documents import open_document
 from recheck.model import Context, Settings
 from recheck.reading import read
-from tests.benchmarks.pages import glyphs_and_lines, interleaved
+from tests.benchmarks.pages import default_extraction, glyphs_and_lines, interleaved
 
 
-def claims_ratio(data: bytes, *, rounds: int = 4) -> float:
-    """Reading and checking the claims of a PDF over its glyphs and lines."""
+def claims_ratios(data: bytes, *, rounds: int = 4) -> tuple[float, float]:
+    """Reading and checking claims over pdfminer's default extraction, and over our own glyphs and lines."""
     document = open_document(data, name="sample.pdf")
 
     def claims_and_checks() -> None:
         run_checks(read(document).claims, Context(), Settings())
 
-    mine, pages = interleaved((claims_and_checks, lambda: glyphs_and_lines(data)), rounds)
-    return mine / pages
+    works = (claims_and_checks, lambda: default_extraction(data), lambda: glyphs_and_lines(data))
+    mine, extraction, pages = interleaved(works, rounds)
+    return mine / extraction, mine / pages
