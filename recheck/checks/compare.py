@@ -172,12 +172,18 @@ def _listed(tried: Sequence[Attempt]) -> list[Attempt]:
 
 
 def _implied(listed: Sequence[Attempt]) -> tuple[Implied, ...]:
-    rows = [
-        Implied(interval.low, interval.high, "; ".join((*a.way.given, *a.unstated)))
-        for a in listed
-        for interval in a.implied
-    ]
-    return tuple(dict.fromkeys(rows))
+    """One row for each range; readings that imply the same one to four digits share a row."""
+    rows: dict[str, tuple[Interval, list[str]]] = {}
+    for attempt in listed:
+        words = "; ".join((*attempt.way.given, *attempt.unstated))
+        for interval in attempt.implied:
+            _, assuming = rows.setdefault(interval_text(interval), (interval, []))
+            if words not in assuming:
+                assuming.append(words)
+    return tuple(
+        Implied(interval.low, interval.high, "" if "" in assuming else ", or ".join(assuming))
+        for interval, assuming in rows.values()
+    )
 
 
 def _gap(printed: Printed, interval: Interval, implied: Sequence[Interval]) -> float | None:

@@ -148,6 +148,9 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
         number.percent or line.at(index - 1).low in _OTHER_MEANS
     ):
         symbol = Symbol("estimate", "estimate")
+    if symbol.quantity == "rd" and abs(number.value) > 1 and not number.percent:
+        # `3.1 percentage points`, `31 per 1000`: no share.
+        symbol = Symbol("estimate", "estimate")
     if spelled.text == "V" and abs(number.value) <= 1:
         near = {t.low for t in line.tokens[max(0, index - 4) : index]}
         symbol = Symbol("other", "other") if near & _TRACES else Symbol("cramers_v", "effect")

@@ -98,6 +98,11 @@ def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
     return "apart", semicolon
 
 
+def _colons(line: Line) -> int:
+    """How many brackets of the line have a colon behind them."""
+    return sum(t.text == ":" and line.at(at - 1).text in (")", "]") for at, t in enumerate(line.tokens))
+
+
 def _of_tails(line: Line, index: int) -> bool:
     """Whether a number is that of `2-tailed` or `1 sided`."""
     hyphen = line.at(index + 1).text == "-"
@@ -111,10 +116,13 @@ def _joins(
     distance, semicolon = gap(line, current[-1], item)
     if distance == "apart":
         return None
-    # An n in brackets of its own belongs to what stands before it, unless a colon follows: `Rye (n = 20): 5.1 ± 1.1`.
+    # An n in brackets of its own belongs to what stands before it, unless each group has one and a colon:
+    # `Rye (n = 20): 5.1 ± 1.1; wheat (n = 24): …`.
     sizes_only = all(other.part == "size" for other in current)
     between = [t.text for t in line.tokens[current[-1].after : item.first]]
-    closed = bool({")", "]"} & set(between)) and not (item.part == "centre" and between[1:] == [":"])
+    closed = bool({")", "]"} & set(between)) and not (
+        item.part == "centre" and between[1:] == [":"] and _colons(line) > 1
+    )
     if sizes_only and item.part != "size" and closed:
         return None
     if item.part == "p" and marked(line, item):

@@ -67,7 +67,8 @@ def _printed_and_implied(audit: Audit, finding: Finding, look: Look) -> list[str
         assuming = listed[k - 1].assuming if k else ""
         lines += look.paragraph(f"assuming {assuming}", indent=INDENT + LABEL) if assuming else []
     if drawing:
-        lines += [" " * edge + drawing.axis, " " * edge + drawing.values]
+        scale = " " * (INDENT + LABEL) + "log scale" if drawing.logarithmic else ""
+        lines += [" " * edge + drawing.axis, scale.ljust(edge) + drawing.values]
     left_out = len(finding.implied) - MOST_READINGS
     lines += look.labelled("", [f"{left_out} more are in the JSON"] if left_out > 0 else [])
     gap = [f"{figure(finding.gap, 3)} units of the last printed digit"] if finding.gap else []

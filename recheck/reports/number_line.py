@@ -27,6 +27,7 @@ class Drawing:
     tracks: tuple[str, ...]
     axis: str
     values: str
+    logarithmic: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -98,7 +99,7 @@ def _drawing(axis: _Axis, printed: Bar, implied: Sequence[Bar], alpha: float | N
     mark = -1 if alpha is None else axis.column(alpha)
     tracks = [_track(axis, printed, PRINTED, mark), *(_track(axis, bar, IMPLIED, mark) for bar in implied)]
     line, values = _scale(axis, alpha if 0 <= mark < axis.columns else None)
-    return Drawing(tuple(tracks), line, values)
+    return Drawing(tuple(tracks), line, values, axis.logarithmic)
 
 
 def _track(axis: _Axis, bar: Bar, sign: str, mark: int) -> str:
