@@ -30,7 +30,7 @@ Findings: 1 inconsistent (1 reversal), 1 unchecked.
    implied      0.9817 to 0.9821    ················│························░░·
                 assuming a one-tailed test
                                     ──┴─────────────┴─────────────────────────┴─
-              log scale             0.01       alpha 0.05                     1
+                log scale           0.01       alpha 0.05                     1
    gap          25.3 units of the last printed digit
 
    tolerance    t = 2.20 stands for 2.195 to 2.205; p = .010 stands for 0.0095
