@@ -96,6 +96,8 @@ def _excuses(claim: Claim) -> tuple[str, ...]:
         reasons.append("p lies outside 0 to 1")
     if claim.suggests("permutation"):
         reasons.append("p comes from a permutation or exact test")
+    if claim.kind == "chi2-test" and claim.says("fisher-exact"):
+        reasons.append("p is that of Fisher's exact test")
     if claim.says("bootstrap"):
         reasons.append("p may come from a bootstrap")
     if claim.says("bayesian"):

@@ -152,9 +152,9 @@ def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
 
     Bounds drawn around 2×2 tables of 10 to 300 cases with expected counts from 1 up: the likelihood
     ratio lies within 0.55 and 1.9 times χ²; the continuity correction and Fisher's p lie at most
-    1.4 below √χ². The like for tables of 2×3 to 3×3 and their exact p: 0.55, 1.7 and 0.7.
+    1.4 below √χ². The like for tables of 2×3 to 3×3 and their exact p: 0.55, 1.7 and 1.0.
     """
-    step = 1.4 if one_df else 0.7
+    step = 1.4 if one_df else 1.0
     low = min(0.55 * chi2.low, max(math.sqrt(max(chi2.low, 0.0)) - step, 0.0) ** 2)
     return Interval(low, (1.9 if one_df else 1.7) * chi2.high)
 

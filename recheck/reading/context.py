@@ -43,9 +43,10 @@ def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
     credible = (
         "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
     )
+    spoken = background(whole)
     return Setting(
-        Context(alpha, background(whole), tuple(notes)), signs, brackets,
-        credible and "confidence interval" not in whole, comma, pairs_alone(whole),
+        Context(alpha, spoken, tuple(notes)), signs, brackets,
+        credible and "confidence interval" not in whole, comma, "adjusted-p-post-hoc" in spoken and pairs_alone(whole),
     )  # fmt: skip
 
 

@@ -142,8 +142,9 @@ def _beside(text: str, start: int, end: int, first: int, last: int) -> bool:
 
 def _numbered_study(sentence: Sentence, end: int) -> bool:
     """`In a trial of coached bakers scores rose by 9.0 points (P = 0.02),[2] …`: a study, its numbers, its number."""
-    behind = _number().search(sentence.text, end, timeout=TIMEOUT)
-    return behind is not None and bool(_study().match(sentence.low, timeout=TIMEOUT))
+    if _study().match(sentence.low, timeout=TIMEOUT) is None:
+        return False
+    return _number().search(sentence.text, end, timeout=TIMEOUT) is not None
 
 
 @cache
@@ -208,8 +209,23 @@ def _source() -> regex.Pattern[str]:
 
 def beside_earlier_work(draft: Draft, sentence: Sentence) -> bool:
     """Whether the words right before the numbers name earlier work: `that of a recent meta-analysis (g = 0.42 …`."""
+    if not sentence.says(_EARLIER_WORDS):
+        return False
     start = draft.line.at(draft.first).start - sentence.start
     return bool(_named().search(sentence.low[max(0, start - 90) : start], timeout=TIMEOUT))
+
+
+_EARLIER_WORDS = (
+    "recent",
+    "previous",
+    "earlier",
+    "prior",
+    "past",
+    "published",
+    "original",
+    "seminal",
+    "former",
+)
 
 
 @cache
