@@ -116,6 +116,7 @@ def _adjusted(claim: Claim, omnibus: bool = False) -> str:
 
 def judge_p(case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus: bool = False) -> Finding:
     """Judge p by the given ways; `omnibus` says that adjusted post hoc comparisons are not meant."""
+    told = "p is told in words" in case.claim.notes
     return judge(
         case,
         Comparison(
@@ -126,6 +127,7 @@ def judge_p(case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus
             bounds=P_RANGE,
             excuses=_excuses(case.claim),
             excess=_adjusted(case.claim, omnibus),
+            doubts=("the words “significant” or “not significant” speak of this test",) if told else (),
         ),
     )
 

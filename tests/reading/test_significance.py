@@ -29,7 +29,7 @@ def read_claim(*texts: str) -> Claim:
 def test_one_word_tells_of_one_test(text: str, relation: str) -> None:
     claim = read_claim(text)
     assert claim.values["p"].relation == relation and claim.values["p"].number == 0.05
-    assert claim.confidence == "medium" and "p is told in words" in claim.notes
+    assert claim.confidence == "high" and "p is told in words" in claim.notes
 
 
 @pytest.mark.parametrize(
