@@ -11,7 +11,7 @@ from recheck.checks.registry import Case
 from recheck.checks.wording import question_for, stands_for, tell
 from recheck.model import Claim, Confidence, Finding, Implied, Interval, Printed, Remedy, Verdict, shown
 from recheck.model.figures import interval_text, printed_text
-from recheck.reconcile.readings import Attempt, Numbers, Way, agrees_as_printed, attempts
+from recheck.reconcile.readings import Attempt, Numbers, Way, attempts, mender
 from recheck.reconcile.slips import slip_remedies
 
 _ORDER: tuple[Confidence, ...] = ("low", "medium", "high")
@@ -267,6 +267,6 @@ def _remedies(
         for i in plain[:1]
     ]  # fmt: skip
     slips = slip_remedies(
-        comparison.numbers, lambda n: agrees_as_printed(comparison.quantity, n, comparison.ways)
+        comparison.numbers, mender(comparison.quantity, comparison.numbers, comparison.ways)
     )
     return (*slips, *rows, *comparison.mend_others)

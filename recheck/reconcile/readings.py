@@ -94,6 +94,22 @@ def first_agreement(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> Att
     return next((attempt for attempt in attempts(quantity, numbers, ways) if attempt.agrees), None)
 
 
+def mender(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> Callable[[str, Printed], bool]:
+    """A test whether all numbers agree, as printed and by a cheap way, with one of them corrected."""
+    box = box_of(numbers)
+    plain = [way for way in ways if not (way.unstated or way.costly)]
+    implied = [interval for way in plain for interval in way.implied(box)]
+
+    def mended(name: str, number: Printed) -> bool:
+        corrected = box_of({name: number})[name]
+        if name == quantity:
+            return any(corrected.meets(interval) for interval in implied)
+        other = {**box, name: corrected}
+        return any(box[quantity].meets(interval) for way in plain for interval in way.implied(other))
+
+    return mended
+
+
 def agrees_as_printed(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> bool:
     """Tell whether the numbers agree with nothing assumed that the text does not state, by a cheap way."""
     box = box_of(numbers)

@@ -104,18 +104,20 @@ def _wrong(printed: Printed) -> Iterator[tuple[str, str]]:
 
 
 def slip_remedies(
-    numbers: Numbers, mended: Callable[[Numbers], bool], *, most: int = 4
+    numbers: Numbers, mended: Callable[[str, Printed], bool], *, most: int = 4
 ) -> tuple[Remedy, ...]:
     """Single slips that would reconcile the numbers, swapped digits before single wrong digits.
 
-    `mended` tells whether a set of numbers agrees. A number of which more than one single digit
-    could be wrong is not named so: the interval that it must lie in says it better.
+    `mended` tells whether all agree with one number, by its name, corrected. A number of which more
+    than one single digit could be wrong is not named so: the interval that it must lie in says it better.
     """
     found: list[Remedy] = []
     for name, printed in numbers.items():
         wrong: list[Remedy] = []
         for number, words in candidates(printed):
-            if not _sensible(name, printed, number, words) or not mended({**numbers, name: number}):
+            if len(wrong) > 1:
+                break
+            if not _sensible(name, printed, number, words) or not mended(name, number):
                 continue
             remedy = _remedy(name, printed, number, words)
             (wrong if words == "one digit wrong" else found).append(remedy)

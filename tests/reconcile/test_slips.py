@@ -40,13 +40,13 @@ def test_the_number_itself_is_never_a_candidate():
 
 def test_remedy_names_the_one_slip_that_mends():
     numbers = {"sd1": number("1.2"), "t": number("3.4")}
-    remedies = slip_remedies(numbers, lambda n: n["sd1"].value == Decimal("2.1"))
+    remedies = slip_remedies(numbers, lambda name, n: name == "sd1" and n.value == Decimal("2.1"))
     assert [(r.kind, r.quantity, r.change) for r in remedies] == [("slip", "sd1", "1.2 → 2.1")]
 
 
 def test_a_digit_that_could_be_many_is_not_named():
     numbers = {"t": number("3.4")}
-    assert slip_remedies(numbers, lambda n: Decimal("5") < n["t"].value < Decimal("5.0001")) == ()
+    assert slip_remedies(numbers, lambda name, n: Decimal("5") < n.value < Decimal("5.0001")) == ()
     assert not slip_remedies(
-        numbers, lambda n: n["t"].value in (Decimal("3.6"), Decimal("3.7"), Decimal("3.8"))
+        numbers, lambda name, n: n.value in (Decimal("3.6"), Decimal("3.7"), Decimal("3.8"))
     )
