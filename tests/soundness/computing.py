@@ -137,7 +137,8 @@ def repeated_measures(x: Values) -> tuple[Test, dict[str, float]]:
     centring = np.eye(k) - 1 / k
     s = centring @ covariance @ centring
     gg = float(np.trace(s) ** 2 / ((k - 1) * np.sum(s * s))) if np.any(s) else 1.0
-    hf = (n * (k - 1) * gg - 2) / ((k - 1) * (n - 1 - (k - 1) * gg))
+    left = (k - 1) * (n - 1 - (k - 1) * gg)
+    hf = (n * (k - 1) * gg - 2) / left if left else 1.0
     test = Test(value, df, float(stats.f.sf(value, *df)), ratio(between, between + error), error / df[1])
     return test, {"gg": gg, "hf": float(min(max(hf, gg), 1.0)), "lower": 1 / (k - 1)}
 
