@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator, Sequence
 from contextlib import contextmanager
 from contextvars import ContextVar
@@ -139,7 +140,7 @@ class Hand:
             style == "subscript"
             and quantity in ("t", "F")
             and not self.comma
-            and all(d == int(d) for d in dfs)
+            and all(math.isfinite(d) and d == int(d) for d in dfs)
         ):
             low = f"_{{{inner}}}" if self.letters == "tex" else inner.replace(", ", ",")
             return f"{name}{low}{number}"
