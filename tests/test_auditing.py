@@ -46,3 +46,33 @@ def test_a_missing_file_is_one_clear_sentence(tmp_path):
 def test_text_without_statistics_has_nothing_to_check():
     audit = recheck.audit_text("Bread is baked every morning.")
     assert (audit.claims, audit.findings) == ((), ())
+
+
+@pytest.mark.parametrize(
+    ("data", "kind"),
+    [
+        (b"<!DOCTYPE html><html><p>t(28) = 2.20, p = .010</p></html>", "HTML"),
+        (b'<?xml version="1.0"?><article>t(28) = 2.20, p = .010</article>', "XML"),
+        (b"{\\rtf1 t(28) = 2.20, p = .010}", "RTF"),
+    ],
+)
+def test_markup_is_refused_and_not_read_as_prose(data, kind):
+    with pytest.raises(UnreadableDocument, match=f"it is {kind}, which is not read"):
+        recheck.audit(data, name="loaves")
+
+
+@pytest.mark.parametrize("alpha", [0, 1, 2, -0.05, float("nan"), "x"])
+def test_an_alpha_that_is_none_is_refused(alpha):
+    with pytest.raises(ValueError, match="between 0 and 1"):
+        recheck.audit_text(TEXT, alpha=alpha)
+
+
+def test_what_is_no_text_is_refused():
+    with pytest.raises(TypeError, match="must be a string"):
+        recheck.audit_text(TEXT.encode())
+    with pytest.raises(ValueError, match="reader must be one of"):
+        recheck.audit(TEXT.encode(), reader="eyes")
+
+
+def test_an_audit_shows_itself_in_one_line():
+    assert repr(recheck.audit_text(TEXT)).startswith("<Audit of text; claims: 1,")
