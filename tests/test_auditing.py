@@ -53,7 +53,6 @@ def test_text_without_statistics_has_nothing_to_check():
     [
         (b"<!DOCTYPE html><html><p>t(28) = 2.20, p = .010</p></html>", "HTML"),
         (b'<?xml version="1.0"?><article>t(28) = 2.20, p = .010</article>', "XML"),
-        (b"{\\rtf1 t(28) = 2.20, p = .010}", "RTF"),
     ],
 )
 def test_markup_is_refused_and_not_read_as_prose(data, kind):

@@ -66,7 +66,6 @@ def is_pdf(head: bytes) -> bool:
 _MARKUPS = {
     "HTML": ("<!doctype html", "<html"),
     "XML": ("<?xml", "<!doctype article", "<article"),
-    "RTF": ("{\\rtf",),
 }
 
 

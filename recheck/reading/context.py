@@ -104,7 +104,7 @@ def _level() -> regex.Pattern[str]:
     """Sentences that may set a level of significance."""
     return regex.compile(
         r"\b(?:alpha|significan(?:t|ce)\b.{0,60}?(?:level|threshold|set|consider|deem|accept|defin|criteri|regard)"
-        r"|(?:level|threshold|consider|deem|accept|criteri|regard|set|defin|declar)\w*\b.{0,80}?significan)|α",
+        r"|(?:level|threshold|consider|deem|accept|criteri|regard|set|defin|declar|taken|judg)\w*\b.{0,80}?significan)|α",
         regex.IGNORECASE | regex.DOTALL,
     )
 
