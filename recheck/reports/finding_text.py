@@ -38,6 +38,7 @@ def brief_lines(audit: Audit, finding: Finding, number: int, look: Look) -> list
         *(look.paint(line, role) for line in look.paragraph(title, hanging=INDENT)),
         *look.paragraph(whereabouts(finding.place), indent=INDENT),
         *look.paragraph(f"“{quote}”", indent=INDENT, hanging=INDENT + 1),
+        *_groups(audit, finding, look),
         "",
         *look.paragraph(finding.message, indent=INDENT),
     ]
@@ -50,6 +51,15 @@ def listed_lines(place: Place, text: str, look: Look) -> list[str]:
     quote = shortened(place.quote, LONGEST_LISTED)
     first, *more = look.paragraph(f"“{quote}”: {text}" if text else f"“{quote}”", indent=edge)
     return [f"{'':{INDENT}}{where:<{WHERE}}{first[edge:]}", *more]
+
+
+def _groups(audit: Audit, finding: Finding, look: Look) -> list[str]:
+    """The group summaries that a finding rests on, each with its own quote and place."""
+    lines = []
+    for number, claim in enumerate(_claims(audit, finding)[1:], 1):
+        text = f"group {number}: “{shortened(claim.place.quote, LONGEST_QUOTE)}”, {whereabouts(claim.place)}"
+        lines += look.paragraph(text, indent=INDENT, hanging=INDENT + 3)
+    return lines
 
 
 def _printed_and_implied(audit: Audit, finding: Finding, look: Look) -> list[str]:
