@@ -55,8 +55,10 @@ def listed_lines(place: Place, text: str, look: Look) -> list[str]:
 
 def _groups(audit: Audit, finding: Finding, look: Look) -> list[str]:
     """The group summaries that a finding rests on, each with its own quote and place."""
+    by_id = {claim.id: claim for claim in _claims(audit, finding)}
+    groups = [by_id[name] for name in finding.claims[1:] if name in by_id]
     lines = []
-    for number, claim in enumerate(_claims(audit, finding)[1:], 1):
+    for number, claim in enumerate(groups, 1):
         text = f"group {number}: “{shortened(claim.place.quote, LONGEST_QUOTE)}”, {whereabouts(claim.place)}"
         lines += look.paragraph(text, indent=INDENT, hanging=INDENT + 3)
     return lines

@@ -2,6 +2,7 @@ from dataclasses import replace
 
 import pytest
 
+import recheck
 from recheck.model import Place
 from recheck.reports.look import Look
 from recheck.reports.terminal import closing_line, terminal_report
@@ -149,3 +150,10 @@ def test_many_readings_are_cut_and_counted():
 
 def test_the_closing_line_counts_documents():
     assert closing_line(1, 2, 1) == "4 documents: 1 with discrepancies, 2 without, 1 could not be read.\n"
+
+
+def test_groups_of_a_finding_are_named_by_their_quotes_in_its_order():
+    text = "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 2.23."
+    lines = terminal_report(recheck.audit_text(text)).splitlines()
+    first, second = (next(line for line in lines if f"group {n}: “" in line) for n in (1, 2))
+    assert "92.4" in first and "86.0" in second
