@@ -7,14 +7,14 @@ import pytest
 from recheck.checks.running import run_checks
 from recheck.confirming import confirm
 from recheck.errors import UnreadableDocument
-from recheck.model import Context, Place, Reading, Settings
+from recheck.model import Place, Reading, Settings
 from tests.checks.claims import claim, printed
 
 FIRST = replace(claim("t-test", t="2.20", df="28", p=".36"), place=Place("t(28) = 2.20, p = .36", page=3))
 
 
 def confirmed(*seen, claims=(FIRST,)):
-    found = run_checks(claims, Context(), Settings())
+    found = run_checks(claims, Settings())
     return confirm(found, claims, lambda pages: Reading(tuple(seen)))
 
 
@@ -49,7 +49,7 @@ def test_pages_are_read_before_the_whole_document():
         asked.append(pages)
         return Reading((FIRST,)) if pages is None else Reading(())
 
-    (found,) = confirm(run_checks((FIRST,), Context(), Settings()), (FIRST,), second)
+    (found,) = confirm(run_checks((FIRST,), Settings()), (FIRST,), second)
     assert found.verdict == "inconsistent"
     assert asked == [[2, 3, 4], None]
 
@@ -58,14 +58,12 @@ def test_a_second_engine_that_fails_confirms_nothing():
     def second(pages):
         raise UnreadableDocument("a.pdf", "it is damaged", "save it again")
 
-    (found,) = confirm(run_checks((FIRST,), Context(), Settings()), (FIRST,), second)
+    (found,) = confirm(run_checks((FIRST,), Settings()), (FIRST,), second)
     assert found.verdict == "unchecked"
 
 
 @pytest.mark.parametrize("verdict", ["agrees"])
 def test_what_agrees_is_not_read_again(verdict):
     fine = claim("t-test", t="2.20", df="28", p=".036")
-    found = confirm(
-        run_checks((fine,), Context(), Settings()), (fine,), lambda pages: pytest.fail("read again")
-    )
+    found = confirm(run_checks((fine,), Settings()), (fine,), lambda pages: pytest.fail("read again"))
     assert found[0].verdict == verdict

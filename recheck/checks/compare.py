@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, replace
 from hashlib import sha256
 
 from recheck.checks.registry import Case
@@ -25,8 +25,7 @@ class Comparison:
     """What a check hands over to be judged.
 
     `doubts` are reasons why a contradiction is no more than `conditional`; `excuses` reasons why
-    it is `unchecked` instead. `excess` and `lack` excuse only a printed number above or below
-    what is implied. `bounds` is the range that the quantity can have at all.
+    it is `unchecked` instead. `excess` excuses only a printed number above what is implied. `bounds` is the range that the quantity can have at all.
     """
 
     check: str
@@ -38,8 +37,6 @@ class Comparison:
     doubts: tuple[str, ...] = ()
     excuses: tuple[str, ...] = ()
     excess: str = ""
-    lack: str = ""
-    mend_others: tuple[Remedy, ...] = field(default=())
 
 
 def lowest(claims: Sequence[Claim]) -> Confidence:
@@ -161,8 +158,6 @@ def _excuse(comparison: Comparison, tried: Sequence[Attempt]) -> str:
     printed = next(a.printed for a in tried)
     if comparison.excess and all(printed.low > i.high for i in plain):
         return comparison.excess
-    if comparison.lack and all(printed.high < i.low for i in plain):
-        return comparison.lack
     return ""
 
 
@@ -219,8 +214,7 @@ def _finding(
     plain = [i for a in listed if not a.unstated for i in a.implied] or [i for a in listed for i in a.implied]
     interval = printed.interval().within(comparison.bounds.low, comparison.bounds.high)
     given = match.way.given if match else ()
-    unstated = (*(match.unstated if match else ()), *doubts)
-    remedies = _remedies(comparison, verdict, match, plain)
+    unstated = match.unstated if match else ()
     return Finding(
         id=finding_id(comparison.check, claims, comparison.quantity),
         check=comparison.check,
@@ -235,7 +229,7 @@ def _finding(
             verdict,
             implied,
             given,
-            match.unstated if match else (),
+            unstated,
             doubts,
         ),
         place=case.claim.place,
@@ -246,8 +240,8 @@ def _finding(
         gap=None if verdict == "agrees" else _gap(printed, interval, plain),
         reversal=reversal,
         confidence=lowest(claims),
-        assumptions=(*given, *unstated),
-        reconciled_by=remedies,
+        assumptions=(*given, *unstated, *doubts),
+        reconciled_by=_remedies(comparison, verdict, match, plain),
     )
 
 
@@ -269,4 +263,4 @@ def _remedies(
     slips = slip_remedies(
         comparison.numbers, mender(comparison.quantity, comparison.numbers, comparison.ways)
     )
-    return (*slips, *rows, *comparison.mend_others)
+    return (*slips, *rows)

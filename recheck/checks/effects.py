@@ -43,12 +43,13 @@ def effect_of(claim: Claim) -> str | None:
     return next((name for name in NAMES if name in claim.values), None)
 
 
-def correction(kind: str, df: float) -> Interval:
+def correction(kind: str, df: float) -> float:
     """The factor of the small-sample correction."""
     if kind == "none" or df <= 1:
-        return Interval(1.0, 1.0)
-    J = effects.hedges_correction(df) if kind == "exact" else effects.hedges_correction_approximate(df)
-    return Interval(float(J), float(J))
+        return 1.0
+    return float(
+        effects.hedges_correction(df) if kind == "exact" else effects.hedges_correction_approximate(df)
+    )
 
 
 def _corrections(name: str) -> Iterator[tuple[str, tuple[str, ...]]]:
@@ -60,8 +61,8 @@ def _corrections(name: str) -> Iterator[tuple[str, tuple[str, ...]]]:
             yield kind, (words,)
 
 
-def _scaled(interval: Interval, factor: Interval) -> Interval:
-    return Interval(interval.low * factor.low, interval.high * factor.high)
+def _scaled(interval: Interval, factor: float) -> Interval:
+    return Interval(interval.low * factor, interval.high * factor)
 
 
 def _from_box(
@@ -103,7 +104,7 @@ def _paired_way(groups: Groups, name: str, n: float) -> Way:
         s, a, b = sds(box, groups, n, n, as_se=False), box["mean1"], box["mean2"]
         if "t" not in box or n < 2:
             return (Interval(0.0, INFINITY),)
-        D = Interval(a.low - b.high, a.high - b.low).absolute()
+        D = a.minus(b).absolute()
         smallest = min(s.low1, s.low2)
         by_sd = D.high / smallest if smallest > 0 else INFINITY
         return (Interval(0.0, max(2 * box["t"].absolute().high / math.sqrt(n - 1), by_sd)),)
@@ -182,7 +183,7 @@ def _rough_ways(claim: Claim, name: str, total: int) -> Iterator[Way]:
     for words, factor in ((BY_DF, 2 / math.sqrt(total - 2)), (BY_TOTAL, 2 / math.sqrt(total))):
         for kind, more in _corrections(name):
             c = correction(kind, total - 2)
-            yield Way(_times_t(factor * c.low, factor * c.high), (words, *more))
+            yield Way(_times_t(factor * c, factor * c), (words, *more))
 
 
 def _split_ways(name: str, groups: Groups, total: int) -> Iterator[Way]:
@@ -192,8 +193,7 @@ def _split_ways(name: str, groups: Groups, total: int) -> Iterator[Way]:
         def implied(box: Box, k: str = kind) -> tuple[Interval, ...]:
             parts = [_from_box(box, groups, 2.0, 2.0, which, as_se=False) for which in ONE_GROUP]
             factor = correction(k, max(total - 2, 2))
-            low, high = min(p.low for p in parts), max(p.high for p in parts)
-            return (Interval(low * factor.low, high * factor.high),)
+            return (_scaled(Interval(min(p.low for p in parts), max(p.high for p in parts)), factor),)
 
         if "se" not in groups.spreads:
             yield Way(implied, words)
@@ -253,7 +253,7 @@ def _t_ways(claim: Claim, name: str, sizes: Sizes) -> Iterator[Way]:
         for unstated, low, high in _factors(
             sizes, paired_only=paired_only, independent_only=independent_only, name=name
         ):
-            inner = _times_t(low * c.low, high * c.high)
+            inner = _times_t(low * c, high * c)
             yield Way(inner, (*unstated, *words))
             yield Way(_by_hand(inner), (*unstated, *words, HAND))
 
@@ -325,11 +325,7 @@ def d_from_t(case: Case) -> Iterable[Finding]:
     foreign = foreign_model((claim,), fitted=named)
     printed = unsigned(claim.values[name])
     numbers = {name: printed, "t": unsigned(claim.values["t"]), "df": claim.values["df"]}
-    doubts = (
-        ()
-        if claim.says("independent", "pooled", "paired", "one-sample")
-        else ("t is that of two groups or of pairs (the design is not stated)",)
-    )
+    doubts = () if named else ("t is that of two groups or of pairs (the design is not stated)",)
     yield judge(
         case,
         Comparison(

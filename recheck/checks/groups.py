@@ -173,7 +173,7 @@ def difference_from_means(case: Case) -> Iterable[Finding]:
 
     def implied(box: Box) -> tuple[Interval, ...]:
         a, b = box["mean1"], box["mean2"]
-        return (Interval(a.low - b.high, a.high - b.low).absolute(),)
+        return (a.minus(b).absolute(),)
 
     fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     foreign = foreign_model(claims, fitted=fit.sure and not fit.reason)

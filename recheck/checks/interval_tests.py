@@ -11,7 +11,7 @@ from scipy import special
 from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import Groups, fit_designs, sds
 from recheck.checks.groups import link_doubts, linked_groups, unsigned
-from recheck.checks.intervals import ESTIMATES, OFF_CENTRE, OTHER_METHOD, ends
+from recheck.checks.intervals import BY_HAND, ESTIMATES, OFF_CENTRE, OTHER_METHOD, RATIOS, ends
 from recheck.checks.models import foreign_model
 from recheck.checks.p_values import ONE_TAILED, P_RANGE, UNIT_DF, as_interval
 from recheck.checks.registry import Case, check
@@ -36,7 +36,6 @@ def other_widths(level: float, df: float) -> tuple[float, float]:
     return narrower, max(bonferroni, scheffe)
 
 
-BY_HAND = "the interval was worked out by hand from rounded figures"
 NORMAL = "the interval uses the normal, not the t distribution"
 
 
@@ -180,7 +179,6 @@ def _ci_ways(claim: Claim, df: float, slack: Slack) -> tuple[Way, ...]:
 
 PROFILE = "the interval is a profile-likelihood or bootstrap one, or p is not that of its Wald test"
 LINEAR = ("mean_difference", "b", "rd")
-RATIOS = ("or", "rr", "hr")
 OPEN_DF = (5.0, 8.0, 15.0, 40.0, UNIT_DF)
 """df that are tried where none are printed; p moves steadily from one to the next."""
 
@@ -364,7 +362,7 @@ def _end(
         narrow, broad = least * float(se(s.low1, n1, s.low2, n2)), most * float(se(s.high1, n1, s.high2, n2))
         a, b = box["mean1"], box["mean2"]
         found = []
-        for d in (Interval(a.low - b.high, a.high - b.low), Interval(b.low - a.high, b.high - a.low)):
+        for d in (a.minus(b), b.minus(a)):
             half = Interval(narrow, broad) if side > 0 else Interval(-broad, -narrow)
             found.append(Interval(d.low + half.low, d.high + half.high))
         return tuple(found)

@@ -34,7 +34,8 @@ ESTIMATES = (
     "or", "rr", "hr", "rd", "percent", "estimate", "intercept", "median",
 )  # fmt: skip
 
-
+RATIOS = ("or", "rr", "hr")
+BY_HAND = "the interval was worked out by hand from rounded figures"
 OTHER_METHOD = "the interval was made by another method than the test (bootstrap, simultaneous, robust)"
 
 
@@ -105,7 +106,7 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
 
     numbers = {name: claim.values[name], "ci_low": low, "ci_high": high}
     doubts, excuse = _belonging(case, name, low, high, others)
-    if name in ("or", "rr", "hr") and claim.suggests("covariate-adjusted", "multi-regression"):
+    if name in RATIOS and claim.suggests("covariate-adjusted", "multi-regression"):
         doubts.append("ratio and interval come from the same model")
     if claim.suggests("bayesian", "bootstrap"):
         excuse = (
@@ -184,7 +185,7 @@ def ci_centre(case: Case) -> Iterable[Finding]:
 
     ways = (
         Way(centre),
-        Way(lambda box: centre(box, 0.0, 1.0), ("the interval was worked out by hand from rounded figures",)),
+        Way(lambda box: centre(box, 0.0, 1.0), (BY_HAND,)),
         Way(lambda box: centre(box, OFF_CENTRE), (OTHER_METHOD,)),
     )
     numbers = {"mean_difference": printed, "ci_low": low, "ci_high": high}

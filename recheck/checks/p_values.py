@@ -7,7 +7,7 @@ from dataclasses import replace
 
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.registry import Case
-from recheck.model import Claim, Finding, Interval, Printed
+from recheck.model import P_IN_WORDS, Claim, Finding, Interval, Printed
 from recheck.reconcile.readings import Box, Numbers, Way
 
 P_RANGE = Interval(0.0, 1.0)
@@ -116,7 +116,7 @@ def _adjusted(claim: Claim, omnibus: bool = False) -> str:
 
 def judge_p(case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus: bool = False) -> Finding:
     """Judge p by the given ways; `omnibus` says that adjusted post hoc comparisons are not meant."""
-    told = "p is told in words" in case.claim.notes
+    told = P_IN_WORDS in case.claim.notes
     return judge(
         case,
         Comparison(

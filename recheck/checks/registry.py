@@ -8,7 +8,7 @@ from functools import cache
 from importlib import import_module
 
 from recheck.errors import UnknownCheck
-from recheck.model import Claim, ClaimKind, Context, Finding, Settings
+from recheck.model import Claim, ClaimKind, Finding, Settings
 
 FAMILIES = ("tails", "correlations", "groups", "effects", "intervals", "interval_tests", "sizes", "ranges")
 """Modules of checks, in the order in which they are listed and run."""
@@ -16,11 +16,10 @@ FAMILIES = ("tails", "correlations", "groups", "effects", "intervals", "interval
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Case:
-    """A claim with what a check may need beside it: its groups, the context, the settings."""
+    """A claim with what a check may need beside it: its groups and the settings."""
 
     claim: Claim
     groups: tuple[Claim, ...] = ()
-    context: Context = field(default_factory=Context)
     settings: Settings = field(default_factory=Settings)
 
 

@@ -8,19 +8,19 @@ from dataclasses import replace
 
 from recheck.checks.compare import unchecked
 from recheck.checks.registry import Case, Check, all_checks
-from recheck.model import Claim, Context, Finding, Settings, shown
+from recheck.model import Claim, Finding, Settings, shown
 
 logger = logging.getLogger("recheck")
 
 
-def run_checks(claims: Sequence[Claim], context: Context, settings: Settings) -> tuple[Finding, ...]:
+def run_checks(claims: Sequence[Claim], settings: Settings) -> tuple[Finding, ...]:
     """Give the findings of all checks on all claims, in reading order; one fault loses one check only."""
     claims = [_as_shares(claim) for claim in claims]
     by_id = {claim.id: claim for claim in claims}
     findings: list[Finding] = []
     for claim in claims:
         groups = tuple(by_id[g] for g in claim.groups if g in by_id)
-        case = Case(claim=claim, groups=groups, context=context, settings=settings)
+        case = Case(claim=claim, groups=groups, settings=settings)
         for check in all_checks():
             if claim.kind in check.kinds:
                 findings += _run(check, case)

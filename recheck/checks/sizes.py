@@ -6,7 +6,7 @@ from collections.abc import Iterable
 from dataclasses import replace
 
 from recheck.checks.compare import finding_id, lowest
-from recheck.checks.designs import fit_designs, groups_of, welch_df, whole
+from recheck.checks.designs import PAIRED, POOLED, WELCH, fit_designs, groups_of, welch_df, whole
 from recheck.checks.registry import Case, check
 from recheck.checks.wording import question_for
 from recheck.model import Finding, Implied, Remedy
@@ -49,13 +49,11 @@ def df_from_ns(case: Case) -> Iterable[Finding]:
     fit = fit_designs(claim, groups, box)
     total, welch = groups.n1 + groups.n2 - 2, welch_df(box, groups)
     implied = [
-        Implied(total, total, "two independent groups, pooled variance", (total,)),
-        Implied(welch.low, welch.high, "two independent groups, Welch"),
+        Implied(total, total, POOLED, (total,)),
+        Implied(welch.low, welch.high, WELCH),
     ]
     if groups.n1 == groups.n2:
-        implied.append(
-            Implied(groups.n1 - 1, groups.n1 - 1, "the same units measured twice", (groups.n1 - 1,))
-        )
+        implied.append(Implied(groups.n1 - 1, groups.n1 - 1, PAIRED, (groups.n1 - 1,)))
     printed = claim.values[name]
     finding = Finding(
         id=finding_id("df-from-ns", claims, name), check="df-from-ns", verdict="agrees", claims=tuple(c.id for c in claims),
@@ -79,13 +77,25 @@ def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:
     else:
         why = f"more units entered the test than the {n1 + n2} of the two groups, or it belongs to another model"
     implied = "; or ".join(f"{span(row.low, row.high)} ({row.assuming})" for row in finding.implied)
-    gap = min(max(row.low - printed.number, printed.number - row.high, 0.0) for row in finding.implied)
+    return _only_if(
+        finding,
+        case,
+        why,
+        message=f"df {printed_text(printed)} is printed; groups of {n1} and {n2} imply {implied}.",
+        tolerance="group sizes taken as exact; df without decimals also as a rounded or floored fractional one",
+    )
+
+
+def _only_if(finding: Finding, case: Case, why: str, *, message: str, tolerance: str) -> Finding:
+    """The finding as a conditional one: df and sizes agree only for a reason that the text does not state."""
+    printed = case.claim.values[finding.quantity]
+    value = printed.number
     return replace(
         finding,
         verdict="conditional",
-        message=f"df {printed_text(printed)} is printed; groups of {n1} and {n2} imply {implied}. They agree only if {why}.",
-        tolerance="group sizes taken as exact; df without decimals also as a rounded or floored fractional one",
-        gap=gap,
+        message=f"{message} They agree only if {why}.",
+        tolerance=tolerance,
+        gap=min(max(row.low - value, value - row.high, 0.0) for row in finding.implied),
         assumptions=(why,),
         question=question_for(case.claim, finding.quantity, printed, finding.implied),
         reconciled_by=(Remedy("reading", finding.quantity, f"the numbers agree if {why}"),),
@@ -127,13 +137,5 @@ def r_df_from_n(case: Case) -> Iterable[Finding]:
         if df < n - 2
         else "more units entered than n"
     )
-    yield replace(
-        finding,
-        verdict="conditional",
-        message=f"df {printed_text(printed)} is printed; n = {n} implies {n - 2}. They agree only if {why}.",
-        tolerance="n and df taken as exact",
-        gap=float(abs(df - (n - 2))),
-        assumptions=(why,),
-        question=question_for(claim, "df", printed, finding.implied),
-        reconciled_by=(Remedy("reading", "df", f"the numbers agree if {why}"),),
-    )
+    message = f"df {printed_text(printed)} is printed; n = {n} implies {n - 2}."
+    yield _only_if(finding, case, why, message=message, tolerance="n and df taken as exact")

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import numpy as np
 import regex
-from numpy.typing import NDArray
 
 from recheck.documents.characters import BASE, RAISED, as_text, made_plain, mark_string
 from recheck.documents.lines import SPACE, Line
@@ -120,8 +119,3 @@ def goes_on(before: Line, text: str, after: Line, *, full: bool) -> bool:
     if first.isupper() or first in _OPENING or first.isalpha():
         return full or text.rstrip()[-1:] in _HYPHENS + _DASHES + ",(["
     return full
-
-
-def boxes_of(lines: list[Line]) -> NDArray[np.float32]:
-    """The boxes of all characters of some lines, one after another."""
-    return np.concatenate([line.boxes for line in lines])

@@ -1,6 +1,6 @@
 """The nouns of recheck: plain data, no statistics."""
 
-from recheck.model.claim import STATED, Claim, ClaimKind, Confidence, Context, Reading
+from recheck.model.claim import P_IN_WORDS, STATED, Claim, ClaimKind, Confidence, Context, Reading
 from recheck.model.document import Document, Layout, Passage, PassageKind, Place
 from recheck.model.finding import (
     DISCREPANT,
@@ -17,7 +17,7 @@ from recheck.model.printed import Box, Interval, Printed, Relation
 from recheck.model.quantities import QUANTITIES, shown
 
 __all__ = [
-    "DISCREPANT", "QUANTITIES", "STATED", "VERDICTS", "Audit", "Box", "Claim", "ClaimKind", "Confidence", "Context",
+    "DISCREPANT", "P_IN_WORDS", "QUANTITIES", "STATED", "VERDICTS", "Audit", "Box", "Claim", "ClaimKind", "Confidence", "Context",
     "Document", "DocumentFacts", "Finding", "Implied", "Interval", "Layout", "Passage", "PassageKind", "Place",
     "Printed", "Reading", "Relation", "Remedy", "Settings", "Verdict", "shown",
 ]  # fmt: skip

@@ -59,6 +59,10 @@ STATED = {
 """What a manuscript can say of a result, in the words that reports use for it."""
 
 
+P_IN_WORDS = "p is told in words"
+"""The note of a claim whose p is told by `significant` or `not significant` alone."""
+
+
 @dataclass(frozen=True, slots=True, eq=False)
 class Claim:
     """One result, group summary or comparison as the manuscript prints it.

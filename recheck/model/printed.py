@@ -45,6 +45,10 @@ class Interval:
             return Interval(-self.high, -self.low)
         return Interval(0.0, max(-self.low, self.high))
 
+    def minus(self, other: Interval) -> Interval:
+        """Give the interval of all differences of a point of this one and a point of the other."""
+        return Interval(self.low - other.high, self.high - other.low)
+
     def distance(self, other: Interval) -> float:
         """Give the width of the space between two intervals, 0 where they meet."""
         return max(0.0, other.low - self.high, self.low - other.high)

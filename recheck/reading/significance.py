@@ -8,7 +8,7 @@ from functools import cache
 
 import regex
 
-from recheck.model import Printed, Relation
+from recheck.model import P_IN_WORDS, Printed, Relation
 from recheck.reading.claims import Draft
 from recheck.reading.naming import Named
 from recheck.reading.quoting import Sentence
@@ -37,7 +37,7 @@ def told_in_words(draft: Draft, name: Named, sentence: Sentence) -> Named:
         return name
     text = "significant" if relation == "<" else "not significant"
     p = Printed(text, Decimal("0.05"), 2, relation)
-    return replace(name, values={**name.values, "p": p}, notes=(*name.notes, "p is told in words"))
+    return replace(name, values={**name.values, "p": p}, notes=(*name.notes, P_IN_WORDS))
 
 
 _TURNING = words("but although though while whereas however it did yet")

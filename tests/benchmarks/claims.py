@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from recheck.checks.running import run_checks
 from recheck.documents import open_document
-from recheck.model import Context, Settings
+from recheck.model import Settings
 from recheck.reading import read
 from tests.benchmarks.pages import default_extraction, glyphs_and_lines, interleaved
 
@@ -14,7 +14,7 @@ def claims_ratios(data: bytes, *, rounds: int = 4) -> tuple[float, float]:
     document = open_document(data, name="sample.pdf")
 
     def claims_and_checks() -> None:
-        run_checks(read(document).claims, Context(), Settings())
+        run_checks(read(document).claims, Settings())
 
     works = (claims_and_checks, lambda: default_extraction(data), lambda: glyphs_and_lines(data))
     mine, extraction, pages = interleaved(works, rounds)

@@ -4,7 +4,7 @@ from dataclasses import replace
 
 from recheck.checks import registry
 from recheck.checks.running import run_checks
-from recheck.model import Context, Settings
+from recheck.model import Settings
 from tests.checks.claims import claim
 
 
@@ -14,7 +14,7 @@ def test_a_fault_is_one_unchecked_finding(monkeypatch):
 
     checks = tuple(replace(c, run=fails) if c.name == "p-from-t" else c for c in registry.all_checks())
     monkeypatch.setattr("recheck.checks.running.all_checks", lambda: checks)
-    found = run_checks([claim("t-test", t="2.20", df="28", p=".036", d="0.8")], Context(), Settings())
+    found = run_checks([claim("t-test", t="2.20", df="28", p=".036", d="0.8")], Settings())
     verdicts = {f.check: f.verdict for f in found}
     assert verdicts["p-from-t"] == "unchecked"
     assert verdicts["d-from-t"] == "agrees"
@@ -22,13 +22,13 @@ def test_a_fault_is_one_unchecked_finding(monkeypatch):
 
 
 def test_missing_df_is_named():
-    (found,) = run_checks([claim("t-test", t="2.20", p=".036")], Context(), Settings())
+    (found,) = run_checks([claim("t-test", t="2.20", p=".036")], Settings())
     assert (found.verdict, found.check) == ("unchecked", "p-from-t")
     assert "df" in found.message
 
 
 def test_ids_are_stable():
     claims = [claim("t-test", t="2.20", df="28", p=".036")]
-    first = run_checks(claims, Context(), Settings())
-    again = run_checks(claims, Context(), Settings())
+    first = run_checks(claims, Settings())
+    again = run_checks(claims, Settings())
     assert [f.id for f in first] == [f.id for f in again]
