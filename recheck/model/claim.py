@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Literal
 
-from recheck.model.document import Place
+from recheck.model.passage import Place
 from recheck.model.printed import Printed
 
 ClaimKind = Literal[
@@ -72,6 +72,8 @@ class Claim:
     quantity that `ci_low` and `ci_high` belong to, where that is sure. `groups` are ids of linked
     group summaries, in the order in which they are printed; `link` says on what ground, and
     `link_confidence` how sure that is (`confidence` speaks of the claim's own numbers alone).
+    `outcome` names what was measured and `group` whom a summary or a count is about, in the
+    manuscript's words, where a table or the text says so.
     """
 
     id: str
@@ -86,6 +88,8 @@ class Claim:
     link: str | None = None
     link_confidence: Confidence = "high"
     notes: tuple[str, ...] = field(default=())
+    outcome: str | None = None
+    group: str | None = None
 
     def says(self, *words: str) -> bool:
         """Tell whether any of the words is stated of this claim itself."""

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from typing import ClassVar, Literal
 
 from recheck.model.claim import Claim, Confidence
-from recheck.model.document import Place
+from recheck.model.passage import Place
 
 Verdict = Literal["impossible", "inconsistent", "conditional", "agrees", "unchecked"]
 VERDICTS: tuple[Verdict, ...] = ("impossible", "inconsistent", "conditional", "agrees", "unchecked")

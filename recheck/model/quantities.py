@@ -4,7 +4,7 @@ QUANTITIES: dict[str, str] = {
     "t": "t", "z": "z", "F": "F", "chi2": "χ²", "r": "r", "u": "U", "w": "W",
     "df": "df", "df1": "df1", "df2": "df2", "p": "p", "alpha": "α",
     "mean": "mean", "sd": "SD", "se": "SE", "n": "n", "N": "N",
-    "median": "median", "iqr": "IQR", "min": "minimum", "max": "maximum",
+    "median": "median", "iqr": "IQR", "q1": "first quartile", "q3": "third quartile", "min": "minimum", "max": "maximum",
     "mean_difference": "mean difference", "se_difference": "SE of the difference",
     "ci_low": "lower end of the CI", "ci_high": "upper end of the CI", "ci_level": "level of the CI",
     "d": "d", "g": "g", "delta": "Δ", "d_z": "d_z", "d_av": "d_av", "d_rm": "d_rm", "r_pb": "r_pb",
@@ -12,9 +12,9 @@ QUANTITIES: dict[str, str] = {
     "epsilon2": "ε²", "f": "f", "f2": "f²", "phi": "φ", "cramers_v": "V",
     "b": "b", "beta": "β", "intercept": "intercept", "r2": "R²", "adjusted_r2": "adjusted R²",
     "or": "OR", "rr": "RR", "rd": "RD", "hr": "HR",
-    "count": "count", "total": "total", "percent": "percent", "power": "power",
+    "count": "count", "total": "total", "percent": "percent", "power": "power", "stars": "stars",
     "scale_min": "lowest score", "scale_max": "highest score", "items_per_score": "items per score",
-    "mse": "MSE", "estimate": "estimate",
+    "ss": "SS", "ms": "MS", "ss_error": "SS of the error", "ms_error": "MS of the error", "ss_total": "total SS", "mse": "MSE", "estimate": "estimate",
 }  # fmt: skip
 
 

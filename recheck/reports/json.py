@@ -102,6 +102,8 @@ def _claim(claim: Claim) -> dict[str, Any]:
         "interval_of": claim.interval_of,
         "confidence": claim.confidence,
         "groups": list(claim.groups),
+        "outcome": claim.outcome,
+        "group": claim.group,
         "link": claim.link,
         "link_confidence": claim.link_confidence,
         "notes": list(claim.notes),

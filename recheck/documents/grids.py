@@ -1,0 +1,66 @@
+"""Rows of cells, as markup lists them, put into the grid that a reader sees."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from recheck.model import Cell, Passage, Table
+
+MOST_PLACES = 200_000
+"""Places of the largest grid that is built; spans in a file can ask for any number."""
+_WIDEST = 1000
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Spanned:
+    """A cell as markup gives it: what it holds and how far it reaches; its place follows from its row."""
+
+    passage: Passage
+    row_span: int = 1
+    column_span: int = 1
+    heading: bool = False
+    indent: int = 0
+
+
+def table_of(
+    rows: Sequence[Sequence[Spanned]],
+    *,
+    label: str = "",
+    caption: Passage | None = None,
+    notes: tuple[Passage, ...] = (),
+    header_rows: int = 0,
+    section: str | None = None,
+    before: int = 0,
+) -> Table:
+    """Place each cell in the first free column of its row, as HTML does; spans end with the table.
+
+    A row span of 0 reaches to the last row. Cells beyond the limits of the grid are left out, and the table says so.
+    """
+    cells, columns, whole = _placed(rows)
+    return Table(
+        cells, len(rows), columns, label=label, caption=caption, notes=notes, header_rows=header_rows,
+        section=section, before=before, doubts=() if whole else ("the table is larger than recheck reads; the rest was left out",),
+    )  # fmt: skip
+
+
+def _placed(rows: Sequence[Sequence[Spanned]]) -> tuple[tuple[Cell, ...], int, bool]:
+    taken: set[tuple[int, int]] = set()
+    cells: list[Cell] = []
+    columns, whole = 0, True
+    for row, given in enumerate(rows):
+        column = 0
+        for cell in given:
+            while (row, column) in taken:
+                column += 1
+            height = min(cell.row_span or len(rows), len(rows) - row)
+            width = min(max(cell.column_span, 1), _WIDEST)
+            if len(taken) + height * width > MOST_PLACES:
+                whole = False
+                continue
+            places = [(row + down, column + right) for down in range(height) for right in range(width)]
+            taken.update(places)
+            cells.append(Cell(cell.passage, row, column, height, width, cell.heading, cell.indent))
+            columns = max(columns, column + width)
+            column += width
+    return tuple(cells), columns, whole
