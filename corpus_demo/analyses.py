@@ -142,9 +142,36 @@ def power_of_t(d: float, n: int) -> float:
     return float(upper + lower)
 
 
+def risk_ratio(table: Counts) -> Numbers:
+    """The risk ratio of the first group against the second with its 95% CI (log scale, Katz 1978)."""
+    (a, b), (c, d) = table.tolist()
+    ratio = (a / (a + b)) / (c / (c + d))
+    spread = 1.959963985 * np.sqrt(1 / a - 1 / (a + b) + 1 / c - 1 / (c + d))
+    return {"rr": ratio, "lo": ratio * np.exp(-spread), "hi": ratio * np.exp(spread)}
+
+
+def regression(outcome: Data, predictors: Sequence[Data]) -> list[Numbers]:
+    """Least squares: for the intercept and each predictor b, its SE, t and p; R² and F with the first."""
+    design = np.column_stack([np.ones(len(outcome)), *predictors])
+    inverse = np.linalg.inv(design.T @ design)
+    b = inverse @ design.T @ outcome
+    residual = outcome - design @ b
+    df2, df1 = len(outcome) - design.shape[1], len(predictors)
+    se = np.sqrt(residual @ residual / df2 * np.diag(inverse))
+    r2 = 1 - residual @ residual / ((outcome - outcome.mean()) ** 2).sum()
+    rows: list[Numbers] = [
+        {"b": b[i], "se": se[i], "t": b[i] / se[i], "p": 2 * stats.t.sf(abs(b[i] / se[i]), df2)}
+        for i in range(len(b))
+    ]
+    f = r2 / df1 / ((1 - r2) / df2)
+    rows[0] |= {"r2": r2, "F": f, "df1": df1, "df2": df2, "pF": stats.f.sf(f, df1, df2), "n": len(outcome)}
+    return rows
+
+
 def _f_test(effect: float, df1: int, error: float, df2: int) -> Numbers:
     value = (effect / df1) / (error / df2)
     return {
         "F": float(value), "df1": df1, "df2": df2, "p": float(stats.f.sf(value, df1, df2)),
-        "partial_eta2": float(effect / (effect + error)),
+        "partial_eta2": float(effect / (effect + error)), "ss": float(effect), "ms": float(effect / df1),
+        "ss_error": float(error), "ms_error": float(error / df2),
     }  # fmt: skip

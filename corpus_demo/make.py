@@ -17,10 +17,12 @@ from pathlib import Path
 
 import pypdfium2
 import regex
+from marked import WRITERS
 from plants import PLANTS, Plant
 from reportlab.platypus import Flowable
+from tables import grid_of
 from trials import OVENS, TRIALS, Results
-from typeset import bars, manuscript, plain, two_columns
+from typeset import bars, blocks, manuscript, plain, two_columns
 
 HERE = Path(__file__).resolve().parent
 Slots = dict[str, dict[str, str]]
@@ -40,10 +42,11 @@ class Style:
 USUAL = {
     "m": 1, "sd": 1, "difference": 1, "lo": 1, "hi": 1, "t": 2, "F": 2, "chi2": 2, "r": 2, "d": 2,
     "v": 2, "eta2": 2, "partial_eta2": 2, "epsilon": 2, "percent": 1, "power": 2,
-    "liking": 2, "sourness": 2,
+    "liking": 2, "sourness": 2, "rr": 2, "b": 2, "se": 2, "r2": 2, "ss": 2, "ms": 2, "ss_error": 2, "ms_error": 2,
 }  # fmt: skip
-BOUNDED = {"p", "r", "v", "eta2", "partial_eta2", "epsilon", "power", "liking", "sourness"}
+BOUNDED = {"p", "r", "v", "eta2", "partial_eta2", "epsilon", "power", "liking", "sourness", "r2"}
 WASTE = {("waste", name): 2 for name in ("difference", "lo", "hi")}
+RISKS = {(risk, end): 2 for risk in ("burns", "scars") for end in ("lo", "hi")}
 JARS = {("rise", "m"): 2, ("rise", "sd"): 2, ("proofing", "m"): 0, ("proofing", "sd"): 0}
 STYLES = {
     "steam_oven.pdf": Style(USUAL | {"lo": 2, "hi": 2}),
@@ -52,6 +55,9 @@ STYLES = {
     ),
     "starter_hydration.md": Style(USUAL, zero=True, special=JARS),
     "tasting_panel.txt": Style(USUAL | {"m": 2, "sd": 2, "lo": 2, "hi": 2, "percent": 0}),
+    "oven_gloves.xml": Style(USUAL | {"percent": 0}, zero=True, special=RISKS),
+    "recipe_recall.docx": Style(USUAL | {"m": 2, "sd": 2}),
+    "crumb_structure.html": Style(USUAL | {"m": 2, "sd": 2}, zero=True),
 }  # fmt: skip
 HEADS = {
     "steam_oven.pdf": "Proceedings of the Quernford Symposium on Hearth Baking, Volume 11",
@@ -81,13 +87,22 @@ def slots(results: Results, style: Style) -> Slots:
     """Write every number of a trial as text: result -> quantity -> text."""
     return {
         result: {name: _slot(result, name, value, style, "r" in numbers) for name, value in numbers.items()}
+        | {"stars": _stars(numbers.get("p", 1.0))}
         for result, numbers in results.items()
     }
 
 
+def _stars(p: float) -> str:
+    return r"\*" * sum(p < level for level in (0.05, 0.01, 0.001))
+
+
 def _slot(result: str, name: str, value: float, style: Style, is_correlation: bool) -> str:
-    base = name.rstrip("0123456789") if name not in ("eta2", "partial_eta2", "chi2", "df1", "df2") else name
-    if base == "p":
+    base = (
+        name.rstrip("0123456789")
+        if name not in ("eta2", "partial_eta2", "chi2", "df1", "df2", "r2")
+        else name
+    )
+    if base in ("p", "pF"):
         return printed_p(value, style)
     if base in ("n", "c") or (base.startswith("df") and float(value).is_integer()):
         return str(int(value))
@@ -99,7 +114,7 @@ def _slot(result: str, name: str, value: float, style: Style, is_correlation: bo
 
 
 def make(directory: Path) -> None:
-    """Write the four articles and truth.json into `directory`."""
+    """Write the articles and truth.json into `directory`."""
     truth = {}
     for name, simulate in TRIALS.items():
         results = simulate()
@@ -114,14 +129,16 @@ def make(directory: Path) -> None:
         _write(path, prose, results)
         truth[name] = {
             "results": len(regex.findall(r"\[(?:t|F|chi2|r)\]\}", template)),
-            "planted": [_truth_of(plant, true[plant], numbers, path) for plant in plants],
+            "planted": [_truth_of(plant, true[plant], numbers, prose, path) for plant in plants],
         }
     text = json.dumps(truth, ensure_ascii=False, indent=2)
     (directory / "truth.json").write_text(text + "\n", encoding="utf-8")
 
 
 def _write(path: Path, prose: str, results: Results) -> None:
-    if path.suffix == ".md":
+    if path.suffix in WRITERS:
+        WRITERS[path.suffix](prose, path)
+    elif path.suffix == ".md":
         path.write_text(prose, encoding="utf-8")
     elif path.suffix == ".txt":
         path.write_text(_wrapped(prose), encoding="utf-8")
@@ -150,15 +167,40 @@ def _figure(results: Results) -> Flowable:
     return bars(heights, OVENS, unit="mm", top=120)
 
 
-def _truth_of(plant: Plant, true: str, numbers: Slots, path: Path) -> dict[str, object]:
-    """Say what was planted, with the page or line on which its snippet starts."""
+def _truth_of(plant: Plant, true: str, numbers: Slots, prose: str, path: Path) -> dict[str, object]:
+    """Say what was planted, with the page, line, section or row of a table in which its snippet stands."""
     snippet = plant.snippet.format_map(numbers)
     facts = {
         k: v for k, v in asdict(plant).items() if k not in ("file", "result", "slot", "change", "snippet")
     }
-    place = _page_of(plain(snippet), path) if path.suffix == ".pdf" else _line_of(snippet, path)
-    snippet = plain(snippet) if path.suffix == ".pdf" else snippet
+    place: dict[str, object] = {}
+    if path.suffix in WRITERS:
+        place = _section_or_row_of(snippet, prose)
+    elif path.suffix == ".pdf":
+        place |= _page_of(plain(snippet), path)
+    else:
+        place |= _line_of(snippet, path)
+    if path.suffix in (".pdf", *WRITERS):
+        snippet = plain(snippet).replace("|", " | ")
     return {"printed": snippet, "changed_to": plant.change, "true": true, **place, **facts}
+
+
+def _section_or_row_of(snippet: str, prose: str) -> dict[str, object]:
+    section, found = "", []
+    for kind, text in blocks(prose):
+        if kind in ("##", "###"):
+            section = text.strip()
+        elif kind == "@table":
+            found += [
+                {"table": grid_of(text).label, "row": plain(line.split("|")[0])}
+                for line in text.split("\n")
+                if snippet in line.replace("|= ", "|")
+            ]
+        elif snippet in text:
+            found.append({"section": section})
+    if len(found) != 1:
+        raise SystemExit(f"{snippet!r} must stand once (found {found})")
+    return found[0]
 
 
 def _page_of(snippet: str, path: Path) -> dict[str, int]:

@@ -28,6 +28,7 @@ class Plant:
 
 STEAM, COACHING = "steam_oven.pdf", "bench_coaching.pdf"
 STARTER, PANEL = "starter_hydration.md", "tasting_panel.txt"
+GLOVES, RECALL, CRUMB = "oven_gloves.xml", "recipe_recall.docx", "crumb_structure.html"
 PLANTS = (
     Plant(
         STEAM, "interaction", "p", "= .015",
@@ -88,5 +89,35 @@ PLANTS = (
         PANEL, "price", "p", "= .029",
         "t({price[df]}) = {price[t]}, p {price[p]}",
         "p", "conditional", False, "p of a t test that is one-tailed and does not say so",
+    ),
+    Plant(
+        GLOVES, "women", "percent1", "46",
+        "Women, n (%)|{women[c1]} ({women[percent1]})",
+        "percent", "conditional", False, "percentage of a count: a digit is wrong; another number of apprentices could give it",
+    ),
+    Plant(
+        GLOVES, "minutes", "lo", "−9.6",
+        "{minutes[difference]} ({minutes[lo]} to {minutes[hi]})",
+        "mean_difference", "inconsistent", False, "CI in a table that leaves out its own estimate: a digit is lost",
+    ),
+    Plant(
+        RECALL, "later", "t", "3.29",
+        "{later[sd2]}|{later[t]}",
+        "t", "inconsistent", False, "t in a table that does not follow from its groups: digits swapped",
+    ),
+    Plant(
+        RECALL, "confidence_told", "m1", "5.50",
+        "*M* = {confidence_told[m1]}, *SD* = {confidence_told[sd1]}",
+        "mean", "conditional", False, "mean that the table gives otherwise: a digit is wrong",
+    ),
+    Plant(
+        CRUMB, "flour", "ms", "6.42",
+        "{flour[df1]}|{flour[ms]}",
+        "ms", "inconsistent", False, "mean square that is not SS/df: digits swapped",
+    ),
+    Plant(
+        CRUMB, "salt", "se", "1.40",
+        "{salt[b]}|{salt[se]}",
+        "t", "inconsistent", False, "t of a coefficient that is not b/SE: the digits of the SE are swapped",
     ),
 )  # fmt: skip

@@ -1,4 +1,4 @@
-"""The four invented trials: simulated raw data, and every number that their articles print.
+"""The invented trials: simulated raw data, and every number that their articles print.
 
 Each function draws its raw data from a generator with a fixed seed, rounds them as the instrument
 would (0.1 mm, a tenth of a minute, whole scores) and returns the analyses by name.
@@ -18,7 +18,9 @@ from analyses import (
     one_way,
     paired,
     power_of_t,
+    regression,
     repeated,
+    risk_ratio,
     summary,
     two_groups,
     two_way,
@@ -116,11 +118,76 @@ def tasting_panel(seed: int = 19) -> Results:
     }  # fmt: skip
 
 
+def oven_gloves(seed: int = 41) -> Results:
+    """Apprentices given long or short oven gloves for a season: burns, grip strength, minutes lost."""
+    draw = default_rng(seed)
+    long, short = 61, 59
+
+    def arms(first: float, second: float, sd: float) -> Numbers:
+        return two_groups(_heights(draw, first, sd, long), _heights(draw, second, sd, short))
+
+    burns = _collapses(draw, (long, short), (0.26, 0.49))
+    scars = _collapses(draw, (long, short), (0.12, 0.2))
+    return {
+        "age": arms(20.4, 20.6, 2.8), "bench": arms(14.9, 14.6, 6.1), "start": arms(38.1, 37.8, 7.4),
+        "women": collapsed(_collapses(draw, (long, short), (0.44, 0.41))),
+        "left": collapsed(_collapses(draw, (long, short), (0.11, 0.14))),
+        "grip": arms(37.9, 34.2, 7.2), "minutes": arms(41.2, 52.6, 19.4), "comfort": arms(4.2, 5.1, 1.3),
+        "burns": {**collapsed(burns), **risk_ratio(burns)}, "scars": {**collapsed(scars), **risk_ratio(scars)},
+    }  # fmt: skip
+
+
+def recipe_recall(seed: int = 52) -> Results:
+    """Apprentices who copied recipes by hand or photographed them, and how their scores go together."""
+    draw = default_rng(seed)
+    n, each = 64, 32
+    shared = draw.normal(0, 1, n)
+    recall = np.round(21 + 3.2 * shared + draw.normal(0, 2.6, n) + np.repeat([2.2, 0.0], each))
+    years = np.round(np.abs(2.6 + 0.7 * shared + draw.normal(0, 1.2, n)), 1)
+    sleep = np.round(7.1 + 0.2 * shared + draw.normal(0, 0.8, n), 1)
+    liking = _on_scale(4.6 - 0.5 * shared + draw.normal(0, 1.1, n))
+    scores = {"recall": recall, "years": years, "sleep": sleep, "liking": liking}
+    pairs = {f"{a}_{b}": correlation(scores[a], scores[b]) for a in scores for b in scores if a > b}
+    later = [_heights(draw, mean, 4.1, each) for mean in (17.4, 14.2)]
+    copying = [_heights(draw, mean, 2.2, each) for mean in (9.8, 3.1)]
+    confidence = two_groups(_scale_means(draw, 4.9, each), _scale_means(draw, 4.7, each))
+    errors = [np.abs(_heights(draw, mean, 2.4, each)) for mean in (5.2, 6.9)]
+    return {
+        **{name: summary(data) for name, data in scores.items()}, **pairs,
+        "now": two_groups(recall[:each], recall[each:]), "later": two_groups(*later),
+        "errors": two_groups(*errors), "copying": two_groups(*copying),
+        "confidence": confidence, "confidence_told": confidence,
+    }  # fmt: skip
+
+
+def crumb_structure(seed: int = 63) -> Results:
+    """Pore size by flour and hydration (12 loaves a cell), and a regression of softness after three days."""
+    draw = default_rng(seed)
+    cells = np.array(
+        [
+            [_heights(draw, 3.1 + 0.5 * wet + 0.5 * flour + 0.3 * wet * flour, 0.9, 12) for wet in range(3)]
+            for flour in range(2)
+        ]
+    )
+    anova = two_way(cells)
+    water, salt, age = _heights(draw, 70, 5, 48), _heights(draw, 2.0, 0.3, 48), _heights(draw, 30, 9, 48)
+    softness = np.round(14 + 0.21 * (water - 70) - 1.1 * (salt - 2) + draw.normal(0, 2.1, 48), 1)
+    model = regression(softness, [water, salt, age])
+    means = {f"cell{f}{w}": summary(cells[f, w]) for f in range(2) for w in range(3)}
+    return {
+        "flour": anova["rows"], "hydration": anova["columns"], "interaction": anova["interaction"], **means,
+        "model": model[0], "water": model[1], "salt": model[2], "starter": model[3],
+    }  # fmt: skip
+
+
 TRIALS = {
     "steam_oven.pdf": steam_oven,
     "bench_coaching.pdf": bench_coaching,
     "starter_hydration.md": starter_hydration,
     "tasting_panel.txt": tasting_panel,
+    "oven_gloves.xml": oven_gloves,
+    "recipe_recall.docx": recipe_recall,
+    "crumb_structure.html": crumb_structure,
 }
 
 

@@ -32,6 +32,8 @@ from reportlab.platypus import (
 )
 
 Block = tuple[str, str]
+STAR = "\ue000"
+"""Stands for a star that is no markup while markup is read."""
 WIDTH, HEIGHT = A4
 MARKS = (
     (r"\*\*(.+?)\*\*", r"<b>\1</b>"),
@@ -53,10 +55,12 @@ def blocks(prose: str) -> list[Block]:
 
 
 def plain(text: str) -> str:
-    """Take the inline markup out of a text."""
-    return regex.sub(
-        r"\*\*(.+?)\*\*|\*(.+?)\*|\^(.+?)\^|~(.+?)~", lambda m: next(filter(None, m.groups())), text
+    """Take the inline markup out of a text; `\\*` is a star."""
+    stars = text.replace(r"\*", STAR)
+    found = regex.sub(
+        r"\*\*(.+?)\*\*|\*(.+?)\*|\^(.+?)\^|~(.+?)~", lambda m: next(filter(None, m.groups())), stars
     )
+    return found.replace(STAR, "*")
 
 
 def two_columns(prose: str, path: Path, *, head: str, figure: Flowable) -> None:
