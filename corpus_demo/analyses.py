@@ -143,11 +143,13 @@ def power_of_t(d: float, n: int) -> float:
 
 
 def risk_ratio(table: Counts) -> Numbers:
-    """The risk ratio of the first group against the second with its 95% CI (log scale, Katz 1978)."""
+    """The risk ratio of the first group against the second with its 95% CI and Wald p (log scale, Katz 1978)."""
     (a, b), (c, d) = table.tolist()
     ratio = (a / (a + b)) / (c / (c + d))
-    spread = 1.959963985 * np.sqrt(1 / a - 1 / (a + b) + 1 / c - 1 / (c + d))
-    return {"rr": ratio, "lo": ratio * np.exp(-spread), "hi": ratio * np.exp(spread)}
+    se = np.sqrt(1 / a - 1 / (a + b) + 1 / c - 1 / (c + d))
+    spread = stats.norm.ppf(0.975) * se
+    p = 2 * stats.norm.sf(abs(np.log(ratio)) / se)
+    return {"rr": ratio, "lo": ratio * np.exp(-spread), "hi": ratio * np.exp(spread), "p": float(p)}
 
 
 def regression(outcome: Data, predictors: Sequence[Data]) -> list[Numbers]:

@@ -59,7 +59,7 @@ def _audit(
     all_checks()
     reading = read(document)
     settings = _settings(reading.context, alpha, reader)
-    findings = run_checks(reading.claims, settings)
+    findings = run_checks(reading.claims, settings, same=reading.same)
     if document.format == "pdf" and reader == "auto" and document.reader == "pdfium" and source is not None:
         findings = confirm(findings, reading.claims, lambda pages: _second(source, document, pages))
     facts = DocumentFacts(

@@ -91,7 +91,8 @@ def audit(
 ) -> None:
     """List the discrepancies in manuscripts, worst first.
 
-    FILE is a PDF or a plain text, told apart by content; - is standard input.
+    FILE is a PDF, a Word document (DOCX), JATS XML, HTML, Markdown or plain text, told apart by content;
+    - is standard input.
     """
     if files.count("-") > 1:
         raise click.UsageError("- (standard input) can be read only once.")

@@ -9,7 +9,7 @@ from recheck.checks.registry import find_check
 from recheck.errors import RecheckError
 from recheck.model import DISCREPANT, Claim, Finding, Printed, Reading
 
-GROUP_QUANTITIES = frozenset(("mean", "sd", "se", "n"))
+GROUP_QUANTITIES = frozenset(("mean", "sd", "se", "n", "count", "total", "percent"))
 SecondReader = Callable[[Sequence[int] | None], Reading]
 
 
@@ -50,7 +50,7 @@ def _pages(claim: Claim) -> Iterable[int]:
 def _used(finding: Finding, claim: str) -> frozenset[str]:
     """The numbers of a claim that a finding rests on."""
     if claim != finding.claims[0]:
-        return GROUP_QUANTITIES
+        return GROUP_QUANTITIES | {finding.quantity}
     return frozenset((finding.quantity, *find_check(finding.check).needs))
 
 

@@ -49,15 +49,25 @@ def test_text_without_statistics_has_nothing_to_check():
 
 
 @pytest.mark.parametrize(
-    ("data", "kind"),
+    ("data", "format_"),
     [
-        (b"<!DOCTYPE html><html><p>t(28) = 2.20, p = .010</p></html>", "HTML"),
-        (b'<?xml version="1.0"?><article>t(28) = 2.20, p = .010</article>', "XML"),
+        (b"<!DOCTYPE html><html><p>t(28) = 2.20, p = .010</p></html>", "html"),
+        (
+            b'<?xml version="1.0"?><article><body><p>t(28) = 2.20, p = .010</p></body></article>',
+            "jats",
+        ),
+        (b"The loaves differed, t(28) = 2.20, p = .010.", "text"),
     ],
 )
-def test_markup_is_refused_and_not_read_as_prose(data, kind):
-    with pytest.raises(UnreadableDocument, match=f"it is {kind}, which is not read"):
-        recheck.audit(data, name="loaves")
+def test_every_format_is_told_by_its_content(data, format_):
+    found = recheck.audit(data, name="loaves.pdf")
+    assert found.document.format == format_
+    assert [finding.check for finding in found.findings if finding.verdict == "inconsistent"] == ["p-from-t"]
+
+
+def test_markup_of_another_kind_is_refused():
+    with pytest.raises(UnreadableDocument, match="recipe"):
+        recheck.audit(b'<?xml version="1.0"?><recipe>t(28) = 2.20, p = .010</recipe>', name="loaves")
 
 
 @pytest.mark.parametrize("alpha", [0, 1, 2, -0.05, float("nan"), "x"])

@@ -23,7 +23,7 @@ from recheck.model import DISCREPANT, VERDICTS, Audit, Claim, Finding, Place
 DEMO = Path(__file__).parents[1] / "corpus_demo"
 TRUTH: dict[str, dict[str, Any]] = json.loads((DEMO / "truth.json").read_text(encoding="utf-8"))
 PLANTED = [(name, plant) for name, article in TRUTH.items() for plant in article["planted"]]
-TESTS = ("t-test", "F-test", "chi2-test", "correlation")
+TESTS = ("t-test", "F-test", "chi2-test", "correlation", "regression")
 
 
 @cache
@@ -103,7 +103,8 @@ def test_readme_tells_what_is_planted() -> None:
         place = next(f"{name} {plant[name]}" for name in named if name in plant).replace(
             "table Table", "Table"
         )
-        assert f"| `{name}`, {place} | `{plant['printed']}` |" in text
+        printed = plant["printed"].replace("|", r"\|")
+        assert f"| `{name}`, {place} | `{printed}` |" in text
 
 
 def text_of(path: Path) -> str:

@@ -133,6 +133,17 @@ def impossible(
     )  # fmt: skip
 
 
+def doubted(finding: Finding, doubt: str) -> Finding:
+    """A discrepancy as a conditional one: it holds only if something does that other findings put in doubt."""
+    return replace(
+        finding,
+        verdict="conditional",
+        reversal=False,
+        message=f"{finding.message} That is a contradiction only if {doubt}.",
+        assumptions=(*finding.assumptions, doubt),
+    )
+
+
 def _within(attempt: Attempt, bounds: Interval) -> Attempt:
     implied = tuple(
         interval.guarded().within(bounds.low, bounds.high)

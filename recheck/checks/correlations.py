@@ -5,7 +5,11 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Iterator
 
+import numpy as np
+from numpy.typing import NDArray
+
 from recheck.checks.compare import unchecked
+from recheck.checks.examples import table
 from recheck.checks.p_values import (
     NORMAL_P,
     as_interval,
@@ -14,9 +18,9 @@ from recheck.checks.p_values import (
     with_p,
 )
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval
+from recheck.model import N_OF_GROUP, Claim, Finding, Interval
 from recheck.recompute import bounds, ranks, tails
-from recheck.reconcile.readings import Box, Way
+from recheck.reconcile.readings import Box, Way, agrees_as_printed
 
 
 @check(
@@ -63,7 +67,9 @@ def p_from_r(case: Case) -> Iterable[Finding]:
         ways += tail_ways(
             claim, True, lambda box, used: _fewer_df(box, used, n), words=("covariates take up df",)
         )
-    yield judge_p(case, "p-from-r", ways, numbers)
+    whole = size != "df" and N_OF_GROUP in claim.notes
+    doubts = ("no case is missing for these two variables (n is that of the whole group)",) if whole else ()
+    yield judge_p(case, "p-from-r", ways, numbers, doubts=doubts)
 
 
 def _rank_ways(claim: Claim, n: int) -> Iterator[Way]:
@@ -109,3 +115,66 @@ def _normal_r(box: Box, n: int) -> tuple[Interval, ...]:
 def _fewer_df(box: Box, used: int, n: int) -> Interval:
     r = box["r"].absolute().within(0.0, 1.0)
     return as_interval(bounds.p_from_r_bounds(r.low, r.high, max(1.0, (n - 2) / 2), max(1.0, n - 2), used))
+
+
+FEWEST_R = 4
+"""Correlations of one table from which on they can tell a common number of cases."""
+MOST_AGREE = 0.6
+N_GRID = 4.0 * 1.1 ** np.arange(115)
+"""Numbers of cases that are tried: from 4 to about 200,000, a tenth apart."""
+
+
+@check(
+    "p-among-correlations",
+    title="p of a correlation against the other correlations of its table",
+    kinds=("correlation",),
+    quantity="p",
+    needs=("r", "p"),
+    beside="three or more other correlations of the same table with p, none with n",
+    formula="r and p tell n; pairs of one sample have much the same n",
+    source="Fisher (1915) Biometrika 10:507-521",
+    limits="Conditional at most, and only where n would have to be less than half or more than twice that of most others: answers may be missing for some pairs.",
+    conditional=(
+        table(
+            "Table 5. Correlations with loaf height.",
+            "Measure | r | p",
+            "Age | .15 | .09",
+            "Hydration | -.07 | .43",
+            "Oven heat | .17 | .05",
+            "Proofing time | .02 | .82",
+            "Rye share | .06 | .02",
+        ),
+    ),
+)
+def p_among_correlations(case: Case) -> Iterable[Finding]:
+    """Find a p that asks for quite another number of cases than the other correlations of the table."""
+    claim = case.claim
+    others = [other for other in case.block if other.id != claim.id]
+    if len(others) + 1 < FEWEST_R or claim not in case.block:
+        return
+    fitting = np.array([_fitting(other) for other in others])
+    found = fitting.sum(axis=0)
+    if found.max() < max(FEWEST_R - 1, MOST_AGREE * len(others)):
+        return
+    common = N_GRID[found == found.max()]
+    n = Interval(float(common.min()) / 2, 2 * float(common.max()))
+
+    def p_of(box: Box, used: int) -> Interval:
+        r = box["r"].absolute().within(0.0, 1.0)
+        return as_interval(
+            bounds.p_from_r_bounds(r.low, r.high, max(n.low - 2, 1.0), max(n.high - 2, 1.0), used)
+        )
+
+    numbers = with_p(claim, "r")
+    ways = list(tail_ways(claim, True, p_of))
+    if agrees_as_printed("p", numbers, ways):
+        return
+    doubts = (f"much the same cases entered as in the other correlations of the table (n of about {common.min():.0f} to {common.max():.0f})",)  # fmt: skip
+    yield judge_p(case, "p-among-correlations", ways, numbers, doubts=doubts)
+
+
+def _fitting(claim: Claim) -> NDArray[np.bool_]:
+    """Which numbers of cases r and p of a correlation allow."""
+    r, p = claim.values["r"].interval().absolute().within(0.0, 1.0), claim.values["p"].interval()
+    low, high = bounds.p_from_r_bounds(r.low, r.high, N_GRID - 2, N_GRID - 2)
+    return np.asarray((low <= p.high) & (high >= p.low))

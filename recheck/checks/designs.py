@@ -12,7 +12,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from recheck.model import Claim, Interval, Printed
+from recheck.model import N_OF_GROUP, Claim, Interval, Printed
 from recheck.recompute import two_groups
 from recheck.reconcile.readings import Box, Numbers, Way
 
@@ -29,13 +29,17 @@ POOLED, WELCH, PAIRED = (
 
 @dataclass(frozen=True, slots=True)
 class Groups:
-    """Two linked group summaries as numbers named `mean1`, `sd1`, `n1`, `mean2` …"""
+    """Two linked group summaries as numbers named `mean1`, `sd1`, `n1`, `mean2` …
+
+    `of_whole` says that the sizes are those of the whole groups, of which some cases may be missing.
+    """
 
     numbers: Numbers
     spreads: tuple[str, str]
     unlabelled: bool
     n1: int | None
     n2: int | None
+    of_whole: bool = False
 
     @property
     def impossible(self) -> bool:
@@ -66,7 +70,8 @@ def groups_of(first: Claim, second: Claim) -> Groups | None:
             numbers[f"n{i}"] = claim.values["n"]
     unlabelled = first.says("spread-unlabelled") or second.says("spread-unlabelled")
     n1, n2 = whole(numbers.get("n1")), whole(numbers.get("n2"))
-    return Groups(numbers, (spreads[0], spreads[1]), unlabelled, n1, n2)
+    of_whole = N_OF_GROUP in (*first.notes, *second.notes)
+    return Groups(numbers, (spreads[0], spreads[1]), unlabelled, n1, n2, of_whole)
 
 
 @dataclass(frozen=True, slots=True)
@@ -208,8 +213,10 @@ def _fit_known(claim: Claim, groups: Groups, box: Box, df: Printed | None, n1: i
     stated = claim.says("welch") or (telling and claim.suggests("welch"))
     by_welch_df = not (pooled or paired or stated)
     doubt = WELCH_DF if by_welch_df else "" if df is not None or named else UNNAMED
+    missing = (MISSING,) if df is None and groups.of_whole else ()
+    doubts = (doubt, *missing) if doubt else missing
     design = "" if paired and (pooled or welch) else "paired" if paired else "independent"
-    return Fit(ways, "", (doubt,) if doubt else (), design, sure=not doubt)
+    return Fit(ways, "", doubts, design, sure=not doubts)
 
 
 def _telling(df: Interval) -> bool:
@@ -218,6 +225,7 @@ def _telling(df: Interval) -> bool:
 
 
 WELCH_DF = "these df are Welch's, not those of a model with covariates, of fewer cases or of more groups"
+MISSING = "no case is missing (n is that of the whole group)"
 UNNAMED = "this is the plain test of two groups (neither its df nor its name is printed)"
 
 

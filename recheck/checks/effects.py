@@ -10,13 +10,13 @@ from typing import Literal
 import numpy as np
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import SE_READING, Fit, Groups, fit_designs, known, sds, whole
-from recheck.checks.groups import link_doubts, linked_groups, unsigned
+from recheck.checks.designs import SE_READING, Fit, Groups, known, sds, whole
+from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
 from recheck.model import Claim, Finding, Interval
 from recheck.recompute import effects
-from recheck.reconcile.readings import Box, Way, box_of
+from recheck.reconcile.readings import Box, Way
 
 INFINITY = float("inf")
 Denominator = Literal["pooled", "sd1", "sd2", "mean", "rms", "population"]
@@ -131,13 +131,12 @@ def _paired_way(groups: Groups, name: str, n: float) -> Way:
 )
 def d_from_groups(case: Case) -> Iterable[Finding]:
     """Compare |d| or |g| with the two groups, the pooled SD first."""
-    name, linked = effect_of(case.claim), linked_groups(case)
-    if name is None or linked is None:
+    name, linked, fit = effect_of(case.claim), linked_groups(case), fit_of(case)
+    if name is None or linked is None or fit is None:
         return
     groups, claims = linked
     if groups.impossible:
         return
-    fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     if fit.reason:
         yield unchecked(case, "d-from-groups", name, fit.reason, claims)
         return
@@ -148,6 +147,7 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
     sized = groups.n1 is not None and groups.n2 is not None
     doubts = (
         *link_doubts(case),
+        *(() if case.claim.values.keys() & {"df", "df2"} else fit.doubts),
         *(() if sized else ("the effect is that of these two groups (their sizes are not printed)",)),
     )
     comparison = Comparison(

@@ -4,21 +4,30 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable
 from dataclasses import replace
+from functools import lru_cache
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import Groups, fit_designs, groups_of
+from recheck.checks.designs import Fit, Groups, fit_designs, groups_of
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
 from recheck.model import DISCREPANT, Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.reconcile.readings import Box, Way, agrees_as_printed, box_of
 
 
+@lru_cache(maxsize=4)
 def linked_groups(case: Case) -> tuple[Groups, tuple[Claim, ...]] | None:
     """The two summaries that a test is linked to, with all claims involved."""
     if len(case.groups) != 2:
         return None
     groups = groups_of(*case.groups)
     return (groups, (case.claim, *case.groups)) if groups else None
+
+
+@lru_cache(maxsize=4)
+def fit_of(case: Case) -> Fit | None:
+    """The designs that the df fit, for the two groups of a test; None where there are not two."""
+    linked = linked_groups(case)
+    return None if linked is None else fit_designs(case.claim, linked[0], box_of(linked[0].numbers))
 
 
 def link_doubts(case: Case) -> tuple[str, ...]:
@@ -29,20 +38,18 @@ def link_doubts(case: Case) -> tuple[str, ...]:
 
 
 def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Iterable[Finding]:
-    linked = linked_groups(case)
-    if linked is None:
+    linked, fit = linked_groups(case), fit_of(case)
+    if linked is None or fit is None:
         return
     groups, claims = linked
     if groups.impossible:
         yield unchecked(case, name, quantity, "a spread below 0 is printed for one of the groups", claims)
         return
-    numbers = {quantity: case.claim.values[quantity], **groups.numbers}
-    fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     if fit.reason:
         yield unchecked(case, name, quantity, fit.reason, claims)
         return
     foreign = foreign_model(claims, fitted=fit.sure)
-    numbers = {**numbers, quantity: unsigned(case.claim.values[quantity])}
+    numbers = {quantity: unsigned(case.claim.values[quantity]), **groups.numbers}
     comparison = Comparison(
         check=name,
         quantity=quantity,
@@ -124,7 +131,7 @@ def t_from_groups(case: Case) -> Iterable[Finding]:
     title="F with one numerator df against the means, SDs and ns of its two groups",
     kinds=("F-test",),
     quantity="F",
-    needs=("F", "df1", "df2"),
+    needs=("F",),
     beside="two linked groups, each with mean and SD or SE; n of each, else whole df",
     formula="F(1, df) = t(df)², t as from two groups",
     source="Fisher (1925) Statistical Methods for Research Workers",
@@ -138,7 +145,8 @@ def t_from_groups(case: Case) -> Iterable[Finding]:
 )
 def f_from_two_groups(case: Case) -> Iterable[Finding]:
     """Compare F with the squared t that the two groups imply."""
-    if case.claim.values["df1"].value == 1:
+    df1 = case.claim.values.get("df1")
+    if df1 is None or df1.value == 1:
         yield from _judge_statistic(case, "F-from-two-groups", "F", squared=True)
 
 
@@ -161,8 +169,8 @@ def f_from_two_groups(case: Case) -> Iterable[Finding]:
 )
 def difference_from_means(case: Case) -> Iterable[Finding]:
     """Compare a printed mean difference with the printed means."""
-    linked = linked_groups(case)
-    if linked is None:
+    linked, fit = linked_groups(case), fit_of(case)
+    if linked is None or fit is None:
         return
     groups, claims = linked
     numbers = {
@@ -175,7 +183,6 @@ def difference_from_means(case: Case) -> Iterable[Finding]:
         a, b = box["mean1"], box["mean2"]
         return (a.minus(b).absolute(),)
 
-    fit = fit_designs(case.claim, groups, box_of(groups.numbers))
     foreign = foreign_model(claims, fitted=fit.sure and not fit.reason)
     sure = not fit.reason and not fit.doubts and groups.n1 is not None and groups.n2 is not None
     doubts = (

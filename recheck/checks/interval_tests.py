@@ -9,16 +9,16 @@ from dataclasses import dataclass
 from scipy import special
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import Groups, fit_designs, sds
-from recheck.checks.groups import link_doubts, linked_groups, unsigned
-from recheck.checks.intervals import BY_HAND, ESTIMATES, OFF_CENTRE, OTHER_METHOD, RATIOS, ends
+from recheck.checks.designs import Groups, sds
+from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
+from recheck.checks.intervals import BY_HAND, ESTIMATES, OFF_CENTRE, OTHER_METHOD, RATIOS, ends, log_middle
 from recheck.checks.models import foreign_model
 from recheck.checks.p_values import ONE_TAILED, P_RANGE, UNIT_DF, as_interval
 from recheck.checks.registry import Case, check
 from recheck.model import VERDICTS, Claim, Finding, Interval
 from recheck.recompute import bounds, intervals, two_groups
 from recheck.recompute.tails import t_quantile, z_quantile
-from recheck.reconcile.readings import Box, Way, box_of
+from recheck.reconcile.readings import Box, Way, first_agreement
 
 
 def other_widths(level: float, df: float) -> tuple[float, float]:
@@ -36,6 +36,7 @@ def other_widths(level: float, df: float) -> tuple[float, float]:
     return narrower, max(bonferroni, scheffe)
 
 
+USUAL_LEVEL = "taken for a 95% interval, as no level is printed"
 NORMAL = "the interval uses the normal, not the t distribution"
 
 
@@ -160,20 +161,20 @@ def _ci_excuses(claim: Claim) -> tuple[str, ...]:
 
 def _ci_ways(claim: Claim, df: float, slack: Slack) -> tuple[Way, ...]:
     level, printed = level_of(claim)
-    unstated = () if printed else (f"the interval is a {level:.0%} one",)
+    given = () if printed else (USUAL_LEVEL,)
     normal = float(z_quantile((1 - level) / 2)) / float(t_quantile((1 - level) / 2, df))
-    ways = [Way(_t_of_ci(level, df), unstated)]
-    ways.append(Way(_loose_t(level, df, Slack(0.0, normal, normal)), (*unstated, NORMAL)))
+    ways = [Way(_t_of_ci(level, df), (), given)]
+    ways.append(Way(_loose_t(level, df, Slack(0.0, normal, normal)), (NORMAL,), given))
     other_method = Slack(0.0, *other_widths(level, df))
     if claim.interval_of in RATIOS:
-        ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (*unstated, PROFILE)))
+        ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (PROFILE,), given))
         return tuple(ways)
     by_hand = Slack(slack.shift, slack.narrower * min(normal, 1.0), slack.wider)
-    ways.append(Way(_loose_t(level, df, by_hand), (*unstated, BY_HAND)))
+    ways.append(Way(_loose_t(level, df, by_hand), (BY_HAND,), given))
     for other in () if printed else (0.90, 0.99):
         if other != level:
             ways.append(Way(_t_of_ci(other, df), (f"the interval is a {other:.0%} one",)))
-    ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (*unstated, OTHER_METHOD)))
+    ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (OTHER_METHOD,), given))
     return tuple(ways)
 
 
@@ -186,7 +187,7 @@ OPEN_DF = (5.0, 8.0, 15.0, 40.0, UNIT_DF)
 @check(
     "p-from-ci",
     title="p against the confidence interval of a difference, slope or ratio",
-    kinds=("t-test", "comparison", "estimate"),
+    kinds=("t-test", "comparison", "estimate", "regression"),
     quantity="p",
     needs=("p", "ci_low", "ci_high"),
     formula="|t| = c |low + high|/(high − low), ends of ratios as logarithms; p = 2 P(T > |t|)",
@@ -224,19 +225,34 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
             "p is the Wald test of the interval, not that of another test (log-rank, likelihood ratio)",
         )
     adjusted = claim.suggests("adjusted-p", "adjusted-p-post-hoc")
+    dfs = (UNIT_DF,) if ratio else (df.number,) if known and df is not None else OPEN_DF
+    numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
+    ways = _p_ways(case, dfs, ratio=ratio)
+    excuses = _ci_excuses(claim)
+    if ratio and _off_middle(claim) and first_agreement("p", numbers, ways):
+        excuses = (
+            *excuses,
+            "the interval is not symmetric about its ratio (a profile or exact one), so it does not tell p",
+        )
     comparison = Comparison(
         check="p-from-ci",
         quantity="p",
-        numbers={"p": claim.values["p"], "ci_low": low, "ci_high": high},
-        ways=_p_ways(
-            case, (UNIT_DF,) if ratio else (df.number,) if known and df is not None else OPEN_DF, ratio=ratio
-        ),
+        numbers=numbers,
+        ways=ways,
         bounds=P_RANGE,
         doubts=doubts,
-        excuses=_ci_excuses(claim),
+        excuses=excuses,
         excess="p may be adjusted for several tests" if adjusted else "",
     )
     yield judge(case, comparison)
+
+
+def _off_middle(claim: Claim) -> bool:
+    """Tell whether a ratio surely lies off the geometric middle of its interval."""
+    low, high = ends(claim)
+    ratio = claim.values.get(claim.interval_of or "")
+    middle = log_middle(low.interval(), high.interval())
+    return ratio is not None and middle is not None and not middle.meets(ratio.interval())
 
 
 def _p_ways(case: Case, dfs: Sequence[float], *, ratio: bool) -> tuple[Way, ...]:
@@ -265,7 +281,7 @@ def _carried_on(same: Sequence[Way], dfs: Sequence[float], used: int, *, ratio: 
         return (Interval(used / 2 * min(p.low for p in found), used / 2 * max(p.high for p in found)),)
 
     unstated = same[0].unstated
-    return Way(implied, unstated if used == 2 else (*unstated, ONE_TAILED))
+    return Way(implied, unstated if used == 2 else (*unstated, ONE_TAILED), same[0].given)
 
 
 def _logs(interval: Interval) -> Interval:
@@ -291,11 +307,10 @@ def _logs(interval: Interval) -> Interval:
 )
 def ci_from_groups(case: Case) -> Iterable[Finding]:
     """Compare both ends with the two groups; the end that fits worse is told."""
-    claim, linked = case.claim, linked_groups(case)
-    if claim.interval_of != "mean_difference" or linked is None:
+    claim, linked, fit = case.claim, linked_groups(case), fit_of(case)
+    if claim.interval_of != "mean_difference" or linked is None or fit is None:
         return
     groups, claims = linked
-    fit = fit_designs(claim, groups, box_of(groups.numbers))
     if (
         fit.reason
         or fit.design != "independent"
@@ -326,7 +341,7 @@ def ci_from_groups(case: Case) -> Iterable[Finding]:
 def _end_ways(claim: Claim, groups: Groups, side: float) -> Iterator[Way]:
     """Ways to one end of the interval: `side` −1 for the lower, 1 for the upper."""
     level, printed = level_of(claim)
-    unstated = () if printed else (f"the interval is a {level:.0%} one",)
+    given = () if printed else (USUAL_LEVEL,)
     df = claim.values["df"].number
     exact = float(t_quantile((1 - level) / 2, df))
     normal = float(z_quantile((1 - level) / 2))
@@ -336,8 +351,8 @@ def _end_ways(claim: Claim, groups: Groups, side: float) -> Iterator[Way]:
             if welch == claim.says("welch")
             else ("the interval is Welch's" if welch else "the interval is pooled",)
         )
-        yield Way(_end(groups, side, exact, exact, welch=welch), (*unstated, *words))
-        yield Way(_end(groups, side, normal, normal, welch=welch), (*unstated, *words, NORMAL))
+        yield Way(_end(groups, side, exact, exact, welch=welch), words, given)
+        yield Way(_end(groups, side, normal, normal, welch=welch), (*words, NORMAL), given)
     for other in () if printed else (0.90, 0.99):
         if other != level:
             c = float(t_quantile((1 - other) / 2, df))
@@ -347,7 +362,7 @@ def _end_ways(claim: Claim, groups: Groups, side: float) -> Iterator[Way]:
     shift = OFF_CENTRE * exact
     narrower, wider = other_widths(level, df)
     wide = _end(groups, side, narrower * exact - shift, wider * exact + shift, welch=claim.says("welch"))
-    yield Way(wide, (*unstated, OTHER_METHOD))
+    yield Way(wide, (OTHER_METHOD,), given)
 
 
 def _end(

@@ -195,3 +195,17 @@ def ci_centre(case: Case) -> Iterable[Finding]:
     yield judge(
         case, Comparison("ci-centre", "mean_difference", numbers, ways, excuses=excuses, doubts=doubts)
     )
+
+
+def exponential(interval: Interval) -> Interval:
+    """The exponential of an interval, cut where doubles end."""
+    return Interval(math.exp(min(interval.low, 700.0)), math.exp(min(interval.high, 700.0)))
+
+
+def log_middle(low: Interval, high: Interval, off: float = 0.0) -> Interval | None:
+    """The geometric middle of an interval, or what lies off it by a share of half its width in logarithms."""
+    if high.low <= 0 or low.high <= 0:
+        return None
+    logs = [math.log(max(x, 1e-300)) for x in (low.low, low.high, high.low, high.high)]
+    more = off * (logs[3] - logs[0]) / 2
+    return exponential(Interval((logs[0] + logs[2]) / 2 - more, (logs[1] + logs[3]) / 2 + more))

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import replace
 
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.registry import Case
 from recheck.model import P_IN_WORDS, Claim, Finding, Interval, Printed
-from recheck.reconcile.readings import Box, Numbers, Way
+from recheck.recompute.tails import z_quantile
+from recheck.reconcile.readings import Box, Numbers, Way, box_of
 
 P_RANGE = Interval(0.0, 1.0)
 UNIT_DF = 1e9
@@ -114,9 +115,13 @@ def _adjusted(claim: Claim, omnibus: bool = False) -> str:
     return ""
 
 
-def judge_p(case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus: bool = False) -> Finding:
+def judge_p(
+    case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus: bool = False,
+    claims: tuple[Claim, ...] = (), doubts: tuple[str, ...] = (), excuses: tuple[str, ...] = (),
+) -> Finding:  # fmt: skip
     """Judge p by the given ways; `omnibus` says that adjusted post hoc comparisons are not meant."""
     told = P_IN_WORDS in case.claim.notes
+    words = ("the words “significant” or “not significant” speak of this test",) if told else ()
     return judge(
         case,
         Comparison(
@@ -124,12 +129,31 @@ def judge_p(case: Case, name: str, ways: list[Way], numbers: Numbers, *, omnibus
             quantity="p",
             numbers=numbers,
             ways=_with_floor(ways, numbers["p"]),
+            claims=claims,
             bounds=P_RANGE,
-            excuses=_excuses(case.claim),
+            excuses=(*_excuses(case.claim), *excuses),
             excess=_adjusted(case.claim, omnibus),
-            doubts=("the words “significant” or “not significant” speak of this test",) if told else (),
+            doubts=(*words, *doubts),
         ),
     )
+
+
+def loosely(p: Printed, numbers: Numbers, ways: Sequence[Way], *, skewed: bool = False) -> bool:
+    """Tell whether p may be that of another sensible test of the same groups: of ranks, or of fewer cases.
+
+    Compared as normal deviates, around those of the plain ways. Drawn around samples of 8 to 200 from
+    normal, rating and (`skewed`) lognormal scores: tests of ranks lie within these distances.
+    """
+    box = box_of(numbers)
+    plain = [i.within(0.0, 1.0) for way in ways if not way.unstated for i in way.implied(box)]
+    if not plain:
+        return True
+    printed = p.interval().within(0.0, 1.0)
+    low = min(float(z_quantile(i.high / 2)) for i in plain)
+    high = max(float(z_quantile(i.low / 2)) for i in plain)
+    least, most, step = (0.25, 2.5, 2.0) if skewed else (0.65, 1.45, 1.0)
+    loose = Interval(least * low - step, most * high + step)
+    return loose.meets(Interval(float(z_quantile(printed.high / 2)), float(z_quantile(printed.low / 2))))
 
 
 def as_interval(pair: tuple[object, object]) -> Interval:

@@ -10,17 +10,48 @@ from importlib import import_module
 from recheck.errors import UnknownCheck
 from recheck.model import Claim, ClaimKind, Finding, Settings
 
-FAMILIES = ("tails", "correlations", "groups", "effects", "intervals", "interval_tests", "sizes", "ranges")
+FAMILIES = (
+    "tails",
+    "correlations",
+    "groups",
+    "group_p",
+    "anova",
+    "effects",
+    "intervals",
+    "interval_tests",
+    "counts",
+    "count_tests",
+    "regressions",
+    "stars",
+    "sizes",
+    "ranges",
+    "repeats",
+)
 """Modules of checks, in the order in which they are listed and run."""
 
 
 @dataclass(frozen=True, slots=True, eq=False)
+class Twin:
+    """Another claim that tells the same result; `basis` says on what ground, `sure` how firmly."""
+
+    claim: Claim
+    sure: bool
+    basis: str
+
+
+@dataclass(frozen=True, slots=True, eq=False)
 class Case:
-    """A claim with what a check may need beside it: its groups and the settings."""
+    """A claim with what a check may need beside it.
+
+    `groups` are those that it is linked to, `twins` the same result elsewhere, `block` all counts of the
+    categories of one variable of a table, or all correlations of a table, its own among them.
+    """
 
     claim: Claim
     groups: tuple[Claim, ...] = ()
     settings: Settings = field(default_factory=Settings)
+    twins: tuple[Twin, ...] = ()
+    block: tuple[Claim, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, eq=False)

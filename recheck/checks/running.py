@@ -3,28 +3,95 @@
 from __future__ import annotations
 
 import logging
-from collections.abc import Iterator, Sequence
+from collections import Counter
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 
-from recheck.checks.compare import unchecked
-from recheck.checks.registry import Case, Check, all_checks
-from recheck.model import Claim, Finding, Settings, shown
+from recheck.checks.compare import doubted, unchecked
+from recheck.checks.registry import Case, Check, Twin, all_checks
+from recheck.model import DISCREPANT, Claim, Finding, SameResult, Settings, shown
 
 logger = logging.getLogger("recheck")
 
 
-def run_checks(claims: Sequence[Claim], settings: Settings) -> tuple[Finding, ...]:
-    """Give the findings of all checks on all claims, in reading order; one fault loses one check only."""
+def run_checks(
+    claims: Sequence[Claim], settings: Settings, *, same: Sequence[SameResult] = ()
+) -> tuple[Finding, ...]:
+    """Give the findings of all checks on all claims, in reading order; one fault loses one check only.
+
+    `same` are pairs of claims that tell one result.
+    """
     claims = [_as_shares(claim) for claim in claims]
     by_id = {claim.id: claim for claim in claims}
+    twins, blocks = _twins(by_id, same), _blocks(claims)
     findings: list[Finding] = []
     for claim in claims:
         groups = tuple(by_id[g] for g in claim.groups if g in by_id)
-        case = Case(claim=claim, groups=groups, settings=settings)
+        block = blocks.get(_block_of(claim), ())
+        case = Case(claim, groups, settings, twins=twins.get(claim.id, ()), block=block)
         for check in all_checks():
             if claim.kind in check.kinds:
                 findings += _run(check, case)
-    return tuple(findings)
+    return _doubting_columns(findings)
+
+
+FEW_ROWS = 3
+"""Discrepant rows of a table from which on they can be more than misprints."""
+COLUMNS = "the columns of the table hold what their headings say (most of its rows do not fit)"
+
+
+def _doubting_columns(findings: Sequence[Finding]) -> tuple[Finding, ...]:
+    """Findings of one check on a table of which most rows do not fit are conditional.
+
+    One wrong row among many is a misprint; where most are wrong, it is likelier that a column was
+    misunderstood. SDs and SEs that change places in the whole table are the exception: that reconciles all.
+    """
+    seen: dict[tuple[str, str], Counter[bool]] = {}
+    for finding in findings:
+        if finding.place.table and finding.verdict in (*DISCREPANT, "agrees"):
+            rows = seen.setdefault((finding.check, finding.place.table), Counter())
+            rows[finding.verdict in DISCREPANT and not _relabelled(finding)] += 1
+    doubtful = {key for key, rows in seen.items() if rows[True] >= FEW_ROWS and rows[True] > rows[False]}
+    return tuple(
+        doubted(f, COLUMNS)
+        if (f.check, f.place.table or "") in doubtful and f.verdict in DISCREPANT and not _relabelled(f)
+        else f
+        for f in findings
+    )
+
+
+def _relabelled(finding: Finding) -> bool:
+    """Tell whether a spread with the wrong label explains a discrepancy."""
+    return any(remedy.change in ("SD → SE", "SE → SD") for remedy in finding.reconciled_by)
+
+
+def _twins(by_id: Mapping[str, Claim], same: Sequence[SameResult]) -> dict[str, tuple[Twin, ...]]:
+    """The other claims of the same result, by the id of the first."""
+    twins: dict[str, tuple[Twin, ...]] = {}
+    for pair in same:
+        first, second = pair.claims
+        if first in by_id and second in by_id and first != second:
+            twins[first] = (*twins.get(first, ()), Twin(by_id[second], pair.sure, pair.basis))
+    return twins
+
+
+def _block_of(claim: Claim) -> tuple[str, str]:
+    """Table and variable of a count that is one category of several (`Crust | dark`), or table of an r without n; empty for all else."""
+    values, label = claim.values, claim.place.table or ""
+    if claim.kind == "correlation" and {"r", "p"} <= values.keys() and not values.keys() & {"df", "n", "N"}:
+        return (label, "r") if claim.place.row else ("", "")
+    variable, divided, _ = (claim.outcome or "").rpartition(" | ")
+    return (label, variable) if claim.kind == "count" and divided and label else ("", "")
+
+
+def _blocks(claims: Sequence[Claim]) -> dict[tuple[str, str], tuple[Claim, ...]]:
+    """Counts of all categories of one variable, or all correlations of a table, by table and variable."""
+    blocks: dict[tuple[str, str], tuple[Claim, ...]] = {}
+    for claim in claims:
+        key = _block_of(claim)
+        if key != ("", ""):
+            blocks[key] = (*blocks.get(key, ()), claim)
+    return blocks
 
 
 SHARES = frozenset(

@@ -5,25 +5,30 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import replace
 
-from recheck.checks.compare import finding_id, lowest
-from recheck.checks.designs import PAIRED, POOLED, WELCH, fit_designs, groups_of, welch_df, whole
+from recheck.checks.compare import finding_id, lowest, unchecked
+from recheck.checks.designs import PAIRED, POOLED, WELCH, welch_df, whole
+from recheck.checks.groups import fit_of, linked_groups
 from recheck.checks.registry import Case, check
+from recheck.checks.several import ONE_WAY, fit_one_way, several_of
 from recheck.checks.wording import question_for
 from recheck.model import Finding, Implied, Remedy
 from recheck.model.figures import printed_text, span
+from recheck.recompute.anova import MOST_GROUPS
 from recheck.reconcile.readings import box_of
+
+FEWER = "fewer cases entered than the whole groups hold, as the df show"
 
 
 @check(
     "df-from-ns",
-    title="df of a two-group test against its group sizes",
+    title="df of a test of two or more groups against their sizes",
     kinds=("t-test", "F-test"),
     quantity="df",
     needs=(),
-    beside="df; two linked groups with n",
-    formula="pooled: df = n1 + n2 − 2; Welch: Satterthwaite df, from min(n1, n2) − 1 to n1 + n2 − 2; pairs: df = n − 1",
-    source="Satterthwaite (1946) Biometrics Bulletin 2:110-114",
-    limits="Never worse than conditional: cases may be missing, and a covariate or a larger error term changes df.",
+    beside="df; two or more linked groups with n",
+    formula="pooled: df = n1 + n2 − 2; Welch: Satterthwaite df, from min(n1, n2) − 1 to n1 + n2 − 2; pairs: df = n − 1; k groups: df2 = N − k beside df1 = k − 1",
+    source="Satterthwaite (1946) Biometrics Bulletin 2:110-114; Fisher (1925) Statistical Methods for Research Workers",
+    limits="Never worse than conditional: cases may be missing, and a covariate or a larger error term changes df. Fewer df than whole groups have, their n printed in a heading, are unchecked.",
     agrees=(
         "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23.",
     ),
@@ -35,35 +40,70 @@ def df_from_ns(case: Case) -> Iterable[Finding]:
     """Compare the printed df with those of the designs that the two group sizes allow."""
     claim = case.claim
     name = "df" if "df" in claim.values else "df2"
-    if (
-        name not in claim.values
-        or len(case.groups) != 2
-        or (name == "df2" and claim.values["df1"].value != 1)
-    ):
+    if len(case.groups) > 2:
+        yield from _several(case)
         return
-    groups = groups_of(*case.groups)
-    if groups is None or groups.n1 is None or groups.n2 is None:
+    if name not in claim.values or (name == "df2" and "df1" not in claim.values):
         return
-    claims = (claim, *case.groups)
-    box = box_of(groups.numbers)
-    fit = fit_designs(claim, groups, box)
-    total, welch = groups.n1 + groups.n2 - 2, welch_df(box, groups)
+    if name == "df2" and claim.values["df1"].value != 1:
+        return
+    linked, fit = linked_groups(case), fit_of(case)
+    if linked is None or fit is None or linked[0].n1 is None or linked[0].n2 is None:
+        return
+    groups, claims = linked
+    n1, n2 = linked[0].n1, linked[0].n2
+    total, welch = n1 + n2 - 2, welch_df(box_of(groups.numbers), groups)
     implied = [
         Implied(total, total, POOLED, (total,)),
         Implied(welch.low, welch.high, WELCH),
     ]
-    if groups.n1 == groups.n2:
-        implied.append(Implied(groups.n1 - 1, groups.n1 - 1, PAIRED, (groups.n1 - 1,)))
+    if n1 == n2:
+        implied.append(Implied(n1 - 1, n1 - 1, PAIRED, (n1 - 1,)))
     printed = claim.values[name]
     finding = Finding(
         id=finding_id("df-from-ns", claims, name), check="df-from-ns", verdict="agrees", claims=tuple(c.id for c in claims),
         quantity=name, printed=printed_text(printed), implied=tuple(implied), place=claim.place, confidence=lowest(claims),
-        message=f"df {printed_text(printed)} fits groups of {groups.n1} and {groups.n2}.",
+        message=f"df {printed_text(printed)} fits groups of {n1} and {n2}.",
     )  # fmt: skip
     if not fit.reason:
         yield finding
         return
-    yield _other_df(finding, case, groups.n1, groups.n2)
+    if groups.of_whole and printed.number < total:
+        yield unchecked(case, "df-from-ns", name, FEWER, claims)
+        return
+    yield _other_df(finding, case, n1, n2)
+
+
+def _several(case: Case) -> Iterable[Finding]:
+    """df2 of an analysis of variance of three or more groups; another df1 belongs to another comparison."""
+    claim = case.claim
+    several = several_of(case.groups) if len(case.groups) <= MOST_GROUPS else None
+    if several is None or "df2" not in claim.values or "df1" not in claim.values:
+        return
+    if claim.values["df1"].value != several.size - 1 or claim.says("paired", "repeated"):
+        return
+    printed, claims = claim.values["df2"], (claim, *case.groups)
+    expected = several.total - several.size
+    finding = Finding(
+        id=finding_id("df-from-ns", claims, "df2"), check="df-from-ns", verdict="agrees", claims=tuple(c.id for c in claims),
+        quantity="df2", printed=printed_text(printed), implied=(Implied(expected, expected, ONE_WAY, (expected,)),),
+        place=claim.place, confidence=lowest(claims),
+        message=f"df2 {printed_text(printed)} fits {several.size} groups of {several.total} in all.",
+    )  # fmt: skip
+    if not fit_one_way(claim, several, box_of(several.numbers)).reason:
+        yield finding
+        return
+    fewer = printed.number < expected
+    if fewer and several.of_whole:
+        yield unchecked(case, "df-from-ns", "df2", FEWER, claims)
+        return
+    why = (
+        "cases are missing, covariates take up df, or the error term belongs to another model"
+        if fewer
+        else "more units entered the test than these groups hold, or it belongs to another model"
+    )
+    message = f"df2 {printed_text(printed)} is printed; {several.size} groups of {several.total} in all imply {expected}."
+    yield _only_if(finding, case, why, message=message, tolerance="group sizes taken as exact")
 
 
 def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:

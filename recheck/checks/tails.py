@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterable
 
+from recheck.checks.compare import unchecked
+from recheck.checks.group_df import df_of_groups
 from recheck.checks.p_values import (
     ANY_DF,
     NORMAL_P,
@@ -20,7 +22,8 @@ from recheck.checks.p_values import (
     with_p,
 )
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval
+from recheck.checks.source_rows import OTHER_ERROR, PRINTED_ERROR, F_fits_error, alone_in_table, from_source
+from recheck.model import Claim, Finding, Interval, shown
 from recheck.recompute import bounds
 from recheck.reconcile.readings import Box, Way
 
@@ -28,9 +31,10 @@ from recheck.reconcile.readings import Box, Way
 @check(
     "p-from-t",
     title="p that is printed with a t statistic",
-    kinds=("t-test",),
+    kinds=("t-test", "regression"),
     quantity="p",
-    needs=("t", "df", "p"),
+    needs=("t", "p"),
+    beside="df, else two linked groups with n",
     formula="p = 2 P(T > |t|), T with df degrees of freedom; one-tailed P(T > |t|)",
     source="Student (1908) Biometrika 6:1-25; Fisher (1925) Applications of Student's distribution, Metron 5:90-104",
     limits="A p from a permutation test, a bootstrap or an adjustment for several tests does not follow from t.",
@@ -41,6 +45,9 @@ from recheck.reconcile.readings import Box, Way
 def p_from_t(case: Case) -> Iterable[Finding]:
     """Compare the printed p with the p that t and df imply, by the number of tails."""
     claim = case.claim
+    if "df" not in claim.values:
+        yield from _without_df(case, "p-from-t", "t")
+        return
     numbers = with_p(claim, "t", "df")
 
     def p_of(box: Box, used: int, df: Interval | None = None) -> Interval:
@@ -64,7 +71,7 @@ def p_from_t(case: Case) -> Iterable[Finding]:
 @check(
     "p-from-z",
     title="p that is printed with a z statistic",
-    kinds=("z-test", "rank-test"),
+    kinds=("z-test", "rank-test", "regression"),
     quantity="p",
     needs=("z", "p"),
     formula="p = 2 P(Z > |z|), Z standard normal; one-tailed P(Z > |z|)",
@@ -102,9 +109,10 @@ def _exact_z(z: Interval) -> Interval:
 @check(
     "p-from-chi2",
     title="p that is printed with a χ² statistic",
-    kinds=("chi2-test",),
+    kinds=("chi2-test", "regression"),
     quantity="p",
-    needs=("chi2", "df", "p"),
+    needs=("chi2", "p"),
+    beside="df, else the linked counts of two or more groups",
     formula="p = P(X > χ²), X chi-squared with df degrees of freedom",
     source="Pearson (1900) Philosophical Magazine 50:157-175; Fisher (1922) J. R. Stat. Soc. 85:87-94 for df",
     limits="Exact, permutation or robust versions of the test have a p of their own.",
@@ -115,6 +123,9 @@ def _exact_z(z: Interval) -> Interval:
 def p_from_chi2(case: Case) -> Iterable[Finding]:
     """Compare the printed p with the upper tail at χ²."""
     claim = case.claim
+    if "df" not in claim.values:
+        yield from _without_df(case, "p-from-chi2", "chi2")
+        return
     numbers = with_p(claim, "chi2", "df")
 
     def p_of(chi2: Interval, df: Interval) -> tuple[Interval, ...]:
@@ -125,7 +136,7 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
     one_df = numbers["df"].value == 1 and numbers["df"].decimals <= 0
     if not claim.suggests("model-fit") and not claim.suggests("uncorrected-chi2"):
         ways.append(
-            Way(lambda box: p_of(_other_chi2(box["chi2"], one_df), box["df"]), (_other_words(claim, one_df),))
+            Way(lambda box: p_of(other_chi2(box["chi2"], one_df), box["df"]), (_other_words(claim, one_df),))
         )
     if one_df and not claim.suggests("two-tailed"):
         halved = (
@@ -147,7 +158,7 @@ def _other_words(claim: Claim, one_df: bool) -> str:
     return "p is an exact one or that of the likelihood ratio"
 
 
-def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
+def other_chi2(chi2: Interval, one_df: bool) -> Interval:
     """Where the other statistics of a table with this Pearson χ² may lie.
 
     Bounds drawn around 2×2 tables of 10 to 300 cases with expected counts from 1 up: the likelihood
@@ -164,7 +175,8 @@ def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
     title="p that is printed with an F statistic",
     kinds=("F-test",),
     quantity="p",
-    needs=("F", "df1", "df2", "p"),
+    needs=("F", "p"),
+    beside="df1 and df2, else the linked groups with n",
     formula="p = P(X > F), X with df1 and df2 degrees of freedom",
     source="Fisher (1925) Statistical Methods for Research Workers; Greenhouse & Geisser (1959) Psychometrika 24:95-112",
     limits="With repeated measures p may be corrected for sphericity while the nominal df are printed.",
@@ -175,6 +187,9 @@ def _other_chi2(chi2: Interval, one_df: bool) -> Interval:
 def p_from_F(case: Case) -> Iterable[Finding]:
     """Compare the printed p with the upper tail at F."""
     claim = case.claim
+    if not {"df1", "df2"} <= claim.values.keys():
+        yield from _without_df(case, "p-from-F", "F")
+        return
     numbers = with_p(claim, "F", "df1", "df2")
 
     def p_of(box: Box, df1: Interval | None = None, df2: Interval | None = None) -> tuple[Interval, ...]:
@@ -207,7 +222,47 @@ def p_from_F(case: Case) -> Iterable[Finding]:
     ways.append(Way(lambda box: p_of(box, None, Interval(UNIT_DF, UNIT_DF)), (NORMAL_F,)))
     if claim.says("mixed-model"):
         ways.append(Way(lambda box: p_of(box, None, Interval(1.0, UNIT_DF)), (ANY_DF,)))
-    yield judge_p(case, "p-from-F", ways, numbers, omnibus=numbers["df1"].value > 1)
+    doubts: tuple[str, ...] = ()
+    if from_source(claim) and not alone_in_table(claim):
+        ways.append(Way(lambda box: p_of(box, None, Interval(1.0, box["df2"].high)), (OTHER_ERROR,)))
+        doubts = () if F_fits_error(claim) else (PRINTED_ERROR,)
+    yield judge_p(case, "p-from-F", ways, numbers, omnibus=numbers["df1"].value > 1, doubts=doubts)
+
+
+def _without_df(case: Case, name: str, statistic: str) -> Iterable[Finding]:
+    """p where no df are printed: over all df that the groups allow, conditional at most."""
+    claim = case.claim
+    missing = [n for n in ("df1", "df2") if n not in claim.values] if statistic == "F" else ["df"]
+    dfs = df_of_groups(case, statistic)
+    if dfs is None:
+        if claim.kind != "regression":
+            yield unchecked(case, name, "p", f"{', '.join(shown(n) for n in missing)} not printed")
+        return
+    doubts = ("df are those that the groups allow (they are not printed)",)
+    yield judge_p(
+        case, name, list(_open_ways(claim, statistic, dfs)), with_p(claim, statistic), doubts=doubts
+    )
+
+
+def _open_ways(claim: Claim, statistic: str, dfs: tuple[Interval, ...]) -> Iterable[Way]:
+    def p_of(box: Box, factor: float = 1.0) -> tuple[Interval, ...]:
+        x = box[statistic].absolute()
+        if statistic == "t":
+            p = as_interval(bounds.p_from_t_bounds(x.low, x.high, dfs[0].low, dfs[0].high, 2))
+        elif statistic == "chi2":
+            p = as_interval(bounds.p_from_chi2_bounds(x.low, x.high, dfs[0].low, dfs[0].high))
+        else:
+            (a, b) = dfs
+            p = as_interval(bounds.p_from_F_bounds(x.low, x.high, a.low, a.high, b.low, b.high))
+        return (Interval(factor * p.low, factor * p.high),)
+
+    yield Way(p_of)
+    if statistic == "chi2":
+        one_df = dfs[0].high == 1
+        loose = _other_words(claim, one_df)
+        yield Way(lambda box: p_of({**box, statistic: other_chi2(box[statistic], one_df)}), (loose,))
+    if dfs[0].high == 1 or statistic == "t":
+        yield Way(lambda box: p_of(box, 0.5), (ONE_TAILED,))
 
 
 NORMAL_F = "p comes from the χ² distribution, as if df2 had no limit"

@@ -7,7 +7,7 @@ from collections.abc import Sequence
 from recheck.model import Claim, Implied, Printed, Verdict, shown
 from recheck.model.figures import interval_text, printed_text, span
 from recheck.reconcile.readings import Numbers, is_exact
-from recheck.reconcile.slips import GROUP_NUMBERS, label
+from recheck.reconcile.slips import GROUP_NUMBERS, label, unit_of
 
 
 def stands_for(numbers: Numbers) -> str:
@@ -45,14 +45,12 @@ def inputs(quantity: str, numbers: Numbers) -> str:
     ]
     if {"ci_low", "ci_high"} <= numbers.keys() - {quantity}:
         rest.append(f"the interval {numbers['ci_low'].text} to {numbers['ci_high'].text}")
-    for i in "12":
-        group = [
-            f"{shown(n[:-1])} {printed_text(p)}"
-            for n, p in numbers.items()
-            if n in GROUP_NUMBERS and n[-1] == i
-        ]
-        if group:
-            rest.append(f"group {i} ({', '.join(group)})")
+    grouped_by: dict[str, list[str]] = {}
+    for n, p in numbers.items():
+        if n in GROUP_NUMBERS and n != quantity:
+            name, i = GROUP_NUMBERS[n]
+            grouped_by.setdefault(f"{unit_of(name)} {i}", []).append(f"{shown(name)} {printed_text(p)}")
+    rest += [f"{unit} ({', '.join(told)})" for unit, told in grouped_by.items()]
     return " and ".join(rest) if len(rest) <= 2 else ", ".join(rest)
 
 

@@ -20,12 +20,16 @@ _LISTED = regex.compile(r"(?:\[\d{1,3}\]|\d{1,3}[.)])\s+\p{Lu}|[•▪–] ")
 
 @dataclass(slots=True, eq=False)
 class Block:
-    """Lines that belong together, in order; `lines` may grow when a text goes on elsewhere."""
+    """Lines that belong together, in order; `lines` may grow when a text goes on elsewhere.
+
+    `table` is the number of the table of which the block is a caption or a note.
+    """
 
     lines: list[Line]
     kind: PassageKind = "body"
     text: str = ""
     section: str | None = None
+    table: int | None = None
 
 
 @dataclass(frozen=True, slots=True)

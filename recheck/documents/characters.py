@@ -78,3 +78,14 @@ def mark_string(marks: NDArray[np.uint8]) -> str:
     if not marks.any():
         return ""
     return "".join(MARKS[mark] for mark in marks.tolist())
+
+
+def plain_text(text: str, marks: str = "") -> tuple[str, str]:
+    """A string and its marks with every character made plain."""
+    if text.isascii():
+        return text, marks
+    held = np.zeros(len(text), dtype=np.uint8)
+    if marks:
+        held = np.array([MARKS.index(mark) for mark in marks], dtype=np.uint8)
+    codes, found, _ = made_plain(as_codes(text), held)
+    return as_text(codes), mark_string(found)

@@ -16,8 +16,6 @@ _BOMS = (
 _ORDINARY = b"\t\n\r\f\x1b"
 _CONTROLS = bytes(set(range(32)) - set(_ORDINARY))
 _CONTAINERS = (
-    (b"PK\x03\x04", "a ZIP container (DOCX, ODT and EPUB are such)"),
-    (b"\xd0\xcf\x11\xe0", "an old Office document"),
     (b"\x89PNG", "a picture"),
     (b"\xff\xd8\xff", "a picture"),
     (b"{\\rtf", "an RTF document"),

@@ -13,6 +13,7 @@ from recheck.documents.characters import as_text
 from recheck.documents.words import Words
 
 _NUMBER = regex.compile(r"[0-9]+")
+_CAPTIONED = ("table", "figure", "supplementarytable", "supplementaryfigure")
 _EDGE_ROWS = 4
 _SAME_HEIGHT = 4.0
 _SAME_EDGE = 1.6
@@ -32,6 +33,8 @@ def _line_numbers(pages: Sequence[Words]) -> list[NDArray[np.bool_]]:
     edges: list[tuple[int, float]] = []
     for words, mask, (members, values) in zip(pages, masks, alone, strict=True):
         for side, edge, group in _rising(words, members, values, least=6):
+            if _beside_cells(words, group):
+                continue
             mask[group] = True
             edges.append((side, edge))
     for words, mask, (members, values) in zip(pages, masks, alone, strict=True):
@@ -73,9 +76,23 @@ def _rising(
             part = part[np.argsort(words.base[members[part]], kind="stable")]
             steps = np.diff(values[part])
             usual = int(np.median(steps)) if len(steps) else 1
-            if usual in (1, 2, 5, 10) and np.mean(steps == usual) >= 0.75 if len(steps) else least == 1:
+            rising = usual in (1, 2, 5, 10) and np.mean(steps == usual) >= 0.75 if len(steps) else least == 1
+            if rising and _stands_clear(words, members[part]):
                 found.append((side, float(np.median(edges[part])), members[part]))
     return found
+
+
+def _stands_clear(words: Words, group: NDArray[np.intp]) -> bool:
+    """Whether hardly any other word stands over or under a column of numbers: labels of rows share theirs."""
+    left, right = float(words.x0[group].min()), float(words.x1[group].max())
+    sharing = int(((words.x0 < right) & (words.x1 > left)).sum()) - len(group)
+    return sharing <= max(2, 0.35 * len(group))
+
+
+def _beside_cells(words: Words, group: NDArray[np.intp]) -> bool:
+    """Whether most numbers of a column share their row with a few words only, as in a table."""
+    others = np.bincount(words.rows)[words.rows[group]] - 1
+    return bool(np.mean((others > 0) & (others < 5)) > 0.5)
 
 
 def _recurring(pages: Sequence[Words], taken: Sequence[NDArray[np.bool_]]) -> list[NDArray[np.bool_]]:
@@ -85,6 +102,8 @@ def _recurring(pages: Sequence[Words], taken: Sequence[NDArray[np.bool_]]) -> li
     for at, (words, mask) in enumerate(zip(pages, taken, strict=True)):
         for members in _edge_rows(words, mask):
             text = "".join(as_text(words.codes(word)) for word in members.tolist()).lower()
+            if text.startswith(_CAPTIONED) or _is_row(words, members):
+                continue
             pattern = _NUMBER.sub("#", text)
             seen[pattern].append((at, float(words.base[members[0]]), text, members))
     for pattern, found in seen.items():
@@ -93,6 +112,12 @@ def _recurring(pages: Sequence[Words], taken: Sequence[NDArray[np.bool_]]) -> li
                 for at, _, _, members in members_of:
                     masks[at][members] = True
     return masks
+
+
+def _is_row(words: Words, members: NDArray[np.intp]) -> bool:
+    """Whether a row has so many parts that it is the head of a table: running heads have three at most."""
+    gaps = words.x0[members[1:]] - words.x1[members[:-1]]
+    return int((gaps > 0.9 * words.size[members[1:]]).sum()) > 3
 
 
 def _edge_rows(words: Words, taken: NDArray[np.bool_]) -> list[NDArray[np.intp]]:

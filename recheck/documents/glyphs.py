@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, fields
+from dataclasses import dataclass, field, fields, replace
 from typing import Any
 
 import numpy as np
@@ -15,6 +15,9 @@ ASKEW = -1
 
 UNKNOWN = "\ufffd"
 """A character that the font gives no code for at all."""
+
+_FEWEST = 60
+"""Characters of a table that is set sideways; stamps in the margin have fewer or no caption."""
 
 _BOLD_NAMES = ("bold", "black", "heavy", "demi", "cmbx", "-b", ",b", "sfbx", "ecbx")
 _ITALIC_NAMES = ("italic", "oblique", "cmmi", "cmti", "-it", "slanted", "sfti", "ecti")
@@ -28,7 +31,8 @@ class Glyphs:
     on the base line where the character starts, both in points from the top left of the page as it
     is shown; `sizes` (n,) font size times matrix scale; `styles` (n,) bits BOLD and ITALIC;
     `turns` (n,) quarter turns clockwise in which the text runs, 0 upright, ASKEW for others;
-    `pieces` (n,) true for the second and later characters of a ligature.
+    `pieces` (n,) true for the second and later characters of a ligature. `drawn` (m, 5) are the level
+    and upright boxes that are drawn on the page: left, top, right, bottom, 1 if filled and 0 if lines.
     """
 
     page: int
@@ -41,14 +45,15 @@ class Glyphs:
     styles: NDArray[np.uint8]
     turns: NDArray[np.int8]
     pieces: NDArray[np.bool_]
+    drawn: NDArray[np.float32] = field(default_factory=lambda: np.zeros((0, 5), np.float32))
 
     def __len__(self) -> int:
         return len(self.codes)
 
     def only(self, chosen: NDArray[Any]) -> Glyphs:
         """The glyphs that a mask or an index array chooses."""
-        arrays = (f.name for f in fields(self) if f.name not in ("page", "width", "height"))
-        return Glyphs(self.page, self.width, self.height, *(getattr(self, name)[chosen] for name in arrays))
+        arrays = (f.name for f in fields(self) if f.name not in ("page", "width", "height", "drawn"))
+        return replace(self, **{name: getattr(self, name)[chosen] for name in arrays})
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,14 +75,21 @@ class Unopened(Exception):
         super().__init__(locked)
 
 
-def as_glyphs(page: int, width: float, height: float, rows: Sequence[Sequence[float]]) -> Glyphs:
+def as_glyphs(
+    page: int, width: float, height: float, rows: Sequence[Sequence[float]], drawn: Sequence[Sequence[float]] = ()
+) -> Glyphs:  # fmt: skip
     """Glyphs from one row each: code, left, top, right, bottom, x, y, size, style, turn, piece."""
     table = np.array(rows, np.float64).reshape(-1, 11)
     return Glyphs(
         page, width, height, table[:, 0].astype(np.uint32), table[:, 1:5].astype(np.float32),
         table[:, 5:7].astype(np.float32), table[:, 7].astype(np.float32), table[:, 8].astype(np.uint8),
-        table[:, 9].astype(np.int8), table[:, 10].astype(bool),
+        table[:, 9].astype(np.int8), table[:, 10].astype(bool), as_drawn(drawn),
     )  # fmt: skip
+
+
+def as_drawn(boxes: Sequence[Sequence[float]]) -> NDArray[np.float32]:
+    """Boxes (left, top, right, bottom, filled) as an array."""
+    return np.array(boxes, np.float32).reshape(-1, 5)
 
 
 def style_of(font: str) -> int:
@@ -111,21 +123,38 @@ def upright(glyphs: Glyphs) -> tuple[Glyphs, Glyphs]:
     return kept, (kept if turn == 0 else _turned(kept, turn))
 
 
+def sideways(glyphs: Glyphs) -> list[tuple[Glyphs, Glyphs]]:
+    """The parts of a page that stand turned against the rest, as `upright` gives the rest."""
+    counts = np.bincount(glyphs.turns[(glyphs.turns >= 0) & (glyphs.codes != 32)], minlength=4)
+    main = int(counts.argmax())
+    found = []
+    for turn in np.flatnonzero(counts >= _FEWEST).tolist():
+        if turn != main:
+            kept = glyphs.only(glyphs.turns == turn)
+            kept = kept.only(~_overlaid(kept))
+            found.append((kept, kept if turn == 0 else _turned(kept, turn)))
+    return found
+
+
 def _turned(glyphs: Glyphs, turn: int) -> Glyphs:
     width, height = glyphs.width, glyphs.height
-    left, top, right, bottom = glyphs.boxes.T
     x, y = glyphs.origins.T
-    if turn == 1:
-        boxes, origins = (top, width - right, bottom, width - left), (y, width - x)
-    elif turn == 2:
-        boxes, origins = (width - right, height - bottom, width - left, height - top), (width - x, height - y)
-    else:
-        boxes, origins = (height - bottom, left, height - top, right), (height - y, x)
+    origins = ((y, width - x), (width - x, height - y), (height - y, x))[turn - 1]
     size = (width, height) if turn == 2 else (height, width)
+    drawn = np.column_stack((_turned_boxes(glyphs.drawn[:, :4], turn, width, height), glyphs.drawn[:, 4:]))
     return Glyphs(
-        glyphs.page, *size, glyphs.codes, np.column_stack(boxes), np.column_stack(origins),
-        glyphs.sizes, glyphs.styles, np.zeros_like(glyphs.turns), glyphs.pieces,
+        glyphs.page, *size, glyphs.codes, _turned_boxes(glyphs.boxes, turn, width, height),
+        np.column_stack(origins), glyphs.sizes, glyphs.styles, np.zeros_like(glyphs.turns), glyphs.pieces, drawn,
     )  # fmt: skip
+
+
+def _turned_boxes(boxes: NDArray[np.float32], turn: int, width: float, height: float) -> NDArray[np.float32]:
+    left, top, right, bottom = boxes.T
+    if turn == 1:
+        return np.column_stack((top, width - right, bottom, width - left))
+    if turn == 2:
+        return np.column_stack((width - right, height - bottom, width - left, height - top))
+    return np.column_stack((height - bottom, left, height - top, right))
 
 
 def _overlaid(glyphs: Glyphs) -> NDArray[np.bool_]:

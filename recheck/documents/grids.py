@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from dataclasses import dataclass
+from collections.abc import Iterable, Sequence
+from typing import NamedTuple
 
 from recheck.model import Cell, Passage, Table
 
@@ -12,8 +12,7 @@ MOST_PLACES = 200_000
 _WIDEST = 1000
 
 
-@dataclass(frozen=True, slots=True, eq=False)
-class Spanned:
+class Spanned(NamedTuple):
     """A cell as markup gives it: what it holds and how far it reaches; its place follows from its row."""
 
     passage: Passage
@@ -47,20 +46,34 @@ def table_of(
 def _placed(rows: Sequence[Sequence[Spanned]]) -> tuple[tuple[Cell, ...], int, bool]:
     taken: set[tuple[int, int]] = set()
     cells: list[Cell] = []
-    columns, whole = 0, True
+    columns, whole, places, last = 0, True, 0, len(rows)
     for row, given in enumerate(rows):
         column = 0
         for cell in given:
             while (row, column) in taken:
                 column += 1
-            height = min(cell.row_span or len(rows), len(rows) - row)
-            width = min(max(cell.column_span, 1), _WIDEST)
-            if len(taken) + height * width > MOST_PLACES:
+            height = 1 if cell.row_span == 1 else min(cell.row_span or last, last - row)
+            width = 1 if cell.column_span == 1 else min(max(cell.column_span, 1), _WIDEST)
+            places += height * width
+            if places > MOST_PLACES:
                 whole = False
                 continue
-            places = [(row + down, column + right) for down in range(height) for right in range(width)]
-            taken.update(places)
+            if height > 1:
+                taken.update(
+                    (row + down, column + right) for down in range(1, height) for right in range(width)
+                )
             cells.append(Cell(cell.passage, row, column, height, width, cell.heading, cell.indent))
-            columns = max(columns, column + width)
             column += width
+            if column > columns:
+                columns = column
     return tuple(cells), columns, whole
+
+
+def depths(indents: Iterable[int], *, step: int) -> dict[int, int]:
+    """Number indents from the outermost, 0; those that differ by no more than `step` are one depth."""
+    found: dict[int, int] = {}
+    last: int | None = None
+    for indent in sorted(set(indents)):
+        found[indent] = 0 if last is None else found[last] + (indent - last > step)
+        last = indent
+    return found

@@ -23,6 +23,10 @@ _CLOSERS = "\"'”’»)]}*†‡§"
 
 def put_together(lines: list[Line]) -> tuple[str, str, Layout]:
     """The text of some lines, its marks and layout; one character has one mark and one box."""
+    if len(lines) == 1 and lines[0].text.isascii():
+        line = lines[0]
+        layout = Layout(pages=np.full(len(line.codes), line.page, np.int32), boxes=line.boxes)
+        return line.text, mark_string(line.marks), layout
     codes, marks, boxes, pages = [], [], [], []
     for at, line in enumerate(lines):
         last = len(line.codes)

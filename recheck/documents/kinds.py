@@ -51,7 +51,12 @@ def _with_whole_captions(blocks: list[Block], type_: Type) -> list[Block]:
     """Join to a caption the lines that go on directly below it: its text after a bold beginning."""
     found: list[Block] = []
     for block in blocks:
-        if found and found[-1].kind == "caption" and block.kind in ("body", "note", "caption", "figure"):
+        if (
+            found
+            and found[-1].table is None
+            and found[-1].kind == "caption"
+            and block.kind in ("body", "note", "caption", "figure")
+        ):
             above, below = found[-1].lines[-1], block.lines[0]
             step = below.base - above.base
             near = _same_column(found[-1], block) and 0 < step < 1.4 * type_.distance(above.size)
@@ -95,6 +100,8 @@ def _same_column(one: Block, other: Block) -> bool:
 
 def _kind(blocks: list[Block], at: int, type_: Type, *, bottom: bool, beside: bool) -> PassageKind:
     block = blocks[at]
+    if block.table is not None:
+        return block.kind
     first, text = block.lines[0], block.text.strip()
     set_apart = abs(first.size - type_.size) > 0.05 * type_.size or first.bold > 0.1 or first.italic > 0.5
     caption = captioned(text, sure=set_apart)

@@ -18,6 +18,7 @@ from pdfminer.pdfparser import PDFParser
 from pdfminer.utils import apply_matrix_pt
 
 from recheck.documents.glyphs import UNKNOWN, Engine, Glyphs, Unopened, as_glyphs, style_of, turn_of
+from recheck.documents.rules import MOST_PATHS, MOST_SEGMENTS, Point, sides
 
 # Warnings about colours and fonts of a page would land on the user's terminal.
 logging.getLogger("pdfminer").setLevel(logging.CRITICAL)
@@ -68,18 +69,21 @@ def _title(document: PDFDocument) -> str:
 
 
 class _Device(PDFTextDevice):
-    """Collects characters as they are shown; forms inside the page are followed."""
+    """Collects characters as they are shown, and lines and boxes; forms inside the page are followed."""
 
     def __init__(self) -> None:
         super().__init__(PDFResourceManager())
         self._styles: dict[str, int] = {}
         self._outer: list[Any] = []
         self._rows: list[tuple[float, ...]] = []
+        self._drawn: list[tuple[float, ...]] = []
+        self._paths = 0
         self._number, self._crop = 0, (0.0, 0.0, 0.0, 0.0)
 
     def open(self, number: int, page: PDFPage) -> None:
         """Begin a page: what follows is collected for it."""
         self._number, self._rows, self._outer = number, [], []
+        self._drawn, self._paths = [], 0
 
     def begin_page(self, page: PDFPage, ctm: Any) -> None:
         x0, y0, x1, y1 = page.mediabox
@@ -96,10 +100,34 @@ class _Device(PDFTextDevice):
         self._crop = (min(ax, bx), min(ay, by), max(ax, bx), max(ay, by))
 
     def begin_figure(self, name: str, bbox: Any, matrix: Any) -> None:
-        self._outer.append(self.ctm)
+        self._outer.append((self.ctm, self._paths, len(self._drawn)))
+        self._paths = 0
 
     def end_figure(self, name: str) -> None:
-        self.set_ctm(self._outer.pop())
+        ctm, paths, drawn = self._outer.pop()
+        if self._paths > MOST_PATHS:
+            del self._drawn[drawn:]
+        self._paths = paths
+        self.set_ctm(ctm)
+
+    def paint_path(self, graphicstate: Any, stroke: bool, fill: bool, evenodd: bool, path: Any) -> None:
+        self._paths += 1
+        if len(path) > MOST_SEGMENTS:
+            return
+        matrix: Any = self.ctm
+        x0, y1 = self._crop[0], self._crop[3]
+        line: list[Point] = []
+        for kind, *points in (*path, ("m",)):
+            if kind == "h" and line:
+                line.append(line[0])
+            elif kind in "cvy":
+                return
+            elif kind == "m":
+                self._drawn += sides(line, stroked=stroke, filled=fill)
+                line = []
+            if points:
+                x, y = apply_matrix_pt(matrix, points[-2:])
+                line.append((x - x0, y1 - y))
 
     def render_char(
         self,
@@ -146,7 +174,7 @@ class _Device(PDFTextDevice):
     def glyphs(self) -> Glyphs:
         """What was collected since `open`."""
         x0, y0, x1, y1 = self._crop
-        return as_glyphs(self._number, x1 - x0, y1 - y0, self._rows)
+        return as_glyphs(self._number, x1 - x0, y1 - y0, self._rows, self._drawn)
 
 
 def _character(font: Any, cid: int) -> str:

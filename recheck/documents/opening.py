@@ -10,7 +10,9 @@ from pathlib import Path
 from typing import BinaryIO, Literal
 
 from recheck.documents.decoding import decoded
-from recheck.documents.text import text_document
+from recheck.documents.markup.kinds import markup_document, markup_of
+from recheck.documents.typed.text import text_document
+from recheck.documents.word.containers import ZIP_LIMIT, is_ole, is_zip, ole_refusal
 from recheck.errors import UnreadableDocument
 from recheck.model import Document
 
@@ -38,7 +40,7 @@ def open_document(
     reader: Reader = "auto",
     pages: Collection[int] | None = None,
 ) -> Document:
-    """Read a PDF, text or Markdown source; its content tells the format, not its name.
+    """Read a PDF, DOCX, JATS XML, HTML, text or Markdown source; its content tells the format, not its name.
 
     `pages` (from 1) restricts a PDF to those pages. `reader` names the engine for PDF; `auto` is
     pdfium, and pdfminer for files that pdfium cannot open. Raises `UnreadableDocument`.
@@ -49,30 +51,21 @@ def open_document(
         from recheck.documents.pdf import pdf_document
 
         return pdf_document(data, name=name, reader=reader, pages=pages)
+    if is_zip(data):
+        from recheck.documents.word.document import docx_document
+
+        return docx_document(data, name=name)
+    if is_ole(data):
+        raise ole_refusal(data, name)
+    if (marked_up := markup_document(data, name)) is not None:
+        return marked_up
     text, notes = decoded(data, name)
-    markup = _markup(text)
-    if markup:
-        raise UnreadableDocument(
-            name, f"it is {markup}, which is not read", "save it as PDF or as UTF-8 text"
-        )
     return text_document(text, name=name, format="", data=data, notes=notes)
 
 
 def is_pdf(head: bytes) -> bool:
     """Tell whether a file that begins so is a PDF: readers allow junk before the mark."""
     return b"%PDF-" in head[:HEAD]
-
-
-_MARKUPS = {
-    "HTML": ("<!doctype html", "<html"),
-    "XML": ("<?xml", "<!doctype article", "<article"),
-}
-
-
-def _markup(text: str) -> str:
-    """The name of a markup language that a text begins with, "" for plain text and Markdown."""
-    start = text[:HEAD].lstrip("\ufeff \t\r\n").lower()
-    return next((kind for kind, marks in _MARKUPS.items() if start.startswith(marks)), "")
 
 
 def shown_name(name: str) -> str:
@@ -126,9 +119,11 @@ def _drawn(file: BinaryIO, name: str) -> bytes:
         return b""
     if is_pdf(head):
         limit, kind = PDF_LIMIT, "PDF"
+    elif is_zip(head) or is_ole(head):
+        limit, kind = ZIP_LIMIT, "an Office document"
     else:
         limit, kind = TEXT_LIMIT, "text"
-        if b"\0" in head:
+        if b"\0" in head and not markup_of(head):
             decoded(head[: len(head) // 4 * 4], name)
     data = head + file.read(limit + 1 - len(head))
     if len(data) > limit:

@@ -4,22 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
-import regex
-
 from recheck.documents.blocks import Block, is_prose
 from recheck.documents.joining import goes_on, is_finished, joined_text, put_together
 from recheck.documents.lines import Line
-from recheck.documents.sections import closes_references, looks_like_reference, opens_references
+from recheck.documents.sections import closes_references, looks_like_reference, opens_references, states_title
 from recheck.model import Passage
 
 _LOOK_AHEAD = 40
-_EDITOR_TITLE = regex.compile(
-    r"(?i)^(?:microsoft\s+word|untitled|title|paper|manuscript|document\d*)\b|\.(?:docx?|tex|pdf|indd)$"
-)
 
 
-def passages_of(blocks: list[Block]) -> Iterator[Passage]:
-    """Yield the passages in reading order."""
+def passages_of(blocks: list[Block], labels: Sequence[str] = ()) -> Iterator[tuple[Block, Passage]]:
+    """Yield the blocks that are left when texts are joined, in reading order, each with its passage.
+
+    `labels` are the names of the tables, in the order of their numbers.
+    """
     _tell_references(blocks)
     joined = _joined(blocks)
     section: str | None = None
@@ -29,9 +27,10 @@ def passages_of(blocks: list[Block]) -> Iterator[Passage]:
             continue
         if block.kind == "heading":
             section = text.strip()
-        yield Passage(
-            text=text, kind=block.kind, section=section, paragraph=paragraph, marks=marks, layout=layout
-        )
+        yield block, Passage(
+            text=text, kind=block.kind, section=section, paragraph=paragraph, marks=marks, layout=layout,
+            table=None if block.table is None else labels[block.table],
+        )  # fmt: skip
 
 
 def _joined(blocks: list[Block]) -> list[Block]:
@@ -42,8 +41,10 @@ def _joined(blocks: list[Block]) -> list[Block]:
         if taken[at]:
             continue
         found.append(block)
-        if block.kind not in ("body", "references", "note") or not any(
-            _is_filled(line) for line in block.lines
+        if (
+            block.table is not None
+            or block.kind not in ("body", "references", "note")
+            or not any(_is_filled(line) for line in block.lines)
         ):
             continue
         last = at
@@ -67,7 +68,7 @@ def _continuation(blocks: list[Block], taken: list[bool], block: Block, at: int)
         elsewhere = _elsewhere(end, first)
         if first.page > end.page + 2 or (other.kind == "heading" and not elsewhere):
             return likely
-        if taken[following] or other.kind != block.kind:
+        if taken[following] or other.kind != block.kind or other.table is not None:
             continue
         if goes_on(end, block.text, first, full=full and elsewhere and not passed):
             if not first.text.lstrip()[:1].isupper() or (is_prose(first) and first.italic < 0.8):
@@ -103,7 +104,7 @@ def _tell_references(blocks: list[Block]) -> None:
     for block in blocks:
         if block.kind == "heading":
             inside = opens_references(block.text) or (inside and not closes_references(block.text))
-        elif inside and _is_listed(block):
+        elif inside and block.table is None and _is_listed(block):
             block.kind = "references"
         if block.kind == "body" and looks_like_reference(block.text):
             run.append(block)
@@ -133,7 +134,7 @@ def _mark_run(run: list[Block]) -> None:
 def title_of(metadata: str, blocks: Sequence[Block]) -> str | None:
     """The title in the file's metadata if it reads like one, else the largest text of the first page."""
     stated = " ".join(metadata.split())
-    if len(stated.split()) >= 3 and not _EDITOR_TITLE.search(stated):
+    if states_title(stated):
         return stated
     first = [block for block in blocks if block.lines[0].page == 1 and len(block.text.strip()) > 6][:15]
     first = [block for block in first if block.kind in ("heading", "body") and len(block.text) < 400]

@@ -4,23 +4,31 @@ from __future__ import annotations
 
 import hashlib
 from collections.abc import Callable, Collection
+from dataclasses import replace
 from typing import Literal
 
 import numpy as np
+from numpy.typing import NDArray
 
 from recheck.documents import pdfium
 from recheck.documents.blocks import blocks_of, type_of
-from recheck.documents.columns import agreed_gutters, arranged, gutters_of
+from recheck.documents.columns import Arrangement, agreed_gutters, arranged, gutters_of
 from recheck.documents.furniture import furniture
-from recheck.documents.glyphs import Engine, Glyphs, Unopened, upright
+from recheck.documents.glyphs import Engine, Glyphs, Unopened, sideways, upright
 from recheck.documents.joining import put_together
 from recheck.documents.kinds import classified
 from recheck.documents.lines import Line, lines_of
 from recheck.documents.mending import mended
+from recheck.documents.pagetables import PageTable, page_tables, with_cells
 from recheck.documents.passages import passages_of, title_of
-from recheck.documents.words import words_of
+from recheck.documents.tablecaptions import captions_of
+from recheck.documents.tableparts import joined_tables, marked, tables_of, unread
+from recheck.documents.words import Words, words_of
 from recheck.errors import UnreadableDocument
 from recheck.model import Document, Passage
+
+_REGIONS = 10_000
+"""More than a page has regions."""
 
 
 def pdf_document(
@@ -35,13 +43,15 @@ def pdf_document(
     Raises `UnreadableDocument` for a file that is locked, damaged or has no text layer.
     """
     engine, used = _read(data, name, reader, pages)
-    lines, surroundings = page_lines(engine.pages)
+    lines, surroundings, found = pages_read(engine.pages)
     if not lines and not surroundings and pages is None:
         raise UnreadableDocument(name, "it has no text layer (a scan of images)", "run OCR first")
     type_ = type_of(lines)
-    blocks = classified(blocks_of(lines, type_), type_)
+    tables = joined_tables(found)
+    blocks = classified(marked(blocks_of(lines, type_), tables), type_)
     title = title_of(engine.title, blocks)
-    passages = (*passages_of(blocks), *_asides(surroundings))
+    told = list(passages_of(blocks, [table.name for table in tables]))
+    passages = (*(passage for _, passage in told), *_asides(surroundings))
     return Document(
         name=name,
         format="pdf",
@@ -51,12 +61,18 @@ def pdf_document(
         words=sum(len(passage.text.split()) for passage in passages if passage.kind != "aside"),
         title=title,
         reader=used,
-        notes=_notes(data, engine, used, reader),
+        notes=(*_notes(data, engine, used, reader), *unread(tables, told)),
+        tables=tables_of(tables, told),
     )
 
 
 def page_lines(pages: list[Glyphs]) -> tuple[list[Line], list[Line]]:
     """The lines of all pages in reading order, and apart from them the lines that surround the text."""
+    return pages_read(pages)[:2]
+
+
+def pages_read(pages: list[Glyphs]) -> tuple[list[Line], list[Line], list[PageTable]]:
+    """The lines of all pages outside tables in reading order, those that surround the text, and the tables."""
     turned = [upright(glyphs) for glyphs in pages]
     words = [words_of(level) for _, level in turned]
     masks = furniture(words)
@@ -65,11 +81,48 @@ def page_lines(pages: list[Glyphs]) -> tuple[list[Line], list[Line]]:
     agreed = agreed_gutters(own)
     lines: list[Line] = []
     surroundings: list[Line] = []
-    for (shown, level), page, mask, mine, gutters in zip(turned, words, masks, chosen, own, strict=True):
+    tables: list[PageTable] = []
+    for glyphs, (shown, level), page, mask, mine, gutters in zip(
+        pages, turned, words, masks, chosen, own, strict=True
+    ):
         arrangement = arranged(page, mine, gutters, agreed).with_surroundings(mask, level.width)
-        for line in lines_of(shown, page, arrangement):
-            (surroundings if line.region == arrangement.around else lines).append(line)
-    return lines, surroundings
+        found, around, own_tables = _page(shown, page, mask, arrangement)
+        lines += found
+        surroundings += around
+        tables += own_tables
+        for turn, part in enumerate(sideways(glyphs), start=1):
+            found, own_tables = _sideways(part, turn)
+            lines += found
+            tables += own_tables
+    return lines, surroundings, tables
+
+
+def _page(
+    shown: Glyphs, words: Words, mask: NDArray[np.bool_], arrangement: Arrangement
+) -> tuple[list[Line], list[Line], list[PageTable]]:
+    """The lines of one page outside tables, those that surround the text, and the tables."""
+    lines = lines_of(shown, words, arrangement)
+    tables, changed = page_tables(shown.page, words, mask, arrangement, lines)
+    if tables:
+        lines = with_cells(tables, lines_of(shown, words, changed))
+    around = [line for line in lines if line.region == changed.around]
+    return [line for line in lines if line.region != changed.around], around, tables
+
+
+def _sideways(part: tuple[Glyphs, Glyphs], turn: int) -> tuple[list[Line], list[PageTable]]:
+    """A table that is set sideways on a page, with its caption and notes; other such text is left out."""
+    shown, level = part
+    words = words_of(level)
+    mask = np.zeros(len(words), dtype=bool)
+    arrangement = arranged(words, np.flatnonzero(~mask), [], []).with_surroundings(mask, level.width)
+    lines, _, tables = _page(shown, words, mask, arrangement)
+    if not captions_of(lines):
+        return [], []
+    # Regions are numbered anew here: they must not be taken for those of the page's other text.
+    shift = turn * _REGIONS
+    for table in tables:
+        table.parts = {region + shift: what for region, what in table.parts.items()}
+    return [replace(line, region=line.region + shift) for line in lines], tables
 
 
 def _read(

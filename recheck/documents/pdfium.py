@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import ctypes
 from collections import deque
-from collections.abc import Callable, Collection
+from collections.abc import Collection
 from itertools import repeat
 from typing import Any
 
@@ -13,25 +13,20 @@ import pypdfium2
 import pypdfium2.raw as raw
 from numpy.typing import NDArray
 
+from recheck.documents.drawings import addressed, boxes_drawn
 from recheck.documents.glyphs import UNKNOWN, Engine, Glyphs, Unopened, as_glyphs, style_of, turn_of
 
 _HYPHEN_MARK = 0xFFFE
 _POINTER, _INT = ctypes.c_void_p, ctypes.c_int
 
 
-def _addressed(function: Any, result: Any, *arguments: Any) -> Callable[..., Any]:
-    """The same function of the library, called by addresses: half the cost of a call with pointers."""
-    address = ctypes.cast(function, ctypes.c_void_p).value or 0
-    return ctypes.PYFUNCTYPE(result, *arguments)(address)
-
-
-_loose_box = _addressed(raw.FPDFText_GetLooseCharBox, _INT, _POINTER, _INT, _POINTER)
-_text_object = _addressed(raw.FPDFText_GetTextObject, ctypes.c_size_t, _POINTER, _INT)
-_matrix = _addressed(raw.FPDFText_GetMatrix, _INT, _POINTER, _INT, _POINTER)
-_origin = _addressed(raw.FPDFText_GetCharOrigin, _INT, _POINTER, _INT, _POINTER, _POINTER)
-_font_size = _addressed(raw.FPDFText_GetFontSize, ctypes.c_double, _POINTER, _INT)
-_font = _addressed(raw.FPDFTextObj_GetFont, ctypes.c_size_t, _POINTER)
-_unicode = _addressed(raw.FPDFText_GetUnicode, ctypes.c_uint, _POINTER, _INT)
+_loose_box = addressed(raw.FPDFText_GetLooseCharBox, _INT, _POINTER, _INT, _POINTER)
+_text_object = addressed(raw.FPDFText_GetTextObject, ctypes.c_size_t, _POINTER, _INT)
+_matrix = addressed(raw.FPDFText_GetMatrix, _INT, _POINTER, _INT, _POINTER)
+_origin = addressed(raw.FPDFText_GetCharOrigin, _INT, _POINTER, _INT, _POINTER, _POINTER)
+_font_size = addressed(raw.FPDFText_GetFontSize, ctypes.c_double, _POINTER, _INT)
+_font = addressed(raw.FPDFTextObj_GetFont, ctypes.c_size_t, _POINTER)
+_unicode = addressed(raw.FPDFText_GetUnicode, ctypes.c_uint, _POINTER, _INT)
 
 
 def read(data: bytes, pages: Collection[int] | None = None) -> Engine:
@@ -128,9 +123,11 @@ def _placed(
     turns = np.array([turn_of(x, y) for x, y in along.tolist()], np.int8)
     pieces = np.zeros(len(kept), dtype=bool)
     pieces[1:] = (boxes[1:] == boxes[:-1]).all(axis=1) & ~changes[1:]
+    drawn = np.array(boxes_drawn(page), np.float64).reshape(-1, 5)
+    drawn[:, :4] = _shown(drawn[:, :4], matrix)
     return Glyphs(
         number, width, height, codes, _shown(corners, matrix), (_with_one(origins) @ matrix).astype(np.float32),
-        size[runs].astype(np.float32), style[runs].astype(np.uint8), turns[runs], pieces,
+        size[runs].astype(np.float32), style[runs].astype(np.uint8), turns[runs], pieces, drawn.astype(np.float32),
     )  # fmt: skip
 
 

@@ -23,13 +23,13 @@ _AFTER_REFERENCES = regex.compile(
 )
 _CAPTION = regex.compile(
     r"(?:(?:supplement(?:ary|al)|supporting|extended\s+data|appendix|online)\s+)?"
-    r"(?P<what>fig(?:ure|\.)?|table|tab\.|scheme|box|video|exhibit)\s*(?P<number>[A-Z]{0,2}[.-]?\d{1,3}(?:[.-]\d{1,2})?[a-z]?|[IVX]{1,5})"
-    r"(?P<after>\s*[.:|–—]|\s*$|\s*\n|\s+(?=[^\W\d_]|[(]))",
+    r"(?P<what>fig(?:ure|\.)?|table|tab\.|tabelle|tabell|tableau|tabla|tabela|tabella|scheme|box|video|exhibit)\s*(?P<number>[A-Z]{0,2}[.-]?\d{1,3}(?:[.-]\d{1,2})?[a-z]?|[IVX]{1,5})"
+    r"(?P<after>\s*[.:|–—]|\s+-\s|\s*$|\s*\n|\s+(?=[^\W\d_]|[(]))",
     regex.IGNORECASE,
 )
 _NAMED = regex.compile(
     _NUMBERING
-    + r"(?:abstract|summary|keywords?|introduction|background|methods?|materials?\s+and\s+methods|participants|"
+    + r"(?:title\s+page|author\s+note|abstract|summary|keywords?|introduction|background|methods?|materials?\s+and\s+methods|participants|"
     r"procedure|design|materials|measures|statistical\s+analys[ie]s|data\s+analys[ie]s|results?(?:\s+and\s+discussion)?|"
     r"(?:general\s+)?discussion|conclusions?|limitations|acknowledge?ments?|funding|appendix(?:\s+\w)?)\s*[:.]?",
     regex.IGNORECASE,
@@ -38,6 +38,10 @@ _ENTRY = regex.compile(r"(?:\(|\b)(?:18|19|20)\d\d[a-z]?(?:\)|\b)")
 _AUTHOR = regex.compile(
     r"^\W*(?:\d{1,3}[.)\]]?\s+)?[^\W\d_][\w'’ -]+,?\s+(?:[A-Z]\.?[ -]?){1,4}(?:,|;|\.|&|and\b|\()"
 )
+_EDITOR_TITLE = regex.compile(
+    r"(?i)^(?:microsoft\s+word|untitled|title|paper|manuscript|document\d*)\b|\.(?:docx?|tex|pdf|indd)$"
+)
+_STATEMENT = regex.compile(r"[=<>≤≥±]|\d\.\d|\d%|[.?!;:,]$")
 _LEADING = regex.compile(_NUMBERING)
 _PATIENCE = 1.0
 
@@ -68,6 +72,11 @@ def unnumbered(heading: str) -> str:
     return heading.strip()[match.end() :] if match else heading.strip()
 
 
+def is_statement(line: str) -> bool:
+    """Tell whether a line gives a number as a result does, or ends as a sentence or a label: no heading then."""
+    return _STATEMENT.search(line, timeout=_PATIENCE) is not None
+
+
 def captioned(text: str, *, sure: bool = False) -> PassageKind | None:
     """Say `table` or `figure` if a text begins as the caption of one, else None.
 
@@ -82,6 +91,24 @@ def captioned(text: str, *, sure: bool = False) -> PassageKind | None:
     if not marked and not (rest[:1].isupper() and (sure or match["what"].isupper())):
         return None
     return "table" if match["what"].lower().startswith("tab") else "figure"
+
+
+def caption_label(text: str) -> str:
+    """The name by which a caption is referred to: "Table 2", "Figure S1"; empty if there is none."""
+    match = _CAPTION.match(text.lstrip(), timeout=_PATIENCE)
+    if match is None or not match["what"][0].isupper():
+        return ""
+    what = match["what"].lower()
+    name = (
+        "Table" if what.startswith("tab") else "Figure" if what.startswith("fig") else match["what"].title()
+    )
+    return f"{name} {match['number']}"
+
+
+def states_title(metadata: str) -> bool:
+    """Tell whether the title in a file's metadata reads like one, and not like the name of a file."""
+    stated = " ".join(metadata.split())
+    return len(stated.split()) >= 3 and not _EDITOR_TITLE.search(stated, timeout=_PATIENCE)
 
 
 def looks_like_reference(text: str) -> bool:

@@ -1,6 +1,17 @@
 """The nouns of recheck: plain data, no statistics."""
 
-from recheck.model.claim import P_IN_WORDS, STATED, Claim, ClaimKind, Confidence, Context, Reading
+from recheck.model.claim import (
+    N_OF_GROUP,
+    P_IN_WORDS,
+    STATED,
+    TOTAL_OF_GROUP,
+    Claim,
+    ClaimKind,
+    Confidence,
+    Context,
+    Reading,
+    SameResult,
+)
 from recheck.model.document import Document
 from recheck.model.finding import (
     DISCREPANT,
@@ -19,7 +30,7 @@ from recheck.model.quantities import QUANTITIES, shown
 from recheck.model.table import Cell, Table
 
 __all__ = [
-    "DISCREPANT", "P_IN_WORDS", "QUANTITIES", "STATED", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
+    "DISCREPANT", "N_OF_GROUP", "P_IN_WORDS", "QUANTITIES", "STATED", "TOTAL_OF_GROUP", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
     "Document", "DocumentFacts", "Finding", "Implied", "Interval", "Layout", "Passage", "PassageKind", "Place",
-    "Printed", "Reading", "Relation", "Remedy", "Settings", "Table", "Verdict", "shown",
+    "Printed", "Reading", "Relation", "Remedy", "SameResult", "Settings", "Table", "Verdict", "shown",
 ]  # fmt: skip

@@ -31,6 +31,7 @@ STATED = {
     "equivalence": "a test of equivalence or non-inferiority",
     "covariate-adjusted": "means or tests adjusted for covariates (ANCOVA)",
     "mixed-model": "a mixed (multilevel) model",
+    "survival": "a survival analysis (log-rank test, Cox model)",
     "imputed": "multiple imputation",
     "transformed": "scores transformed before the analysis",
     "weighted": "weights",
@@ -61,6 +62,12 @@ STATED = {
 
 P_IN_WORDS = "p is told in words"
 """The note of a claim whose p is told by `significant` or `not significant` alone."""
+
+N_OF_GROUP = "n is that of the whole group"
+"""The note of a claim whose n comes from a header, a caption or a note: of this variable some cases may be missing."""
+
+TOTAL_OF_GROUP = "the total is the group's n"
+"""The note of a count whose total is the size of its group, not printed in its own cell."""
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -109,6 +116,18 @@ class Context:
     notes: tuple[str, ...] = ()
 
 
+@dataclass(frozen=True, slots=True)
+class SameResult:
+    """Two claims that tell one result, by their ids in reading order.
+
+    `sure` says that outcome, groups and statistic are surely the same; `basis` on what ground, in words.
+    """
+
+    claims: tuple[str, str]
+    sure: bool
+    basis: str
+
+
 @dataclass(frozen=True, slots=True, eq=False)
 class Reading:
     """Everything that was read from one document."""
@@ -116,3 +135,4 @@ class Reading:
     claims: tuple[Claim, ...]
     context: Context = Context()
     notes: tuple[str, ...] = ()
+    same: tuple[SameResult, ...] = ()

@@ -12,6 +12,7 @@ QUANTITIES: dict[str, str] = {
     "epsilon2": "ε²", "f": "f", "f2": "f²", "phi": "φ", "cramers_v": "V",
     "b": "b", "beta": "β", "intercept": "intercept", "r2": "R²", "adjusted_r2": "adjusted R²",
     "or": "OR", "rr": "RR", "rd": "RD", "hr": "HR",
+    "auc": "AUC", "icc": "ICC", "kappa": "κ", "tau": "τ", "bf10": "BF₁₀", "bf01": "BF₀₁",
     "count": "count", "total": "total", "percent": "percent", "power": "power", "stars": "stars",
     "scale_min": "lowest score", "scale_max": "highest score", "items_per_score": "items per score",
     "ss": "SS", "ms": "MS", "ss_error": "SS of the error", "ms_error": "MS of the error", "ss_total": "total SS", "mse": "MSE", "estimate": "estimate",

@@ -5,12 +5,15 @@ from __future__ import annotations
 from dataclasses import replace
 from decimal import Decimal
 
-from recheck.model import Confidence, Printed, Relation
-from recheck.reading.degrees import Values, bracketed_df, closing, subscript_df
+from recheck.model import Printed, Relation
+from recheck.reading.behind import df_behind, plus_minus, two_df, unlabelled
+from recheck.reading.degrees import Values, bracketed_df, closing, fallen_df, subscript_df
 from recheck.reading.following import goes_on, value_after
-from recheck.reading.intervals import ends_at, interval_at
-from recheck.reading.items import CI, DF, MEAN, SPREADS, Assignment, P
-from recheck.reading.numerals import Line, Number, number_at, piece, whole
+from recheck.reading.frequencies import NUMBER_WORDS, count_at, count_in_words, sized_count, with_whole
+from recheck.reading.intervals import interval_at
+from recheck.reading.items import DF, MEAN, Assignment, P
+from recheck.reading.numerals import Line, Number, number_at, whole
+from recheck.reading.settling import SHARES, by_number, no_symbol, no_value, settled
 from recheck.reading.spellings import Spelled, spelled_at
 from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import words
@@ -27,7 +30,7 @@ def assignments(line: Line) -> list[Assignment]:
             index = max(item.after for item in group)
         else:
             index += 1
-    return found
+    return with_whole(found, line) if line.shares else found
 
 
 def _at(line: Line, index: int) -> list[Assignment]:
@@ -36,11 +39,19 @@ def _at(line: Line, index: int) -> list[Assignment]:
         return _number_first(line, index)
     if token.kind != "word":
         return []
+    if line.shares and token.low in NUMBER_WORDS and (told := count_in_words(line, index)):
+        return [told]
+    if (
+        token.low in ("q", "p")
+        and line.at(index + 1).text in ("1", "25")
+        and (found := _interval(line, index))
+    ):
+        return found
     spelled = spelled_at(line, index)
     if spelled is None:
         return []
     if spelled.symbol.part == "interval":
-        return _interval(line, index)
+        return _interval(line, index) or _width(line, index, spelled)
     return _symbol_first(line, index, spelled)
 
 
@@ -52,7 +63,12 @@ def _number_first(line: Line, index: int) -> list[Assignment]:
     number = number_at(line, index)
     if number is None:
         return []
-    spread = plus_minus(line, number.after)
+    token = line.at(index)
+    count = count_at(line, index, number) if line.shares else None
+    if count:
+        return [count]
+    glued = line.at(index - 1).kind == "word" and not token.spaced
+    spread = None if glued else plus_minus(line, number.after)
     if spread:
         mean = Assignment(MEAN, number.printed(line), index, number.after, loose=True)
         return [mean, spread]
@@ -97,35 +113,15 @@ def _interval(line: Line, index: int) -> list[Assignment]:
     ]  # fmt: skip
 
 
-def plus_minus(line: Line, index: int) -> Assignment | None:
-    """The spread after a `±` at `index`, with the label that directly follows it."""
-    index += line.at(index).text in ("°", "º")
-    bracket = line.at(index).text == "(" and line.at(index + 1).text == "±"
-    index += bracket
-    sign = line.at(index)
-    after = index + 1
-    if sign.text == "+" and line.at(index + 1).text in ("/", "-"):
-        while line.at(after).text in ("/", "-") and after < index + 3:
-            after += 1
-    elif sign.text != "±":
-        return None
-    named = spelled_at(line, after)
-    if named and named.symbol.part == "spread":
-        after = named.after + (line.at(named.after).kind == "rel")
-    number = number_at(line, after)
-    if number is None or (number.value < 0 and line.at(after + 1).spaced):
-        return None
-    after = number.after + (line.at(number.after).text in ("°", "º"))
-    after += bracket and line.at(after).text == ")"
-    if not (named and named.symbol.part == "spread"):
-        opened = line.at(after).text == "("
-        named = spelled_at(line, after + opened)
-        if named and named.symbol.part == "spread" and line.at(named.after).kind not in ("rel", "num"):
-            after = named.after + (opened and line.at(named.after).text == ")")
-        else:
-            named = None
-    kind = named.symbol.quantity if named and named.symbol.quantity in SPREADS else ""
-    return Assignment(SPREADS[kind], number.printed(line), index, after, loose=True)
+def _width(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
+    """`IQR = 2.5`, `interquartile range of 16`: quartiles told by their distance."""
+    at = spelled.after
+    at += 3 * (line.at(at).text in ("(", "[") and line.at(at + 1).low == "iqr")
+    at += line.at(at).low in ("=", ":", "of", "was", "were", "is", ",")
+    number = number_at(line, at) if spelled.symbol.quantity == "iqr" else None
+    if number is None or number.value < 0 or (number.decimals == 0 and at == spelled.after):
+        return []
+    return [Assignment(spelled.symbol, number.printed(line), index, number.after, loose=at == spelled.after)]
 
 
 def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
@@ -135,79 +131,64 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     if beside is None or (spelled.symbol.part == "df" and line.at(index - 1).text == "/"):
         return []
     df, announced, after = beside
-    symbol = _settled(line, spelled, df)
+    symbol = settled(line, spelled, df)
+    if no_symbol(line, index, spelled):
+        return []
     value = value_after(line, after, symbol)
     if value is None:
         missing = _not_significant(line, index, after, symbol)
         return [missing] if missing else []
     number, relation, loose = value
+    if symbol.part == "other" and number.percent and line.shares:
+        count = count_at(line, number.after - 2, number)
+        if count:
+            return [count]
     number = whole(number) if symbol.part == "size" else number
-    if symbol.quantity == "mean" and [t.low for t in line.tokens[max(0, index - 2) : index]] == ["by", "a"]:
-        symbol = replace(symbol, quantity="mean_difference", part="estimate")
-    if spelled.text.lower() in ("difference", "diff") and (
-        number.percent or line.at(index - 1).low in _OTHER_MEANS
-    ):
-        symbol = Symbol("estimate", "estimate")
-    if symbol.quantity == "rd" and abs(number.value) > 1 and not number.percent:
-        # `3.1 percentage points`, `31 per 1000`: no share.
-        symbol = Symbol("estimate", "estimate")
-    if spelled.text == "V" and abs(number.value) <= 1:
-        near = {t.low for t in line.tokens[max(0, index - 4) : index]}
-        symbol = Symbol("other", "other") if near & _TRACES else Symbol("cramers_v", "effect")
-    if symbol.part == "spread" and line.at(number.after).text in ("±", "+"):
+    if no_value(line, spelled, symbol, (number, relation, loose), after):
         return []
-    if loose and symbol.worded and symbol.quantity in _RATIOS and not _sure(line, after, number):
-        return []
-    if loose and number.decimals < {"p": 2, "centre": 1, "statistic": 1}.get(symbol.part, 0):
-        return []
+    symbol = by_number(line, index, spelled, symbol, number)
     item = Assignment(
-        symbol, number.printed(line, relation), index, number.after, df or (), spelled.label,
+        symbol, number.printed(line, relation), index, number.after, df or (), spelled.label + _contrast(line, spelled),
         symbol.stated + spelled.stated, symbol.several or goes_on(line, number) or _plural(spelled, df, relation), loose or spelled.glued, announced,
     )  # fmt: skip
-    df_after = _df_behind(line, item)
+    return _with_what_follows(line, item, number)
+
+
+def _with_what_follows(line: Line, item: Assignment, number: Number) -> list[Assignment]:
+    """The assignment with the df, the count, the spread or the interval behind its number."""
+    df_after = df_behind(line, item)
     if df_after:
         item = replace(item, extra=(("df", df_after[0]),), after=df_after[1], doubt="medium")
-    if symbol.quantity == "df":
-        return [_two_df(line, item) or item]
-    following = plus_minus(line, number.after) or _unlabelled(line, item)
-    return [item, following] if following else [item]
+    if item.quantity == "df":
+        return [two_df(line, item) or item]
+    if item.part == "size" and item.printed.relation == "=":
+        count = sized_count(line, item.first, number)
+        return [item, count] if count else [item]
+    following = plus_minus(line, number.after) or unlabelled(line, item)
+    if following is None:
+        return [item]
+    if following.part == "interval":
+        item = replace(item, several=False)
+    elif item.part == "other" or item.quantity in SHARES:
+        # A mean of several coefficients with its spread.
+        item = replace(item, symbol=MEAN, loose=True)
+    return [item, following]
 
 
-_TRACES = words("pillai pillai's trace wilks manova pillai-bartlett bartlett")
-_RATIOS = frozenset(("or", "rr", "hr", "rd"))
-
-
-def _sure(line: Line, index: int, number: Number) -> bool:
-    """A whole number behind several words is a ratio only where an interval follows: `the odds ratio of burning was 2 (95% CI …`."""
-    near = line.tokens[index : number.after - 1]
-    opened = line.at(number.after).text in ("(", "[", ",", ";")
-    return (
-        len(near) <= 1 or number.decimals > 0 or (opened and interval_at(line, number.after + 1) is not None)
-    )
-
-
-_OTHER_MEANS = words(
-    "median risk rate proportion percentage relative standardized standardised geometric log"
-)
+def _contrast(line: Line, spelled: Spelled) -> str:
+    """The rest of a subscript that names two conditions: `M_rye-wheat = 0.3`, `EMM rye - wheat = 0.3`."""
+    at = spelled.after
+    while line.at(at).kind == "word" or line.at(at).text == "-":
+        at += 1
+        if at > spelled.after + 4:
+            return ""
+    told = line.tokens[spelled.after : at] if line.at(at).kind == "rel" else ()
+    return "".join(token.text for token in told) if any(token.text == "-" for token in told[:-1]) else ""
 
 
 def _plural(spelled: Spelled, df: Values | None, relation: Relation) -> bool:
     """`rs > .30` tells of several correlations; `rs = .30` is one of ranks."""
     return spelled.text in ("rs", "ds", "gs", "bs") and df is None and relation != "="
-
-
-def _df_behind(line: Line, item: Assignment) -> tuple[Printed, int] | None:
-    """`t = 2.73 (58)`: degrees of freedom in brackets behind the value."""
-    at = item.after
-    if (
-        item.quantity not in ("t", "chi2")
-        or item.extra
-        or line.at(at).text != "("
-        or line.at(at + 2).text != ")"
-    ):
-        return None
-    number = number_at(line, at + 1) if line.at(at + 1).text.replace(".", "", 1).isdigit() else None
-    return (number.printed(line), at + 3) if number and number.value >= 1 else None
 
 
 def _beside_symbol(line: Line, spelled: Spelled) -> tuple[Values | None, str, int] | None:
@@ -221,12 +202,18 @@ def _beside_symbol(line: Line, spelled: Spelled) -> tuple[Values | None, str, in
         after += 1
     if line.at(after).text not in ("(", "["):
         lone = symbol.quantity == "F" and spelled.numbers and df is None
+        fallen = fallen_df(line, spelled) if lone else None
+        if fallen:
+            return fallen.values, "", fallen.after
         return None if lone else (df, "", after)
     bracket = bracketed_df(line, after, symbol) if symbol.part == "statistic" else None
     if bracket and (df is None or _numbered(df, bracket.values)):
         return bracket.values, "", bracket.after
     if bracket and df and bracket.values and {name for name, _ in bracket.values} <= {"n", "N"}:
         return (*df, *bracket.values), "", bracket.after
+    if symbol.quantity == "icc" and (end := closing(line, after, most=6)):
+        # `ICC(2,1) = .85`: the model of the coefficient.
+        return df, "", end + 1
     past = _words_in_brackets(line, after, symbol)
     if past:
         return df, " ".join(t.low for t in line.tokens[after:past]), past
@@ -242,59 +229,6 @@ def _numbered(lowered: Values, bracketed: Values) -> bool:
         ["1"],
         ["2"],
     )
-
-
-def _two_df(line: Line, item: Assignment) -> Assignment | None:
-    """`df = 1, 38` beside an F."""
-    if not any(t.text in ("F", "f") for t in line.tokens[max(0, item.first - 12) : item.first]):
-        return None
-    token = line.at(item.after - 1)
-    if token.text.count(",") == 1:
-        first, second = token.text.split(",")
-        one: Number | None = piece(line, first, token.start, item.after)
-        two: Number | None = piece(line, second, token.end - len(second), item.after)
-    elif line.at(item.after).low in (",", "/", "&", "and", ";"):
-        one, two = number_at(line, item.after - 1), number_at(line, item.after + 1)
-    else:
-        return None
-    if one is None or two is None or two.percent:
-        return None
-    extra = (("df1", one.printed(line)), ("df2", two.printed(line)))
-    return replace(item, symbol=Symbol("df12", "df"), extra=extra, after=two.after, several=False)
-
-
-def _unlabelled(line: Line, item: Assignment) -> Assignment | None:
-    """`r(48) = .31 [.04, .54]`, `OR = 1.5 (1.2–1.9)`: an interval around the number before it."""
-    ratio = item.quantity in ("or", "rr", "hr") or "ci" in item.announced.split()
-    brackets = ("[", "(") if ratio else ("[",)
-    fit = item.part in ("estimate", "effect") or item.quantity == "r"
-    if not fit or item.printed.relation != "=" or line.at(item.after).text not in brackets:
-        return None
-    ends = ends_at(line, item.after)
-    if ends is None or not ends[0].value <= item.printed.value <= ends[1].value:
-        return None
-    low, high, after = ends
-    extra = (("ci_low", low.printed(line)), ("ci_high", high.printed(line)))
-    notes = ("the interval in brackets is not labelled as a confidence interval",)
-    doubt: Confidence = "high" if "ci" in item.announced.split() else "medium"
-    return Assignment(
-        CI, extra[0][1], item.after, after, extra, doubt=doubt, notes=notes if doubt == "medium" else ()
-    )
-
-
-def _settled(line: Line, spelled: Spelled, df: tuple[tuple[str, Printed], ...] | None) -> Symbol:
-    """`f` with two df is F; `T` and `H` without df are neither t nor the H of Kruskal and Wallis."""
-    symbol, text = spelled.symbol, spelled.text
-    if text == "f":
-        return symbol if df and len(df) > 1 else replace(symbol, quantity="f", part="effect")
-    if text in ("T", "H", "Wald", "Wald statistic") and not df and not _df_follows(line, spelled.after):
-        return Symbol("other", "other")
-    return symbol
-
-
-def _df_follows(line: Line, index: int) -> bool:
-    """Whether degrees of freedom are named within a few tokens: `H = 7.00, df = 1`."""
-    return any(t.low == "df" for t in line.tokens[index : index + 7])
 
 
 def _words_in_brackets(line: Line, index: int, symbol: Symbol) -> int | None:

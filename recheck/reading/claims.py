@@ -6,8 +6,8 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from typing import Literal
 
-from recheck.reading.items import Assignment
-from recheck.reading.listed import marked, of_another_test, of_several
+from recheck.reading.items import NEXT_TO_INTERVAL, Assignment
+from recheck.reading.listed import marked, of_another_test, of_several, told_behind
 from recheck.reading.numerals import Line, part_of_unit
 from recheck.reading.tokens import words
 
@@ -80,13 +80,16 @@ def _carried(current: list[Assignment], item: Assignment, line: Line) -> list[As
 
 def gap(line: Line, last: Assignment, item: Assignment) -> tuple[Gap, bool]:
     """How closely two assignments stand together, and whether a semicolon divides them."""
-    between = line.tokens[last.after : item.first]
+    between = list(line.tokens[last.after : item.first])
     semicolon = any(t.text == ";" for t in between)
     words = [t for t in between if t.kind == "word" and t.low not in _CONNECTING]
     numbers = sum(
         t.kind == "num" and not part_of_unit(line, k) and not _of_tails(line, k)
         for k, t in enumerate(between, last.after)
     )
+    if last.quantity in ("b", "beta") and [t.text for t in between[:1] + between[2:3]] == ["(", ")"]:
+        # `b = 0.42 (0.16), p = .009`: most likely the SE, which nobody names.
+        numbers -= 1
     if any(t.low in _TURNS for t in between):
         return "apart", semicolon
     if not words and numbers == 0 and len(between) <= 12:
@@ -114,7 +117,11 @@ def _joins(
 ) -> Literal["tight", "loose"] | None:
     """Whether an assignment belongs to the current claim, and how surely."""
     distance, semicolon = gap(line, current[-1], item)
-    if distance == "apart":
+    if distance == "apart" and item.quantity == "ci" and NEXT_TO_INTERVAL in current[-1].notes:
+        distance = "loose"
+    if distance == "apart" and item.part == "p" and told_behind(line, current, item):
+        return "loose"
+    if distance == "apart" or (item.part != "interval" and any(other.part == "count" for other in current)):
         return None
     # An n in brackets of its own belongs to what stands before it, unless each group has one and a colon:
     # `Rye (n = 20): 5.1 ± 1.1; wheat (n = 24): …`.
@@ -252,9 +259,19 @@ def _beside_statistic(s: Situation) -> bool:
 def _centre(s: Situation) -> bool:
     if s.tight and [item.part for item in s.current] == ["spread"] and not s.coming("spread", "centre"):
         return True
+    if s.tight and _both_centres(s):
+        return True
     return s.tight and not s.has(
         "statistic", "estimate", "effect", "p", "centre", "spread", "interval", "other"
     )
+
+
+def _both_centres(s: Situation) -> bool:
+    """Whether mean and median of one group stand side by side: `mean of 61.2, median of 61, SD of 12`."""
+    between = [token.low for token in s.line.tokens[s.current[-1].after : s.item.first]]
+    short = s.item.after - s.item.first <= 4 and s.current[-1].after - s.current[-1].first <= 6
+    alone = [item.part for item in s.current if item.part != "size"] == ["centre"]
+    return alone and not s.taken and short and set(between) <= {",", "and", "/", ";"}
 
 
 def _spread(s: Situation) -> bool:
@@ -296,12 +313,30 @@ def _p(s: Situation) -> bool:
     if s.holds("p"):
         return False
     if s.has(*_GROUP):
-        return s.tight and s.has("interval") and not s.compared
+        if s.tight and _of_one_difference(s):
+            return True
+        return s.tight and s.holds("ci") and not s.compared
     if s.has("statistic"):
         return True
     if of_another_test(s.line, s.item):
         return False
-    return s.tight and s.has("estimate", "effect", "interval", "other", "df")
+    opened = s.line.at(s.item.first - 1).text == "("
+    between = {token.low for token in s.line.tokens[s.current[-1].after : s.item.first]}
+    one_clause = opened and not between & {"and", "or", "while", ",", ";"}
+    if not s.tight and not (s.has("interval") and s.has("estimate") and one_clause):
+        return False
+    return s.has("estimate", "effect", "interval", "other", "df")
+
+
+def _of_one_difference(s: Situation) -> bool:
+    """Whether a p stands in the brackets of one number that is a difference or no mean at all: `(M_a−b = 0.3 ± 0.2; p = .12)`, `(M = 2.56: p < .01)`."""
+    first, line = s.current[0], s.line
+    start = first.first
+    while line.at(start - 1).kind == "word" and start > first.first - 3:
+        start -= 1
+    opened = line.at(start - 1).text in ("(", "[") and line.at(s.item.after).text in (")", "]", ";", ",")
+    lone = len(s.current) == 1 and line.at(first.after).text == ":"
+    return opened and first.part == "centre" and (lone or ("-" in first.label and not s.has("size")))
 
 
 def _interval(s: Situation) -> bool:
@@ -336,11 +371,15 @@ def _df(s: Situation) -> bool:
     )
 
 
+def _count(s: Situation) -> bool:
+    return False
+
+
 def _other(s: Situation) -> bool:
     return s.tight and s.has("statistic") and not s.taken and not (s.semicolon and s.item.quantity != "mse")
 
 
 _RULES = {
     "statistic": _statistic, "centre": _centre, "spread": _spread, "estimate": _estimate, "effect": _effect,
-    "p": _p, "interval": _interval, "size": _size, "df": _df, "other": _other,
+    "p": _p, "interval": _interval, "size": _size, "df": _df, "count": _count, "other": _other,
 }  # fmt: skip

@@ -11,6 +11,7 @@ import regex
 
 from recheck.model import Context, Printed
 from recheck.reading.groups import announced_spread
+from recheck.reading.medians import announced_ends
 from recheck.reading.numerals import Line, number_at, relation_at
 from recheck.reading.tokens import DIGITS, Spans, tokens, words
 from recheck.reading.views import TIMEOUT, View
@@ -21,7 +22,9 @@ from recheck.reading.wording import background, pairs_alone
 class Setting:
     """The context, with what the reader itself needs of it.
 
-    `plus_minus` and `in_brackets` are what an unlabelled spread is said to be; `credible` tells
+    `plus_minus` and `in_brackets` are what an unlabelled spread is said to be, `behind_medians` what
+    stands in brackets behind a median (`iqr`, `range`, ""); `by_permutation` tells that its F may be
+    those of a permutational analysis (PERMANOVA); `credible` tells
     that the document's intervals are credible intervals, also where it writes CI; `pairs_alone`
     that all its corrections for several tests are those of comparisons of pairs.
     """
@@ -32,13 +35,15 @@ class Setting:
     credible: bool = False
     decimal_comma: bool = False
     pairs_alone: bool = False
+    behind_medians: str = ""
+    by_permutation: bool = False
 
 
 def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
     """Read the context of a document from its passages and the spans of their sentences."""
     comma = decimal_comma(view.text for view in views)
     alpha, notes = _alpha(zip(views, spans, strict=True), comma)
-    signs, brackets = _announced(views)
+    signs, brackets, ends = _announced(views)
     whole = " ".join(view.text for view in views if _tells(view)).lower()
     credible = (
         "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
@@ -47,6 +52,7 @@ def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
     return Setting(
         Context(alpha, spoken, tuple(notes)), signs, brackets,
         credible and "confidence interval" not in whole, comma, "adjusted-p-post-hoc" in spoken and pairs_alone(whole),
+        ends, any(name in whole for name in ("permanova", "adonis", "permutational anova", "permutational multivariate")),
     )  # fmt: skip
 
 
@@ -81,17 +87,21 @@ def decimal_comma(texts: Iterable[str]) -> bool:
     return commas > points
 
 
-def _announced(views: Sequence[View]) -> tuple[str, str]:
-    """The one meaning of `±` and of brackets after a mean that the document announces, "" if none or two."""
+def _announced(views: Sequence[View]) -> tuple[str, str, str]:
+    """The one meaning of `±`, of brackets after a mean and after a median that the document announces, "" if none or two."""
     signs: set[str] = set()
     brackets: set[str] = set()
+    ends: set[str] = set()
     for view in views:
-        if "±" not in view.text and "mean" not in view.text.lower():
+        low = view.text.lower()
+        if "median" in low:
+            ends.add(announced_ends(low))
+        if "±" not in low and "mean" not in low:
             continue
         sign, bracket = announced_spread(view.text)
         signs.add(sign)
         brackets.add(bracket)
-    return _only(signs), _only(brackets)
+    return _only(signs), _only(brackets), _only(ends)
 
 
 def _only(kinds: set[str]) -> str:

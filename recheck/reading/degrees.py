@@ -146,6 +146,9 @@ def subscript_df(line: Line, spelled: Spelled) -> Values | None:
     quantity = spelled.symbol.quantity
     if not spelled.numbers or quantity not in ("t", "F", "chi2", "r"):
         return None
+    if spelled.text[0] in "QH" and any(token.kind == "num" for token in spelled.numbers):
+        # Q1 is a quartile, H1 a hypothesis.
+        return None
     pieces: list[Printed] = []
     for token in spelled.numbers:
         start = token.start
@@ -157,3 +160,16 @@ def subscript_df(line: Line, spelled: Spelled) -> Values | None:
             pieces.append(replace(number.printed(line), text=flat))
             start += len(text) + 1
     return _named(quantity, pieces)
+
+
+def fallen_df(line: Line, spelled: Spelled) -> Bracket | None:
+    """`F1, 38 = 4.20`, `F1/38 = 4.20`: lowered df on the base line, divided by a sign, the relation behind them."""
+    first, at = spelled.numbers[0], spelled.after
+    two = number_at(line, at + 1) if line.at(at).text in (",", "/", ";") else None
+    if len(spelled.numbers) != 1 or two is None or two.value < 1 or line.at(two.after).kind != "rel":
+        return None
+    flat = first.text.translate(FLAT)
+    if not flat.isdigit() or len(flat) > 3:
+        return None
+    one = piece(line, flat, first.start, 0).printed(line)
+    return Bracket((("df1", replace(one, text=flat)), ("df2", two.printed(line))), two.after)

@@ -255,6 +255,26 @@ def doubted(claim: Claim, span: tuple[int, int], passage: Passage, index: int, r
     return replace(claim, values=values, notes=(*claim.notes, *notes), confidence=confidence)
 
 
+def cell_repaired(passage: Passage, repairs: Repairs) -> Passage:
+    """A cell of a table by the code table that the document's text has; its length is unchanged."""
+    text, replaced = _rewritten(passage.text, repairs.table)
+    lone = _RELATION_FIRST.match(text)
+    if lone and lone["sign"] in repairs.table:
+        text = text[: lone.start("sign")] + repairs.table[lone["sign"]] + text[lone.end("sign") :]
+    return replace(passage, text=text) if replaced or text != passage.text else passage
+
+
+_RELATION_FIRST = regex.compile(r"^(?P<sign>[^\w\s.;:()\[\]%*/'\"−–-]) ?0?\.\d")
+"""A sign in front of a number that fills its cell: the `,` of `, .001`."""
+
+
+def cell_doubted(claim: Claim, repairs: Repairs, texts: Sequence[tuple[str, str]]) -> Claim:
+    """The claim of a table's cells, doubted as one of the text is; `texts` are its cells before and after the repair."""
+    before, after = ("".join(side) for side in zip(*texts, strict=True)) if texts else ("", "")
+    places = {at: sign for at, sign in enumerate(before) if after[at] != sign}
+    return doubted(claim, (0, len(after)), Passage(text=after), 0, replace(repairs, places={0: places}))
+
+
 _UNSIGNED = words("F chi2 p sd se n N df df1 df2 or rr hr ci_level u w r2 partial_eta2")
 """What a minus never stands before."""
 

@@ -4,25 +4,30 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import replace
+from itertools import pairwise
 
 from recheck.model import Printed
-from recheck.reading.items import MEAN, SPREADS, Assignment
+from recheck.reading.items import ESTIMATE, MEAN, NEXT_TO_INTERVAL, SPREADS, Assignment
 from recheck.reading.numerals import Line, Number, number_at, part_of_unit
-from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import words
 
 _NOT_UNITS = words("and or whereas while but vs versus than to from with without")
 
 
-def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[Assignment]:
+def with_means(
+    items: Sequence[Assignment], line: Line, announced: str, elsewhere: str = ""
+) -> list[Assignment]:
     """Add the means that stand without a symbol before their SD, and pairs such as `5.00 (1.65)`.
 
-    `announced` is the spread that the sentence says stands in brackets, "" where it says none.
+    `announced` is the spread that the sentence says stands in brackets, "" where it says none;
+    `elsewhere` what the document says.
     """
     found: list[Assignment] = []
     for item in items:
+        if item.part == "spread" and not item.several and found and _own_spread(found[-1], item, line):
+            found[-1] = replace(found[-1], several=False)
         if item.part == "spread" and not item.several and not _has_mean(found, item, line):
-            mean = _mean_before(line, item, found[-1].after if found else 0)
+            mean = number_before(line, item, found[-1].after if found else 0)
             if mean:
                 found.append(mean)
         if item.quantity == "ci" and not item.several and not _has_centre(found, item, line):
@@ -33,13 +38,8 @@ def with_means(items: Sequence[Assignment], line: Line, announced: str) -> list[
         pair = _in_brackets(line, item, announced)
         if pair:
             found.append(pair)
-    if announced:
-        found += _announced_pairs(line, found, announced)
-        found.sort(key=lambda item: item.first)
-    return found
-
-
-ESTIMATE = Symbol("estimate", "estimate")
+    pairs = _announced_pairs(line, found, announced) if announced else _compared_pairs(line, found, elsewhere)
+    return sorted((*found, *pairs), key=lambda item: item.first) if pairs else found
 
 
 def _has_centre(found: Sequence[Assignment], interval: Assignment, line: Line) -> bool:
@@ -53,7 +53,7 @@ def _has_centre(found: Sequence[Assignment], interval: Assignment, line: Line) -
 def _estimate_before(line: Line, interval: Assignment, stop: int) -> Assignment | None:
     """The number before an interval that nobody names, where it may be the estimate: it, or its
     negative, lies in the interval and is printed as finely."""
-    number = _mean_before(line, interval, stop) if interval.label in ("", "difference") else None
+    number = number_before(line, interval, stop) if interval.label in ("", "difference") else None
     if number is None:
         return None
     ends = dict(interval.extra)
@@ -61,14 +61,19 @@ def _estimate_before(line: Line, interval: Assignment, stop: int) -> Assignment 
     inside = low.value <= value <= high.value or low.value <= -value <= high.value
     if not inside or (number.printed.decimals == 0 and min(low.decimals, high.decimals) > 0):
         return None
-    note = "the number before the interval is taken for its estimate"
     loose = line.at(number.first - 1).kind != "rel"
     if any(t.low in _AGAINST for t in line.tokens[max(stop, number.first - 3) : number.first]):
         return replace(number, doubt="medium", loose=loose)
-    return replace(number, symbol=ESTIMATE, doubt="medium", notes=(note,), loose=loose)
+    return replace(number, symbol=ESTIMATE, doubt="medium", notes=(NEXT_TO_INTERVAL,), loose=loose)
 
 
 _AGAINST = words("vs versus v than")
+
+
+def _own_spread(mean: Assignment, spread: Assignment, line: Line) -> bool:
+    """Whether one of several means has its spread right behind it: `means of 5.0 (SD = 1.6) and 4.2 (SD = 1.5)`."""
+    between = [token.text for token in line.tokens[mean.after : spread.first]]
+    return mean.part == "centre" and mean.several and between in (["("], ["["])
 
 
 def _has_mean(found: Sequence[Assignment], spread: Assignment, line: Line) -> bool:
@@ -83,7 +88,7 @@ def _has_mean(found: Sequence[Assignment], spread: Assignment, line: Line) -> bo
     return last.part == "spread" and last.quantity != spread.quantity
 
 
-def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None:
+def number_before(line: Line, spread: Assignment, stop: int) -> Assignment | None:
     """The number that directly precedes `(SD = 1.2)`, with its unit between them."""
     at, words, opened = spread.first - 1, 0, False
     while at >= stop:
@@ -96,7 +101,8 @@ def _mean_before(line: Line, spread: Assignment, stop: int) -> Assignment | None
             at = scale
             continue
         if token.kind == "num":
-            if line.at(at + 1).text == ")" and line.at(at - 1).text == "(":
+            signed = line.at(at - 1).text == "-"
+            if line.at(at + 1).text == ")" and line.at(at - 1 - signed).text == "(":
                 return None
             return _mean_at(line, at, stop, opened or spread.printed.percent)
         if token.kind == "word":
@@ -184,7 +190,10 @@ def _in_brackets(line: Line, item: Assignment, announced: str) -> Assignment | N
     number = _bracketed(line, at)
     if (
         number is None
-        or (number.decimals == 0 and item.printed.decimals > 0)
+        or (
+            number.decimals == 0
+            and (item.printed.decimals > 0 or (line.at(at).text == "[" and not announced))
+        )
         or number.percent != item.printed.percent
     ):
         return None
@@ -209,7 +218,7 @@ def _announced_pairs(line: Line, items: Sequence[Assignment], announced: str) ->
         if token.kind != "num" or at in taken:
             continue
         number = number_at(line, at)
-        if number is None or line.at(at - 1).kind == "rel":
+        if number is None or line.at(at - 1).kind == "rel" or line.at(at - 1).low in _NUMBERED:
             continue
         after = number.after + (
             line.at(number.after).kind == "word" and line.at(number.after).low not in _NOT_UNITS
@@ -224,6 +233,51 @@ def _announced_pairs(line: Line, items: Sequence[Assignment], announced: str) ->
             Assignment(SPREADS[announced], spread.printed(line), after, spread.after + 1, loose=True)
         )
     return pairs
+
+
+_NUMBERED = words(
+    "section table figure fig experiment study version chapter equation eq model item step sample"
+)
+
+
+def _compared_pairs(line: Line, items: Sequence[Assignment], elsewhere: str) -> list[Assignment]:
+    """`5.0 (1.6) vs 4.2 (1.5)` where nothing in the sentence says what they are.
+
+    They are means where the first number of such a pair has been read as one (`the mean was 5.0 (1.6) in rye and 4.2 (1.5) in
+    wheat`), or where the document says what stands in brackets behind means and two pairs are set against each other.
+    """
+    means = [i for i in items if i.quantity == "mean" and i.printed.decimals > 0 and not i.several]
+    seeds = [(m, s) for m, s in pairwise(items) if m in means and _of(m, s, line)]
+    if not seeds and not elsewhere:
+        return []
+    kind = seeds[0][1].quantity if seeds else elsewhere
+    pairs = _announced_pairs(line, items, kind if kind in SPREADS else "")
+    alike = [
+        (mean, spread)
+        for mean, spread in zip(pairs[::2], pairs[1::2], strict=True)
+        if mean.printed.decimals > 0 and spread.printed.decimals > 0 and not mean.printed.percent
+    ]
+    shapes = {(m.printed.decimals, s.printed.decimals) for m, s in (*seeds, *alike)}
+    if len(shapes) != 1 or not (seeds or _set_against(line, alike)):
+        return []
+    return [replace(item, doubt="medium") for pair in alike for item in pair]
+
+
+def _of(mean: Assignment, spread: Assignment, line: Line) -> bool:
+    """Whether a spread without a label stands in brackets of its own behind its mean."""
+    bracket = line.at(spread.first).text == "(" and spread.loose
+    return (
+        spread.part == "spread" and bracket and spread.first - mean.after <= 2 and spread.printed.decimals > 0
+    )
+
+
+def _set_against(line: Line, pairs: Sequence[tuple[Assignment, Assignment]]) -> bool:
+    """Whether words of comparing stand between the first two pairs, and no other number does."""
+    if len(pairs) < 2:
+        return False
+    between = line.tokens[pairs[0][1].after : pairs[1][0].first]
+    told = any(token.low in ("vs", "versus", "v", "compared", "than", "and", "to") for token in between)
+    return told and len(between) <= 14 and not any(token.kind == "num" for token in between)
 
 
 _SPREAD_WORDS = (

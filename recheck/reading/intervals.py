@@ -26,6 +26,15 @@ class Interval:
 
 def interval_at(line: Line, index: int) -> Interval | None:
     """The interval announced at `index`: `95% CI [a, b]`, `CI95% = a, b`, `(a to b)` after its name."""
+    starts = line.at(index).low in ("q", "p", "25")
+    named = _named_quartiles(line, index) if starts else None
+    if named:
+        return named
+    past = _quartiles(line, index) if starts else None
+    if past:
+        at, _ = _to_ends(line, past)
+        ends = ends_at(line, at)
+        return Interval(ends[0], ends[1], ends[2], quantity="iqr") if ends else None
     level, at = _level(line, index)
     if level is not None:
         at += line.at(at).text == "-"
@@ -47,6 +56,42 @@ def interval_at(line: Line, index: int) -> Interval | None:
         low, high, after, level, spelled.symbol.quantity, spelled.symbol.stated, belongs,
         listed or spelled.symbol.several,
     )  # fmt: skip
+
+
+def _quartiles(line: Line, index: int) -> int | None:
+    """Index after `Q1–Q3`, `Q1, Q3`, `P25–P75`, `25th–75th percentile`, `25th and 75th percentiles`."""
+    first = _quartile(line, index, "1", "25")
+    if first is None or line.at(first).low not in ("-", ",", "to", "and", "/", "through"):
+        return None
+    after = _quartile(line, first + 1, "3", "75")
+    if after is None:
+        return None
+    return after + (
+        line.at(after).low in ("percentile", "percentiles", "centile", "centiles", "quantile", "quantiles")
+    )
+
+
+def _named_quartiles(line: Line, index: int) -> Interval | None:
+    """`Q1 = 3.1, Q3 = 5.6`."""
+    at = _quartile(line, index, "1", "25") if line.at(index).kind == "word" else None
+    low = number_at(line, at + (line.at(at).text in ("=", ":"))) if at else None
+    at = (
+        _quartile(line, low.after + (line.at(low.after).low in (",", ";", "and")), "3", "75") if low else None
+    )
+    high = number_at(line, at + (line.at(at).text in ("=", ":"))) if at else None
+    return Interval(low, high, high.after, quantity="iqr") if low and high else None
+
+
+def _quartile(line: Line, index: int, letter: str, percentile: str) -> int | None:
+    """Index after `Q1`, `P25` or `25th`."""
+    token, following = line.at(index), line.at(index + 1)
+    if token.kind == "word":
+        number = letter if token.low == "q" else percentile
+        fits = token.low in ("q", "p") and following.text == number and not following.spaced
+        return index + 2 if fits else None
+    if token.text != percentile or following.low not in ("th", "%", "percentile"):
+        return None
+    return index + 2
 
 
 _METHODS = words(
@@ -98,12 +143,8 @@ def _to_ends(line: Line, index: int) -> tuple[int, str]:
             break
         if token.text in (":", ","):
             index += 1
-        elif (
-            token.text in ("(", "[")
-            and line.at(index + 1).low in ("ci", "cis")
-            and line.at(index + 2).text in (")", "]")
-        ):
-            index += 3
+        elif token.text in ("(", "[") and (past := _named_again(line, index)):
+            index = past
         elif (
             token.low in ("for", "of")
             and (owner := spelled_at(line, index + 1))
@@ -117,6 +158,31 @@ def _to_ends(line: Line, index: int) -> tuple[int, str]:
         else:
             break
     return index, belongs
+
+
+def _two_hyphens(line: Line, index: int) -> bool:
+    """Whether two hyphens alike stand for one dash: `1.2--1.9`; in `−0.1–−0.5` a dash and a minus differ."""
+    first, second = line.at(index), line.at(index + 1)
+    if first.text != "-" or second.text != "-" or second.spaced:
+        return False
+    return line.view.printed_text(first.start, first.end) == line.view.printed_text(second.start, second.end)
+
+
+def _named_again(line: Line, index: int) -> int | None:
+    """Index after brackets that only name the interval once more: `(CI)`, `[confidence interval]`."""
+    at = index + 1
+    while line.at(at).low in (
+        "ci",
+        "cis",
+        "iqr",
+        "confidence",
+        "interval",
+        "intervals",
+        "interquartile",
+        "range",
+    ):
+        at += 1
+    return at + 1 if at > index + 1 and line.at(at).text in (")", "]") else None
 
 
 def ends_at(line: Line, index: int) -> tuple[Number, Number, int] | None:
@@ -138,6 +204,8 @@ def ends_at(line: Line, index: int) -> tuple[Number, Number, int] | None:
     if separator.text == "," and line.at(at + 1).low in ("to", "and"):
         at += 1
     high = number_at(line, at + 1)
+    if high is not None and high.value < low.value and _two_hyphens(line, at):
+        high = number_at(line, at + 2)
     if high is None:
         return None
     after = high.after

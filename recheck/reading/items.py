@@ -40,8 +40,14 @@ class Assignment:
         return self.symbol.part
 
 
+NEXT_TO_INTERVAL = "the number before the interval is taken for its estimate"
+"""The note of an estimate that nobody names."""
+
 P = Symbol("p", "p")
 MEAN = Symbol("mean", "centre")
+MEDIAN = Symbol("median", "centre")
+ESTIMATE = Symbol("estimate", "estimate")
 CI = Symbol("ci", "interval")
+COUNT = Symbol("count", "count")
 DF = Symbol("df", "df")
 SPREADS = {"sd": Symbol("sd", "spread"), "se": Symbol("se", "spread"), "": Symbol("spread", "spread")}

@@ -1,37 +1,28 @@
-"""Linking a test to the two group summaries that it compares."""
+"""Linking a test to the group summaries that it compares, where these stand in prose beside it."""
 
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import replace
 
 from recheck.model import Claim
+from recheck.reading.placed import Placed
 from recheck.reading.tokens import words
 
 
-@dataclass(frozen=True, slots=True)
-class Placed:
-    """A claim with the passage and sentence it stands in, and its characters in the view.
-
-    `span` counts characters of the passage.
-    """
-
-    claim: Claim
-    passage: int
-    sentence: int
-    start: int
-    end: int
-    text: str
-    span: tuple[int, int] = (0, 0)
-
-
-def linked(placed: Sequence[Placed]) -> list[Claim]:
-    """The claims, each test of two groups with the ids of its summaries where these are sure."""
-    summaries = _by_sentence(item for item in placed if _summary(item.claim))
-    tests = _by_sentence(item for item in placed if _two_groups(item.claim))
-    found: dict[str, Claim] = {}
-    for test in (test for group in tests.values() for test in group):
-        pair, basis, near = _pair(test, summaries, tests)
+def in_prose(placed: Sequence[Placed]) -> dict[str, Claim]:
+    """Each test whose group summaries stand in its sentence or a neighbouring one, by its id, with the ids of its summaries."""
+    summaries = _by_sentence(item for item in placed if has_spread(item.claim))
+    tests = _by_sentence(item for item in placed if groups_compared(item.claim) == 2)
+    larger = _by_sentence(item for item in placed if groups_compared(item.claim) > 2)
+    found = _counted(placed)
+    for test in (test for group in (*tests.values(), *larger.values()) for test in group):
+        place = (test.passage, test.sentence)
+        if groups_compared(test.claim) > 2:
+            alone = place not in tests and len(larger[place]) == 1
+            pair, basis, near = _several(test, summaries.get(place, []) if alone else [])
+        else:
+            pair, basis, near = _pair(test, summaries, tests)
         if pair:
             found[test.claim.id] = replace(
                 test.claim,
@@ -39,19 +30,49 @@ def linked(placed: Sequence[Placed]) -> list[Claim]:
                 link=basis,
                 link_confidence="high" if near else "medium",
             )
-    return [found.get(item.claim.id, item.claim) for item in placed]
+    return found
 
 
-def _summary(claim: Claim) -> bool:
+def _counted(placed: Sequence[Placed]) -> dict[str, Claim]:
+    """Each χ² of two shares that is the only one of its sentence, with the two counts that stand there with their totals."""
+    tests = _by_sentence(item for item in placed if of_two_shares(item.claim))
+    counts = _by_sentence(item for item in placed if item.claim.kind == "count") if tests else {}
+    found: dict[str, Claim] = {}
+    for place, own in tests.items():
+        pair = [item.claim for item in counts.get(place, [])]
+        if (
+            len(own) == 1
+            and len(pair) == 2
+            and all({"count", "total"} <= claim.values.keys() for claim in pair)
+        ):
+            found[own[0].claim.id] = replace(
+                own[0].claim, groups=tuple(claim.id for claim in pair),
+                link="the only two counts in the same sentence", link_confidence="medium",
+            )  # fmt: skip
+    return found
+
+
+def of_two_shares(claim: Claim, groups: int = 2) -> bool:
+    """Whether a χ² may compare the shares of so many groups: its df are one less, or not printed for two groups."""
+    df = claim.values.get("df")
+    return claim.kind == "chi2-test" and (groups == 2 if df is None else df.value == groups - 1)
+
+
+def has_spread(claim: Claim) -> bool:
+    """Whether a claim sums up a group with its mean and spread."""
     return claim.kind == "group-summary" and "mean" in claim.values and bool({"sd", "se"} & set(claim.values))
 
 
-def _two_groups(claim: Claim) -> bool:
+def groups_compared(claim: Claim) -> int:
+    """How many groups a test compares: two for t and for F with one numerator df, one more than that df for F; else 0."""
     if claim.kind == "t-test":
-        return not claim.says("one-sample")
+        return 0 if claim.says("one-sample") else 2
     df1 = claim.values.get("df1")
-    return claim.kind == "F-test" and df1 is not None and df1.value == 1
+    plain = claim.kind == "F-test" and df1 is not None and df1.value == df1.value.to_integral_value()
+    return int(df1.value) + 1 if plain and df1 is not None and 1 <= df1.value < _MOST_GROUPS else 0
 
+
+_MOST_GROUPS = 12
 
 _Sentences = Mapping[tuple[int, int], list[Placed]]
 
@@ -85,6 +106,14 @@ def _pair(test: Placed, summaries: _Sentences, tests: _Sentences) -> tuple[tuple
     return (), "", True
 
 
+def _several(test: Placed, here: Sequence[Placed]) -> tuple[tuple[Placed, ...], str, bool]:
+    """The groups of an F with several numerator df: all summaries of its sentence, where it is the only test there."""
+    count = groups_compared(test.claim)
+    if len(here) != count or not _alike(here):
+        return (), "", True
+    return tuple(here), f"the only {count} group summaries in the same sentence", True
+
+
 def _with_the_one_before(
     test: Placed, here: Placed, summaries: _Sentences, tests: _Sentences
 ) -> tuple[tuple[Placed, ...], str, bool]:
@@ -114,11 +143,14 @@ def _own(test: Placed, here: list[Placed], rivals: list[Placed]) -> list[Placed]
     return [s for s in here if left < s.start < test.start]
 
 
-def _alike(pair: Sequence[Placed]) -> bool:
-    """Two summaries of one outcome have the same spread, unit and similar precision."""
-    one, two = (item.claim.values for item in pair)
-    same = ("sd" in one) == ("sd" in two) and one["mean"].percent == two["mean"].percent
-    return same and not any(_about_age(item) for item in pair)
+def _alike(summaries: Sequence[Placed]) -> bool:
+    """Summaries of one outcome have the same spread and unit, and none is about age."""
+    return alike([item.claim for item in summaries]) and not any(_about_age(item) for item in summaries)
+
+
+def alike(claims: Sequence[Claim]) -> bool:
+    """Whether all claims print the same kind of spread and, or none of them, a percentage."""
+    return len({("sd" in c.values, c.values["mean"].percent) for c in claims}) == 1
 
 
 _AGES = frozenset(("age", "aged", "ages", "mage", "years", "year"))
@@ -141,14 +173,15 @@ def _same_outcome(test: Placed, near: Sequence[Placed]) -> bool:
 
     A difference that is printed with the test must be that of the two means as printed.
     """
-    if not _same_difference(test.claim, [item.claim for item in near]):
+    if not same_difference(test.claim, [item.claim for item in near]):
         return False
     mine = {w for w in test.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
     other = {w for s in near for w in s.text.lower().split() if len(w) > 4 and w.isalpha()} - _COMMON
     return bool(mine & other) or len(mine) <= 4
 
 
-def _same_difference(test: Claim, pair: Sequence[Claim]) -> bool:
+def same_difference(test: Claim, pair: Sequence[Claim]) -> bool:
+    """Whether a difference that is printed with a test is that of the two means as printed."""
     printed = test.values.get("mean_difference")
     if printed is None or len(pair) != 2:
         return True

@@ -84,3 +84,23 @@ def marked(line: Line, item: Assignment) -> bool:
         return line.at(at).spaced or line.at(at - 1).text in ("(", "[", ";", ",")
     lettered = before.kind == "word" and before.text in _LETTERS and item.printed.relation != "="
     return lettered and closer.text in (";", "(", "[", ".")
+
+
+_TELLING = words(
+    "but although though however this that it the effect difference association relation relationship trend slope change was is did does "
+    "not reach reached failed to statistical statistically significant significance only marginally although and which"
+)
+
+
+def told_behind(line: Line, current: Sequence[Assignment], item: Assignment) -> bool:
+    """Whether words tell that a p belongs to the result before it: `(β = −0.73), but this effect was not significant (p = .089)`."""
+    between = [
+        t for t in line.tokens[current[-1].after : item.first] if t.text not in (")", "(", "]", "[", ",")
+    ]
+    told = {token.low for token in between}
+    return (
+        bool(told & {"this", "that", "it", "which"})
+        and told <= _TELLING
+        and any(other.part in ("statistic", "estimate", "effect") for other in current)
+        and not any(other.part == "p" for other in current)
+    )

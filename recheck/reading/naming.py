@@ -42,6 +42,9 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
         for name, value in _values(item, draft, label):
             values.setdefault(name, value)
         notes += [note for note in item.notes if note not in notes]
+    if {"sd", "ci_low", "ci_high"} <= set(values) <= {"sd", "ci_low", "ci_high", "ci_level"}:
+        values["estimate"] = values.pop("sd")
+        notes.append("the estimate is a standard deviation")
     kind = _kind(draft, values, sentence_says)
     if kind is None:
         return None
@@ -52,7 +55,8 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
     if kind == "group-summary" and "N" in values and "n" not in values and _in_own_brackets(draft):
         values["n"] = values.pop("N")
     foreign = values.pop("other", None)
-    if foreign is not None and "ci_low" in values and not draft.part("estimate", "effect", "statistic"):
+    lone = not draft.part("estimate", "effect", "statistic", "centre")
+    if foreign is not None and lone and {"ci_low", "p"} & set(values):
         values["estimate"] = foreign
     confidence: Confidence = "high"
     if draft.inferred:
@@ -79,12 +83,17 @@ def _roughly(values: dict[str, Printed]) -> bool:
     return any(value.relation == "≈" for value in values.values())
 
 
+_ENDS = {"ci": ("ci_low", "ci_high"), "range": ("min", "max"), "iqr": ("q1", "q3")}
+
+
 def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Printed]]:
     """The quantities that one assignment gives to its claim."""
     if item.part == "interval":
-        ends = {"ci": ("ci_low", "ci_high"), "range": ("min", "max")}.get(item.quantity)
-        if ends is None or (item.quantity == "range" and not draft.part("centre")):
+        ends = _ENDS.get(item.quantity)
+        if ends is None or (item.quantity != "ci" and not draft.part("centre")):
             return []
+        if not item.extra:
+            return [(item.quantity, item.printed)]
         given = dict(item.extra)
         level = [("ci_level", given["ci_level"])] if "ci_level" in given and item.quantity == "ci" else []
         return [(ends[0], given["ci_low"]), (ends[1], given["ci_high"]), *level]
@@ -103,20 +112,22 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
 
 
 def _kind(draft: Draft, values: dict[str, Printed], says: tuple[str, ...]) -> ClaimKind | None:
+    if "count" in values:
+        return "count"
     for quantity, kind in _KINDS:
         if quantity in values:
             return _test_kind(quantity, kind, draft, values, says)
     if "mean" in values or "median" in values:
-        if "ci_low" in values and "sd" not in values and "se" not in values and "p" in values:
+        if "p" in values and ("ci_low" not in values or not {"sd", "se"} & set(values)):
             return "estimate"
         single = draft.part("centre")
-        alone = not set(values) & {"sd", "se", "n", "N", "ci_low", "min"}
+        alone = not set(values) & {"sd", "se", "n", "N", "ci_low", "min", "q1", "iqr"}
         vague = single is not None and (single.loose or single.printed.relation != "=")
         return None if alone and vague else "group-summary"
     if "mean_difference" in values:
         return "comparison"
     if {"sd", "se"} & set(values) and not draft.part("estimate", "effect", "p"):
-        return None
+        return "estimate" if "estimate" in values else None
     if draft.part("effect"):
         return "estimate"
     if draft.part("estimate"):
@@ -191,6 +202,8 @@ def _interval_of(draft: Draft) -> str | None:
                 return spread_first.quantity if spread_first else None
             if previous.part == "statistic" and previous.quantity != "r":
                 return None
-            return previous.quantity
+            if previous.quantity == "sd" and not draft.part("centre", "estimate", "effect"):
+                return "estimate"
+            return "percent" if previous.part == "count" else previous.quantity
         previous = item
     return None

@@ -25,6 +25,7 @@ LEFT_OUT: dict[str, tuple[str, str]] = {
     "rule": ("rule of thumb", "rules of thumb"),
     "credible": ("interval that is no confidence interval", "intervals that are no confidence intervals"),
     "equation": ("equation", "equations"),
+    "curve": ("constant or fit of a curve", "constants or fits of curves"),
     "setting": ("setting with its tolerance", "settings with their tolerance"),
     "other study": ("result of another study", "results of other studies"),
 }

@@ -23,11 +23,12 @@ _SIGNS: dict[str, Relation] = {"=": "=", "<": "<", ">": ">", "≤": "≤", "≥"
 
 @dataclass(frozen=True, slots=True)
 class Line:
-    """The tokens of one sentence, with the view they come from."""
+    """The tokens of one sentence, with the view they come from; without `shares` it has no percent sign."""
 
     view: View
     tokens: Sequence[Token]
     decimal_comma: bool = False
+    shares: bool = True
 
     def at(self, index: int) -> Token:
         """The token at `index`, or one that is nothing where there is none."""

@@ -15,12 +15,13 @@ from recheck.reading.views import TIMEOUT
 
 @dataclass(frozen=True)
 class Sentence:
-    """A sentence as the traps look at it: its text, in lower case too, its tokens, its start in the view."""
+    """A sentence as the traps look at it: its text, in lower case too, its tokens, its start in the view, the sentence before."""
 
     text: str
     low: str
     line: Line
     start: int
+    before: str = ""
     known: dict[tuple[str, ...], bool] = field(default_factory=dict)
 
     def says(self, words: tuple[str, ...]) -> bool:
@@ -77,6 +78,15 @@ def quoted(draft: Draft, sentence: Sentence) -> bool:
     start, end = draft.line.at(draft.first).start, draft.line.at(draft.after - 1).end
     is_tested = tested(draft)
     found = False
+    if not is_tested and not sentence.ours and _going_on(sentence):
+        return True
+    if (
+        not is_tested
+        and not own
+        and not draft.part("centre")
+        and _cited_behind(sentence.text[end - sentence.start :])
+    ):
+        return True
     for match in sentence.citations:
         found = True
         before = sentence.text[: match.start()].rstrip()
@@ -105,6 +115,35 @@ def quoted(draft: Draft, sentence: Sentence) -> bool:
         and (found or sentence.says(("meta-analy", "previous", "literature", "earlier")))
         and (sentence.says(_VERBS) or sentence.says(("meta-analy", "average effect", "overall effect")))
     )
+
+
+@cache
+def _behind() -> regex.Pattern[str]:
+    return regex.compile(r"[ )]{0,2}\[(?:\d{1,3}(?:[,-] ?\d{1,3}){0,9}\]|[\p{Ll} ]{3,40}\[\d)")
+
+
+def _cited_behind(text: str) -> bool:
+    """Whether a numbered citation stands right behind the numbers: `R² = .21 [7]`, `r = .19 [data of [34]]`."""
+    return "[" in text[:3] and bool(_behind().match(text, timeout=TIMEOUT))
+
+
+@cache
+def _same_subject() -> regex.Pattern[str]:
+    """A sentence that goes on about what the one before told."""
+    return regex.compile(
+        r"""(?:they|(?:this|that|the\ latter|their|his|her|its)\ (?:[\w-]+\ )?(?:estimates?|effects?|values?|stud(?:y|ies)|results?|findings?
+        |analys[ei]s|meta-analys[ei]s|trial|sample|authors?)|(?:the|these)\ authors)\b""",
+        regex.VERBOSE,
+    )
+
+
+def _going_on(sentence: Sentence) -> bool:
+    """Whether a sentence goes on about the earlier work that the one before cites: `This estimate was further reduced to g = .05`."""
+    before = sentence.before
+    if not before or _same_subject().match(sentence.low, timeout=TIMEOUT) is None:
+        return False
+    cited = " et al" in before or bool(_cited().search(before, timeout=TIMEOUT))
+    return cited and not _any(f" {before.lower()} ", _OURS)
 
 
 def _method(citation: str) -> bool:
@@ -160,7 +199,8 @@ def _study() -> regex.Pattern[str]:
     return regex.compile(
         r"""(?:(?:however|indeed|moreover|for\ example|for\ instance|similarly|likewise),?\ )?(?:(?:in|from|by)\ )?
         (?:an?|one|another|two|the\ only|some|several|the\ largest)\ (?:[\w-]+\ ){0,4}
-        (?:stud(?:y|ies)|trials?|surveys?|cohorts?|reviews?|meta-analys[ei]s|series|audits?|experiments?|reports?)\b""",
+        (?:stud(?:y|ies)|trials?|surveys?|cohorts?|reviews?|meta-analys[ei]s|series|audits?|experiments?|reports?)\b
+        |[\w'-]{2,25}\ (?:et\ al\.?|and\ (?:colleagues|co-?workers))\ (?:\w+\ )?(?:found|reported|showed|observed|described|demonstrated)\b""",
         regex.VERBOSE,
     )
 

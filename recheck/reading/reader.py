@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Iterator, Sequence
 from dataclasses import replace
+from functools import partial
 from hashlib import blake2b
 
 from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading
@@ -14,13 +15,17 @@ from recheck.reading.context import Setting, decimal_comma, setting_of
 from recheck.reading.glyphs import Repairs, doubted, repaired
 from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
-from recheck.reading.linking import Placed, linked
 from recheck.reading.listed import corrected
+from recheck.reading.medians import announced_ends, with_medians
 from recheck.reading.naming import Named, named
 from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
+from recheck.reading.parallel import in_parallel
+from recheck.reading.placed import Placed
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
+from recheck.reading.relating import related
 from recheck.reading.significance import told_in_words
+from recheck.reading.tables import with_tables
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
@@ -47,7 +52,16 @@ def read(document: Document) -> Reading:
             left[TOO_LONG] += 1
             continue
         placed += [_doubted(item, passages[number], repairs) for item in found]
-    return Reading(tuple(linked(_unique(placed))), setting.context, _notes(document, left))
+    placed, unnamed = with_tables(
+        placed, document, READ, setting, repairs, left, partial(_told_in, setting=setting, left=left)
+    )
+    claims, same = related(_unique(placed), document, passages, [view.text for view in views])
+    return Reading(claims, setting.context, (*_notes(document, left), *unnamed), same)
+
+
+def _told_in(view: View, *, setting: Setting, left: Counter[str]) -> list[Claim]:
+    """The claims of a text by itself: a cell with a whole result."""
+    return [item.claim for item in _passage(view, tuple(sentences(view)), 0, setting, left)]
 
 
 def _doubted(item: Placed, passage: Passage, repairs: Repairs) -> Placed:
@@ -66,22 +80,28 @@ def _passage(view: View, spans: Spans, number: int, setting: Setting, left: Coun
         if DIGITS.isdisjoint(text) or not (any(sign in text for sign in _SIGNS) or _words_of_results(text)):
             continue
         comma = setting.decimal_comma or ("," in text and decimal_comma((text,)))
-        line = Line(view, tokens(view, start, end), comma)
-        sentence = Sentence(text, text.lower(), line, start)
+        line = Line(view, tokens(view, start, end), comma, "%" in text)
+        sentence = Sentence(
+            text, text.lower(), line, start, view.text[slice(*spans[order - 1])] if order else ""
+        )
         for draft, name in _sentence(sentence, setting, left):
             first, last = _extent(draft, name)
             claim = _claim(view, first, last, name, setting)
-            yield Placed(claim, number, order, first, last, text, view.span(first, last))
+            yield Placed(claim, number, order, first, last, text, view.span(first, last), start)
 
 
 _SIGNS = "=<>≤≥≈±"
+_SHARES = ("%)", "%]", "%;", "% (", "% [", "%, ", "% of")
 _WORDS = ("mean", "average", "deviation", "interval", "ratio", "value", "correlation", "statistic", "difference", "test", "degrees",
-          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d", "sd", "se:", "cohen", "hedges")  # fmt: skip
+          "range", "risk", "estimate", "median", "p .", "p 0", "p.0", "p:", "ci ", "ci,", "sd ", "se ", "sem ", "s.d", "sd", "se:", "cohen", "hedges", "kappa", "coefficient",
+          "under the", "bayes", "auc", "icc")  # fmt: skip
 
 
 def _words_of_results(text: str) -> bool:
     """Whether a sentence without a relation sign may hold a result in words: `a mean of 3.9`, `OR 1.5`."""
     if any(word in text for word in ("OR ", "HR ", "RR ", "CI", "OR, ", "HR, ", "RR, ")):
+        return True
+    if "%" in text and any(sign in text for sign in _SHARES):
         return True
     low = text.lower()
     return any(word in low for word in _WORDS)
@@ -91,7 +111,8 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     """The claims of one sentence; what was left out is counted by its reason."""
     line = sentence.line
     sign, brackets = announced_spread(sentence.low)
-    items = with_means(_with_ns(assignments(line), line), line, brackets)
+    items = with_means(_with_ns(assignments(line), line), line, brackets, setting.in_brackets)
+    items = with_medians(items, line, announced_ends(sentence.low), setting.behind_medians)
     if not items:
         return
     says = stated(sentence.text)
@@ -99,7 +120,8 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     each, items = size_of_each(items, line)
     parts = [item.part for item in items]
     worded = "p" not in parts and parts.count("statistic") == 1
-    for draft in drafts(items, line):
+    items, together = in_parallel(items, line)
+    for draft in sorted((*drafts(items, line), *together), key=lambda draft: draft.first):
         label = (sign or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
         name = named(draft, label, says)
         if name is None:
@@ -210,9 +232,11 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
         confidence, notes = "low", (*notes, "a comma may be a decimal sign or group thousands")
     # Tukey's and Dunnett's tests compare pairs: their p are not printed with an F.
     but = ("adjusted-p-post-hoc",) if setting.pairs_alone and name.kind == "F-test" else ()
+    also = ("permutation",) if setting.by_permutation and name.kind == "F-test" else ()
+    spoken = dict.fromkeys((*setting.context.background, *also))
     return Claim(
         _id(name, place.quote, view.passage), name.kind, place, values, name.stated,
-        tuple(word for word in setting.context.background if word not in name.stated and word not in but),
+        tuple(word for word in spoken if word not in name.stated and word not in but),
         name.interval_of, confidence, notes=notes,
     )  # fmt: skip
 

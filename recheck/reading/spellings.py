@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
+from recheck.reading.alike import FLAT
 from recheck.reading.numerals import Line
 from recheck.reading.symbols import Symbol, find, glued, longest_spelling
 from recheck.reading.tokens import Token
@@ -107,8 +108,10 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
                 numbers.append(token._replace(text=token.text[1:], start=token.start + 1))
         elif token.kind == "sub" or (token.kind == "num" and not token.spaced and quantity in _LOWERED):
             numbers.append(token)
-        elif token.kind == "num" and not token.spaced and base.text in ("BF", "I", "Q"):
-            pass
+        elif token.kind == "num" and not token.spaced and base.text[0] in "QH":
+            return None
+        elif token.kind == "num" and not token.spaced and base.text in ("BF", "I", "ICC"):
+            label = token.text if base.text == "BF" else label
         elif quantity in ("t", "F", "chi2") and _apart(line, after, squared):
             numbers.append(token)
         elif (token.text == "|" and not token.spaced and not numbers) or (
@@ -123,6 +126,7 @@ def _tail(line: Line, base: Spelled) -> Spelled | None:
                 and line.at(after + 2).kind == "word"
                 and not line.at(after + 2).spaced
             ):
+                label += f"-{line.at(after + 2).text}"
                 after += 2
         elif _is_subscript(line, after, squared or base.symbol.part == "effect"):
             label = token.text
@@ -187,7 +191,7 @@ _VARIANTS = {
     ("r2", "adj"): "adjusted_r2", ("r2", "adjusted"): "adjusted_r2",
     ("mean", "diff"): "mean_difference", ("mean", "d"): "mean_difference", ("mean", "difference"): "mean_difference",
     ("se", "diff"): "se_difference", ("se", "difference"): "se_difference", ("mse", "e"): "mse",
-    ("phi", "c"): "cramers_v", ("df", "1"): "df1", ("df", "2"): "df2",
+    ("phi", "c"): "cramers_v", ("bf10", "01"): "bf01", ("df", "1"): "df1", ("df", "2"): "df2",
 }  # fmt: skip
 _PARTS = {"mean_difference": "estimate", "r_pb": "effect", "r2": "effect", "adjusted_r2": "effect"}
 
@@ -196,8 +200,12 @@ def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
     """Settle the quantity by square and subscript."""
     symbol, label = spelled.symbol, spelled.label.lower()
     quantity, stated = symbol.quantity, list(spelled.stated)
+    of_g_test = spelled.text == "G" and any(
+        t.low == "df" for t in line.tokens[spelled.after : spelled.after + 7]
+    )
     if not squared and (
-        spelled.text in _NEEDS_SQUARE or (spelled.text in ("η", "ω", "eta", "np") and not label)
+        (spelled.text in _NEEDS_SQUARE and not of_g_test)
+        or (spelled.text in ("η", "ω", "eta", "np") and not label)
     ):
         return None
     if spelled.text in _NEEDS_DF and line.at(spelled.after).text not in ("(", "["):
@@ -209,6 +217,8 @@ def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
     quantity = _VARIANTS.get((quantity, label), quantity)
     if quantity in ("n", "N") and spelled.numbers:
         return replace(spelled, symbol=NUMBERED)
+    if quantity == "bf10" and spelled.numbers:
+        quantity = _VARIANTS.get(("bf10", spelled.numbers[0].text.translate(FLAT)), "bf10")
     if quantity == "df" and spelled.numbers:
         quantity = _VARIANTS.get(("df", spelled.numbers[0].text), "df")
     if quantity == "r" and label in ("s", "rho", "spearman"):

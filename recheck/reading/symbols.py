@@ -8,7 +8,9 @@ from typing import Literal
 
 from recheck.reading.tokens import words
 
-Part = Literal["statistic", "centre", "spread", "estimate", "effect", "p", "size", "df", "interval", "other"]
+Part = Literal[
+    "statistic", "centre", "spread", "estimate", "effect", "p", "size", "df", "interval", "count", "other"
+]
 """What a quantity does in a claim: `centre` is a mean or median, `size` an n, `estimate` a coefficient,
 a difference or a ratio, `effect` an effect size, `other` what stands beside a result and is no result."""
 
@@ -50,7 +52,7 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family(
         "statistic",
         F="F|f|ΔF|Fchange|F change|F value|F statistic|F test|F ratio|ANOVA F",
-        chi2="chi square|chi squared|chisq|chi sq|chisquare|khi|X|x|v|c|w|χ|chi|Chi"
+        chi2="chi square|chi squared|Chi square|Chi squared|Chi sq|chisq|chi sq|chisquare|khi|X|x|v|c|w|χ|chi|Chi"
         "|Wald χ|Pearson χ|Wald|Wald statistic",
         z="z|Z|z value|z statistic|z score|Wald z|Wald Z|z test|z ratio",
         r="r|R|Pearson r",
@@ -63,6 +65,8 @@ SPELLINGS: list[tuple[str, Symbol]] = [
         worded=True,
         r="Pearson correlation|Pearson correlation coefficient|correlation coefficient|correlation",
     ),
+    *_family("statistic", chi2="Q|QM|QE|Qm|Qe|QB|QW|Qb|Qw|Qbetween|Qwithin"),
+    *_family("statistic", stated=("rank-test",), chi2="Cochran Q|Cochrans Q"),
     *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal-Wallis χ"),
     *_family("statistic", stated=("likelihood-ratio",), chi2="G|LR χ|likelihood ratio χ"),
     *_family("statistic", stated=("model-fit",), chi2="Δχ"),
@@ -83,9 +87,9 @@ SPELLINGS: list[tuple[str, Symbol]] = [
         "|Tukey p|Holm p|FDR p|pFWE|pFWER|pHB",
     ),
     *_family("p", several=True, p="ps|Ps|p's|P's|p values|P values|pvalues"),
-    *_family("centre", mean="M|x̄|X̄|x̅|X̅|ȳ|Ȳ|mean|average|mean value|mean score|mean age|M age", bare=True, worded=True),
+    *_family("centre", mean="M|EMM|x̄|X̄|x̅|X̅|ȳ|Ȳ|mean|average|mean value|mean score|mean age|M age", bare=True, worded=True),
     *_family("centre", median="Mdn|Md|median|Median", bare=True, worded=True),
-    *_family("centre", several=True, mean="Ms|means|averages|mean values|mean scores", median="medians|Mdns"),
+    *_family("centre", several=True, mean="Ms|M's|means|averages|mean values|mean scores", median="medians|Mdns"),
     *_family(
         "spread",
         bare=True,
@@ -125,6 +129,7 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     ),
     *_family("estimate", bare=True, worded=True, mean_difference="mean difference|difference in means|mean diff"
              "|mean change|average change|mean increase|mean decrease|mean gain|mean reduction|mean improvement"),
+    *_family("estimate", bare=True, b="estimated coefficient|regression coefficient|path coefficient|estimated slope"),
     *_family("estimate", b="b|B|coefficient|coef|slope", estimate="Estimate|estimate|est|Est", beta="β|beta|Beta|bs", intercept="intercept"),
     *_family("estimate", several=True, b="Bs", beta="βs|betas", or_="ORs|odds ratios", hr="HRs|hazard ratios", rr="RRs"),
     *_family(
@@ -150,14 +155,28 @@ SPELLINGS: list[tuple[str, Symbol]] = [
         delta="Glass Δ|Glass delta",
     ),
     *_family("effect", several=True, partial_eta2="ηps|ηs"),
+    *_family(
+        "effect",
+        bare=True,
+        worded=True,
+        auc="AUC|AUROC|AUCs|area under the curve|area under the ROC curve|area under curve|area under the receiver operating characteristic curve"
+        "|area under the receiver operating curve|C statistic|c statistic|C index|c index|concordance index",
+        icc="ICC|ICCs|intraclass correlation|intraclass correlation coefficient|intra-class correlation|intraclass r|intraclass coefficient"
+        "|intra-class correlation coefficient|intra-class coefficient",
+        kappa="κ|kappa|Cohen kappa|Cohens kappa|Cohen κ|Fleiss kappa|Fleiss κ|weighted kappa|weighted κ|kappa value|kappa coefficient"
+        "|kappa statistic|k value|k statistic|κ value|κ coefficient|κ statistic|kappa score",
+        tau="τ|Kendall tau|Kendall τ|Kendall rank correlation|Kendall rank correlation coefficient",
+        bf10="BF|Bayes factor",
+    ),
+    *_family("effect", several=True, bf10="BFs|Bayes factors"),
+    *_family("effect", tau="τb|tau|tau b|Kendall tau b|Kendall τb|Kendall τ b"),
     *_family("other", mse="MSE|MSe|mean square error|mean squared error|mean square"),
     *_family("other", several=True, mse="MSEs"),
     *_family("other", alpha="α|alpha|significance level", power="power"),
     *_family(
         "other",
-        other="ΔR|BF|AIC|BIC|AUC|ICC|κ|kappa|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|τ|tau|Λ|Q|I|MS|SS|rtt|KR"
-        "|intraclass correlation|intraclass correlation coefficient|intra-class correlation|intraclass r|test-retest r"
-        "|intra-class correlation coefficient|concordance correlation|concordance correlation coefficient"
+        other="ΔR|AIC|BIC|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|Λ|I|MS|SS|rtt|KR|test-retest r"
+        "|concordance correlation|concordance correlation coefficient"
         "|canonical correlation|multiple correlation|Matthews correlation coefficient|cophenetic correlation"
         "|pMCMC|logBF|RT|ER|C|D|S|A|E|K|L|J|k|m|y|q|ELPD|LOOIC|PPV|NPV|sensitivity|specificity",
     ),
@@ -169,7 +188,61 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family("interval", iqr="IQR|interquartile range|inter-quartile range|quartiles|interquartile interval"),
 ]  # fmt: skip
 
-GLUED = ("Mean", "SEM", "SD", "SE", "M")
+
+# What only the headings of tables say: a word such as `No.` or `Number` is no symbol in prose.
+HEADINGS: list[tuple[str, Symbol]] = [
+    *_family("size", n="No|no|Nr|nr|Num|number|numbers|sample size|obs|observations|total n|total N|n obs|valid N|valid n",
+             count="count|counts|frequency|freq|absolute frequency|absolute number",
+             percent="percent|per cent|percentage|percentages|pct|relative frequency"),
+    *_family("centre", stated=("marginal",), mean="LS mean|LS means|least squares mean|least squares means|EMM|EMMs|marginal mean|marginal means"
+             "|estimated marginal mean|estimated marginal means|EM mean|EM means"),
+    *_family("centre", stated=("covariate-adjusted",), mean="adjusted mean|adjusted means"),
+    *_family("centre", stated=("transformed",), mean="geometric mean|geometric means|GM"),
+    *_family("centre", mean="Mean|means|averages|X̅|x̅|Mean value|mean values|mean scores", median="medians"),
+    *_family("spread", sd="standard deviations|SDs|Std|Std Dev|Std dev|Std Deviation|Std Dev", se="standard errors|SEs|Std err|Std Err|Std Error|Std Error Mean|S E"),
+    *_family("interval", q1="first quartile|lower quartile", q3="third quartile|upper quartile",
+             min="min|Min|minimum|lowest", max="max|Max|maximum|highest",
+             ci_low="LL|LCL|lower limit|lower bound|LLCI|CI low|CI lower|lower CI|low CI|CI LL|lower CL|LB|LCI",
+             ci_high="UL|UCL|upper limit|upper bound|ULCI|CI high|CI upper|upper CI|high CI|CI UL|upper CL|UB|UCI",
+             low="lower|low|Low|from", high="upper|high|to",
+             ci="CIs|confidence intervals|C I|conf interval|CL|confidence limits"),
+    *_family("p", p="p values|P values|probability|significance|Pr|sig level|Prob|asymp sig|exact sig|p level|P level"),
+    *_family("p", stated=("permutation",), p="p perm|P perm|p permutation|Pperm|pperm|P(perm)|p MC|P MC"),
+    *_family("statistic", F="F values|F statistics", t="t values|t statistics|tvalue|t stat|t Stat", chi2="χ value|chi square value"
+             "|Pearson chi square|chi square statistic|χ statistic|Wald χ value",
+             z="z values|Z value|Z score|Z statistic|z stat", u="U value|U statistic"),
+    *_family("estimate", b="unstandardized coefficient|unstandardised coefficient|regression coefficient|coefficients|coeff|slopes"
+             "|unstandardized B|unstandardised B|unstandardized b|regression coefficients|B coefficient|b coefficient|slope of regression line",
+             beta="standardized coefficient|standardised coefficient|standardized beta|standardised beta|standardized coefficients"
+             "|β coefficient|beta coefficient|std beta|standardized β|standardised β|Std Coef|β value",
+             estimate="estimates|parameter estimate|parameter estimates|effect estimate|point estimate|coefficient estimate",
+             or_="ORa|OR a|adj OR|OR crude|Exp B|ExpB", hr="HRs|adj HR|HR adj", rr="RRs|adj RR",
+             mean_difference="differences|mean differences|difference between groups|between group difference|group difference"
+             "|adjusted mean difference|adjusted difference|WMD"),
+    *_family("other", ss="SS|sum of squares|Sum of squares|sums of squares|type III sum of squares|Type III sum of squares|type III SS|type II SS|type I SS|Sum Sq|SSQ|Seq SS|Adj SS|adjusted SS|sequential SS",
+             ms="MS|mean square|mean squares|Mean Sq|Adj MS|Seq MS|adjusted MS"),
+    *_family("df", df="d f|Df|degrees freedom|DFs", df1="num df|numDF|Num df|Num DF|numerator df|NumDF|df num|df numerator|NDF|ndf|df between|hypothesis df"
+             "|df effect|df hypothesis|effect df", df2="den df|denDF|Den df|Den DF|denominator df|DenDF|df den|df denominator|DDF|ddf|df within|error df|df error"
+             "|residual df|df residual"),
+    *_family("effect", partial_eta2="partial η|ηp|partial eta squared", d="Cohen d|effect size d|ES d", other="effect size|ES|SMD|standardized mean difference|standardised mean difference|standardized difference|standardised difference"),
+]  # fmt: skip
+
+
+@cache
+def _headings() -> tuple[dict[tuple[str, ...], Symbol], int]:
+    exact = {
+        tuple(key_of(word) for word in text.replace("-", " ").split()): symbol for text, symbol in HEADINGS
+    }
+    return exact, max(len(key) for key in exact)
+
+
+def heading(words: tuple[str, ...]) -> Symbol | None:
+    """The symbol that exactly this spelling stands for in headings of tables alone."""
+    found, longest = _headings()
+    return found.get(tuple(key_of(word) for word in words)) if len(words) <= longest else None
+
+
+GLUED = ("Mean", "EMM", "SEM", "SD", "SE", "M")
 """Symbols that stand in front of a word without a space where the word was a subscript: `Mage`, `SDcontrol`."""
 
 _NO_SUBSCRIPTS = words(
@@ -214,7 +287,7 @@ def find(words: tuple[str, ...]) -> Symbol | None:
 
 def glued(word: str) -> tuple[Symbol, str] | None:
     """A symbol with its subscript printed as one word: `Mage`, `SDage`, `MRye`; no abbreviation (`MAF`)."""
-    if word[0] not in "MS" or not word.isalpha():
+    if word[0] not in "MSE" or not word.isalpha():
         return None
     for head in GLUED:
         tail = word[len(head) :]

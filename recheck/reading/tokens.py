@@ -35,7 +35,8 @@ NOTHING = Token("end", "", "", -1, -1, True)
 @cache
 def _pattern() -> regex.Pattern[str]:
     return regex.compile(
-        r"""(?P<num>\d+(?:[.,·]\d+)*            # 12  1.71  1,234.5  0·03
+        r"""(?P<num>\d+\.\d+(?=,9[059]%)        # 0.66 of 0.66,95%CI
+              |\d+(?:[.,·]\d+)*            # 12  1.71  1,234.5  0·03
               |(?<![\d\p{L})])[.·]\d+(?!\.?\d)  # .03
               |(?<=^|[=<>≤≥≈(\[-][ ]?),\d+(?![.,·]?\d))   # ,030 after a sign
         |(?P<word>\p{L}(?:\.\p{L}){1,4}\b\.?    # s.d.  n.s.

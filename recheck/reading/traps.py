@@ -6,6 +6,7 @@ from collections.abc import Callable
 
 from recheck.reading.claims import Draft
 from recheck.reading.items import Assignment
+from recheck.reading.levels import level
 from recheck.reading.quoting import Sentence, quoted, tested
 from recheck.reading.tokens import words
 
@@ -25,6 +26,8 @@ def _several(draft: Draft, sentence: Sentence) -> bool:
     if core is None or core.several:
         return core is not None
     p = draft.get("p")
+    if core is p and _of_many(draft, core):
+        return True
     whole = bool(core.extra) and p is not None and p.printed.relation == "="
     told = draft.items[1:] if whole else draft.items
     if draft.part("statistic", "p") and any(draft.line.at(i.first - 1).low in _EXTREMES for i in told):
@@ -33,6 +36,26 @@ def _several(draft: Draft, sentence: Sentence) -> bool:
     return core.printed.relation != "=" and bool(before & {"all", "both", "each", "every", "any", "always"})
 
 
+def _of_many(draft: Draft, p: Assignment) -> bool:
+    """A lone p that is the mean of several, or the bound of all comparisons told before it."""
+    before = [t.low for t in draft.line.tokens[max(0, p.first - 14) : p.first]]
+    if before[-1:] == ["mean"] or before[-1:] == ["average"]:
+        return True
+    if p.printed.relation == "=":
+        return False
+    told = " ".join(before)
+    return any(f"{noun} of all" in told or f"all {noun}" in told for noun in _COMPARED)
+
+
+_COMPARED = (
+    "comparison",
+    "comparisons",
+    "pairwise comparisons",
+    "pairs",
+    "contrasts",
+    "tests",
+    "correlations",
+)
 _EXTREMES = words(
     "largest smallest highest lowest maximum minimum max min strongest weakest biggest maximal minimal"
 )
@@ -62,6 +85,9 @@ def _critical(draft: Draft, sentence: Sentence) -> bool:
 
 def _legend(draft: Draft, sentence: Sentence) -> bool:
     """`* p < .05, ** p < .01`."""
+    factor = draft.get("bf10", "bf01")
+    if factor is not None and factor.printed.relation != "=" and draft.line.at(factor.after).text in _STARS:
+        return True
     if draft.part("statistic", "estimate", "effect"):
         return False
     p = draft.get("p")
@@ -73,61 +99,16 @@ def _legend(draft: Draft, sentence: Sentence) -> bool:
     first = closer.kind == "end" or closer.text in (";", ",", ".")
     if before.text in "abcdef" and before.kind == "word" and first and p.printed.relation != "=":
         return True
-    return before.text in _MARKS and not (before.text in "+#" and before.spaced)
+    return (
+        before.text in _MARKS
+        and before.kind != "word"
+        and not (before.text in "+#" and before.spaced and draft.line.at(p.first).spaced)
+    )
 
 
 _MARKS = frozenset("*†‡§¶#+abc")
+_STARS = frozenset("*†‡§¶#°/")
 _MEANING = words("indicates indicate denotes denote represents represent means mean marks mark signifies")
-
-_LEVEL_WORDS = (
-    "considered", "deemed", "regarded", "significance level", "level of significance", "significance was", "threshold",
-    "set at", "set to", "alpha", "α", "cut-off", "cutoff", "criterion", "taken as", "defined as", "was accepted",
-    "were accepted", "taken to", "denote", "indicates signific", "indicate signific", "represent", "level for",
-    "declared", "p-values below", "interpreted as", "treated as", "significance at", "statistical significance",
-    "retained if", "entered if", "removed if", "inclusion", "less than 0.05 was", "was used as", "were used as",
-    "significant level", "fixed at", "established at", "stars", "asterisk", "set a ", "when p", "if p", "where p",
-)  # fmt: skip
-_LEVELS = {"0.05", "0.01", "0.001", "0.10", "0.1", "0.005", "0.0001", "0.050", "0.010", "0.100", "0.025", "0.017", "0.0125",
-           "0.20", "0.2", "0.15", "0.25", "5", "1"}  # fmt: skip
-
-
-def _level(draft: Draft, sentence: Sentence) -> bool:
-    """`p < .05 was considered significant`: a level, not a p."""
-    if draft.part("statistic", "estimate", "effect", "interval"):
-        return False
-    p = draft.get("p")
-    if (
-        p
-        and draft.line.at(draft.first - 2).low in ("level", "threshold")
-        and draft.line.at(draft.first - 1).low == "of"
-    ):
-        return True
-    if p is None or str(abs(p.printed.value)) not in _LEVELS:
-        return False
-    if draft.line.at(draft.first - 1).text == "(" and draft.line.at(draft.first - 2).low == "significance":
-        return True
-    if draft.line.at(draft.first - 1).low == "at" and draft.line.at(draft.first - 2).low in (
-        "significant",
-        "significance",
-    ):
-        return True
-    foreign = draft.get("other")
-    if foreign is not None and foreign.printed.relation not in ("=", "≈"):
-        return True
-    if draft.line.at(draft.after).low == "level":
-        return True
-    if (
-        draft.line.at(draft.first - 1).low in ("if", "when", "at", "where")
-        and p.printed.relation != "="
-        and sentence.says(("signific", "reject"))
-        and not sentence.says(
-            ("differ", "higher", "lower", "increas", "decreas", "effect", "correlat", "associat")
-        )
-    ):
-        return True
-    return sentence.says(_LEVEL_WORDS) and sentence.says(
-        ("signific", "alpha", "α", "p-value", "p value", "level")
-    )
 
 
 _PLANS = (
@@ -139,7 +120,7 @@ _PLANS = (
     "expected effect", "anticipated", "minimum sample", "we assumed", "assuming a", "assuming d", "assumed a", "assumed effect",
     "assumed to be", "personal communication",
 )  # fmt: skip
-_EXAMPLES = ("for example, if", "for instance, if", "suppose ", "imagine ", "hypothetical example", "hypothetical data",
+_EXAMPLES = ("for example, if", "for instance, if", "if for instance", "if for example", "if, for instance", "if, for example", "suppose ", "imagine ", "hypothetical example", "hypothetical data",
              "hypothetical stud", "hypothetical result", "simulat", "would be reported as",
              "for illustration", "fictitious", "a random variable", "drawn from a", "sampled from a", "generated from",
              "generating", "normal distribution with", "prior distribution", "priors ", "gaussian")  # fmt: skip
@@ -192,6 +173,10 @@ _RULES_OF_THUMB = ("small", "medium", "large", "strong", "moderate", "weak", "th
                    "cut-off", "cutoff", "collinear", "exclud", "remov")  # fmt: skip
 
 
+_CONVENTIONS = ("considered", "interpret", "threshold", "criteri", "defined", "convention", "jeffreys", "cutoff", "cut-off", "indicates",
+                "values above", "values below", "denote", "taken as", "regarded", "until", "stopping", " as moderate", " as strong", " as evidence")  # fmt: skip
+
+
 _DROPPING = ("outlier", "dropped", "were removed", "was removed", "were excluded", "was excluded", "discarded", "were retained",
              "we removed", "we excluded", "were kept", "excluding")  # fmt: skip
 
@@ -214,7 +199,9 @@ def _rule(draft: Draft, sentence: Sentence) -> bool:
     if core is None or draft.part("p", "interval", "df") or core.extra or draft.get("n", "N"):
         return False
     if core.printed.relation in (">", "≥", "≤") and core.part in ("effect", "estimate"):
-        return True
+        return core.quantity not in ("bf10", "bf01") or sentence.says(_CONVENTIONS)
+    if core.quantity in ("bf10", "bf01") and core.printed.relation == "<":
+        return sentence.says(_CONVENTIONS)
     if core.printed.relation in ("<", ">", "≤", "≥", "≈"):
         if core.quantity in ("F", "chi2", "t"):
             return core.printed.relation in (">", "≥")
@@ -290,6 +277,8 @@ def _condition(draft: Draft, sentence: Sentence) -> bool:
     line = draft.line
     after = "".join(t.text for t in line.tokens[draft.after : draft.after + 3])
     before = line.at(draft.first - 1).low
+    if any(token.low == "ph" for token in line.tokens[max(0, draft.first - 4) : draft.first]):
+        return True
     return after.startswith(("°", "º", "℃", "C,", "rpm", "Hz", "psi", "bar", "pH")) or before in (
         "ph",
         "at",
@@ -297,16 +286,46 @@ def _condition(draft: Draft, sentence: Sentence) -> bool:
     )
 
 
+_CURVES = ("linkage diseq", "(ld)", " ld ", "in ld", "snp", "standard curve", "calibration", "y-intercept", "trend line", "trendline",
+           "dilution")  # fmt: skip
+_AGREEING = (
+    "agree",
+    "rater",
+    "coder",
+    "reliab",
+    "kappa",
+    "concord",
+    "observer",
+    "kendall",
+    "correl",
+    "consisten",
+    "reader",
+    "cohen",
+    "fleiss",
+)
+
+
+def _curve(draft: Draft, sentence: Sentence) -> bool:
+    """R² of a calibration or of linkage between genes, that of 0 or 1, and letters that stand for constants: no results."""
+    core = draft.part("effect")
+    if core is None or draft.part("statistic", "p", "interval", "centre"):
+        return False
+    if core.quantity == "r2":
+        return sentence.says(_CURVES) or core.printed.value in (0, 1)
+    return core.quantity in ("kappa", "tau") and not sentence.says(_AGREEING)
+
+
 _TRAPS: dict[str, Callable[[Draft, Sentence], bool]] = {
     "several": _several,
     "legend": _legend,
     "critical": _critical,
-    "level": _level,
+    "level": level,
     "plan": _planned,
     "assumption": _assumption,
     "rule": _rule,
     "credible": _bayesian,
     "equation": _equation,
+    "curve": _curve,
     "setting": _condition,
     "other study": quoted,
 }

@@ -222,7 +222,7 @@ def _from_emphasis(match: _Match) -> str:
 @cache
 def _lowered() -> regex.Pattern[str]:
     """A subscript between tildes, which stand for `≈` here: `F~(1,26)~ = 6.45`, `t~13~ = 2.1`."""
-    return regex.compile(r"(?<=[\p{L}²*_])≈([\w(][\w.,; =)]{0,16})≈(?=[*_]? ?[=<>≤≥(])")
+    return regex.compile(r"(?<=[\p{L}²*_^])≈([\w(][\w.,; =)]{0,16})≈(?=[*_]? ?[=<>≤≥(])")
 
 
 def _from_lowered(match: _Match) -> str:

@@ -50,6 +50,10 @@ STEMS: dict[str, tuple[str, ...]] = {
         "random effect", "random-effect", "hierarchical linear", "lmer", "glmm", "lme4", "gee ", "random slope",
         "generalized estimating", "generalised estimating", "nlme", "proc mixed", "lmm ", "lmms", "linear mixed",
     ),
+    "survival": (
+        "log-rank", "log rank", "logrank", "kaplan-meier", "cox regression", "cox proportional", "proportional hazard",
+        "proportional-hazard", "survival analys",
+    ),
     "imputed": ("imputed", "imputation"),
     "transformed": (
         "log-transform", "log transform", "ln-transform", "ln transform", "logarithm", "log10", "log-10", "square-root transform",
@@ -70,7 +74,8 @@ STEMS: dict[str, tuple[str, ...]] = {
         "heteroscedasticity-consistent", "clustered standard error", "cluster-robust", "yuen", "trimmed mean",
     ),
     "bootstrap": ("bootstrap", "bias-corrected and accelerated", "bca "),
-    "permutation": ("permutation", "permuted", "randomization test", "randomisation test", "monte carlo"),
+    "permutation": ("permutation", "permuted", "randomization test", "randomisation test", "monte carlo", "permanova", "permutational",
+                    "pseudo-f", "adonis", "p(perm", "p (perm"),
     "bayesian": ("bayesian", "credible interval", "posterior distribution", "posterior mean", "posterior median",
                  "posterior prob", "posterior estimate", "highest density", "highest-density", "hdi ", "bayes factor"),
     "contrast": (

@@ -54,9 +54,15 @@ class Attempt:
         return (*self.way.unstated, self.rounding.words) if self.rounding.words else self.way.unstated
 
 
+COUNTED = frozenset(("n", "N", "count", "total", "ci_level"))
+ELSEWHERE = " elsewhere"
+"""What the name of a number ends in that is printed in another place: `t elsewhere`."""
+
+
 def is_exact(name: str, printed: Printed) -> bool:
-    """Tell whether a printed number is exact: a group size, or degrees of freedom without decimals."""
-    counted = name in ("n", "n1", "n2", "N", "ci_level") or (name.startswith("df") and printed.decimals <= 0)
+    """Tell whether a printed number is exact: a count, a group size, or whole degrees of freedom."""
+    base = name.removesuffix(ELSEWHERE).rstrip("0123456789")
+    counted = base in COUNTED or (base == "df" and printed.decimals <= 0)
     return counted and printed.relation == "="
 
 

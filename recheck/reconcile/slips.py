@@ -8,7 +8,7 @@ from decimal import Decimal
 from itertools import pairwise
 
 from recheck.model import Printed, Remedy, shown
-from recheck.reconcile.readings import Numbers, is_exact
+from recheck.reconcile.readings import ELSEWHERE, Numbers, is_exact
 
 MINUS = "−"
 SIGNS = "-−–+"
@@ -17,8 +17,13 @@ SMALLEST_TURNED = Decimal("0.05")
 SIGNED = frozenset(("mean", "mean_difference", "ci_low", "ci_high", "b", "estimate", "rd"))
 THRESHOLDS = frozenset(Decimal(text) for text in ("0.1", "0.05", "0.01", "0.005", "0.001", "0.0001"))
 """Values that p is commonly printed to lie below (common practice, no source)."""
-GROUP_NUMBERS = frozenset(f"{name}{i}" for name in ("mean", "sd", "se", "n") for i in "12")
-"""Names of the numbers of two groups: `sd2` is the SD of the second."""
+DIGITS = "0123456789"
+GROUP_NUMBERS = {
+    f"{name}{i}": (name, str(i))
+    for i in range(1, 41)
+    for name in ("mean", "sd", "se", "n", "count", "percent", "total")
+}
+"""Names of the numbers of groups, each with its quantity and its group: `sd2` is the SD of the second."""
 
 
 def candidates(printed: Printed) -> Iterator[tuple[Printed, str]]:
@@ -136,7 +141,7 @@ def _sensible(name: str, printed: Printed, number: Printed, words: str) -> bool:
     if number.relation != printed.relation:
         return name == "p"
     if words.startswith("sign "):
-        return name.rstrip("12") in SIGNED
+        return name.rstrip(DIGITS) in SIGNED
     return not is_exact(name, printed) or (words != "decimal point moved" and number.value >= 1)
 
 
@@ -150,8 +155,15 @@ def _written(printed: Printed) -> str:
     return printed.text if printed.relation == "=" else f"{printed.relation} {printed.text}"
 
 
+def unit_of(quantity: str) -> str:
+    """What a numbered quantity belongs to: a group has a mean, a cell of a table a count."""
+    return "cell" if quantity in ("count", "percent", "total") else "group"
+
+
 def label(name: str) -> str:
     """Write the name of a number of a claim: `sd2` is the SD of the second group."""
     if name in GROUP_NUMBERS:
-        return f"the {shown(name[:-1])} of group {name[-1]}"
-    return shown(name)
+        quantity, group = GROUP_NUMBERS[name]
+        return f"the {shown(quantity)} of {unit_of(quantity)} {group}"
+    base = name.removesuffix(ELSEWHERE)
+    return shown(name) if base == name else f"{shown(base)}{ELSEWHERE}"

@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 from recheck.model import Audit, Claim, Finding, Implied, Interval, Place, Remedy, shown
-from recheck.model.figures import figure, span
+from recheck.model.figures import figure, span, whereabouts
 from recheck.reports.look import INDENT, LABEL, Look, clean, shortened
 from recheck.reports.number_line import Bar, Drawing, number_line
-from recheck.reports.words import implied_range, whereabouts
+from recheck.reports.words import implied_range
 
 LONGEST_QUOTE = 320
 LONGEST_LISTED = 160
@@ -46,22 +46,39 @@ def brief_lines(audit: Audit, finding: Finding, number: int, look: Look) -> list
 
 def listed_lines(place: Place, text: str, look: Look) -> list[str]:
     """One result in a list: where it stands, its quote, and a text about it."""
-    where = f"p. {place.page}" if place.page else f"line {place.line}" if place.line else ""
+    where = _short_place(place)
     edge = INDENT + WHERE
     quote = shortened(place.quote, LONGEST_LISTED)
     first, *more = look.paragraph(f"“{quote}”: {text}" if text else f"“{quote}”", indent=edge)
     return [f"{'':{INDENT}}{where:<{WHERE}}{first[edge:]}", *more]
 
 
+def _short_place(place: Place) -> str:
+    """Where a result stands, in the few characters that a list has room for."""
+    if place.page or place.line:
+        return f"p. {place.page}" if place.page else f"line {place.line}"
+    if place.table:
+        return place.table if len(place.table) < WHERE else "table"
+    return f"par. {place.paragraph}" if place.paragraph else ""
+
+
 def _groups(audit: Audit, finding: Finding, look: Look) -> list[str]:
-    """The group summaries that a finding rests on, each with its own quote and place."""
+    """The other claims that a finding rests on, each with its own quote and place."""
     by_id = {claim.id: claim for claim in _claims(audit, finding)}
     groups = [by_id[name] for name in finding.claims[1:] if name in by_id]
     lines = []
     for number, claim in enumerate(groups, 1):
-        text = f"group {number}: “{shortened(claim.place.quote, LONGEST_QUOTE)}”, {whereabouts(claim.place)}"
+        name = _member(finding, claim, number)
+        text = f"{name}: “{shortened(claim.place.quote, LONGEST_QUOTE)}”, {whereabouts(claim.place)}"
         lines += look.paragraph(text, indent=INDENT, hanging=INDENT + 3)
     return lines
+
+
+def _member(finding: Finding, claim: Claim, number: int) -> str:
+    """What a further claim of a finding is to it, in the words of its message."""
+    if finding.check == "told-twice":
+        return "elsewhere"
+    return f"{'cell' if claim.kind == 'count' else 'group'} {number}"
 
 
 def _printed_and_implied(audit: Audit, finding: Finding, look: Look) -> list[str]:

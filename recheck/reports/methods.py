@@ -109,8 +109,14 @@ def method_text(check: Described, look: Look) -> str:
     lines += ["", look.paint("Examples, by the verdict that each gets", "heading")]
     for verdict in VERDICTS:
         examples: Sequence[str] = getattr(check, verdict, ())
-        lines += look.labelled(verdict, [f"“{example}”" for example in examples])
+        lines += look.labelled(verdict, [line for example in examples for line in _example(example)])
     return "\n".join(lines) + "\n"
+
+
+def _example(example: str) -> list[str]:
+    """A sentence in quotes; a table, or text of several paragraphs, line by line."""
+    lines = [line for line in example.splitlines() if line.strip()]
+    return lines if len(lines) > 1 else [f"“{example}”"]
 
 
 def ranking_text(rule: str, look: Look) -> str:

@@ -6,8 +6,9 @@ from html import escape
 from typing import Any
 
 from recheck.model import Audit, Finding, shown
+from recheck.model.figures import whereabouts
 from recheck.reports.look import clean
-from recheck.reports.words import CAUTION, counted, implied_range, whereabouts
+from recheck.reports.words import CAUTION, counted, implied_range
 
 MOST_IMPLIED = 2
 COLUMNS = ("verdict", "place", "quote", "quantity", "printed", "implied", "what to ask", "check")

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections import Counter
+from collections.abc import Mapping
 
 from recheck.model import DISCREPANT, Audit, Claim, Finding, Place, Verdict
 from recheck.model.figures import figure
@@ -88,17 +89,20 @@ def _rest(audit: Audit, everything: bool, look: Look) -> list[str]:
     agreed, unchecked = _of(audit, "agrees"), _of(audit, "unchecked")
     lines: list[str] = []
     if agreed and everything:
-        lines += ["", look.rule(), look.paint("Agrees as printed", "agrees"), *_listed(agreed, look)]
+        lines += ["", look.rule(), look.paint("Agrees as printed", "agrees"), *_listed(audit, agreed, look)]
     if unchecked:
         lines += ["", look.rule(), look.paint("Not checked, and why", "heading")]
-        lines += _listed(unchecked, look) if everything else _counted(unchecked, look)
+        lines += _listed(audit, unchecked, look) if everything else _counted(unchecked, look)
     alone = _alone(audit)
     if alone:
         lines += ["", *look.paragraph(_alone_sentence(len(alone)))]
     if alone and everything:
         lines += [line for claim in alone for line in listed_lines(claim.place, "", look)]
     if not everything and (agreed or alone):
-        lines += ["", *look.paragraph("--all lists also what agrees and what was not checked, by page.")]
+        lines += [
+            "",
+            *look.paragraph("--all lists also what agrees and what was not checked, in reading order."),
+        ]
     return lines
 
 
@@ -106,16 +110,23 @@ def _of(audit: Audit, verdict: Verdict) -> list[Finding]:
     return [finding for finding in audit.findings if finding.verdict == verdict]
 
 
-def _listed(findings: list[Finding], look: Look) -> list[str]:
-    """Findings by page, those about the same words together."""
+def _listed(audit: Audit, findings: list[Finding], look: Look) -> list[str]:
+    """Findings in the manuscript's order, those about the same words together."""
+    order = {claim.id: number for number, claim in enumerate(audit.claims)}
     about: dict[tuple[Place, str], list[str]] = {}
-    for finding in sorted(findings, key=lambda finding: (finding.place.page or 0, finding.place.line or 0)):
+    for finding in sorted(findings, key=lambda finding: _position(finding, order)):
         reason = f": {_reason(finding)}" if finding.verdict == "unchecked" else ""
         about.setdefault((finding.place, reason), []).append(finding.check)
     lines: list[str] = []
     for (place, reason), checks in about.items():
         lines += listed_lines(place, f"{', '.join(dict.fromkeys(checks))}{reason}", look)
     return lines
+
+
+def _position(finding: Finding, order: Mapping[str, int]) -> tuple[int, int, int]:
+    """Page and line, then the number of the claim in reading order."""
+    first = min((order[name] for name in finding.claims if name in order), default=0)
+    return finding.place.page or 0, finding.place.line or 0, first
 
 
 def _counted(findings: list[Finding], look: Look) -> list[str]:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Iterable, Mapping
 
-from recheck.model import Audit, ClaimKind, Implied, Place, Verdict
+from recheck.model import Audit, ClaimKind, Implied, Verdict
 from recheck.model.figures import span
 
 MEANING: Mapping[Verdict, str] = {
@@ -67,23 +67,6 @@ def kinds_read(audit: Audit) -> str:
     """Write how many claims of each kind were read, the most frequent first."""
     kinds = Counter(claim.kind for claim in audit.claims)
     return listed(counted(number, *KINDS[kind]) for kind, number in kinds.most_common())
-
-
-def whereabouts(place: Place) -> str:
-    """Write where something stands: page, section, line, table, row and column."""
-    parts = []
-    if place.page is not None:
-        parts.append(f"page {place.page}")
-    if place.line is not None:
-        parts.append(f"line {place.line}")
-    if place.section:
-        parts.append(f"section “{place.section}”")
-    if place.paragraph is not None and place.page is None and place.line is None:
-        parts.append(f"paragraph {place.paragraph}")
-    if place.table:
-        parts.append(place.table if place.table.lower().startswith("table") else f"table {place.table}")
-    parts += [f"{name} “{text}”" for name, text in (("row", place.row), ("column", place.column)) if text]
-    return ", ".join(parts) or "place unknown"
 
 
 def implied_range(implied: Implied) -> str:

@@ -6,7 +6,7 @@ import sys
 from collections.abc import Iterator
 from pathlib import Path
 
-from tests.benchmarks import pages, startup
+from tests.benchmarks import documents_docx, marked_up, pages, startup
 from tests.benchmarks.claims import claims_ratios
 from tests.benchmarks.triples import triples_ratio
 
@@ -28,6 +28,8 @@ def rows(paths: list[str]) -> Iterator[tuple[str, float, str]]:
         yield f"claims and checks / pdfminer extract_pages, {name}", to_extraction, "at most 0.25"
         yield f"claims and checks / glyphs and lines, {name}", to_pages, "for comparison"
     yield from pages.measured(paths)
+    yield from documents_docx.measured()
+    yield from marked_up.measured()
 
 
 if __name__ == "__main__":

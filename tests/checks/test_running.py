@@ -2,9 +2,11 @@
 
 from dataclasses import replace
 
+import pytest
+
 from recheck.checks import registry
 from recheck.checks.running import run_checks
-from recheck.model import Settings
+from recheck.model import Place, Settings
 from tests.checks.claims import claim
 
 
@@ -32,3 +34,29 @@ def test_ids_are_stable():
     first = run_checks(claims, Settings())
     again = run_checks(claims, Settings())
     assert [f.id for f in first] == [f.id for f in again]
+
+
+def rows_of(*ts, spread="0.31"):
+    return [
+        replace(
+            claim("regression", name=f"row {i}", b="0.84", se=spread, t=t),
+            place=Place(f"0.84 | {spread} | {t}", table="Table 1", row=f"row {i}"),
+        )
+        for i, t in enumerate(ts)
+    ]
+
+
+@pytest.mark.parametrize(
+    ("ts", "verdicts"),
+    [
+        (("2.71", "2.70", "4.21"), ["agrees", "agrees", "inconsistent"]),
+        (("4.71", "4.70", "4.21"), ["conditional"] * 3),
+        (("4.71", "4.70", "4.21", "2.71"), ["conditional"] * 3 + ["agrees"]),
+        (("4.71", "4.70"), ["inconsistent"] * 2),
+    ],
+)
+def test_most_rows_of_a_table_are_not_misprints(ts, verdicts):
+    found = run_checks(rows_of(*ts), Settings())
+    assert [f.verdict for f in found if f.check == "t-from-b"] == verdicts
+    conditional = [f for f in found if f.verdict == "conditional"]
+    assert all("most of its rows do not fit" in f.message for f in conditional)

@@ -8,6 +8,7 @@ from hypothesis import strategies as st
 from scipy import stats
 
 from recheck.checks.registry import all_checks
+from recheck.model import N_OF_GROUP
 from tests.checks.claims import claim, finding
 
 all_checks()
@@ -112,3 +113,43 @@ def test_rounded_F_is_never_inconsistent(F, df1, df2):
     p = stats.f.sf(F, df1, df2)
     found = finding("p-from-F", claim("F-test", F=f"{F:.2f}", df1=str(df1), df2=str(df2), p=f"{p:.3f}"))
     assert found.verdict == "agrees"
+
+
+GROUPS = [claim("group-summary", name=f"g{i}", mean="5.0", sd="1.0", n="15") for i in range(3)]
+
+
+@pytest.mark.parametrize(
+    ("p", "verdict"),
+    [(".036", "agrees"), (".046", "agrees"), (".018", "conditional"), (".36", "conditional")],
+)
+def test_df_that_are_not_printed_come_from_the_groups(p, verdict):
+    # R 4.2: 2 * pt(-2.20, 28) = .0362; with Welch's fewest df, 2 * pt(-2.20, 14) = .0451
+    assert finding("p-from-t", claim("t-test", t="2.20", p=p), *GROUPS[:2]).verdict == verdict
+
+
+def test_without_df_and_groups_nothing_is_compared():
+    for kind, name, of in (
+        ("t-test", "t", "p-from-t"),
+        ("F-test", "F", "p-from-F"),
+        ("chi2-test", "chi2", "p-from-chi2"),
+    ):
+        found = finding(of, claim(kind, p=".36", **{name: "2.20"}))
+        assert (found.verdict, "not printed" in found.message) == ("unchecked", True)
+
+
+def test_F_without_df_has_those_of_its_groups():
+    # R 4.2: pf(4.1, 2, 42, lower = F) = .0237
+    assert finding("p-from-F", claim("F-test", F="4.10", p=".024"), *GROUPS).verdict == "agrees"
+    assert finding("p-from-F", claim("F-test", F="4.10", p=".24"), *GROUPS).verdict == "conditional"
+    many = [replace(g, notes=(N_OF_GROUP,)) for g in GROUPS]
+    assert finding("p-from-F", claim("F-test", F="4.10", p=".028"), *many).verdict == "agrees"
+
+
+def test_chi2_without_df_has_those_of_its_table():
+    counts = [
+        replace(claim("count", name=f"c{j}", count=c, total="60"), outcome="Split", group=f"group {j}")
+        for j, c in enumerate(("12", "24", "30"))
+    ]
+    # R 4.2: pchisq(12.1, 2, lower = F) = .00236
+    assert finding("p-from-chi2", claim("chi2-test", chi2="12.1", p=".002"), *counts).verdict == "agrees"
+    assert finding("p-from-chi2", claim("chi2-test", chi2="12.1", p=".20"), *counts).verdict == "conditional"

@@ -66,13 +66,14 @@ def _file(path: Path) -> list[Case]:
             continue
         if line.startswith("    "):
             last = found.pop()
-            found.append(Case(last.name, last.text, (*last.claims, _claim(line.strip()))))
+            found.append(Case(last.name, last.text, (*last.claims, claim_of(line.strip()))))
         else:
             found.append(Case(f"{path.stem}:{number}", line))
     return found
 
 
-def _claim(line: str) -> Expected:
+def claim_of(line: str) -> Expected:
+    """The claim that one line of such a file gives."""
     kind, _, rest = line.partition(": ")
     values, stated, interval_of, groups = [], [], None, None
     for part in rest.split(" | "):

@@ -153,13 +153,18 @@ def test_two_tests_with_a_pair_each() -> None:
     assert [len(test.groups) for test in tests] == [2, 2] and not set(tests[0].groups) & set(tests[1].groups)
 
 
-SIZE = 40_000
+SIZE = 16_000
 HOSTILE = {
     "digits": "1", "digits apart": "1 ", "brackets": "(", "t brackets": "t(", "commas": "1,1,", "signs": "± ",
     "pairs": "1 ± 1 ", "spaces": " ", "p": "p = ", "summaries": "M = 1, SD = 1 ", "F": "F(1, ", "intervals": "95% CI [",
     "levels": "95% CI ", "letters": "a", "means": "mean of ", "dots": ".", "points": "1.", "minus": "-", "SD": "SD ",
     "codes": "p , .05 ", "fives": "F(1,1) 5 .1 ", "TeX": "\\chi{", "dollars": "$", "stars": "*a", "lines": "_t",
     "entities": "&lt;", "tags": "</i", "citations": "Aa et al. (2012) ", "names": "Baker and ", "capitals": "A. ",
+    "several p": "p p p p ", "fractions": "1/1 ", "counts": "12 of 34 bakers (35%) ", "of": "of ", "percentages": "1% (", "ns": "n = 1 (",
+    "number words": "twenty-one of ", "medians": "median [", "quartiles": "25th-75th ", "ranges": "Q1–Q3 ", "together": "M = 1.1 and ",
+    "doubled": "d = 1.1 (1.1), 95% CI [1, 2] ([1, 2]), ", "contrasts": "EMM a-b-", "numbered": "[1] ", "subscripts": "_{", "powers said": "^{",
+    "open TeX": "\\hat{\\", "nested": "<sub><i>", "many stars": "**", "tildes": "~a~", "factors": "BF > 3* ", "agreement": "kappa for these 8 ",
+    "ratios": "odds ratio for a a, 1; ", "mixed points": "1.1.", "mixed commas": "1,1.1,", "glued levels": "1.1,95%", "hyphens": "a-",
     "raised": "²", "lists": "r = .1, ", "thousands": "= 1 000", "powers": "1 × 10 × ", "levels said": "significant alpha ",
 }  # fmt: skip
 
@@ -177,6 +182,13 @@ def test_no_text_takes_long(name: str) -> None:
     # Eight times the text may take eight times as long, not sixty-four times; the rest is noise.
     assert late < 25 * early + 1.0
     assert short.claims is not None
+
+
+@pytest.mark.parametrize("piece", ["9", "(", ",", ".", "p ", "* ", "<i>_{", "\\hat{"])
+def test_a_paragraph_of_200_kb_takes_no_long(piece: str) -> None:
+    start = time.perf_counter()
+    reading(Passage(text=f"Loaves rose, {piece * (200_000 // len(piece))}, t(22) = 2.31, p = .030."))
+    assert time.perf_counter() - start < 20
 
 
 @settings(max_examples=60, deadline=None)

@@ -17,7 +17,9 @@ NAMES = [
     "t_welch",
     "z_tail",
 ]
-MODULES = ("bounds", "effects", "intervals", "noncentral", "ranks", "tails", "triples", "two_groups")
+MODULES = (
+    "anova", "bounds", "contingency", "effects", "intervals", "noncentral", "ranks", "tails", "triples", "two_groups",
+)  # fmt: skip
 
 
 def test_the_names_at_hand_are_these():

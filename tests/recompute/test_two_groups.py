@@ -93,7 +93,8 @@ def test_independent_t_bounds(m1, s1, n1, m2, s2, n2, shares):
         assert np.isnan(t) or holds((low, high), t)
         corners = [float(single(a, b, n1, c, d, n2)) for a in m1 for b in s1 for c in m2 for d in s2]
         if not np.isnan(corners).any():
-            assert (low, high) == pytest.approx((min(corners), max(corners)), rel=1e-12)
+            # means a millionth apart lose digits, and the bounds widen by as much
+            assert (low, high) == pytest.approx((min(corners), max(corners)), rel=5e-9)
 
 
 def test_t_bounds_of_spreads_that_may_be_zero():

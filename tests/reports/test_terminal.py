@@ -48,7 +48,7 @@ Not checked, and why
 
 1 result was read that stands alone: nothing else printed with it bears on it.
 
---all lists also what agrees and what was not checked, by page.
+--all lists also what agrees and what was not checked, in reading order.
 
 ────────────────────────────────────────────────────────────────────────────────
 A discrepancy is a question to the authors and no evidence of misconduct: a

@@ -1,9 +1,11 @@
+from decimal import Decimal
 from typing import get_args
 
 import pytest
 
-from recheck.model import VERDICTS, ClaimKind, Implied, Place
-from recheck.reports.words import KINDS, MEANING, counted, implied_range, listed, whereabouts
+from recheck.model import VERDICTS, ClaimKind, Implied, Place, Printed
+from recheck.model.figures import printed_text, whereabouts
+from recheck.reports.words import KINDS, MEANING, counted, implied_range, listed
 
 
 def test_every_verdict_and_every_kind_has_its_words():
@@ -22,11 +24,30 @@ def test_every_verdict_and_every_kind_has_its_words():
             "page 2, Table 1, row “Height”, column “p”",
         ),
         (Place("q", table="2"), "table 2"),
+        (Place("q", table="Tab. S.1"), "Tab. S.1"),
+        (Place("q", table="unlabelled table 2", row="Crumb"), "unlabelled table 2, row “Crumb”"),
+        (
+            Place("q", table="Table 3", column="Adjusted | OR; Adjusted | 95% CI; Adjusted | p"),
+            "Table 3, columns “OR”, “95% CI”, “p” under “Adjusted”",
+        ),
+        (
+            Place("q", table="Table 3", column="Rye | n; Rye | Mean; SD"),
+            "Table 3, columns “Rye | n”, “Rye | Mean”, “SD”",
+        ),
+        (Place("q", column="t(48); p"), "columns “t(48)”, “p”"),
         (Place("q"), "place unknown"),
     ],
 )
 def test_places_in_words(place, words):
     assert whereabouts(place) == words
+
+
+@pytest.mark.parametrize(
+    ("text", "words"),
+    [("**", "< 0.01 (**)"), ("significant", "significant (< 0.01)"), (".003", "< .003")],
+)
+def test_printed_numbers_in_words(text, words):
+    assert printed_text(Printed(text, Decimal("0.003" if text == ".003" else "0.01"), 2, "<")) == words
 
 
 @pytest.mark.parametrize(

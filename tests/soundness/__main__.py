@@ -6,14 +6,18 @@ import argparse
 import sys
 import time
 from collections import Counter
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
+from functools import partial
 
 import numpy as np
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST
+from tests.soundness.honest_tables import HONEST_TABLES
 from tests.soundness.other_models import OTHER_MODELS
+from tests.soundness.other_tables import OTHER_TABLES
 from tests.soundness.planted import PLANTS, plant
+from tests.soundness.planted_tables import TABLE_PLANTS
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.traps import TRAPS
 
@@ -48,12 +52,14 @@ def planted_run(count: int, seed: int, shown: int) -> None:
     columns = ("planted", "contradicted", "flagged", "conditional", "missed", "flagged beyond")
     missed: dict[str, list[str]] = {}
     print(f"\n{'planted misprints':36}" + "".join(f"{c:>16}" for c in columns))
-    for name in PLANTS:
+    plants: dict[str, Callable[[np.random.Generator], tuple[Sample, bool]]] = {
+        **{name: partial(plant, name) for name in PLANTS},
+        **TABLE_PLANTS,
+    }
+    for name, planted in plants.items():
         row: Counter[str] = Counter()
         for first in range(0, count, 20):
-            drawn = [
-                plant(name, np.random.default_rng([seed, first + i])) for i in range(min(20, count - first))
-            ]
+            drawn = [planted(np.random.default_rng([seed, first + i])) for i in range(min(20, count - first))]
             samples = [Sample(s.text, s.facts, name=name) for s, _ in drawn]
             for sample, (_, wrong) in zip(samples, drawn, strict=True):
                 (outcome,) = audit_document([sample])
@@ -82,7 +88,7 @@ def main() -> int:
     parser.add_argument("--only", help="one generator of honest results, by its name")
     parser.add_argument("--shown", type=int, default=2, help="texts shown of each kind")
     asked = parser.parse_args()
-    generators = {**HONEST, **OTHER_MODELS, **TRAPS}
+    generators = {**HONEST, **OTHER_MODELS, **TRAPS, **HONEST_TABLES, **OTHER_TABLES}
     if asked.only:
         generators = {asked.only: generators[asked.only]}
     start = time.perf_counter()

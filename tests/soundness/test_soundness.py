@@ -10,8 +10,11 @@ from hypothesis import HealthCheck, given, settings
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST, honest_samples
+from tests.soundness.honest_tables import HONEST_TABLES
 from tests.soundness.other_models import OTHER_MODELS, other_samples
+from tests.soundness.other_tables import OTHER_TABLES
 from tests.soundness.planted import PLANTS, plant
+from tests.soundness.planted_tables import TABLE_PLANTS
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.sharpness import GROUP_CHECKS, STATISTICS, unattained, unattained_by_groups
 from tests.soundness.traps import TRAPS
@@ -21,8 +24,8 @@ QUICK = settings(max_examples=30, deadline=None, derandomize=True, suppress_heal
 
 @pytest.mark.parametrize(
     ("generators", "each"),
-    [(HONEST, 36), (OTHER_MODELS, 20), (TRAPS, 14)],
-    ids=["plain", "other models", "traps"],
+    [(HONEST, 36), (OTHER_MODELS, 20), (TRAPS, 14), (HONEST_TABLES, 15), (OTHER_TABLES, 12)],
+    ids=["plain", "other models", "traps", "tables", "other tables"],
 )
 def test_honest_results_are_never_flagged(generators: Mapping[str, Generator], each: int) -> None:
     drawn = outcomes(generators, each * len(generators), seed=11)
@@ -78,6 +81,19 @@ def test_ends_of_what_groups_imply_are_attained() -> None:
 @pytest.mark.parametrize("name", sorted(name for name, kind in PLANTS.items() if kind.promised))
 def test_misprints_against_the_plain_readings_are_noticed(name: str) -> None:
     drawn = [plant(name, np.random.default_rng([17, i])) for i in range(24)]
+    wrong = [sample for sample, contradicted in drawn if contradicted]
+    passed = [s.text for s in wrong if audit_document([s])[0].verdict not in ("flagged", "conditional")]
+    assert len(passed) <= 0.1 * len(wrong), "\n".join(passed)
+
+
+def test_most_honest_tables_are_read() -> None:
+    read = [o.read for o in outcomes(HONEST_TABLES, 10 * len(HONEST_TABLES), seed=5) if o.sample.facts]
+    assert np.mean(read) > 0.9
+
+
+@pytest.mark.parametrize("name", sorted(TABLE_PLANTS))
+def test_misprints_in_tables_are_noticed(name: str) -> None:
+    drawn = [TABLE_PLANTS[name](np.random.default_rng([19, i])) for i in range(16)]
     wrong = [sample for sample, contradicted in drawn if contradicted]
     passed = [s.text for s in wrong if audit_document([s])[0].verdict not in ("flagged", "conditional")]
     assert len(passed) <= 0.1 * len(wrong), "\n".join(passed)

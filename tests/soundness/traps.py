@@ -9,6 +9,7 @@ from tests.soundness import computing, raw
 from tests.soundness.computing import sd
 from tests.soundness.hand import Hand, draw_hand, one
 from tests.soundness.linking_traps import LINKING_TRAPS
+from tests.soundness.retold import RETOLD
 from tests.soundness.samples import Generator, Piece, Sample
 
 
@@ -204,5 +205,5 @@ TRAPS: dict[str, Generator] = {
     "critical values": critical_value, "bounds of several": several_bounds, "respectively": respectively,
     "Bayes beside t": bayesian, "two p of one test": two_p, "equivalence tests": equivalence,
     "reliability, medians, counts": reliability, "fit and R squared": model_fit, "planning": planning,
-    "groups of two outcomes": many_groups, **LINKING_TRAPS,
+    "groups of two outcomes": many_groups, **LINKING_TRAPS, **RETOLD,
 }  # fmt: skip

@@ -14,8 +14,8 @@ from recheck.documents.characters import LOWERED, RAISED, as_codes, as_text, mad
 _PATIENCE = 2.0
 _INNER = r"[^\s{0}](?:[^{0}\n]|\n(?!\n)){{0,200}}?(?<![\s{0}])|[^\s{0}]"
 _PAIRS = (
-    # **p** and *p*, but not the stars of a legend ("*p < .05, **p < .01") or of a product.
-    (rf"(?<![\w*\\])(\*{{1,3}})(?:{_INNER.format('*')})(\*{{1,3}})(?![\w*])", None),
+    # **p**, *p* and Δ*M*, but not the stars of a legend ("*p < .05, **p < .01") or of a product.
+    (rf"(?:(?<![\w*\\])|(?<=\p{{Greek}}))(\*{{1,3}})(?:{_INNER.format('*')})(\*{{1,3}})(?![\w*])", None),
     (rf"(?<![\w_\\])(_{{1,3}})(?:{_INNER.format('_')})(_{{1,3}})(?![\w_])", None),
     (r"(?<![`\\])(`+)[^`\n]{1,200}(`+)(?!`)", None),
     (r"(\^)[^\s^~]{1,20}(\^)", RAISED),

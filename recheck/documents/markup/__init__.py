@@ -1,0 +1,1 @@
+"""Marked-up articles: JATS XML and HTML, with their tables and MathML."""

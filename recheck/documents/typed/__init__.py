@@ -1,0 +1,1 @@
+"""Plain text and Markdown, with the tables that are typed in them."""

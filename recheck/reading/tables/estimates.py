@@ -1,0 +1,67 @@
+"""Ratios and differences with their interval and p: one claim for each."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from recheck.model import Printed
+from recheck.reading.tables.cells import RATIOS
+from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
+from recheck.reading.tables.saying import marks_compare
+from recheck.reading.tables.units import Unit
+
+_MAIN = (*sorted(RATIOS), "estimate")
+_KEPT = (*_MAIN, "se", "sd", "ci_low", "ci_high", "p", "stars", "n", "N")
+
+
+def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
+    """The estimate that a unit prints, where an interval, a standard error or a p stands beside it."""
+    if unit.family != "estimate":
+        return
+    values = {name: value for name, value in unit.values.items() if name in _KEPT}
+    main = next((name for name in values if name in _MAIN), None)
+    if main is None or {"b", "beta", "intercept"} & set(unit.values):
+        return
+    values |= _starred(frame, unit, values)
+    if not {"ci_low", "ci_high", "se", "p"} & set(values):
+        return
+    if "sd" in values and "se" not in values:
+        values.pop("sd")
+    if "ci_low" in values:
+        values |= interval_level(frame, unit.columns, unit.rows)
+    yield claim_of(
+        frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=frame.row_name(unit.rows[0], unit.columns[0]),
+        group=unit.group, stated=_stated(frame, unit), interval_of=main if "ci_low" in values else None, sure=unit.sure, spans=unit.spans,
+    )  # fmt: skip
+
+
+def _starred(frame: Frame, unit: Unit, values: dict[str, Printed]) -> dict[str, Printed]:
+    """The marks beside the estimate with the p that they stand for, where no p is printed that is the p."""
+    marks = next(
+        (mark for cell in unit.cells if (mark := star_of(cell.piece, frame.legend)) is not None), None
+    )
+    if marks is None or "stars" in values or marks_compare(frame.legend.text):
+        return {}
+    return {"stars": marks} if "p" in values else {"p": marks, "stars": marks}
+
+
+def _stated(frame: Frame, unit: Unit) -> list[str]:
+    said = [word for cell in unit.cells for word in cell.stated]
+    heads = " ".join(frame.sheet.column_header(column).text for column in unit.columns).lower()
+    if "adjusted" in heads.replace("unadjusted", "") or "aor" in heads.split() or "ahr" in heads.split():
+        said.append("covariate-adjusted")
+    return [*said, *(word for word in frame.legend.stated if word in _OF_MODELS)]
+
+
+_OF_MODELS = frozenset(
+    (
+        "covariate-adjusted",
+        "mixed-model",
+        "imputed",
+        "weighted",
+        "robust",
+        "bootstrap",
+        "bayesian",
+        "multi-regression",
+    )
+)

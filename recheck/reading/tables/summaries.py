@@ -1,0 +1,80 @@
+"""Group summaries: means, medians, spreads and sizes of a row, one claim for each group."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from recheck.model import N_OF_GROUP, Printed
+from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
+from recheck.reading.tables.units import Unit
+
+_CENTRES = ("mean", "median")
+_OF_MEANS = frozenset((
+    "covariate-adjusted", "marginal", "mixed-model", "imputed", "transformed", "weighted", "robust", "bootstrap", "bayesian",
+    "within-subject-se",
+))  # fmt: skip
+"""What caption or notes say of means: such a mean, or its spread, is not the plain one of its group."""
+_KEPT = ("mean", "sd", "se", "median", "q1", "q3", "iqr", "min", "max", "n", "N", "ci_low", "ci_high")
+
+
+def summaries_of(frame: Frame, unit: Unit) -> Iterator[Found]:
+    """The summary that a unit prints: a centre with a spread, a span, an interval or an n."""
+    if unit.family not in ("summary", "people"):
+        return
+    values = {name: value for name, value in unit.values.items() if name in _KEPT}
+    if not any(name in values for name in _CENTRES):
+        return
+    if "n" not in values and {"N", "count"} & set(unit.values):
+        values["n"] = values.pop("N") if "N" in values else unit.values["count"]
+    own_spread = {"sd", "se", "q1", "q3", "iqr", "min", "max", "ci_low", "ci_high"} & set(values)
+    size, notes = _size(frame, unit, values)
+    if size is not None:
+        values["n"] = size
+    if not own_spread and not ("mean" in values and ("n" in values or "N" in values)):
+        return
+    stated = [word for cell in unit.cells for word in cell.stated]
+    stated += [word for word in frame.legend.stated if word in _OF_MEANS]
+    if not all(cell.spread_told for cell in unit.cells):
+        stated.append("spread-unlabelled")
+    if "ci_low" in values:
+        values |= interval_level(frame, unit.columns, unit.rows)
+    centre = next(name for name in _CENTRES if name in values)
+    outcome, group = names_of(frame, unit)
+    yield claim_of(
+        frame, "group-summary", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=outcome, group=group,
+        stated=stated, notes=notes, sure=unit.sure, spans=unit.spans,
+        interval_of=centre if "ci_low" in values else None,
+    )  # fmt: skip
+
+
+def _size(frame: Frame, unit: Unit, values: dict[str, Printed]) -> tuple[Printed | None, tuple[str, ...]]:
+    """The n of the group, where the row and its cells print none."""
+    if {"n", "N"} & set(values):
+        return None, ()
+    labels = frame.labels(unit.rows[0], unit.columns[0])
+    if labels and labels[-1].n is not None:
+        return labels[-1].n, ()
+    of_group = group_size(frame, unit)
+    return (of_group, (N_OF_GROUP,)) if of_group is not None else (None, ())
+
+
+def group_size(frame: Frame, unit: Unit) -> Printed | None:
+    """The n of the group: over its rows (`Rye (n = 24)` as a sub-heading), else over its column."""
+    over = (
+        label.n for label in reversed(frame.labels(unit.rows[0], unit.columns[0])[:-1]) if label.n is not None
+    )
+    return next(over, None) or next((frame.sizes[c] for c in unit.columns if c in frame.sizes), None)
+
+
+def names_of(frame: Frame, unit: Unit) -> tuple[str, str]:
+    """What was measured, and on whom: the row and the column, or the other way round where the rows are groups."""
+    told_ = frame.labels(unit.rows[0], unit.columns[0])
+    # A sub-heading with an n is a group, and the columns beside it are its times or conditions.
+    over = [label.name for label in told_[:-1] if label.name and label.n is not None]
+    labels = [label.name for label in told_ if label.name and label.name not in over]
+    column = " | ".join((*over, *((unit.group,) if unit.group else ())))
+    if not labels and not over and not any(group.n is not None for group in frame.groups.values()):
+        return unit.group, ""
+    if not frame.groups_in_rows or over:
+        return " | ".join(labels), column
+    return " | ".join((*labels[:-1], *((column,) if column else ()))), labels[-1] if labels else ""

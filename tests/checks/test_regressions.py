@@ -1,0 +1,96 @@
+"""Rows of regression tables: R data set mtcars, statsmodels on drawn data, and honest readings."""
+
+import numpy as np
+import pytest
+import statsmodels.api as sm
+from hypothesis import given, settings
+from hypothesis import strategies as st
+
+from recheck.checks.registry import Case, all_checks, find_check
+from tests.checks.claims import claim, finding
+
+all_checks()
+
+# R 4.2, lm(mpg ~ wt, mtcars): b = −5.3445, SE 0.5591, t = −9.559 on 30 df, p = 1.29e-10, CI −6.486 to −4.203
+SLOPE = {"b": "−5.34", "se": "0.56", "t": "−9.56", "df": "30", "p": "< .001"}
+# R 4.2, glm(am ~ wt, binomial, mtcars): b = −4.024, SE 1.436, z = −2.801, p = .00509
+LOGIT = {"b": "−4.024", "se": "1.436", "z": "−2.801", "p": ".005"}
+
+
+def row(*said, interval_of=None, base=SLOPE, **changed):
+    values = {k: v for k, v in {**base, **changed}.items() if v}
+    return claim("regression", *said, interval_of=interval_of, **values)
+
+
+def verdicts(check, of):
+    return [(f.quantity, f.verdict) for f in find_check(check).run(Case(claim=of))]
+
+
+@pytest.mark.parametrize(
+    ("check", "of", "expected"),
+    [
+        ("t-from-b", row(), ("t", "agrees")),
+        ("t-from-b", row(t="−6.59"), ("t", "inconsistent")),
+        ("t-from-b", row(t="91.4"), ("t", "conditional")),  # Wald's statistic under the letter t
+        ("t-from-b", row("robust", t="−6.59"), ("t", "conditional")),
+        ("t-from-b", row(base=LOGIT), ("z", "agrees")),
+        ("t-from-b", row(base=LOGIT, z="−2.108"), ("z", "inconsistent")),
+        ("t-from-b", row(base=LOGIT, z="", chi2="7.85"), ("chi2", "agrees")),
+        ("t-from-b", row(base=LOGIT, z="", chi2="9.85"), ("chi2", "conditional")),  # a likelihood ratio
+        ("p-from-t", row(p=".02"), ("p", "inconsistent")),
+        ("p-from-z", row(base=LOGIT, p=".05"), ("p", "inconsistent")),
+        ("p-from-b", row(t="", df=""), ("p", "agrees")),
+        ("p-from-b", row(df="", p=".2"), ("p", "conditional")),
+        ("p-from-b", row(t="", p=".2"), ("p", "inconsistent")),
+        ("ci-from-b", row(ci_low="−6.49", ci_high="−4.20", ci_level="95"), ("ci_low", "agrees")),
+        ("ci-from-b", row(ci_low="−9.46", ci_high="−4.20", ci_level="95"), ("ci_low", "inconsistent")),
+        ("ci-from-b", row(ci_low="−6.44", ci_high="−4.24", ci_level="95", se="0.5591"), ("ci_low", "conditional")),
+        ("ratio-from-b", row(base=LOGIT, **{"or": "0.018"}), ("or", "agrees")),
+        ("ratio-from-b", row(base=LOGIT, **{"or": "0.081"}), ("or", "conditional")),
+        ("ratio-from-b", row(base=LOGIT, **{"or": "55.9"}), ("or", "conditional")),
+    ],
+)  # fmt: skip
+def test_rows_of_mtcars(check, of, expected):
+    assert verdicts(check, of) == [expected]
+
+
+# exp(−4.024 ∓ 1.959964 × 1.436): 0.00107 to 0.298
+ODDS = {"base": LOGIT, "interval_of": "or", "ci_low": "0.0011", "ci_high": "0.298", "ci_level": "95"}
+
+
+def test_an_odds_ratio_that_its_interval_and_b_deny():
+    wrong = row(**ODDS, **{"or": "0.108"})
+    assert verdicts("ratio-from-b", wrong) == [("or", "inconsistent")]
+    assert verdicts("ratio-centre", wrong) == [("or", "conditional")]
+    assert verdicts("ratio-centre", row(**ODDS, **{"or": "0.018"})) == [("or", "agrees")]
+
+
+def test_stars_above_what_p_allows():
+    for p, stars, expected in (
+        (".008", "< 0.01", "agrees"), (".010", "< 0.01", "agrees"), (".03", "< 0.01", "inconsistent"),
+        (".018", "< 0.01", "conditional"), ("< .001", "< 0.01", "agrees"), ("> .20", "< 0.05", "inconsistent"),
+    ):  # fmt: skip
+        assert finding("p-from-stars", claim("t-test", p=p, stars=stars)).verdict == expected
+    adjusted = claim("t-test", "adjusted-p", p=".03", stars="< 0.01")
+    assert finding("p-from-stars", adjusted).verdict == "conditional"
+
+
+@settings(max_examples=40, deadline=None)
+@given(st.integers(0, 10**6), st.integers(1, 3))
+def test_an_honest_row_is_never_flagged(seed, decimals):
+    rng = np.random.default_rng(seed)
+    n = int(rng.integers(12, 120))
+    x = sm.add_constant(rng.normal(size=(n, 2)))
+    fit = sm.OLS(x @ rng.normal(size=3) + rng.normal(size=n), x).fit()
+    low, high = fit.conf_int()[1]
+    told = {
+        "b": fit.params[1], "se": fit.bse[1], "t": fit.tvalues[1], "ci_low": low, "ci_high": high,
+    }  # fmt: skip
+    values = {k: f"{v:.{decimals}f}" for k, v in told.items()}
+    values |= {"p": f"{fit.pvalues[1]:.3f}", "ci_level": "95"}
+    if rng.random() < 0.5:
+        values["df"] = str(int(fit.df_resid))
+    of = row(base=values)
+    for check in ("t-from-b", "p-from-b", "ci-from-b", "p-from-t"):
+        if set(find_check(check).needs) <= values.keys():
+            assert {v for _, v in verdicts(check, of)} <= {"agrees", "conditional"}
