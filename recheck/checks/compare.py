@@ -77,10 +77,11 @@ def judge(case: Case, comparison: Comparison) -> Finding:
         return _finding(case, comparison, claims, "agrees", [match], match)
     excuse = _excuse(comparison, tried)
     if excuse:
-        shown_ways = [a for a in tried if not a.unstated and a.implied]
+        implied = _implied([a for a in tried if not a.unstated and a.implied])
+        _, turned = _as_printed(case.claim, comparison)
         return replace(
             unchecked(case, comparison.check, comparison.quantity, excuse, claims),
-            implied=_implied(shown_ways),
+            implied=_turned(implied) if turned else implied,
         )
     if match:
         plain = [a for a in tried if not a.unstated and a.implied]
@@ -220,8 +221,9 @@ def _finding(
     case: Case, comparison: Comparison, claims: tuple[Claim, ...], verdict: Verdict, listed: Sequence[Attempt],
     match: Attempt | None, *, doubts: tuple[str, ...] = (), reversal: bool = False,
 ) -> Finding:  # fmt: skip
+    numbers, turned = _as_printed(case.claim, comparison)
     printed = comparison.numbers[comparison.quantity]
-    implied = _implied(listed)
+    implied = _turned(_implied(listed)) if turned else _implied(listed)
     plain = [i for a in listed if not a.unstated for i in a.implied] or [i for a in listed for i in a.implied]
     interval = printed.interval().within(comparison.bounds.low, comparison.bounds.high)
     given = match.way.given if match else ()
@@ -244,7 +246,7 @@ def _finding(
             doubts,
         ),
         place=case.claim.place,
-        tolerance=stands_for(comparison.numbers),
+        tolerance=stands_for(numbers),
         question=""
         if verdict == "agrees"
         else question_for(case.claim, comparison.quantity, printed, implied, comparison.numbers),
@@ -252,8 +254,26 @@ def _finding(
         reversal=reversal,
         confidence=lowest(claims),
         assumptions=(*given, *unstated, *doubts),
-        reconciled_by=_remedies(comparison, verdict, match, plain),
+        reconciled_by=_remedies(comparison, verdict, match, _mirrored(plain) if turned else plain),
     )
+
+
+def _as_printed(claim: Claim, comparison: Comparison) -> tuple[Numbers, bool]:
+    """The numbers with the sign of the checked one as printed, and whether it was compared without it."""
+    quantity = comparison.quantity
+    printed, compared = claim.values.get(quantity), comparison.numbers[quantity]
+    if printed is None or not (printed.value < 0 < compared.value and printed.text == compared.text):
+        return comparison.numbers, False
+    return {**comparison.numbers, quantity: printed}, True
+
+
+def _mirrored(intervals: Sequence[Interval]) -> list[Interval]:
+    return [Interval(-i.high, -i.low) for i in intervals]
+
+
+def _turned(implied: Sequence[Implied]) -> tuple[Implied, ...]:
+    """Ranges of an absolute value on the side of the printed sign."""
+    return tuple(replace(row, low=-row.high, high=-row.low) for row in implied)
 
 
 def _remedies(

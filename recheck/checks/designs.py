@@ -226,6 +226,10 @@ def _telling(df: Interval) -> bool:
 
 WELCH_DF = "these df are Welch's, not those of a model with covariates, of fewer cases or of more groups"
 MISSING = "no case is missing (n is that of the whole group)"
+UNNAMED_SIZES = (
+    "this is the plain test of two independent groups (it is not named, and group sizes are not printed)"
+)
+UNNAMED_PAIRS = "this is the plain test of the same units measured twice (their number is not printed)"
 UNNAMED = "this is the plain test of two groups (neither its df nor its name is printed)"
 
 
@@ -262,7 +266,7 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
         return Fit((), "Welch's test is said, but group sizes are not printed")
     total = int(df.value) + 2
     two_groups_fit = whole(claim.values.get("N")) == total
-    named = claim.says("independent", "pooled")
+    named, pairs = claim.says("independent", "pooled"), claim.says("paired")
     ways = []
     for as_se in (False, True) if groups.unlabelled else (False,):
         extra = (SE_READING,) if as_se else ()
@@ -280,11 +284,6 @@ def _fit_unknown(claim: Claim, groups: Groups, df: Printed | None) -> Fit:
         if not (two_groups_fit or claim.says("independent", "pooled", "welch", "between-groups")):
             # One sample measured twice is as natural here as two groups: neither size is printed.
             ways.append(Way(by_pairs, extra, (f"{PAIRED}, with a correlation that is not printed",)))
-    doubts = (
-        ()
-        if named
-        else (
-            "this is the plain test of two independent groups (it is not named, and group sizes are not printed)",
-        )
-    )
-    return Fit(tuple(ways), "", doubts, "independent" if named else "", sure=named)
+    doubt = UNNAMED_PAIRS if claim.says("repeated", "one-sample") else UNNAMED_SIZES
+    design = "independent" if named else "paired" if pairs else ""
+    return Fit(tuple(ways), "", () if named or pairs else (doubt,), design, sure=named or pairs)

@@ -8,10 +8,22 @@ from dataclasses import dataclass
 
 from scipy import special
 
+from recheck.checks.coefficients import is_wald
 from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import Groups, sds
 from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
-from recheck.checks.intervals import BY_HAND, ESTIMATES, OFF_CENTRE, OTHER_METHOD, RATIOS, ends, log_middle
+from recheck.checks.intervals import (
+    BY_HAND,
+    ESTIMATES,
+    OFF_CENTRE,
+    OTHER_METHOD,
+    RATIOS,
+    TOO_COARSE,
+    ends,
+    level_of,
+    log_middle,
+    too_coarse,
+)
 from recheck.checks.models import foreign_model
 from recheck.checks.p_values import ONE_TAILED, P_RANGE, UNIT_DF, as_interval
 from recheck.checks.registry import Case, check
@@ -38,15 +50,6 @@ def other_widths(level: float, df: float) -> tuple[float, float]:
 
 USUAL_LEVEL = "taken for a 95% interval, as no level is printed"
 NORMAL = "the interval uses the normal, not the t distribution"
-
-
-def level_of(claim: Claim) -> tuple[float, bool]:
-    """The level of the interval as a share, and whether it is printed."""
-    printed = claim.values.get("ci_level")
-    if printed is None:
-        return 0.95, False
-    level = printed.number / 100 if printed.number > 1 else printed.number
-    return (level, True) if 0.5 <= level < 1 else (0.95, False)
 
 
 @dataclass(frozen=True, slots=True)
@@ -133,6 +136,9 @@ def t_from_ci(case: Case) -> Iterable[Finding]:
     df = claim.values["df"].number
     if low.interval().low > high.interval().high or df <= 0:
         return
+    if too_coarse(claim):
+        yield unchecked(case, "t-from-ci", "t", TOO_COARSE)
+        return
     numbers = {"t": unsigned(claim.values["t"]), "ci_low": low, "ci_high": high, "df": claim.values["df"]}
     doubts = ["the interval is that of the mean difference"] if bare else []
     if claim.values["df"].decimals <= 0 and claim.suggests("mixed-model"):
@@ -164,11 +170,14 @@ def _ci_ways(claim: Claim, df: float, slack: Slack) -> tuple[Way, ...]:
     given = () if printed else (USUAL_LEVEL,)
     normal = float(z_quantile((1 - level) / 2)) / float(t_quantile((1 - level) / 2, df))
     ways = [Way(_t_of_ci(level, df), (), given)]
-    ways.append(Way(_loose_t(level, df, Slack(0.0, normal, normal)), (NORMAL,), given))
     other_method = Slack(0.0, *other_widths(level, df))
     if claim.interval_of in RATIOS:
+        # The interval of a ratio rests on the normal distribution anyway.
+        if is_wald(claim):
+            return tuple(ways)
         ways.append(Way(_loose_t(level, df, other_method, OFF_CENTRE), (PROFILE,), given))
         return tuple(ways)
+    ways.insert(1, Way(_loose_t(level, df, Slack(0.0, normal, normal)), (NORMAL,), given))
     by_hand = Slack(slack.shift, slack.narrower * min(normal, 1.0), slack.wider)
     ways.append(Way(_loose_t(level, df, by_hand), (BY_HAND,), given))
     for other in () if printed else (0.90, 0.99):
@@ -210,6 +219,9 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
         return
     if ratio and low.interval().low <= 0:
         yield unchecked(case, "p-from-ci", "p", "the lower end of the ratio's interval may be 0")
+        return
+    if too_coarse(claim):
+        yield unchecked(case, "p-from-ci", "p", TOO_COARSE)
         return
     df = claim.values.get("df")
     known = df is not None and df.number > 0 and not ratio

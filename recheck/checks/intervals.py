@@ -44,6 +44,24 @@ def ends(claim: Claim) -> tuple[Printed, Printed]:
     return claim.values["ci_low"], claim.values["ci_high"]
 
 
+def level_of(claim: Claim) -> tuple[float, bool]:
+    """The level of the interval as a share, and whether it is printed."""
+    printed = claim.values.get("ci_level")
+    if printed is None:
+        return 0.95, False
+    level = printed.number / 100 if printed.number > 1 else printed.number
+    return (level, True) if 0.5 <= level < 1 else (0.95, False)
+
+
+TOO_COARSE = "the ends of the interval are the same number to their printed decimals, so they do not tell p"
+
+
+def too_coarse(claim: Claim) -> bool:
+    """Tell whether both printed ends may be one number: then any test agrees with them."""
+    low, high = ends(claim)
+    return low.interval().high >= high.interval().low
+
+
 @check(
     "ci-order",
     title="ends of a confidence interval",
@@ -153,6 +171,7 @@ def _inside(printed: Printed, low: Printed, high: Printed) -> bool:
     return low.interval().low <= printed.number <= high.interval().high
 
 
+NEED_NOT_BE_SYMMETRIC = "the interval may be a profile-likelihood one, which need not be symmetric"
 OFF_CENTRE = 0.35
 """How far from its centre, in half widths, an honest interval by another method may have its estimate."""
 

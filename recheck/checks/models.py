@@ -28,6 +28,9 @@ def foreign_model(claims: Sequence[Claim], *, fitted: bool = False) -> str:
     if said:
         return f"summaries cannot rebuild {STATED[said[0]]}"
     possible = BESIDE_FITTING_DF if fitted else FOREIGN
+    if any(claim.kind in ("t-test", "F-test") and claim.values.keys() & {"t", "F"} for claim in claims):
+        # t and F are no statistics of ranks, whatever the document tests elsewhere.
+        possible = tuple(word for word in possible if word != "rank-test")
     spoken = [word for word in possible if any(word in claim.background for claim in claims)]
     if spoken:
         return f"the document speaks of {STATED[spoken[0]]}, which summaries cannot rebuild"

@@ -19,6 +19,7 @@ ONE_TAILED = "p is one-tailed"
 WRONG_DIRECTION = "the effect goes against the predicted direction"
 ROUNDED_DF = "the printed df are a rounded or floored fractional df"
 NORMAL_P = "p comes from the normal distribution"
+NORMAL_F = "p comes from the χ² distribution, as if df2 had no limit"
 FLOOR = "p is the smallest that the program prints, so smaller ones are printed alike"
 ANY_DF = "p rests on another approximation to the df, as mixed models allow"
 
@@ -48,6 +49,10 @@ def _floor_of(p: Printed) -> bool:
     return p.relation == "=" and p.decimals >= 3 and p.value == p.unit
 
 
+RARE = frozenset((NORMAL_P, NORMAL_F, "p is two-tailed", WRONG_DIRECTION))
+"""Readings that are not combined with another rare one: two of them soften true discrepancies."""
+
+
 def _with_floor(ways: list[Way], p: Printed) -> list[Way]:
     """Add the reading that a program prints no smaller p than this one."""
     if not _floor_of(p):
@@ -55,7 +60,7 @@ def _with_floor(ways: list[Way], p: Printed) -> list[Way]:
     top = float(p.value + p.unit / 2)
     floored = []
     for way in ways:
-        if len(way.unstated) <= 1:
+        if len(way.unstated) <= 1 and not RARE.intersection(way.unstated):
 
             def implied(
                 box: Box, inner: Callable[[Box], tuple[Interval, ...]] = way.implied

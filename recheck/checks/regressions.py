@@ -3,23 +3,33 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import replace
 
 import numpy as np
 
+from recheck.checks.coefficients import coefficient, coefficient_doubts, ratio_of
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.groups import unsigned
-from recheck.checks.interval_tests import NORMAL, OPEN_DF, USUAL_LEVEL, level_of, other_widths
-from recheck.checks.intervals import OFF_CENTRE, OTHER_METHOD, RATIOS, ends, exponential, log_middle
-from recheck.checks.p_values import ONE_TAILED, as_interval, judge_p
+from recheck.checks.interval_tests import NORMAL, OPEN_DF, USUAL_LEVEL, other_widths
+from recheck.checks.intervals import (
+    NEED_NOT_BE_SYMMETRIC,
+    OFF_CENTRE,
+    OTHER_METHOD,
+    RATIOS,
+    ends,
+    exponential,
+    level_of,
+    log_middle,
+)
+from recheck.checks.p_values import ONE_TAILED, UNIT_DF, as_interval, judge_p
 from recheck.checks.registry import Case, check
 from recheck.model import VERDICTS, Claim, Finding, Interval, Printed
 from recheck.recompute import bounds
 from recheck.recompute.arrays import quotient_bounds
 from recheck.recompute.tails import t_quantile, z_quantile
-from recheck.reconcile.readings import Box, Way, box_of
+from recheck.reconcile.readings import Box, Numbers, Way, box_of, first_agreement
 
 POSITIVE = Interval(0.0, math.inf)
 WALD = "the statistic is Wald's, (b / SE)²"
@@ -27,9 +37,9 @@ SAME_SE = "the printed SE is the one that the test rests on, neither robust nor 
 FEWEST_DF = 5.0
 
 
-def _t_of_b(box: Box) -> Interval:
-    """|b| / SE over the box."""
-    b, se = box["b"].absolute(), box["se"].within(0.0, math.inf)
+def _t_of(box: Box, names: tuple[str, str]) -> Interval:
+    """|b| / SE over the box, by the names of the two numbers."""
+    b, se = box[names[0]].absolute(), box[names[1]].within(0.0, math.inf)
     return as_interval(quotient_bounds(*(np.asarray(x) for x in (b.low, b.high, se.low, se.high))))
 
 
@@ -43,14 +53,14 @@ def _se_doubts(claim: Claim) -> tuple[str, ...]:
 
 @check(
     "t-from-b",
-    title="t, z or Wald's χ² of a coefficient against the coefficient and its SE",
-    kinds=("regression",),
+    title="t, z, F or Wald's χ² of a coefficient or difference against it and its SE",
+    kinds=("regression", "t-test", "z-test", "comparison"),
     quantity="t",
-    needs=("b", "se"),
-    beside="t, z or χ²",
-    formula="t = b / SE; Wald's χ² = (b / SE)²",
+    needs=(),
+    beside="b or β with SE, or a mean difference with its SE; t, z, F or χ²",
+    formula="t = b / SE; F = Wald's χ² = (b / SE)²",
     source="Wald (1943) Transactions of the American Mathematical Society 54:426-482; Fisher (1925) Statistical Methods for Research Workers",
-    limits="Likelihood-ratio and score tests have statistics of their own; so have tests on another (robust) SE than the printed one.",
+    limits="Likelihood-ratio and score tests have statistics of their own; so have tests on another (robust) SE than the printed one. A β is compared only where other rows of its table show that the SE is its own.",
     agrees=(
         table(
             "Table 3. Regression of loaf height in mm.",
@@ -68,19 +78,34 @@ def _se_doubts(claim: Claim) -> tuple[str, ...]:
 )
 def t_from_b(case: Case) -> Iterable[Finding]:
     """Compare the test statistic of a coefficient with the coefficient over its SE."""
-    claim = case.claim
-    for name in ("t", "z", "chi2"):
-        if name not in claim.values:
+    claim, names = case.claim, _tested(case.claim)
+    if names is None:
+        return
+    for name in ("t", "z", "chi2", "F"):
+        if name not in claim.values or (name == "F" and not _of_one_df(claim)):
             continue
-        numbers = {n: claim.values[n] for n in (name, "b", "se")}
+        numbers = {n: claim.values[n] for n in (name, *names)}
         numbers[name] = unsigned(numbers[name])
-        squared = Way(lambda box: (_square(_t_of_b(box)),))
-        plain = Way(lambda box: (_t_of_b(box),))
-        ways = (squared,) if name == "chi2" else (plain, replace(squared, unstated=(WALD,)))
-        doubts = list(_se_doubts(claim))
+        squared = Way(lambda box: (_square(_t_of(box, names)),))
+        plain = Way(lambda box: (_t_of(box, names),))
+        ways = (squared,) if name in ("chi2", "F") else (plain, replace(squared, unstated=(WALD,)))
+        doubts = [*_se_doubts(claim), *coefficient_doubts(claim, names[0])]
         if name == "chi2":
             doubts.append("χ² is that of Wald's test, not of the likelihood ratio or the score")
         yield judge(case, Comparison("t-from-b", name, numbers, ways, bounds=POSITIVE, doubts=tuple(doubts)))
+
+
+def _tested(claim: Claim) -> tuple[str, str] | None:
+    """Names of what is tested and of its SE: a mean difference with its own, else a coefficient."""
+    if {"mean_difference", "se_difference"} <= claim.values.keys():
+        return "mean_difference", "se_difference"
+    name = coefficient(claim)
+    return (name, "se") if name and "se" in claim.values else None
+
+
+def _of_one_df(claim: Claim) -> bool:
+    """Tell whether F is that of one coefficient, so the square of its t."""
+    return claim.kind == "regression" and ("df1" not in claim.values or claim.values["df1"].value == 1)
 
 
 @check(
@@ -112,25 +137,31 @@ def p_from_b(case: Case) -> Iterable[Finding]:
     """Compare p with the test of the coefficient where its own statistic and df do not tell."""
     claim = case.claim
     values = claim.values
-    if values.keys() & {"z", "chi2"} or {"t", "df"} <= values.keys():
+    if values.keys() & {"z", "chi2", "F"} or {"t", "df"} <= values.keys():
         return
-    names = ("t",) if "t" in values else ("b", "se")
+    name = coefficient(claim) or ""
+    names = ("t",) if "t" in values else (name, "se")
     if not set(names) <= values.keys():
         return
+    logistic = ratio_of(claim, name) is not None
     df = values.get("df")
     known = df is not None and df.number > 0
     dfs = Interval(df.number, df.number) if known and df is not None else Interval(FEWEST_DF, OPEN_DF[-1])
+    if logistic:
+        dfs = Interval(UNIT_DF, UNIT_DF)
 
     def implied(box: Box, factor: float = 1.0) -> tuple[Interval, ...]:
-        t = box["t"].absolute() if "t" in box else _t_of_b(box)
+        t = box["t"].absolute() if "t" in box else _t_of(box, (name, "se"))
         p = as_interval(bounds.p_from_t_bounds(t.low, t.high, dfs.low, dfs.high, 2))
         return (Interval(factor * p.low, factor * p.high),)
 
     ways = [Way(implied)]
     if not claim.suggests("two-tailed"):
         ways.append(Way(lambda box: implied(box, 0.5), (ONE_TAILED,)))
-    doubts = list(_se_doubts(claim))
-    if not known:
+    doubts = [*_se_doubts(claim), *(() if "t" in values else coefficient_doubts(claim, name))]
+    if logistic:
+        doubts.append("p is that of Wald's test of this coefficient, not of the likelihood ratio")
+    elif not known:
         doubts.append(
             "p is that of Wald's test of this coefficient (no df are printed; those from 5 up were tried)"
         )
@@ -143,7 +174,8 @@ def p_from_b(case: Case) -> Iterable[Finding]:
     title="confidence interval of a coefficient against the coefficient and its SE",
     kinds=("regression",),
     quantity="ci_low",
-    needs=("b", "se", "ci_low", "ci_high"),
+    needs=("se", "ci_low", "ci_high"),
+    beside="b, or β",
     formula="b ∓ c SE, c the critical value of t with df, or of the normal distribution",
     source="Neyman (1937) Philosophical Transactions A 236:333-380",
     limits="Conditional at most without df. Profile, bootstrap and robust intervals are not rebuilt.",
@@ -164,31 +196,58 @@ def p_from_b(case: Case) -> Iterable[Finding]:
 )
 def ci_from_b(case: Case) -> Iterable[Finding]:
     """Compare both ends with the coefficient and its SE; the end that fits worse is told."""
-    claim = case.claim
-    if claim.interval_of not in (None, "b") or (
-        claim.interval_of is None and RATIO_NAMES & claim.values.keys()
-    ):
+    claim, name = case.claim, coefficient(case.claim)
+    if name is None or claim.interval_of not in (None, name):
+        return
+    if claim.interval_of is None and RATIO_NAMES & claim.values.keys():
         return
     low, high = ends(claim)
     if low.value > high.value:
         return
     df = claim.values.get("df")
     known = df is not None and df.number > 0
-    doubts = list(_se_doubts(claim))
-    if not known:
+    doubts = [*_se_doubts(claim), *coefficient_doubts(claim, name)]
+    if "z" in claim.values:
+        doubts.append("the interval is Wald's, as the test is")
+    elif not known:
         doubts.append("the interval is Wald's (no df are printed; those from 5 up were tried)")
-    found = []
-    for name, printed, side in (("ci_low", low, -1.0), ("ci_high", high, 1.0)):
-        numbers = {name: printed, "b": claim.values["b"], "se": claim.values["se"]}
-        ways = tuple(_end_ways(claim, df.number if known and df is not None else None, side))
-        found.append(judge(case, Comparison("ci-from-b", name, numbers, ways, doubts=tuple(doubts))))
+    dfs = UNIT_DF if "z" in claim.values else df.number if known and df is not None else None
+    sides = (("ci_low", low, -1.0), ("ci_high", high, 1.0))
+    told = [{end: printed, name: claim.values[name], "se": claim.values["se"]} for end, printed, _ in sides]
+    ways = [tuple(_end_ways(claim, name, dfs, side)) for _, _, side in sides]
+    alike = _by_one_way(told, ways)
+    found = [
+        judge(
+            case,
+            Comparison(
+                "ci-from-b", end, numbers, tuple(w for w, fits in zip(by, alike, strict=True) if fits),
+                doubts=tuple(doubts), excuses=_resampled(claim),
+            ),
+        )
+        for (end, _, _), numbers, by in zip(sides, told, ways, strict=True)
+    ]  # fmt: skip
     yield min(found, key=lambda finding: VERDICTS.index(finding.verdict))
 
 
 RATIO_NAMES = frozenset(RATIOS)
 
 
-def _end_ways(claim: Claim, df: float | None, side: float) -> Iterator[Way]:
+def _resampled(claim: Claim) -> tuple[str, ...]:
+    if claim.suggests("bootstrap"):
+        return ("the interval may come from a bootstrap, of which the text speaks",)
+    return ("the interval may be a credible one",) if claim.suggests("bayesian") else ()
+
+
+def _by_one_way(told: Sequence[Numbers], ways: Sequence[Sequence[Way]]) -> list[bool]:
+    """Which ways may be followed: those that are stated, and those by which both ends fit."""
+    ends_fit = [
+        [first_agreement(next(iter(numbers)), numbers, (way,)) is not None for way in by]
+        for numbers, by in zip(told, ways, strict=True)
+    ]
+    return [not way.unstated or (low and high) for way, low, high in zip(ways[0], *ends_fit, strict=True)]
+
+
+def _end_ways(claim: Claim, name: str, df: float | None, side: float) -> Iterator[Way]:
     """Ways to one end of the interval: `side` −1 for the lower, 1 for the upper."""
     level, printed = level_of(claim)
     given = () if printed else (USUAL_LEVEL,)
@@ -196,20 +255,20 @@ def _end_ways(claim: Claim, df: float | None, side: float) -> Iterator[Way]:
         tail = (1 - tried) / 2
         normal, fewest = float(z_quantile(tail)), float(t_quantile(tail, df or FEWEST_DF))
         words = () if tried == level else (f"the interval is a {tried:.0%} one",)
-        yield Way(_end(side, fewest if df else normal, fewest), words, () if words else given)
-        if df and tried == level:
-            yield Way(_end(side, normal, normal), (NORMAL,), given)
+        yield Way(_end(name, side, fewest if df else normal, fewest), words, () if words else given)
+        if df and tried == level and df < UNIT_DF:
+            yield Way(_end(name, side, normal, normal), (NORMAL,), given)
     c = float(t_quantile((1 - level) / 2, df or FEWEST_DF))
     narrower, wider = other_widths(level, df or FEWEST_DF)
     shift = OFF_CENTRE * c
-    yield Way(_end(side, narrower * c - shift, wider * c + shift), (OTHER_METHOD,), given)
+    yield Way(_end(name, side, narrower * c - shift, wider * c + shift), (OTHER_METHOD,), given)
 
 
-def _end(side: float, least: float, most: float) -> Callable[[Box], tuple[Interval, ...]]:
-    """b with a half width from `least` to `most` SEs to one side."""
+def _end(name: str, side: float, least: float, most: float) -> Callable[[Box], tuple[Interval, ...]]:
+    """The coefficient with a half width from `least` to `most` SEs to one side."""
 
     def implied(box: Box) -> tuple[Interval, ...]:
-        b, se = box["b"], box["se"].within(0.0, math.inf)
+        b, se = box[name], box["se"].within(0.0, math.inf)
         narrow, broad = least * se.low, most * se.high
         if side > 0:
             return (Interval(b.low + narrow, b.high + broad),)
@@ -311,11 +370,7 @@ def ratio_centre(case: Case) -> Iterable[Finding]:
     numbers = {name: claim.values[name], "ci_low": low, "ci_high": high}
     foreign = claim.suggests("bootstrap", "bayesian")
     near = any(i.meets(numbers[name].interval()) for i in implied(box_of(numbers), OFF_CENTRE))
-    excuses = (
-        ("the interval may be a profile-likelihood one, which need not be symmetric",)
-        if foreign or near
-        else ()
-    )
+    excuses = (NEED_NOT_BE_SYMMETRIC,) if foreign or near else ()
     doubts = ("the interval is a symmetric one of the logarithm; an exact or profile interval need not be",)
     yield judge(
         case,

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 import logging
-from collections import Counter
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 
-from recheck.checks.compare import doubted, unchecked
+from recheck.checks.columns import by_columns
+from recheck.checks.compare import unchecked
 from recheck.checks.registry import Case, Check, Twin, all_checks
-from recheck.model import DISCREPANT, Claim, Finding, SameResult, Settings, shown
+from recheck.model import Claim, Finding, SameResult, Settings, shown
 
 logger = logging.getLogger("recheck")
 
@@ -32,37 +32,7 @@ def run_checks(
         for check in all_checks():
             if claim.kind in check.kinds:
                 findings += _run(check, case)
-    return _doubting_columns(findings)
-
-
-FEW_ROWS = 3
-"""Discrepant rows of a table from which on they can be more than misprints."""
-COLUMNS = "the columns of the table hold what their headings say (most of its rows do not fit)"
-
-
-def _doubting_columns(findings: Sequence[Finding]) -> tuple[Finding, ...]:
-    """Findings of one check on a table of which most rows do not fit are conditional.
-
-    One wrong row among many is a misprint; where most are wrong, it is likelier that a column was
-    misunderstood. SDs and SEs that change places in the whole table are the exception: that reconciles all.
-    """
-    seen: dict[tuple[str, str], Counter[bool]] = {}
-    for finding in findings:
-        if finding.place.table and finding.verdict in (*DISCREPANT, "agrees"):
-            rows = seen.setdefault((finding.check, finding.place.table), Counter())
-            rows[finding.verdict in DISCREPANT and not _relabelled(finding)] += 1
-    doubtful = {key for key, rows in seen.items() if rows[True] >= FEW_ROWS and rows[True] > rows[False]}
-    return tuple(
-        doubted(f, COLUMNS)
-        if (f.check, f.place.table or "") in doubtful and f.verdict in DISCREPANT and not _relabelled(f)
-        else f
-        for f in findings
-    )
-
-
-def _relabelled(finding: Finding) -> bool:
-    """Tell whether a spread with the wrong label explains a discrepancy."""
-    return any(remedy.change in ("SD → SE", "SE → SD") for remedy in finding.reconciled_by)
+    return by_columns(findings)
 
 
 def _twins(by_id: Mapping[str, Claim], same: Sequence[SameResult]) -> dict[str, tuple[Twin, ...]]:

@@ -9,6 +9,7 @@ from recheck.checks.compare import unchecked
 from recheck.checks.group_df import df_of_groups
 from recheck.checks.p_values import (
     ANY_DF,
+    NORMAL_F,
     NORMAL_P,
     ONE_TAILED,
     ROUNDED_DF,
@@ -134,7 +135,7 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
 
     ways = [Way(lambda box: p_of(box["chi2"], box["df"]))]
     one_df = numbers["df"].value == 1 and numbers["df"].decimals <= 0
-    if not claim.suggests("model-fit") and not claim.suggests("uncorrected-chi2"):
+    if not claim.suggests("model-fit", "uncorrected-chi2") and not claim.says("heterogeneity"):
         ways.append(
             Way(lambda box: p_of(other_chi2(box["chi2"], one_df), box["df"]), (_other_words(claim, one_df),))
         )
@@ -151,7 +152,7 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
 
 def _other_words(claim: Claim, one_df: bool) -> str:
     """The reading of a p that is not Pearson's, in the words of what it can be."""
-    if claim.suggests("rank-test"):
+    if claim.says("rank-test"):
         return "p of the rank test is exact, or the statistic is corrected for ties"
     if one_df:
         return "p belongs to another statistic of the same table (Yates, N − 1, likelihood ratio or Fisher)"
@@ -263,9 +264,6 @@ def _open_ways(claim: Claim, statistic: str, dfs: tuple[Interval, ...]) -> Itera
         yield Way(lambda box: p_of({**box, statistic: other_chi2(box[statistic], one_df)}), (loose,))
     if dfs[0].high == 1 or statistic == "t":
         yield Way(lambda box: p_of(box, 0.5), (ONE_TAILED,))
-
-
-NORMAL_F = "p comes from the χ² distribution, as if df2 had no limit"
 
 
 def _halved(claim: Claim, p_of: Callable[[Box], tuple[Interval, ...]]) -> list[Way]:

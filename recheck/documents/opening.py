@@ -48,7 +48,7 @@ def open_document(
     name = shown_name(name if name is not None else _own_name(source))
     data = _content(source, name)
     if is_pdf(data[:HEAD]):
-        from recheck.documents.pdf import pdf_document
+        from recheck.documents.pdf.document import pdf_document
 
         return pdf_document(data, name=name, reader=reader, pages=pages)
     if is_zip(data):

@@ -32,6 +32,7 @@ STATED = {
     "covariate-adjusted": "means or tests adjusted for covariates (ANCOVA)",
     "mixed-model": "a mixed (multilevel) model",
     "survival": "a survival analysis (log-rank test, Cox model)",
+    "heterogeneity": "a test of heterogeneity (Cochran's Q)",
     "imputed": "multiple imputation",
     "transformed": "scores transformed before the analysis",
     "weighted": "weights",

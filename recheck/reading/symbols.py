@@ -192,8 +192,8 @@ SPELLINGS: list[tuple[str, Symbol]] = [
 # What only the headings of tables say: a word such as `No.` or `Number` is no symbol in prose.
 HEADINGS: list[tuple[str, Symbol]] = [
     *_family("size", n="No|no|Nr|nr|Num|number|numbers|sample size|obs|observations|total n|total N|n obs|valid N|valid n",
-             count="count|counts|frequency|freq|absolute frequency|absolute number",
-             percent="percent|per cent|percentage|percentages|pct|relative frequency"),
+             count="count|counts|frequency|freq|absolute frequency|absolute number|Häufigkeit|Anzahl|effectif|effectifs",
+             percent="percent|per cent|percentage|percentages|pct|relative frequency|Prozent|pourcentage"),
     *_family("centre", stated=("marginal",), mean="LS mean|LS means|least squares mean|least squares means|EMM|EMMs|marginal mean|marginal means"
              "|estimated marginal mean|estimated marginal means|EM mean|EM means"),
     *_family("centre", stated=("covariate-adjusted",), mean="adjusted mean|adjusted means"),

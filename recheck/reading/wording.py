@@ -54,6 +54,8 @@ STEMS: dict[str, tuple[str, ...]] = {
         "log-rank", "log rank", "logrank", "kaplan-meier", "cox regression", "cox proportional", "proportional hazard",
         "proportional-hazard", "survival analys",
     ),
+    "heterogeneity": ("heterogeneity chi", "heterogeneity χ", "heterogeneity p", "p for heterogeneity", "p heterogeneity", "phet", "p het ",
+        "test for heterogeneity", "test of heterogeneity", "heterogeneity test", "cochran's q", "cochran’s q", "cochran q"),
     "imputed": ("imputed", "imputation"),
     "transformed": (
         "log-transform", "log transform", "ln-transform", "ln transform", "logarithm", "log10", "log-10", "square-root transform",

@@ -147,6 +147,8 @@ def _sensible(name: str, printed: Printed, number: Printed, words: str) -> bool:
 
 def _remedy(name: str, printed: Printed, number: Printed, words: str) -> Remedy:
     now, then = _written(printed), _written(number)
+    if printed.value > 0 and printed.text[:1] in SIGNS[:3] and then[:1] not in SIGNS:
+        then = printed.text[0] + then
     text = f"if {label(name)} were {then} instead of {now} ({words}), the numbers would agree"
     return Remedy("slip", name, text, change=f"{now} → {then}")
 

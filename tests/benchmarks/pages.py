@@ -18,8 +18,8 @@ import pypdfium2.raw as raw
 from pdfminer.high_level import extract_pages
 from reportlab.pdfgen.canvas import Canvas
 
-from recheck.documents import pdfium
-from recheck.documents.pdf import page_lines
+from recheck.documents.pdf import pdfium
+from recheck.documents.pdf.document import page_lines
 
 _WORDS = [
     "loaf",

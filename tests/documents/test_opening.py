@@ -12,7 +12,7 @@ from pypdf import PdfReader, PdfWriter
 
 from recheck.documents import open_document
 from recheck.errors import UnreadableDocument
-from tests.documents.making import line, locked, opened, pdf, quoted, texts
+from tests.documents.pdf.making import line, locked, opened, pdf, quoted, texts
 
 
 def page(canvas):

@@ -11,6 +11,7 @@ import regex
 
 from recheck.model import Printed
 from recheck.reading.tables.frame import Frame, p_values
+from recheck.reading.tables.headings import told
 from recheck.reading.tables.roles import Role, fits, matched
 from recheck.reading.tables.values import Piece
 from recheck.reading.views import TIMEOUT
@@ -210,7 +211,11 @@ def _by_legend(
         form for form in frame.legend.forms if _shape_fits(frame, piece, form) and matched(piece, form)
     ]
     if not fitting and piece.shape in ("pair(", "pair[") and frame.legend.brackets and not frame.legend.forms:
-        fitting = [("mean", frame.legend.brackets)]
+        # A standard error in brackets is that of a coefficient where the table tells of a regression.
+        of_coefficient = frame.legend.brackets == "se" and (
+            _speaks_of_estimates(frame) or has_constant(frame)
+        )
+        fitting = [] if of_coefficient else [("mean", frame.legend.brackets)]
     if not fitting and piece.shape in ("pair±", "pair±(") and frame.legend.spread:
         fitting = [("mean", frame.legend.spread)]
     if len(fitting) > 1:
@@ -330,6 +335,18 @@ def _speaks_of_estimates(frame: Frame) -> bool:
     estimates = COEFFICIENTS | RATIOS | {"r2", "adjusted_r2"}
     return any(set(role.quantities) & estimates for role in frame.roles.values()) or any(
         word in frame.legend.text for word in ("regression", "odds ratio", "hazard ratio", "coefficient")
+    )
+
+
+def has_constant(frame: Frame) -> bool:
+    """Whether a row is that of a model: its constant or its R²."""
+    return frame.once("constant", _has_constant)
+
+
+def _has_constant(frame: Frame) -> bool:
+    names = [frame.sheet.row_header(row).last.strip() for row in frame.sheet.rows]
+    return any(name.lower() in ("constant", "(constant)", "(intercept)") for name in names) or any(
+        set(told(name).quantities) & {"intercept", "r2", "adjusted_r2"} for name in names if name
     )
 
 

@@ -4,36 +4,26 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
-from recheck.model import TOTAL_OF_GROUP, Printed
+from recheck.model import TOTAL_OF_GROUP
 from recheck.reading.tables.frame import Found, Frame, claim_of
-from recheck.reading.tables.summaries import group_size, names_of
+from recheck.reading.tables.summaries import names_of
+from recheck.reading.tables.totals import count_of, is_total, totals_of
 from recheck.reading.tables.units import Unit
 from recheck.reading.tables.values import Piece
-
-_MEASURED = 3
-"""Cells of a column from which it shows whether its shares are those of the group's n."""
-
 
 def counts_of(frame: Frame, units: Sequence[Unit]) -> Iterator[Found]:
     """The counts among the units of a block."""
     people = [unit for unit in units if unit.family == "people"]
-    refuted = frozenset(frame.sheet.columns) if _of_those_who_answered(frame) else _refuted(frame, people)
-    for unit in people:
+    totals = totals_of(frame, people)
+    for at, unit in enumerate(people):
         values = {name: value for name, value in unit.values.items() if name in ("count", "percent", "total")}
-        if "count" not in values and {"n", "N"} & set(unit.values) and "percent" in values:
-            values["count"] = unit.values.get("n") or unit.values["N"]
-        if "count" not in values:
+        count = count_of(unit.values)
+        if count is None or is_total(frame, unit) or ("count" not in values and "percent" not in values):
             continue
+        values["count"] = count
         notes: tuple[str, ...] = ()
-        column = unit.columns[0]
-        total = group_size(frame, unit)
-        if (
-            "total" not in values
-            and total is not None
-            and column not in refuted
-            and values["count"].value <= total.value
-        ):
-            values["total"], notes = total, (TOTAL_OF_GROUP,)
+        if "total" not in values and at in totals:
+            values["total"], notes = totals[at], (TOTAL_OF_GROUP,)
         if "percent" not in values and "total" not in values:
             continue
         outcome, group = names_of(frame, unit)
@@ -102,44 +92,3 @@ def _variables(frame: Frame) -> Iterator[tuple[int, ...]]:
             rows.append(row)
     if len(rows) > 1:
         yield tuple(rows)
-
-
-def _refuted(frame: Frame, units: Sequence[Unit]) -> frozenset[int]:
-    """Columns whose shares are of something else than the group's n: of the row, or of those who answered.
-
-    Honest tables print both kinds; a total that most cells contradict is no total.
-    """
-    fitting: dict[int, list[bool]] = {}
-    for unit in units:
-        values, total = unit.values, group_size(frame, unit)
-        count = values.get("count") or values.get("n")
-        percent = values.get("percent")
-        if total is None or count is None or percent is None or "total" in values or total.value == 0:
-            continue
-        fitting.setdefault(unit.columns[0], []).append(_fits(count, percent, total))
-    return frozenset(
-        column
-        for column, fits in fitting.items()
-        if 2 * sum(fits) < len(fits) or (len(fits) < _MEASURED and not any(fits))
-    )
-
-
-def _of_those_who_answered(frame: Frame) -> bool:
-    """Whether the legend says that shares leave out missing answers, whose number is not printed."""
-    text = frame.legend.text
-    return any(
-        words in text
-        for words in (
-            "non-missing",
-            "nonmissing",
-            "valid response",
-            "valid percent",
-            "available data",
-            "missing data excluded",
-            "excluding missing",
-        )
-    )
-
-
-def _fits(count: Printed, percent: Printed, total: Printed) -> bool:
-    return abs(100 * count.value / total.value - percent.value) <= percent.unit

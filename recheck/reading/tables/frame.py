@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from decimal import Decimal
 from hashlib import blake2b
@@ -155,7 +155,7 @@ def _groups_in_rows(sheet: Sheet, groups: Mapping[int, Group], roles: Mapping[in
     )
 
 
-_GROUP_HEADS = words("group condition treatment arm cohort")
+_GROUP_HEADS = words("group condition treatment arm cohort gruppe groupe grupo bedingung")
 _TEST_COLUMNS = frozenset(("t", "F", "chi2", "z", "p", "u", "w"))
 
 
@@ -205,12 +205,17 @@ def _sizes(
                 sizes = own | sizes
     if legend.N is not None and not sizes:
         names = {name for group in groups.values() if (name := group.name.lower())}
-        times = [name for name in names if not _TIMES.isdisjoint(name.replace("-", " ").split())]
         everyone = [c for c in sheet.columns if groups[c].name.lower() in _EVERYONE]
-        repeated = len(times) > 1 and 2 * len(times) >= len(names)
-        for column in sheet.columns if len(names) <= 1 or repeated else everyone:
+        for column in sheet.columns if len(names) <= 1 or measured_again(names) else everyone:
             sizes[column] = legend.N
     return frozenset(rows), sizes
+
+
+def measured_again(names: Iterable[str]) -> bool:
+    """Whether groups are the same people at several times, as most of their names say."""
+    names = list(names)
+    times = [name for name in names if not _TIMES.isdisjoint(name.lower().replace("-", " ").split())]
+    return len(times) > 1 and 2 * len(times) >= len(names)
 
 
 _ROWS_OF_SIZES = 4

@@ -6,6 +6,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 
 from recheck.model import Table
+from recheck.reading.tables.flat_heads import parted
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.row_names import RowNames
 from recheck.reading.tables.shapes import NAMES_TESTS, PERCENT, YEAR, compound, kind_of, size_only
@@ -146,9 +147,17 @@ class _Grid:
             marked = 0 if self._body_like(0) and self.table.columns > 1 else marked
         else:
             marked = self._guessed()
-        while 0 < marked < rows and self._continues(marked):
+        while 0 < marked < rows and (self._continues(marked) or self._spanned_into(marked)):
             marked += 1
         return marked if marked < rows else 0
+
+    def _spanned_into(self, row: int) -> bool:
+        """Whether headings over columns of numbers reach down into a row that holds no results: it is one of theirs."""
+        reaching = [s for s in self._row(row) if s.cell.row < row and s.column > 0 and s.view.text.strip()]
+        own = [s for s in self._row(row) if s.cell.row == row and s.view.text.strip()]
+        return bool(reaching and own) and all(
+            self.kinds[row, s.column] == "words" for s in own if s.column > 0
+        )
 
     def _marked(self, row: int) -> bool:
         cells = [slot.cell for slot in self._row(row) if slot.view.text.strip()]
@@ -337,7 +346,7 @@ class _Grid:
         names = RowNames(self, rows)
         return Sheet(
             self.table, rows, self.columns, self.stubs, self.slots,
-            {column: Header(self._column_path(column, levels)) for column in range(self.table.columns)},
+            {column: Header(path) for column, path in self._column_paths(levels).items()},
             {place: Header(path) for place, path in names.paths.items()}, frozenset(names.subheadings), names.folds,
             self._printed(),
         )  # fmt: skip
@@ -346,6 +355,9 @@ class _Grid:
         words_ = [slot for place, slot in self.slots.items() if self.kinds[place] == "words"]
         pairs = ((" ".join(slot.view.text.split()), printed_text(slot.view)) for slot in words_)
         return {text: printed for text, printed in pairs if text != printed}
+
+    def _column_paths(self, levels: Sequence[int]) -> dict[int, tuple[str, ...]]:
+        return parted({column: self._column_path(column, levels) for column in range(self.table.columns)})
 
     def _column_path(self, column: int, levels: Sequence[int]) -> tuple[str, ...]:
         path: list[str] = []

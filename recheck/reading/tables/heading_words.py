@@ -89,6 +89,20 @@ def _canonical() -> tuple[tuple[regex.Pattern[str], str], ...]:
         (regex.compile(r"\bPr(?:ob)?\.? ?(?:\( ?)?> ?\|?(?:[tzF]|χ²|Chi ?Sq)\|?(?: ?\))?"), "p"),
         (regex.compile(r"\(([12])-t\)"), r"(\1-tailed)"),
         (regex.compile(r"(?<=\d) ?% ?(?:CI|C\.I\.|[Cc]onfidence [Ii]ntervals?)"), "% CI"),
+        # French and German: `IC à 95 %`, `95 %-KI`.
+        (
+            regex.compile(r"\b(?:IC|KI) ?(?:à |de |zu )?(\d\d(?:[.,]\d)?) ?%|\b(\d\d) ?%[ -]?(?:KI|IC)\b"),
+            r"\1\2% CI",
+        ),
+        (regex.compile(r"(?<=% CI) (?:for|of) (?:the )?(?:ExpB|OR|HR|RR)\b"), ""),
+        # GenStat: sum of squares, mean square, variance ratio and the probability of F.
+        (regex.compile(r"^s\.s\.$"), "SS"),
+        (regex.compile(r"^m\.s\.$"), "MS"),
+        (regex.compile(r"^v\.r\.$"), "F"),
+        (regex.compile(r"^F ?pr(?:ob)?\.?$"), "p"),
+        # Typed text lowers nothing.
+        (regex.compile(r"^F ?(\d{1,2}),[ ]?(\d{1,4})$"), r"F(\1, \2)"),
+        (regex.compile(r"\b[Vv]alid (?=%|[Pp]er ?cent)"), ""),
     )
 
 

@@ -171,7 +171,7 @@ class _Parser:
             and before.low in KINDS
             and not self._spread_follows(after)
         )
-        return named or ":" in (before.text, self.line.at(after).text)
+        return named or bool({":", "/"} & {before.text, self.line.at(after).text})
 
     def _settle(self, found: list[_Found], rest: list[int], first: int, after: int) -> None:
         line = self.line

@@ -25,7 +25,7 @@ class Legend:
     spread in brackets (`sd`, `se` or ""); `ns` the sizes of groups, `each` the one that all groups
     have, `N` that of the whole sample; `forms` every way in which the table is said to print its
     numbers, such as ("mean", "sd") and ("count", "percent"), `signed` those of them that are only told with `±`; `interval` is `ci` where brackets hold
-    intervals, `level` their level, `df` the degrees of freedom of all tests; `text` is all of it in lower case.
+    intervals, `level` their level, `df` the degrees of freedom of all tests, `total` what all percentages are of; `text` is all of it in lower case.
     """
 
     stars: Mapping[str, Printed] = field(default_factory=dict)
@@ -41,6 +41,7 @@ class Legend:
     df: tuple[Printed, ...] = ()
     interval: str = ""
     level: Printed | None = None
+    total: Printed | None = None
     text: str = ""
 
     @property
@@ -68,7 +69,7 @@ def legend_of(table: Table) -> Legend:
     return Legend(
         stars=_stars(texts), spread=spread, brackets=brackets, ns=sizes.ns, N=sizes.N, each=sizes.each,
         stated=stated(whole), abbreviations=_abbreviations(texts), forms=forms, signed=frozenset(forms) - bracketed, df=_df(whole),
-        interval=_interval(whole), level=_level(whole), text=whole.lower(),
+        interval=_interval(whole), level=_level(whole), total=_total(whole), text=whole.lower(),
     )  # fmt: skip
 
 
@@ -229,6 +230,21 @@ def _level(text: str) -> Printed | None:
     """The one level of the table's intervals."""
     found = {match["level"] for match in _levels().finditer(text, timeout=TIMEOUT)}
     return printed(f"{found.pop()}%") if len(found) == 1 else None
+
+
+@cache
+def _shares() -> regex.Pattern[str]:
+    return regex.compile(
+        r"\b(?:percentages?|percents?|proportions?|%)(?: values?)? (?:(?:are|is|were|was|refers? to|refer to) )?(?:(?:calculated|computed|based|given|expressed|taken|shares?) )?"
+        r"(?:out of|of|on|from|to)(?: all| the| total| a total of| the total of){0,2} (?:[nN] ?= ?)?(?P<total>\d{1,3}(?:[, ]\d{3})+|\d{2,7})(?![\d.]*\d| ?%)",
+        regex.IGNORECASE,
+    )
+
+
+def _total(text: str) -> Printed | None:
+    """What the notes say that all percentages are of."""
+    found = {match["total"] for match in _shares().finditer(text, timeout=TIMEOUT)}
+    return printed(found.pop().replace(" ", "").replace(",", "")) if len(found) == 1 else None
 
 
 # -- sizes, degrees of freedom, abbreviations ---------------------------------------------------------

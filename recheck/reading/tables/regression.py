@@ -9,6 +9,7 @@ import regex
 
 from recheck.model import ClaimKind, Printed
 from recheck.reading.tables.bundles import COEFFICIENTS, RATIOS, STATISTICS, Bundle, bundles_of
+from recheck.reading.tables.cells import has_constant
 from recheck.reading.tables.frame import Found, Frame, claim_of, star_of
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.row_numbers import Numbers, numbers_of
@@ -116,7 +117,9 @@ def _se_in_brackets() -> regex.Pattern[str]:
 def _below_each_other(frame: Frame, kept: Sequence[Found]) -> list[Found]:
     """Coefficients of models in columns, `0.42** (0.15)` in one cell or with the standard error in the row below."""
     legend = frame.legend
-    if not _se_in_brackets().search(legend.text, timeout=TIMEOUT) or not _speaks_of_models(legend.text):
+    if not _se_in_brackets().search(legend.text, timeout=TIMEOUT):
+        return []
+    if not _speaks_of_models(legend.text) and not has_constant(frame):
         return []
     if "odds" in legend.text or "hazard" in legend.text or "ratio" in legend.text:
         return []

@@ -77,8 +77,8 @@ def _with_outer(levels: Sequence[Told], at: int) -> tuple[str, ...]:
 
 
 _EXPANSIONS = {
-    "se": ("standard error", "error"), "sd": ("standard dev", "deviation"), "or": ("odds",), "rr": ("ratio", "risk"),
-    "hr": ("hazard",), "ci_low": ("confidence", "interval"), "mean_difference": ("difference", "change"), "mean": ("mean", "average"),
+    "se": ("standard error", "error", "erreur", "fehler"), "sd": ("standard dev", "deviation", "standardabw", "écart", "desvia"), "or": ("odds",), "rr": ("ratio", "risk"),
+    "hr": ("hazard",), "ci_low": ("confidence", "interval"), "mean_difference": ("difference", "change"), "mean": ("mean", "average", "mittel", "moyenne", "media", "durchschnitt"),
     "b": ("coefficient", "regression", "slope", "estimate"), "p": ("prob", "value", "signif"), "n": ("number", "sample", "size", "count"), "N": ("number", "sample", "size", "count"),
     "d": ("cohen", "effect", "standardi"), "t": ("statistic", "student", "value", "test"), "F": ("statistic", "value", "ratio", "test", "anova"),
 }  # fmt: skip
@@ -114,10 +114,22 @@ def group_of(header: Header, legend: Legend) -> Group:
     name = " | ".join(dict.fromkeys(name for name in names if name))
     n = _first_n(levels)
     if n is None and name:
-        n = legend.ns.get(name.lower()) or next(
-            (legend.ns[part.lower()] for part in reversed(names) if part.lower() in legend.ns), None
-        )
+        n = size_told(legend, (name, *reversed(names)))
     return Group(name, n or legend.each)
+
+
+def size_told(legend: Legend, names: Sequence[str]) -> Printed | None:
+    """The n that caption or notes give for the first of these names, in its own words or at the end of what is told: `working alone (n = 27)`."""
+    for name in (name.lower() for name in names if name):
+        if name in legend.ns:
+            return legend.ns[name]
+        ending = [n for words, n in legend.ns.items() if words.endswith(f" {name}")]
+        if len(ending) == 1 and len(name) >= _SHORTEST_NAME:
+            return ending[0]
+    return None
+
+
+_SHORTEST_NAME = 3
 
 
 def column_roles(sheet: Sheet, legend: Legend) -> Mapping[int, Role]:
@@ -134,7 +146,7 @@ def column_roles(sheet: Sheet, legend: Legend) -> Mapping[int, Role]:
         for c, role in found.items()
         if not _is_letter(letters.get(c, ""), role, names) and not _of_group(sheet, c, role, found, legend)
     }
-    found |= _quartiles(sheet, found)
+    found |= _quartiles(sheet, found) | _frequencies(sheet, found)
     return {
         c: replace(role, quantities=("p",)) if _exact(sheet, c, role) else role for c, role in found.items()
     }
@@ -157,6 +169,18 @@ def _quartiles(sheet: Sheet, found: Mapping[int, Role]) -> dict[int, Role]:
     return {
         c: Role((name,), " | ".join(told(text).name for text in heads[c].path[:-1]) or None)
         for c, name in ends.items()
+    }
+
+
+def _frequencies(sheet: Sheet, found: Mapping[int, Role]) -> dict[int, Role]:
+    """Columns called `f` right before their percentages, in a table without tests: frequencies, no F."""
+    if any({"p", "df", "df1", "df2", "ms"} & set(role.quantities) for role in found.values()):
+        return {}
+    shares = {c for c, role in found.items() if role.quantities == ("percent",)}
+    return {
+        c: replace(role, quantities=("count",))
+        for c, role in found.items()
+        if role.quantities == ("F",) and sheet.column_header(c).last == "f" and c + 1 in shares
     }
 
 

@@ -29,8 +29,8 @@ def size_only() -> regex.Pattern[str]:
 
 @cache
 def _size() -> regex.Pattern[str]:
-    """The n of a group beside its name."""
-    return regex.compile(r"[nN] ?= ?\d[\d, ]*")
+    """The n of a group beside its name, the df of a test in the heading of its column."""
+    return regex.compile(r"[nN] ?= ?\d[\d, ]*|\(d\.?f\.? ?= ?\d[\d, ]*\)")
 
 
 @cache

@@ -8,7 +8,7 @@ from typing import Literal
 
 from recheck.model import Printed
 from recheck.reading.tables.cells import COEFFICIENTS, RATIOS, TESTS, Cell, named_cell
-from recheck.reading.tables.frame import Frame
+from recheck.reading.tables.frame import Frame, measured_again
 
 Family = Literal["summary", "people", "estimate", ""]
 
@@ -101,7 +101,10 @@ def units_of(frame: Frame, rows: Sequence[int]) -> list[Unit]:
 
 
 def _with_n_of_row(frame: Frame, units: list[Unit]) -> list[Unit]:
-    """Give the n that a column of no group prints for the whole row to all summaries of that row."""
+    """Give the n that a column of no group prints for the whole row to all summaries of that row.
+
+    Two groups share it only where they are the same units measured again; else it is the sum of theirs.
+    """
     named = [unit for unit in units if unit.family == "summary"]
     sized = [unit for unit in units if {"n", "N"} & set(unit.values)]
     if len(named) < _SEVERAL or len(sized) != 1:
@@ -110,6 +113,9 @@ def _with_n_of_row(frame: Frame, units: list[Unit]) -> list[Unit]:
     own = next(cell for cell in sized[0].cells if name in cell.values)
     if len(own.values) > 1 or frame.group(own.column).name:
         return units
+    groups = {frame.group(unit.columns[-1]).name for unit in named}
+    if len(groups) > 1 and not measured_again(groups) and not _paired(frame, own.row, value):
+        return [replace(unit, values=_without(unit.values, name)) for unit in units]
     return [
         replace(unit, values={name: value, **unit.values}) if unit.family == "summary" else unit
         for unit in units
@@ -117,6 +123,20 @@ def _with_n_of_row(frame: Frame, units: list[Unit]) -> list[Unit]:
 
 
 _SEVERAL = 2
+
+
+def _without(values: Mapping[str, Printed], name: str) -> dict[str, Printed]:
+    return {quantity: value for quantity, value in values.items() if quantity != name}
+
+
+def _paired(frame: Frame, row: int, n: Printed) -> bool:
+    """Whether the test of a row has the df of pairs: one less than the n printed for the row."""
+    for column, role in frame.roles.items():
+        own = frame.piece(row, column) if role.quantities == ("df",) else None
+        degrees = own.numbers if own is not None else role.df
+        if len(degrees) == 1 and degrees[0].value == n.value - 1:
+            return True
+    return False
 
 
 def _runs(frame: Frame, rows: Sequence[int]) -> Iterator[Unit]:

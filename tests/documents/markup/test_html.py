@@ -6,8 +6,8 @@ import pytest
 
 from recheck.documents import open_document
 from recheck.reading import read as claims_of
-from tests.documents.making import containing, texts
 from tests.documents.markup.marking import MATHML, grid, page, read, said
+from tests.documents.pdf.making import containing, texts
 
 ROWS = "<tr><th>Bench</th><th>Height</th></tr><tr><td>North</td><td>52.1</td></tr>"
 

@@ -6,8 +6,8 @@ import pytest
 
 from recheck.documents import open_document
 from recheck.errors import UnreadableDocument
-from tests.documents.making import containing, texts
 from tests.documents.markup.marking import grid, jats, read, said
+from tests.documents.pdf.making import containing, texts
 
 TABLE = """<table-wrap id="t1"><object-id>x</object-id><label>Table 1.</label><caption><title>Heights of loaves.</title><p>Values are mean (SD).</p></caption>
 <table><thead><tr><th rowspan="2">Bench</th><th colspan="2">Height, mm</th></tr><tr><th>Rye<xref ref-type="table-fn" rid="f1">a</xref></th><th>Spelt</th></tr></thead>

@@ -11,8 +11,8 @@ import pytest
 
 from recheck.documents import open_document
 from recheck.errors import UnreadableDocument
-from tests.documents.making import quoted
 from tests.documents.markup.marking import jats, page, read
+from tests.documents.pdf.making import quoted
 
 RESULT = "<p>The loaves differed, t(22) = 1.71, p = .101.</p>"
 

@@ -9,7 +9,7 @@ import pytest
 from recheck.documents import text_document
 from recheck.documents.typed.abreast import stretches
 from recheck.documents.typed.as_typed import HELD, as_typed
-from tests.documents.making import PROSE
+from tests.documents.pdf.making import PROSE
 
 RESULT = "The trained bench baked higher loaves than before, t(40) = 2.95, p = .005, on nearly all days."
 LINES = textwrap.wrap(f"{PROSE} {RESULT} {PROSE}", 46)

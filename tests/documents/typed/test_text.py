@@ -90,6 +90,7 @@ def test_lines_are_counted_inside_a_passage():
         (r"t(40) \= 1.10 and 2.5 \+ 3", "t(40) = 1.10 and 2.5 + 3", ""),
         ("a [link](https://bench.org) here", "a link here", ""),
         ("**M** = 5 and ***p*** = .1", "M = 5 and p = .1", ""),
+        ("Δ*M* = 5", "ΔM = 5", ""),
         ("about 2½ loaves", "about 2½ loaves", ""),
         ("soft\u00adhyphen", "softhyphen", ""),
     ],

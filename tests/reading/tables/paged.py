@@ -6,7 +6,7 @@ import regex
 from reportlab.pdfbase.pdfmetrics import stringWidth
 from reportlab.pdfgen.canvas import Canvas
 
-from tests.documents.making import PROSE, ROMAN, line, pdf, wrapped
+from tests.documents.pdf.making import PROSE, ROMAN, line, pdf, wrapped
 from tests.reading.tables.cases import Spot, TableCase
 
 _PIECE = regex.compile(r"\^\{(?P<up>[^}]*)\}|_\{(?P<down>[^}]*)\}|(?P<text>(?:(?!\^\{|_\{).)+)")

@@ -233,3 +233,22 @@ def test_a_sub_heading_that_tells_of_groups_and_of_the_effect() -> None:
     assert told_of(found[0]) == "mean 38.3, n 61, sd 6.9"
     assert "mean_difference 4.1" in told_of(found[2]) and "rr 0.66" in told_of(found[5])
     assert [claim.kind for claim in found[3:5]] == ["count", "count"]
+
+
+def test_a_standard_error_in_brackets_is_that_of_a_coefficient_where_the_table_tells_of_a_model() -> None:
+    note = "Standard errors in parentheses. * p < .10, ** p < .05, *** p < .01."
+    body = "|  | (1) | (2) |\n| Rye share | 0.015 (0.010) | 0.014 (0.010) |\n| Steam | −0.017*** (0.003) | −0.010** (0.004) |"
+    for caption, last in (
+        ("Regression of loaf height.", ""),
+        ("Loaf height.", "\n| Constant | 0.579*** (0.007) | 0.264*** (0.011) |"),
+    ):
+        found = claims(body + last, caption=caption, note=note)
+        assert {claim.kind for claim in found} == {"regression"}
+        assert told_of(found[0]) == "b 0.015, se 0.010"
+        assert found[2].values["b"].text == "−0.017" and found[2].values["stars"].text == "***"
+
+
+def test_a_standard_error_in_brackets_is_that_of_a_mean_elsewhere() -> None:
+    text = "|  | Rye | Wheat |\n| Height | 11.2 (0.3) | 10.1 (0.2) |"
+    found = claims(text, caption="Loaf height.", note="Standard errors in parentheses.")
+    assert [told_of(claim) for claim in found] == ["mean 11.2, se 0.3", "mean 10.1, se 0.2"]
