@@ -19,7 +19,7 @@ def coefficient(claim: Claim) -> str | None:
 
 def coefficient_doubts(claim: Claim, name: str) -> tuple[str, ...]:
     """What must hold for β to be the coefficient of the SE: nothing where the ratio is its exponential."""
-    return () if name == "b" or ratio_of(claim, name) else (SAME_COEFFICIENT,)
+    return (SAME_COEFFICIENT,) if name == "beta" and not ratio_of(claim, name) else ()
 
 
 def ratio_of(claim: Claim, name: str) -> str | None:

@@ -27,7 +27,7 @@ def foreign_model(claims: Sequence[Claim], *, fitted: bool = False) -> str:
     said = [word for word in FOREIGN if any(claim.says(word) for claim in claims)]
     if said:
         return f"summaries cannot rebuild {STATED[said[0]]}"
-    possible = BESIDE_FITTING_DF if fitted else FOREIGN
+    possible: tuple[str, ...] = BESIDE_FITTING_DF if fitted else FOREIGN
     if any(claim.kind in ("t-test", "F-test") and claim.values.keys() & {"t", "F"} for claim in claims):
         # t and F are no statistics of ranks, whatever the document tests elsewhere.
         possible = tuple(word for word in possible if word != "rank-test")

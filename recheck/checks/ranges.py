@@ -4,11 +4,13 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable
+from itertools import combinations
 
-from recheck.checks.compare import impossible, unchecked
-from recheck.checks.intervals import ALL_KINDS
+from recheck.checks.compare import doubted, impossible, unchecked
+from recheck.checks.examples import table
+from recheck.checks.intervals import ALL_KINDS, RATIOS, ends
 from recheck.checks.registry import Case, check
-from recheck.model import Finding, Interval, Printed, Remedy, shown
+from recheck.model import Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.model.figures import printed_text, span
 from recheck.reconcile.slips import candidates
 
@@ -66,6 +68,7 @@ EXCUSES = {
 )
 def in_range(case: Case) -> Iterable[Finding]:
     """Find printed numbers that their quantity cannot have; nothing is said of those that it can."""
+    yield from _ends_of_ratio(case)
     for name, printed in case.claim.values.items():
         allowed = RANGES.get(name)
         if allowed is None or printed.percent or _possible(printed, allowed):
@@ -76,6 +79,24 @@ def in_range(case: Case) -> Iterable[Finding]:
             continue
         text = f"{shown(name)} {printed_text(printed)} lies outside what it can be, {span(allowed.low, allowed.high)}."
         yield impossible(case, "range", name, text, allowed, remedies=_misprints(name, printed, allowed))
+
+
+OWN_SCALE = "the interval is one of the ratio itself made in logarithms, neither ratio ± c SE nor that of a difference"
+
+
+def _ends_of_ratio(case: Case) -> Iterable[Finding]:
+    """A negative end of a ratio's interval: only a method that does not suit ratios, or another quantity, has one."""
+    claim = case.claim
+    if claim.interval_of not in RATIOS or not {"ci_low", "ci_high"} <= claim.values.keys():
+        return
+    allowed = RANGES[claim.interval_of]
+    for name, printed in zip(("ci_low", "ci_high"), ends(claim), strict=True):
+        if not _possible(printed, allowed):
+            text = f"{shown(name)} {printed_text(printed)} lies outside what a ratio can be, {span(allowed.low, allowed.high)}."
+            found = impossible(
+                case, "range", name, text, allowed, remedies=_misprints(name, printed, allowed)
+            )
+            yield doubted(found, OWN_SCALE) if found.verdict == "impossible" else found
 
 
 def _possible(printed: Printed, allowed: Interval) -> bool:
@@ -100,6 +121,71 @@ def _misprints(name: str, printed: Printed, allowed: Interval) -> tuple[Remedy, 
                 )
             )
     return tuple(rows[:1])
+
+
+ORDERED = ("min", "q1", "median", "q3", "max")
+"""Quantiles of one sample, each at least as large as those before it."""
+
+
+@check(
+    "quantile-order",
+    title="minimum, quartiles, median and maximum in their order",
+    kinds=("group-summary",),
+    quantity="",
+    needs=(),
+    beside="two or more of minimum, quartiles, median, maximum; or mean with minimum or maximum",
+    formula="minimum ≤ first quartile ≤ median ≤ third quartile ≤ maximum; minimum ≤ mean ≤ maximum",
+    source="by definition",
+    limits="Nothing is said of numbers in order. A dash between two numbers can be read as a minus, and adjusted means may leave the range of the data: conditional.",
+    impossible=(
+        table(
+            "Table 1. Loaves by flour, median (IQR).",
+            " | Rye (n = 30) | Wheat (n = 31)",
+            "Height, mm | 41 (46, 52) | 44 (40, 49)",
+        ),
+    ),
+)
+def quantile_order(case: Case) -> Iterable[Finding]:
+    """Find the first pair of quantiles that cannot stand in this order."""
+    values = case.claim.values
+    pairs = [*combinations((n for n in ORDERED if n in values), 2)]
+    pairs += [(a, b) for a, b in (("min", "mean"), ("mean", "max")) if a in values and b in values]
+    for lower, upper in pairs:
+        low, high = values[lower], values[upper]
+        if low.percent != high.percent or low.interval().low <= high.interval().high:
+            continue
+        text = (
+            f"{shown(lower)} {printed_text(low)} is printed beside {shown(upper)} {printed_text(high)}: "
+            "the first cannot lie above the second."
+        )
+        name = "median" if "median" in (lower, upper) else "mean" if "mean" in (lower, upper) else lower
+        implied = (
+            Interval(-math.inf, high.interval().high)
+            if name == lower
+            else Interval(low.interval().low, math.inf)
+        )
+        found = impossible(
+            case, "quantile-order", name, text, implied, remedies=_swapped(lower, upper, low, high)
+        )
+        doubt = _order_doubt(case.claim, upper, high)
+        yield doubted(found, doubt) if doubt and found.verdict == "impossible" else found
+        return
+
+
+def _swapped(lower: str, upper: str, low: Printed, high: Printed) -> tuple[Remedy, ...]:
+    """The remedy of two ends that changed places, for ends of one range alone."""
+    if (lower, upper) not in (("q1", "q3"), ("min", "max")):
+        return ()
+    text = f"if the two were swapped, the range would run from {high.text} to {low.text}"
+    return (Remedy("slip", lower, text, change="ends swapped"),)
+
+
+def _order_doubt(claim: Claim, upper: str, high: Printed) -> str:
+    if upper in ("q3", "max") and high.value < 0:
+        return "the sign of the larger end is a minus, not the dash between the two"
+    if claim.says("covariate-adjusted", "marginal", "imputed", "transformed", "weighted"):
+        return "all these numbers describe the same scores, unadjusted"
+    return ""
 
 
 @check(

@@ -16,6 +16,7 @@ FAMILIES = (
     "groups",
     "group_p",
     "anova",
+    "variance_shares",
     "effects",
     "intervals",
     "interval_tests",

@@ -25,7 +25,7 @@ from recheck.checks.intervals import (
 )
 from recheck.checks.p_values import ONE_TAILED, UNIT_DF, as_interval, judge_p
 from recheck.checks.registry import Case, check
-from recheck.model import VERDICTS, Claim, Finding, Interval, Printed
+from recheck.model import DISCREPANT, Claim, Finding, Interval, Printed
 from recheck.recompute import bounds
 from recheck.recompute.arrays import quotient_bounds
 from recheck.recompute.tails import t_quantile, z_quantile
@@ -88,7 +88,8 @@ def t_from_b(case: Case) -> Iterable[Finding]:
         numbers[name] = unsigned(numbers[name])
         squared = Way(lambda box: (_square(_t_of(box, names)),))
         plain = Way(lambda box: (_t_of(box, names),))
-        ways = (squared,) if name in ("chi2", "F") else (plain, replace(squared, unstated=(WALD,)))
+        wald = (replace(squared, unstated=(WALD,), alone=True),) if claim.kind == "regression" else ()
+        ways = (squared,) if name in ("chi2", "F") else (plain, *wald)
         doubts = [*_se_doubts(claim), *coefficient_doubts(claim, names[0])]
         if name == "chi2":
             doubts.append("χ² is that of Wald's test, not of the likelihood ratio or the score")
@@ -226,9 +227,10 @@ def ci_from_b(case: Case) -> Iterable[Finding]:
         )
         for (end, _, _), numbers, by in zip(sides, told, ways, strict=True)
     ]  # fmt: skip
-    yield min(found, key=lambda finding: VERDICTS.index(finding.verdict))
+    yield min(found, key=lambda finding: WORST_FIRST.index(finding.verdict))
 
 
+WORST_FIRST = (*DISCREPANT, "conditional", "unchecked", "agrees")
 RATIO_NAMES = frozenset(RATIOS)
 
 

@@ -12,7 +12,7 @@ from recheck.checks.groups import unsigned
 from recheck.checks.intervals import RATIOS
 from recheck.checks.p_values import P_RANGE
 from recheck.checks.registry import Case, Twin, check
-from recheck.model import P_IN_WORDS, Claim, ClaimKind, Finding, Interval, shown
+from recheck.model import P_IN_WORDS, Claim, ClaimKind, Finding, Interval, Printed, shown
 from recheck.model.figures import printed_text, whereabouts
 from recheck.reconcile.readings import ELSEWHERE, Box, Way, agrees_as_printed
 
@@ -35,6 +35,7 @@ SPREADS = frozenset(("sd", "se"))
 
 TURNED = "a variable is coded the other way round in one of the two places"
 INVERTED = "the ratio is turned round in one of the two places"
+TIE = "a number that ends in 5 was rounded up in one place and down in the other"
 HALVED = "p is one-tailed in one of the two places"
 SAME_CASES = "the same cases entered in both places"
 
@@ -123,7 +124,7 @@ def _comparisons(claim: Claim, other: Claim) -> Iterator[Comparison]:
         if quantity.startswith("ci_"):
             mirror = "ci_high" if quantity == "ci_low" else "ci_low"
             numbers |= {mirror + ELSEWHERE: other.values[mirror]} if mirror in other.values else {}
-        ways = tuple(_ways(claim, quantity, mirror))
+        ways = tuple(_ways(claim, quantity, mirror, (TIE,) if _touching(mine, theirs) else ()))
         bounds = P_RANGE if quantity == "p" else Interval(-math.inf, math.inf)
         yield Comparison("told-twice", quantity, numbers, ways, (claim, other), bounds=bounds)
 
@@ -134,10 +135,19 @@ def _one_owner(claim: Claim, other: Claim) -> bool:
     return len(owners) < 2
 
 
-def _ways(claim: Claim, quantity: str, mirror: str | None) -> Iterator[Way]:
+def _touching(mine: Printed, theirs: Printed) -> bool:
+    """Tell whether two numbers differ by one unit of the same last digit: their intervals share an end."""
+    return (
+        mine.relation == theirs.relation == "="
+        and mine.decimals == theirs.decimals
+        and abs(mine.value - theirs.value) == mine.unit
+    )
+
+
+def _ways(claim: Claim, quantity: str, mirror: str | None, tie: tuple[str, ...]) -> Iterator[Way]:
     """The number elsewhere as it stands, and as another order, coding or direction would print it."""
     name = quantity + ELSEWHERE
-    yield Way(lambda box: (box[name],))
+    yield Way(lambda box: (box[name],), tie, alone=bool(tie))
     ratio = quantity in RATIOS or (mirror is not None and claim.interval_of in RATIOS)
     if ratio:
         inverse = f"{mirror}{ELSEWHERE}" if mirror else name

@@ -27,6 +27,8 @@ _UNITS = words(
 )
 """Words behind a number that say that it was measured."""
 _GROUPS = words("group groups sample cohort site day week month year")
+_NAMED_GROUPS = words("group groups sample cohort arm")
+_BARE = words("in the of for from to and or a an each every per by this that our study")
 _SHARES = words(
     "more less fewer out none half most all some any many few neither either each both quarter third thirds quarters"
 )
@@ -125,13 +127,20 @@ def _may_count(line: Line, index: int, count: Number) -> bool:
         return before.text == ":" and token.spaced
     second = line.at(index - 2)
     numbered = second.low if before.text == "." else before.low
-    fraction = line.at(index + 1).text == "/"
-    if numbered in _LABELS and not (fraction and numbered in _GROUPS):
+    if numbered in _LABELS and not _behind_group(line, index, numbered):
         return False
     if _totals(line, index) or (before.low == "in" and second.kind == "num"):
         return False
     ranged = before.low in ("to", "and", "or") and second.kind == "num"
     return not ranged and not (before.low == "in" and _is_year(count))
+
+
+def _behind_group(line: Line, index: int, label: str) -> bool:
+    """Whether a number behind `group` counts its members, not the groups: `in the trained group 65 of 210`, `group 12/34`."""
+    if line.at(index + 1).text == "/":
+        return label in _GROUPS
+    named = line.at(index - 2).kind == "word" and line.at(index - 2).low not in _BARE
+    return label in _NAMED_GROUPS and named and _total(line, index + 1) is not None
 
 
 def _totals(line: Line, index: int) -> bool:
@@ -284,11 +293,15 @@ _PARTLY = words("these those them whom which who remaining latter former rest ot
 
 def with_whole(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     """The assignments, counts without a total given the one that opens the sentence: `Of the 34 bakers, 12 (35%) came`."""
-    if line.at(0).low not in ("of", "among", "out") or not any(item.part == "count" for item in items):
+    if not any(item.part == "count" for item in items):
         return list(items)
-    total = _total(line, 0) if line.at(0).low != "among" else _opening(line)
+    first, other = line.at(0).low, line.at(0).low in _OPENERS
+    if first not in ("of", "among", "out") and not other:
+        return list(items)
+    total = _opening(line) if other or first == "among" else _total(line, 0)
     at = _past_words(line, total[1], 8) if total else 0
-    if total is None or line.at(at).text != ",":
+    # Only English puts a comma there for sure: `Von den 34 Betrieben kamen 12 (35 %)`.
+    if total is None or (line.at(at).text != "," and not other):
         return list(items)
     counted = {k for item in items if item.part == "count" for k in range(item.first, item.after)}
     found = []
@@ -304,12 +317,15 @@ def with_whole(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     return found
 
 
+_OPENERS = words("von unter sur parmi de del dos das dei delle")
+"""`Of` and `among` at the head of a German, French, Spanish, Portuguese or Italian sentence."""
+_THE = words("den diesen insgesamt allen les ces los las estos estas os as i le gli")
 _WHOLE_NOTE = "the total is the number that opens the sentence"
 
 
 def _opening(line: Line) -> tuple[Number, int] | None:
     at = 1
-    while line.at(at).low in _OF_ALL and at < 5:
+    while (line.at(at).low in _OF_ALL or line.at(at).low in _THE) and at < 5:
         at += 1
     number = number_at(line, at) if line.at(at).kind == "num" else None
     number = whole(number) if number else None

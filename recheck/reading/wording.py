@@ -95,7 +95,7 @@ STEMS: dict[str, tuple[str, ...]] = {
     "partial": ("partial correlation", "partial r", "semi-partial", "semipartial", "part correlation"),
     "disattenuated": ("disattenuat", "corrected for attenuation", "corrected for unreliability", "latent variable",
                       "latent correlation", "latent factor"),
-    "yates": ("yates' ", "yates's", "yates corr", "yates cont", "continuity correct", "continuity-correct"),
+    "yates": ("yates' ", "yates's", "yates corr", "yates-corr", "yates cont", "continuity correct", "continuity-correct"),
     "uncorrected-chi2": ("without yates", "without continuity", "without a continuity", "no continuity correction",
                          "no yates", "uncorrected chi", "uncorrected pearson", "uncorrected χ"),
     "likelihood-ratio": ("likelihood ratio", "likelihood-ratio", "log-likelihood", "g-test", "deviance"),

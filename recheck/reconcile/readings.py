@@ -25,13 +25,15 @@ class Way:
     `implied` maps the intervals of all numbers to the intervals that the checked quantity may lie
     in; an empty tuple says that this way cannot be followed with these numbers. `unstated` holds
     the assumptions that the text leaves open, `given` those that it states or the numbers fit.
-    A `costly` way is left out where many corrections of a number are tried.
+    A `costly` way is left out where many corrections of a number are tried; one that stands `alone`
+    is rare, and is not combined with a reading of the rounding.
     """
 
     implied: Callable[[Box], tuple[Interval, ...]]
     unstated: tuple[str, ...] = ()
     given: tuple[str, ...] = ()
     costly: bool = False
+    alone: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -82,6 +84,7 @@ def attempts(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> Iterator[A
         (len(way.unstated) + bool(r.words), i, j, way, r)
         for i, way in enumerate(ways)
         for j, r in enumerate(ROUNDINGS)
+        if not (way.alone and r.words)
     ]
     boxes: dict[str, dict[str, Interval]] = {}
     for unstated, _, _, way, rounding in sorted(tried, key=lambda item: item[:3]):

@@ -10,21 +10,8 @@ from docx.oxml.parser import parse_xml
 from docx.oxml.table import CT_Tbl
 
 from recheck.documents import open_document
-from tests.benchmarks.pages import interleaved
+from tests.benchmarks.pages import WORDS, interleaved
 
-_WORDS = (
-    "loaf",
-    "height",
-    "crumb",
-    "panel",
-    "apprentice",
-    "bench",
-    "trial",
-    "dough",
-    "starter",
-    "score",
-    "oven",
-)
 _SPACE = 'xmlns:m="http://schemas.openxmlformats.org/officeDocument/2006/math"'
 _EQUATION = f"<m:oMath {_SPACE}><m:r><m:t>F</m:t></m:r><m:r><m:t>(2,61)=3.40</m:t></m:r></m:oMath>"
 
@@ -49,7 +36,7 @@ def sample_docx(pages: int, *, table_rows: int = 12) -> bytes:
 def _paragraph(document: docx.document.Document, chance: random.Random) -> None:
     paragraph = document.add_paragraph()
     for _ in range(6):
-        paragraph.add_run(" ".join(chance.choice(_WORDS) for _ in range(20)) + ", ")
+        paragraph.add_run(" ".join(chance.choice(WORDS) for _ in range(20)) + ", ")
         paragraph.add_run("t").italic = True
         paragraph.add_run("22").font.subscript = True
         paragraph.add_run(f" = {chance.uniform(0.1, 9):.2f}. ")
@@ -62,7 +49,7 @@ def _table(document: docx.document.Document, chance: random.Random, rows: int) -
     for at, row in enumerate(element.tr_lst):
         for column, cell in enumerate(row.tc_lst):
             text = f"{chance.uniform(1, 99):.1f} ({chance.uniform(1, 9):.1f})"
-            cell.p_lst[0].add_r().text = chance.choice(_WORDS) if at == 0 or column == 0 else text
+            cell.p_lst[0].add_r().text = chance.choice(WORDS) if at == 0 or column == 0 else text
 
 
 def bare_text(data: bytes) -> int:

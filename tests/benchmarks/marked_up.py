@@ -9,39 +9,8 @@ from pathlib import Path
 from lxml import etree
 
 from recheck.documents import open_document
-from tests.benchmarks.pages import interleaved
+from tests.benchmarks.pages import WORDS, interleaved
 
-_WORDS = [
-    "loaf",
-    "height",
-    "crumb",
-    "panel",
-    "apprentice",
-    "bench",
-    "trial",
-    "dough",
-    "starter",
-    "score",
-    "oven",
-    "hydration",
-    "before",
-    "after",
-    "training",
-    "rye",
-    "spelt",
-    "the",
-    "of",
-    "and",
-    "in",
-    "was",
-    "rated",
-    "higher",
-    "than",
-    "by",
-    "judges",
-    "each",
-    "week",
-]
 _BOUND = "under 3"
 
 
@@ -49,7 +18,7 @@ def _sentences(chance: random.Random, sup: str) -> str:
     """A paragraph of about 150 words with results and citations as journals mark them up."""
     parts = []
     for at in range(10):
-        parts.append(" ".join(chance.choices(_WORDS, k=13)).capitalize())
+        parts.append(" ".join(chance.choices(WORDS, k=13)).capitalize())
         if at % 3 == 0:
             parts.append(
                 f" (<i>t</i>(22) = {chance.uniform(0, 4):.2f}, <i>p</i> = .{chance.randint(10, 99)})"
@@ -64,7 +33,7 @@ def _row(chance: random.Random, columns: int) -> str:
         f'<td align="left" rowspan="1" colspan="1">{chance.uniform(20, 60):.1f} ({chance.uniform(2, 9):.1f})</td>'
         for _ in range(columns)
     )
-    return f'<tr><td align="left" rowspan="1" colspan="1">{chance.choice(_WORDS)}</td>{cells}</tr>'
+    return f'<tr><td align="left" rowspan="1" colspan="1">{chance.choice(WORDS)}</td>{cells}</tr>'
 
 
 def _table(chance: random.Random, rows: int = 12, columns: int = 4) -> str:
@@ -87,7 +56,7 @@ def sample_html(sections: int = 10) -> bytes:
         )
     parts.append("<h2>References</h2><ol>")
     parts += [
-        f'<li id="r">Krume P, Laib Q. {" ".join(chance.choices(_WORDS, k=18))}. <i>Annals of Crust</i> <b>12</b>:101-109 (2019). <a href="https://x.example">Link</a></li>'
+        f'<li id="r">Krume P, Laib Q. {" ".join(chance.choices(WORDS, k=18))}. <i>Annals of Crust</i> <b>12</b>:101-109 (2019). <a href="https://x.example">Link</a></li>'
         for _ in range(60)
     ]
     return "".join([*parts, "</ol></main></body></html>"]).encode()
@@ -116,13 +85,13 @@ def sample_jats(sections: int = 10) -> bytes:
 
 def _reference(chance: random.Random, number: int) -> str:
     authors = "".join(
-        f"<name><surname>{chance.choice(_WORDS).title()}</surname><given-names>P</given-names></name>, "
+        f"<name><surname>{chance.choice(WORDS).title()}</surname><given-names>P</given-names></name>, "
         for _ in range(4)
     )
     facts = "<volume>12</volume>:<fpage>101</fpage>-<lpage>109</lpage>"
     return (
         f'<ref id="r{number}"><label>{number}</label><mixed-citation publication-type="journal">{authors}(<year>2019</year>)'
-        f" <article-title>{' '.join(chance.choices(_WORDS, k=14))}</article-title> <source>Annals of Crust</source> {facts}."
+        f" <article-title>{' '.join(chance.choices(WORDS, k=14))}</article-title> <source>Annals of Crust</source> {facts}."
         "</mixed-citation></ref>"
     )
 

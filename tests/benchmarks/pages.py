@@ -21,38 +21,11 @@ from reportlab.pdfgen.canvas import Canvas
 from recheck.documents.pdf import pdfium
 from recheck.documents.pdf.document import page_lines
 
-_WORDS = [
-    "loaf",
-    "height",
-    "crumb",
-    "panel",
-    "apprentice",
-    "bench",
-    "trial",
-    "dough",
-    "starter",
-    "score",
-    "oven",
-    "hydration",
-    "before",
-    "after",
-    "training",
-    "tasting",
-    "rye",
-    "spelt",
-    "the",
-    "of",
-    "and",
-    "in",
-    "was",
-    "rated",
-    "higher",
-    "than",
-    "by",
-    "judges",
-    "each",
-    "week",
-]
+WORDS = [
+    "loaf", "height", "crumb", "panel", "apprentice", "bench", "trial", "dough", "starter", "score",
+    "oven", "hydration", "before", "after", "training", "tasting", "rye", "spelt", "the", "of", "and",
+    "in", "was", "rated", "higher", "than", "by", "judges", "each", "week",
+]  # fmt: skip
 
 
 def sample_pdf(pages: int, *, columns: int = 2) -> bytes:
@@ -77,7 +50,7 @@ def _column(canvas: Canvas, chance: random.Random, left: float, width: float) ->
         text.setFont("Times-Roman", 10)
         line = ""
         while canvas.stringWidth(line, "Times-Roman", 10) < width - 70:
-            line += chance.choice(_WORDS) + " "
+            line += chance.choice(WORDS) + " "
         text.textOut(line)
         if row % 4 == 0:
             text.textOut("F")

@@ -99,4 +99,7 @@ def unattained_by_groups(claim: Claim, groups: tuple[Claim, Claim], finding: Fin
     if row is None or row.assuming not in ("", "two independent groups, pooled variance"):
         return ""
     theirs = group_ranges(Figures("t", numbers))[GROUP_CHECKS[finding.check]]
-    return _missed(Interval(row.low, row.high), theirs, claim)
+    # A range of |t| or |d| is told on the side of the printed sign.
+    turned = row.high <= 0 and claim.values[finding.quantity].value < 0
+    ends = (-row.high, -row.low) if turned else (row.low, row.high)
+    return _missed(Interval(*ends), theirs, claim)

@@ -155,6 +155,9 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
             if fits(values, piece.numbers[0])
             else None
         )
+    if len(quantities) == 1 and quantities[0] in RATIOS and piece.shape == "triple" and _speaks_of_intervals(frame):
+        values_ = matched(piece, (*quantities, "ci_low", "ci_high"))
+        return Cell(values_, row, column, piece, "legend", stated=role.stated, n=role.n) if values_ else None
     if quantities == ("median",) and piece.shape == "triple":
         ends = next((form[1:] for form in frame.legend.forms if form[0] == "median" and len(form) == 3), None)
         values_ = matched(piece, ("median", *ends)) if ends else None
@@ -163,6 +166,11 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
         values = {"percent" if piece.numbers[0].percent else "count": piece.numbers[0]}
         return Cell(values, row, column, piece, "heading", stated=role.stated, n=role.n)
     return None
+
+
+def _speaks_of_intervals(frame: Frame) -> bool:
+    """Whether caption or notes say that brackets hold confidence intervals."""
+    return frame.legend.interval == "ci" or any("ci_low" in form for form in frame.legend.forms)
 
 
 @cache

@@ -108,9 +108,13 @@ def _plain_design(chosen: Sequence[Found]) -> bool:
 
 @cache
 def _whole_sample() -> regex.Pattern[str]:
+    """`Total`, `Both mills`, `All three flours`, `Mean across flours`, `Rye and wheat combined`; not `whole wheat`, `all-purpose`."""
     return regex.compile(
-        r"(?:the )?(?:total|all|overall|whole|entire|full|combined|pooled|both|complete|average|across|mean over|grand mean)\b(?: (?:the|sample|groups?|cohort|population"
-        r"|patients|participants|subjects|samples|data|loaves|bakers|n))*[\s.:*]*$|(?:study )?(?:sample|population|cohort)$",
+        r"(?:the )?(?:total|all|overall|whole|entire|full|combined|pooled|both|complete|average|mean over|grand mean)\b(?: (?:the|sample|groups?|cohort|population"
+        r"|patients|participants|subjects|samples|data|loaves|bakers|n))*[\s.:*]*$|(?:study )?(?:sample|population|cohort)$"
+        r"|(?:mean |average |total )?(?:across|averaged? over|pooled|entire|(?:mean|average|total) of|grand (?:mean|average|total))\b"
+        r"|(?:mean |average |total )?(?:in |of |for |over )?(?:both|all)(?: (?:of|the|two|three|four|five|six))* \p{L}+s$"
+        r"|.*\b(?:across (?:all|both|the)\b|(?:combined|pooled|taken together|averaged|collapsed)$)",
         regex.IGNORECASE,
     )
 

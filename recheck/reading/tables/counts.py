@@ -11,6 +11,7 @@ from recheck.reading.tables.totals import count_of, is_total, totals_of
 from recheck.reading.tables.units import Unit
 from recheck.reading.tables.values import Piece
 
+
 def counts_of(frame: Frame, units: Sequence[Unit]) -> Iterator[Found]:
     """The counts among the units of a block."""
     people = [unit for unit in units if unit.family == "people"]

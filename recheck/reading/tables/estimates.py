@@ -8,6 +8,7 @@ from recheck.model import Printed
 from recheck.reading.tables.cells import RATIOS
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.saying import marks_compare
+from recheck.reading.tables.summaries import own_names
 from recheck.reading.tables.units import Unit
 
 _MAIN = (*sorted(RATIOS), "estimate")
@@ -25,14 +26,25 @@ def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
     values |= _starred(frame, unit, values)
     if not {"ci_low", "ci_high", "se", "p"} & set(values):
         return
-    if "sd" in values and "se" not in values:
-        values.pop("sd")
+    if main == "mean_difference" and "se" in values and _of_the_mean(frame, unit):
+        values.pop("se")
+    values.pop("sd", None)
+    if not {"ci_low", "ci_high", "se", "p"} & set(values):
+        return
     if "ci_low" in values:
         values |= interval_level(frame, unit.columns, unit.rows)
     yield claim_of(
-        frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=frame.row_name(unit.rows[0], unit.columns[0]),
+        frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=" | ".join(label.name for label in own_names(frame, unit) if label.name),
         group=unit.group, stated=_stated(frame, unit), interval_of=main if "ci_low" in values else None, sure=unit.sure, spans=unit.spans,
     )  # fmt: skip
+
+
+def _of_the_mean(frame: Frame, unit: Unit) -> bool:
+    """Whether an SE stands under `standard error of the mean`: that of what was measured, not of the difference."""
+    heads = [frame.sheet.column_header(cell.column).last.lower() for cell in unit.cells if "se" in cell.values]
+    return any("of mean" in head or "of the mean" in head for head in heads) and not any(
+        "difference" in head for head in heads
+    )
 
 
 def _starred(frame: Frame, unit: Unit, values: dict[str, Printed]) -> dict[str, Printed]:

@@ -2,17 +2,26 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from decimal import Decimal
 from hashlib import blake2b
 
 from recheck.model import Claim, ClaimKind, Confidence, Place, Printed, Table
 from recheck.reading.context import Setting
-from recheck.reading.tables.grid import Header, Sheet, Slot
+from recheck.reading.tables.grid import Header, Sheet
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.legend import Legend
-from recheck.reading.tables.roles import Group, Role, column_roles, group_of, letters_as_names, role_of
+from recheck.reading.tables.roles import (
+    Group,
+    Role,
+    column_roles,
+    group_of,
+    letters_as_names,
+    role_of,
+    size_told,
+)  # fmt: skip
+from recheck.reading.tables.sizes import sizes_of
 from recheck.reading.tables.values import Piece, decimal_comma_of, pieces
 from recheck.reading.tokens import words
 
@@ -113,7 +122,7 @@ def frame_of(sheet: Sheet, legend: Legend, setting: Setting) -> Frame:
         if row in sheet.rows and column in sheet.columns
     ]
     groups = {column: group_of(sheet.column_header(column), legend) for column in sheet.columns}
-    size_rows, sizes = _sizes(sheet, legend, groups)
+    size_rows, sizes = sizes_of(sheet, legend, groups)
     roles = column_roles(sheet, legend)
     # `Q1` over a column looks like the name of a group until the columns beside it tell what it is.
     groups |= {
@@ -131,18 +140,26 @@ def frame_of(sheet: Sheet, legend: Legend, setting: Setting) -> Frame:
     return Frame(
         sheet, legend, setting, decimal_comma_of(texts, default=setting.decimal_comma),
         "medium" if sheet.table.doubts else "high", roles, groups, sizes, size_rows,
-        _groups_in_rows(sheet, groups, roles), _letters_of_rows(sheet),
+        _groups_in_rows(sheet, legend, groups, roles), _letters_of_rows(sheet),
     )  # fmt: skip
 
 
-def _groups_in_rows(sheet: Sheet, groups: Mapping[int, Group], roles: Mapping[int, Role]) -> bool:
+def _told_in_rows(sheet: Sheet, legend: Legend) -> bool:
+    """Whether caption or notes give the n of each name that rows have: `(Rye, N = 5)` over rows `Rye`, `Wheat`."""
+    names = {told(sheet.row_header(row).last).name for row in sheet.rows if not sheet.is_subheading(row)}
+    return len(names) > 1 and all(size_told(legend, (name,)) is not None for name in names)
+
+
+def _groups_in_rows(
+    sheet: Sheet, legend: Legend, groups: Mapping[int, Group], roles: Mapping[int, Role]
+) -> bool:
     """Whether the rows are groups: their names have an n of their own, the stub's heading says so, or one test is printed for several rows."""
     if any(group.n is not None for group in groups.values()):
         return False
     with_n = sum(
         any(told(text).n is not None for text in sheet.row_header(row).path[-1:]) for row in sheet.rows
     )
-    if with_n > 1:
+    if with_n > 1 or _told_in_rows(sheet, legend):
         return True
     centres = [c for c, role in roles.items() if {"mean", "median"} & set(role.quantities)]
     if not centres or any(
@@ -184,68 +201,6 @@ def _shared(sheet: Sheet, test: int, centre: int) -> bool:
         and len(tests) < len(means)
         and tests <= first
         and len(tests) == len(heads)
-    )
-
-
-def _sizes(
-    sheet: Sheet, legend: Legend, groups: Mapping[int, Group]
-) -> tuple[frozenset[int], Mapping[int, Printed]]:
-    """The rows of ns, and the n over each column."""
-    sizes = {column: group.n for column, group in groups.items() if group.n is not None}
-    rows: set[int] = set()
-    for row in list(sheet.rows)[:_ROWS_OF_SIZES]:
-        path = sheet.row_header(row).path
-        label = told(path[0]) if len(path) == 1 else None
-        if label and (
-            (label.whole and label.quantities in (("n",), ("N",))) or (label.n is not None and not label.name)
-        ):
-            own = {c: value for c in sheet.columns if (value := _whole(sheet.slot(row, c))) is not None}
-            if own:
-                rows.add(row)
-                sizes = own | sizes
-    if legend.N is not None and not sizes:
-        names = {name for group in groups.values() if (name := group.name.lower())}
-        everyone = [c for c in sheet.columns if groups[c].name.lower() in _EVERYONE]
-        for column in sheet.columns if len(names) <= 1 or measured_again(names) else everyone:
-            sizes[column] = legend.N
-    return frozenset(rows), sizes
-
-
-def measured_again(names: Iterable[str]) -> bool:
-    """Whether groups are the same people at several times, as most of their names say."""
-    names = list(names)
-    times = [name for name in names if not _TIMES.isdisjoint(name.lower().replace("-", " ").split())]
-    return len(times) > 1 and 2 * len(times) >= len(names)
-
-
-_ROWS_OF_SIZES = 4
-_TIMES = words(
-    "before after pre post pretest posttest baseline follow followup day week weeks month months time session year years pretraining t1 t2 t3"
-)
-"""Words of columns that show the same people again: the one N of the table is that of each."""
-_EVERYONE = frozenset(
-    (
-        "total",
-        "all",
-        "overall",
-        "total sample",
-        "whole sample",
-        "full sample",
-        "all patients",
-        "all participants",
-        "value",
-        "values",
-    )
-)
-
-
-def _whole(slot: Slot | None) -> Printed | None:
-    found = pieces(slot, False) if slot else ()
-    value = (
-        found[0].numbers[0] if len(found) == 1 and found[0].shape in ("number", "pair(", "count%") else None
-    )
-    return (
-        value if value is not None and value.decimals == 0 and value.value > 0 and not value.percent else None
     )
 
 

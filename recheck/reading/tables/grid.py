@@ -9,7 +9,16 @@ from recheck.model import Table
 from recheck.reading.tables.flat_heads import parted
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.row_names import RowNames
-from recheck.reading.tables.shapes import NAMES_TESTS, PERCENT, YEAR, compound, kind_of, size_only
+from recheck.reading.tables.shapes import (
+    JUDGES,
+    NAMES_LEVELS,
+    NAMES_TESTS,
+    PERCENT,
+    YEAR,
+    compound,
+    kind_of,
+    size_only,
+)
 from recheck.reading.tables.slots import Slot, printed_text, slot_view
 from recheck.reading.views import TIMEOUT
 
@@ -58,16 +67,6 @@ class Sheet:
     subheadings: frozenset[int]
     folds: tuple[int, ...] = (0,)
     names: Mapping[str, str] = field(default_factory=dict)
-
-    @property
-    def body_rows(self) -> range:
-        """The rows below the headings."""
-        return self.rows
-
-    @property
-    def body_columns(self) -> tuple[int, ...]:
-        """The columns that hold numbers."""
-        return self.columns
 
     def slot(self, row: int, column: int) -> Slot | None:
         """The cell that covers this place, None where nothing is printed."""
@@ -222,12 +221,15 @@ class _Grid:
             numbers = sum(kind == "number" for kind in kinds)
             named = sum(kind == "words" for kind in kinds)
             if (column == 0 and not self._numbers_first()) or (
-                column == len(stubs) and named and self._unheaded(column)
+                column == len(stubs) and ((named and self._unheaded(column)) or self._names_levels(column))
             ):
                 stubs.append(column)
             elif numbers == 0 or named > 1.5 * numbers:
-                # A column of words among numbers names rows only where numbers still follow it.
-                if named and not (self._quantity_over(column) and numbers) and not self._names_tests(column):
+                # A column of words among numbers names rows only where a list of its own begins with it.
+                results = numbers or self._with_words(column)
+                if self._says_nothing(column) or (columns and named and not results and not self._list(column)):
+                    continue
+                if named and not (self._quantity_over(column) and results) and not self._names_tests(column):
                     stubs.append(column)
                 elif self._quantity_over(column):
                     columns.append(column)
@@ -244,6 +246,32 @@ class _Grid:
         return (
             self.head > 0 and not own and not any(compound().search(text, timeout=TIMEOUT) for text in body)
         )
+
+    def _names_levels(self, column: int) -> bool:
+        """Whether a column behind the names tells which level or time each row is about: `Level`, `Month`."""
+        heads = [text for row in range(self.head) if (text := self.texts.get((row, column), ""))]
+        body = [text for row in range(self.head, self.table.rows) if (text := self.texts.get((row, column), ""))]
+        return (
+            column > 0
+            and bool(heads and body)
+            and bool(NAMES_LEVELS.fullmatch(heads[-1].strip(" .*†"), timeout=TIMEOUT))
+            and not any(compound().search(text, timeout=TIMEOUT) for text in body)
+        )
+
+    def _list(self, column: int) -> bool:
+        """Whether a second list of rows may begin with a column: under the heading of the first, or under none."""
+        heads = [self.texts.get((row, column), "") for row in range(self.head)]
+        return not any(heads) or self.texts.get((self.head - 1, 0), "") in ("", heads[-1])
+
+    def _with_words(self, column: int) -> bool:
+        """Whether a column under a quantity holds words with results: `RR 0.77 (0.25 to 2.38)`."""
+        body = (self.texts.get((row, column), "") for row in range(self.head, self.table.rows))
+        return self._quantity_over(column) and any(compound().search(text, timeout=TIMEOUT) for text in body)
+
+    def _says_nothing(self, column: int) -> bool:
+        """Whether a column of words behind the first judges what stands in its row: it is no part of the name."""
+        heads = [text for row in range(self.head) if (text := self.texts.get((row, column), ""))]
+        return column > 0 and bool(heads) and bool(JUDGES.search(heads[-1], timeout=TIMEOUT))
 
     def _numbers_first(self) -> bool:
         """Whether the first column holds results, not names: no column of names at all."""
@@ -284,9 +312,29 @@ class _Grid:
                     over.append(row)
                 levels = (*self._kept(base, over), *over)
                 start = row + 1
+            elif levels != base and self._ends_inner_head(base, levels, start, row):
+                if self._has_numbers(range(start, row)):
+                    yield self._sheet(range(start, row), levels)
+                levels, start = base, row
             row += 1
         if start < self.table.rows and self._has_numbers(range(start, self.table.rows)):
             yield self._sheet(range(start, self.table.rows), levels)
+
+    def _ends_inner_head(self, base: Sequence[int], levels: Sequence[int], start: int, row: int) -> bool:
+        """Whether a row begins a new section behind one that had headings of its own.
+
+        Only where sections were named so before the inner headings came, and the inner headings name their section.
+        """
+        inner = [level for level in levels if level not in base]
+        before = range(self.head, min(inner))
+        return (
+            row > start
+            and row + 1 < self.table.rows
+            and self._names_alone(row)
+            and not self._names_alone(start)
+            and all(self.texts.get((level, 0)) for level in inner)
+            and any(self._names_alone(above) for above in before)
+        )
 
     def _has_numbers(self, rows: range) -> bool:
         return any(self.kinds.get((row, column)) == "number" for row in rows for column in self.columns)

@@ -163,7 +163,7 @@ class _Parser:
         self._settle(found, rest, first, after)
 
     def _letter_of_name(self, at: int, after: int) -> bool:
-        """Whether a letter is part of a name: `Group B`, `β:α`."""
+        """Whether a letter is part of a name: `Group B`, `β:α`, `Q/R`."""
         before, letter = self.line.at(at - 1), self.line.at(at).text
         named = (
             letter.isupper()
@@ -171,7 +171,13 @@ class _Parser:
             and before.low in KINDS
             and not self._spread_follows(after)
         )
-        return named or bool({":", "/"} & {before.text, self.line.at(after).text})
+        behind = self.line.at(after)
+        return (
+            named
+            or ":" in (before.text, behind.text)
+            or (before.text == "/" and _capitals(self.line.at(at - 2).text, letter))
+            or (behind.text == "/" and _capitals(letter, self.line.at(after + 1).text))
+        )
 
     def _settle(self, found: list[_Found], rest: list[int], first: int, after: int) -> None:
         line = self.line
@@ -204,9 +210,9 @@ class _Parser:
 
     def _unit(self, found: list[_Found], first: int) -> bool:
         """Whether a letter behind a name is its unit: `Weight, g`, `Rest (h)`; not the `d` of `Effect size, d`."""
-        text = self.line.at(found[0].first).text
+        texts = {self.line.at(item.first).text for item in found}
         named = [self.line.at(k).low for k in self.names if self.line.at(k).kind == "word"]
-        return len(found) == 1 and first > 0 and text in UNITS and bool(named) and not EFFECTS & set(named)
+        return first > 0 and len(texts) == 1 and texts <= UNITS and bool(named) and not EFFECTS & set(named)
 
     def _df_in(self, first: int, after: int) -> bool:
         """Degrees of freedom in the brackets after a statistic: `t (df = 31)`, `F (2, 57)`."""
@@ -243,6 +249,8 @@ class _Parser:
         word = self.line.at(item.first)
         long = len(word.text) > 1 or item.after - item.first > 1
         if self._after_sign(item.first) or (item.quantity == "mean" and self.line.at(item.after).text == "±"):
+            return True
+        if item.quantity in ("sd", "se") and long and item.first == first and self.line.at(item.after).low == "of":
             return True
         if word.text == "M" and item.after == after and self._spread_follows(after):
             return True
@@ -362,6 +370,10 @@ class _Parser:
 
 
 _LONGEST_UNIT = 3
+
+
+def _capitals(first: str, second: str) -> bool:
+    return len(first) == len(second) == 1 and first.isalpha() and (first + second).isupper()
 
 
 def _segments(line_tokens: Sequence[Token]) -> Iterator[tuple[int, int]]:

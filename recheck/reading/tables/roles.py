@@ -120,7 +120,8 @@ def group_of(header: Header, legend: Legend) -> Group:
 
 def size_told(legend: Legend, names: Sequence[str]) -> Printed | None:
     """The n that caption or notes give for the first of these names, in its own words or at the end of what is told: `working alone (n = 27)`."""
-    for name in (name.lower() for name in names if name):
+    plain = [name.lower() for name in names if name]
+    for name in (*plain, *(name.removeprefix("in ") for name in plain)):
         if name in legend.ns:
             return legend.ns[name]
         ending = [n for words, n in legend.ns.items() if words.endswith(f" {name}")]
@@ -277,7 +278,15 @@ def matched(piece: Piece, quantities: Sequence[str]) -> dict[str, Printed] | Non
     if len(numbers) != len(names):
         return None
     values = dict(zip(names, numbers, strict=True))
+    if piece.shape == "triple" and _misordered(values):
+        return values
     return values if fits(values, numbers[0]) else None
+
+
+def _misordered(values: Mapping[str, Printed]) -> bool:
+    """Whether the ends of a spread that is said to be one stand the wrong way round: a misprint that a check tells of."""
+    ends = next((e for e in (("q1", "q3"), ("min", "max")) if e[0] in values), None)
+    return ends is not None and values[ends[0]].value > values[ends[1]].value > 0
 
 
 def _relabelled(piece: Piece, names: list[str]) -> list[str]:

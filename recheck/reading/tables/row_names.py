@@ -154,9 +154,10 @@ class RowNames:
             return []
         if self.indented and self._indents_below(over[-1][2]):
             return [level for level in over if level[0] < indent]
-        own = told(self._label(row)).quantities
+        label = told(self._label(row))
+        own = label.quantities if not label.percent_unit or "count" in label.quantities else ()
         first = told(self._label(over[-1][2] + 1)).quantities if over[-1][2] + 1 in self.rows else ()
-        return [] if own and not first and len(told(self._label(row)).name) > 1 else over
+        return [] if own and not first and len(label.name) > 1 else over
 
     def _named_anew(self, over: int, row: int) -> bool:
         """Whether a row names its own outer level, where the row after the sub-heading took it from that: `Minor`, `Major`."""

@@ -75,3 +75,11 @@ def kind_of(text: str) -> str:
 
 NAMES_TESTS = regex.compile(r"(?:statistical |type of |kind of )?tests?(?: used| type)?", regex.IGNORECASE)
 """The heading of a column that names the test of each row."""
+NAMES_LEVELS = regex.compile(
+    r"levels?|categor(?:y|ies)|sub-?groups?|months?|weeks?|days?|visits?|waves?|sessions?|time ?-?points?|follow-?ups?"
+    r"|(?:months?|weeks?|days?) (?:of|after|since) \w+(?: \w+)?",
+    regex.IGNORECASE,
+)
+"""The heading of a column that tells the level or the time of each row."""
+JUDGES = regex.compile(r"^(?:certainty|quality of|strength of|GRADE\b|importance|risk of bias)", regex.IGNORECASE)
+"""The heading of a column that judges the evidence of each row."""

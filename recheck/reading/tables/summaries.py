@@ -3,9 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import replace
 
 from recheck.model import N_OF_GROUP, Printed
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
+from recheck.reading.tables.headings import Told
+from recheck.reading.tables.roles import size_told
 from recheck.reading.tables.units import Unit
 
 _CENTRES = ("mean", "median")
@@ -54,8 +57,14 @@ def _size(frame: Frame, unit: Unit, values: dict[str, Printed]) -> tuple[Printed
     labels = frame.labels(unit.rows[0], unit.columns[0])
     if labels and labels[-1].n is not None:
         return labels[-1].n, ()
-    of_group = group_size(frame, unit)
+    of_group = group_size(frame, unit) or _told_of_row(frame, unit)
     return (of_group, (N_OF_GROUP,)) if of_group is not None else (None, ())
+
+
+def _told_of_row(frame: Frame, unit: Unit) -> Printed | None:
+    """The n that caption or notes give for the group that the row is named by."""
+    labels = frame.labels(unit.rows[0], unit.columns[0])
+    return size_told(frame.legend, (labels[-1].name,)) if labels and frame.groups_in_rows else None
 
 
 def group_size(frame: Frame, unit: Unit) -> Printed | None:
@@ -66,9 +75,26 @@ def group_size(frame: Frame, unit: Unit) -> Printed | None:
     return next(over, None) or next((frame.sizes[c] for c in unit.columns if c in frame.sizes), None)
 
 
+def own_names(frame: Frame, unit: Unit) -> list[Told]:
+    """The names of a unit's row; one that looks like a quantity but did not name its numbers is a name (`High`, `SE (%)`, `Intercept`)."""
+    path = frame.sheet.row_header(unit.rows[0], unit.columns[0]).path
+    told_ = frame.labels(unit.rows[0], unit.columns[0])
+    return [
+        label
+        if len(unit.rows) > 1 or not label.quantities or not _BY_COLUMN.isdisjoint(label.quantities)
+        or set(label.quantities) & set(unit.values)
+        else replace(label, name=text)
+        for label, text in zip(told_, path, strict=True)
+    ]  # fmt: skip
+
+
+_BY_COLUMN = frozenset(("mean", "count", "percent", "n", "N"))
+"""What a row's name says of some of its columns at least, even where others hold something else: `Age, mean (SD)` with a difference."""
+
+
 def names_of(frame: Frame, unit: Unit) -> tuple[str, str]:
     """What was measured, and on whom: the row and the column, or the other way round where the rows are groups."""
-    told_ = frame.labels(unit.rows[0], unit.columns[0])
+    told_ = own_names(frame, unit)
     # A sub-heading with an n is a group, and the columns beside it are its times or conditions.
     over = [label.name for label in told_[:-1] if label.name and label.n is not None]
     labels = [label.name for label in told_ if label.name and label.name not in over]

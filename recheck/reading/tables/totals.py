@@ -67,7 +67,9 @@ def _shared(people: Sequence[Unit], at: int) -> _Shared | None:
     return _Shared(at, count, percent) if count is not None and percent is not None else None
 
 
-def _blocks(frame: Frame, people: Sequence[Unit], open_: Iterable[int]) -> dict[tuple[object, ...], list[int]]:
+def _blocks(
+    frame: Frame, people: Sequence[Unit], open_: Iterable[int]
+) -> dict[tuple[object, ...], list[int]]:
     """The units of one column under one sub-heading."""
     blocks: dict[tuple[object, ...], list[int]] = defaultdict(list)
     for at in open_:
@@ -97,7 +99,12 @@ def _by_group(frame: Frame, people: Sequence[Unit], open_: Sequence[int]) -> dic
             if own is not None:
                 fits[people[at].columns[0]].append(own.fits(size))
     refuted = {column for column in fits if _refutes(column, fits)}
-    lost = {at for block in blocks.values() for at in block if at in found and _refuted_block(people, block, found)}
+    lost = {
+        at
+        for block in blocks.values()
+        for at in block
+        if at in found and _refuted_block(people, block, found)
+    }
     return {
         at: total
         for at, total in found.items()
@@ -149,7 +156,11 @@ def _less(size: Printed, missing: Printed) -> Printed:
 
 def _by_row(frame: Frame, people: Sequence[Unit], open_: Sequence[int]) -> dict[int, Printed]:
     """The n that a column of no group prints for the row, where most shares are of it."""
-    columns = [c for c, role in frame.roles.items() if role.quantities in (("n",), ("N",)) and not frame.group(c).name]
+    columns = [
+        c
+        for c, role in frame.roles.items()
+        if role.quantities in (("n",), ("N",)) and not frame.group(c).name
+    ]
     if len(columns) != 1:
         return {}
     found: dict[int, Printed] = {}

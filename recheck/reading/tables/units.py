@@ -8,7 +8,8 @@ from typing import Literal
 
 from recheck.model import Printed
 from recheck.reading.tables.cells import COEFFICIENTS, RATIOS, TESTS, Cell, named_cell
-from recheck.reading.tables.frame import Frame, measured_again
+from recheck.reading.tables.frame import Frame
+from recheck.reading.tables.sizes import measured_again
 
 Family = Literal["summary", "people", "estimate", ""]
 
