@@ -8,6 +8,7 @@ from dataclasses import replace
 
 from recheck.checks.coefficients import SAME_COEFFICIENT
 from recheck.checks.compare import doubted
+from recheck.checks.counts import UNWEIGHTED
 from recheck.checks.interval_tests import PROFILE
 from recheck.checks.intervals import NEED_NOT_BE_SYMMETRIC
 from recheck.model import DISCREPANT, Finding
@@ -18,6 +19,7 @@ PROOF = 2
 """Rows of a table that must show a thing before it is believed of the others."""
 COLUMNS = "the columns of the table hold what their headings say (most of its rows do not fit)"
 OTHER_SE = "β may be standardized beside the SE of another number: other rows of the table do not fit either"
+OTHER_WEIGHTS = "the percentage may be one of weighted counts, of which the document speaks"
 PROFILES = "the intervals of this table are not all symmetric in logarithms (profile or exact ones), so they do not tell p"
 MIXED = "p and interval of several rows of this table come from different methods, so the interval does not tell p"
 
@@ -55,8 +57,12 @@ def _wrong(finding: Finding) -> bool:
     return finding.verdict in DISCREPANT and not relabelled
 
 
+TO_BE_PROVED = {SAME_COEFFICIENT: OTHER_SE, UNWEIGHTED: OTHER_WEIGHTS}
+"""Doubts that speak only where other rows dispel them, each with the reason why nothing is compared where they do not."""
+
+
 def _unproved(findings: Sequence[Finding]) -> tuple[Finding, ...]:
-    """A β beside an SE is compared only where most other rows of its table show that the SE is its own."""
+    """What other rows must show: that the SE beside β is its own, that percentages are those of the counts."""
     fitting = _tables(findings, lambda f: f.verdict == "agrees")
     unfit = _tables(findings, lambda f: f.verdict != "agrees")
 
@@ -64,10 +70,11 @@ def _unproved(findings: Sequence[Finding]) -> tuple[Finding, ...]:
         key = (finding.check, finding.place.table or "")
         return fitting[key] >= PROOF and fitting[key] > unfit[key]
 
-    return tuple(
-        _unchecked(f, OTHER_SE) if SAME_COEFFICIENT in f.assumptions and not proved(f) else f
-        for f in findings
-    )
+    def reason(finding: Finding) -> str:
+        found = [why for doubt, why in TO_BE_PROVED.items() if doubt in finding.assumptions]
+        return found[0] if found and not proved(finding) else ""
+
+    return tuple(_unchecked(f, why) if (why := reason(f)) else f for f in findings)
 
 
 def _other_methods(findings: Sequence[Finding]) -> tuple[Finding, ...]:

@@ -140,7 +140,9 @@ def doubted(finding: Finding, doubt: str) -> Finding:
         finding,
         verdict="conditional",
         reversal=False,
-        message=f"{finding.message} That is a contradiction only if {doubt}.",
+        message=f"{finding.message.removesuffix('.')}; and if {doubt}."
+        if finding.verdict == "conditional"
+        else f"{finding.message} That is a contradiction only if {doubt}.",
         assumptions=(*finding.assumptions, doubt),
     )
 

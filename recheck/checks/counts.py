@@ -6,7 +6,7 @@ import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
-from recheck.checks.compare import Comparison, impossible, judge
+from recheck.checks.compare import Comparison, doubted, impossible, judge
 from recheck.checks.designs import whole
 from recheck.checks.examples import table
 from recheck.checks.registry import Case, check
@@ -15,6 +15,7 @@ from recheck.reconcile.readings import Box, Way
 
 PERCENTS = Interval(0.0, math.inf)
 OF_GROUP = "the percentage is one of the whole group, none of whose cases is missing"
+UNWEIGHTED = "the percentage is that of the printed counts, not of weighted ones"
 TO_HUNDRED = "the percentages were adjusted so that they sum to 100"
 
 
@@ -69,9 +70,8 @@ def percent_from_count(case: Case) -> Iterable[Finding]:
 
     ways = [Way(implied)]
     if not own:
-        ways.append(Way(lambda box: implied(box, 1.0), (TO_HUNDRED,)))
+        ways.append(Way(lambda box: implied(box, 1.0), (TO_HUNDRED,), alone=True))
     foreign = [word for word in ("weighted", "marginal", "covariate-adjusted") if claim.says(word)]
-    foreign += ["weighted"] if claim.suggests("weighted") else []
     excuses = tuple(f"the percentage may be that of {STATED[word]}" for word in foreign[:1])
     if not own and not excuses and (answered := _answered(case, total)):
         excuses = (f"all percentages of this variable are those of {answered} cases: the others are missing",)
@@ -83,6 +83,8 @@ def percent_from_count(case: Case) -> Iterable[Finding]:
         ),
     )  # fmt: skip
     if found.verdict in ("conditional", "inconsistent"):
+        if claim.suggests("weighted"):
+            found = doubted(found, UNWEIGHTED)
         found = replace(found, reconciled_by=(*found.reconciled_by, *_other_totals(claim)))
     yield found
 
@@ -99,12 +101,31 @@ def _totals(claim: Claim) -> tuple[int, int] | None:
 def _answered(case: Case, total: int) -> str:
     """How many cases all categories of the variable are percentages of, in this group; '' where no number fits all."""
     column = [c for c in case.block if c.group == case.claim.group and "percent" in c.values]
-    ranges = [_totals(claim) for claim in column if claim.values["count"].value > 0]
+    # A share that rounds to nought fits any large total; those who did not answer are not among the answers.
+    telling = [c for c in column if c.values["percent"].interval().low > 0 and not _left_out(c)]
+    ranges = [_totals(claim) for claim in telling if claim.values["count"].value > 0]
     if len(ranges) < 2 or any(r is None for r in ranges):
         return ""
     low, high = max(r[0] for r in ranges if r), min(r[1] for r in ranges if r)
     high = min(high, total)
     return "" if low > high else str(low) if low == high else f"{low} to {high}"
+
+
+NO_ANSWER = (
+    "unknown",
+    "missing",
+    "not available",
+    "no answer",
+    "not reported",
+    "n missing",
+    "not recorded",
+    "no data",
+)
+
+
+def _left_out(claim: Claim) -> bool:
+    """Tell whether a category holds the cases without an answer."""
+    return (claim.outcome or "").rpartition(" | ")[2].strip().lower().startswith(NO_ANSWER)
 
 
 def _other_totals(claim: Claim) -> tuple[Remedy, ...]:

@@ -92,7 +92,7 @@ def _independent_ways(name: str, groups: Groups, n1: float, n2: float) -> Iterat
                 yield Way(implied, unstated)
 
 
-def _paired_way(groups: Groups, name: str, n: float) -> Way:
+def _paired_way(groups: Groups, name: str, n: float, *, stated: bool) -> Way:
     """d_z, d_av or d_rm with a correlation that is not printed: bounded above alone.
 
     d_z is t/√n; d_av and d_rm divide the difference by at least the smaller SD, since the variance
@@ -109,7 +109,8 @@ def _paired_way(groups: Groups, name: str, n: float) -> Way:
         by_sd = D.high / smallest if smallest > 0 else INFINITY
         return (Interval(0.0, max(2 * box["t"].absolute().high / math.sqrt(n - 1), by_sd)),)
 
-    return Way(implied, (PAIRS,) if name in ("d", "g") else ())
+    open_ = name in ("d", "g") and not stated
+    return Way(implied, (PAIRS,) if open_ else (), () if open_ else (PAIRS,))
 
 
 @check(
@@ -173,7 +174,8 @@ def _group_ways(claim: Claim, name: str, groups: Groups, fit: Fit) -> Iterator[W
             yield from _independent_ways(name, groups, groups.n1, groups.n2)
             yield from _rough_ways(claim, name, groups.n1 + groups.n2)
     if fit.design != "independent" or claim.says("paired", "repeated"):
-        yield _paired_way(groups, name, float(groups.n1 or 2))
+        pairs = groups.n1 or (whole(claim.values.get("df")) or 1) + 1
+        yield _paired_way(groups, name, float(pairs), stated=claim.says("paired"))
 
 
 def _rough_ways(claim: Claim, name: str, total: int) -> Iterator[Way]:

@@ -23,6 +23,7 @@ FAMILIES = (
     "counts",
     "count_tests",
     "regressions",
+    "ratios",
     "stars",
     "sizes",
     "ranges",
@@ -45,7 +46,8 @@ class Case:
     """A claim with what a check may need beside it.
 
     `groups` are those that it is linked to, `twins` the same result elsewhere, `block` all counts of the
-    categories of one variable of a table, or all correlations of a table, its own among them.
+    categories of one variable of a table, or all correlations of a table, its own among them; for an
+    estimate the counts of its row.
     """
 
     claim: Claim

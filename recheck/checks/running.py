@@ -23,11 +23,13 @@ def run_checks(
     """
     claims = [_as_shares(claim) for claim in claims]
     by_id = {claim.id: claim for claim in claims}
-    twins, blocks = _twins(by_id, same), _blocks(claims)
+    twins, blocks, rows = _twins(by_id, same), _blocks(claims), _counts_of_rows(claims)
     findings: list[Finding] = []
     for claim in claims:
         groups = tuple(by_id[g] for g in claim.groups if g in by_id)
         block = blocks.get(_block_of(claim), ())
+        if claim.kind == "estimate":
+            block = rows.get((claim.place.table, claim.place.row), ())
         case = Case(claim, groups, settings, twins=twins.get(claim.id, ()), block=block)
         for check in all_checks():
             if claim.kind in check.kinds:
@@ -62,6 +64,16 @@ def _blocks(claims: Sequence[Claim]) -> dict[tuple[str, str], tuple[Claim, ...]]
         if key != ("", ""):
             blocks[key] = (*blocks.get(key, ()), claim)
     return blocks
+
+
+def _counts_of_rows(claims: Sequence[Claim]) -> dict[tuple[str | None, str | None], tuple[Claim, ...]]:
+    """All counts of each row of each table."""
+    rows: dict[tuple[str | None, str | None], tuple[Claim, ...]] = {}
+    for claim in claims:
+        key = claim.place.table, claim.place.row
+        if claim.kind == "count" and all(key):
+            rows[key] = (*rows.get(key, ()), claim)
+    return rows
 
 
 SHARES = frozenset(

@@ -135,7 +135,7 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
 
     ways = [Way(lambda box: p_of(box["chi2"], box["df"]))]
     one_df = numbers["df"].value == 1 and numbers["df"].decimals <= 0
-    if not claim.suggests("model-fit", "uncorrected-chi2") and not claim.says("heterogeneity"):
+    if not claim.suggests("model-fit", "uncorrected-chi2") and not _of_heterogeneity(claim):
         ways.append(
             Way(lambda box: p_of(other_chi2(box["chi2"], one_df), box["df"]), (_other_words(claim, one_df),))
         )
@@ -148,6 +148,12 @@ def p_from_chi2(case: Case) -> Iterable[Finding]:
         )
         ways += halved
     yield judge_p(case, "p-from-chi2", ways, numbers, omnibus=not one_df)
+
+
+def _of_heterogeneity(claim: Claim) -> bool:
+    """Tell whether χ² is that of heterogeneity (Cochran's Q), which no table of counts lies behind."""
+    quote = claim.place.quote.lower()
+    return claim.says("heterogeneity") or "phet" in quote or "heterogen" in quote
 
 
 def _other_words(claim: Claim, one_df: bool) -> str:

@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Iterable, Iterator
 
 from recheck.checks.compare import Comparison, judge
+from recheck.checks.p_values import ROUNDED_DF, rounded_df, rounded_df1
 from recheck.checks.registry import Case, check
 from recheck.checks.source_rows import from_source
 from recheck.model import STATED, Claim, Finding, Interval
@@ -37,7 +38,7 @@ OTHER_MODELS = (
     limits="Corrected and uncorrected df give the same value, as both shrink alike. Welch's F, mixed models and robust tests are not rebuilt. A partial η² that is too small is conditional, as the names are mixed up.",
     agrees=("Flour mattered, F(2, 28) = 9.93, p < .001, ηp2 = .42.", "Flour mattered, F(2, 28) = 9.93, η² = .30."),
     conditional=("Flour mattered, F(2, 28) = 9.93, p < .001, ηp2 = .12.",),
-    inconsistent=("Flour mattered, F(2, 28) = 9.93, p < .001, ηp2 = .52.",),
+    inconsistent=("Flour mattered, F(2, 28) = 9.93, p < .001, ηp2 = .72.",),
 )  # fmt: skip
 def eta2_from_F(case: Case) -> Iterable[Finding]:
     """Compare the printed share of variance with that of F; a smaller one is no contradiction where it is not partial."""
@@ -48,11 +49,7 @@ def eta2_from_F(case: Case) -> Iterable[Finding]:
         if name not in claim.values or claim.values[name].interval().low > 1:
             continue
         numbers = {n: claim.values[n] for n in (name, "F", "df1", "df2")}
-        ways = (
-            (Way(_share), Way(_down_from(_share), (SMALLER,), alone=True))
-            if name == "partial_eta2"
-            else (Way(_down_from(_share), (), (AT_MOST,)),)
-        )
+        ways = tuple(_ways(claim, partial=name == "partial_eta2"))
         doubts = () if claim.values["df2"].decimals <= 0 or _both_fractional(claim) else (SAME_ANALYSIS,)
         yield judge(
             case,
@@ -61,6 +58,42 @@ def eta2_from_F(case: Case) -> Iterable[Finding]:
                 doubts=doubts, excuses=_other_model(claim),
             ),
         )  # fmt: skip
+
+
+UNEQUAL = "F is one for unequal variances (Welch), the effect size that of the classical analysis"
+
+
+def _ways(claim: Claim, *, partial: bool) -> Iterator[Way]:
+    """The share as printed, then as whole df that were rounded and as an F of another kind allow."""
+    yield Way(_share) if partial else Way(_down_from(_share), (), (AT_MOST,))
+    if partial:
+        yield Way(_down_from(_share), (SMALLER,), alone=True)
+    if any(claim.values[name].decimals > 0 for name in ("df1", "df2")):
+        return
+    if not claim.says("between-groups", "independent"):
+        yield _other(_rounded, ROUNDED_DF, partial=partial)
+    if not claim.says("repeated", "paired", "pooled"):
+        yield _other(_unequal, UNEQUAL, partial=partial)
+
+
+def _other(change: Callable[[Box], Box], words: str, *, partial: bool) -> Way:
+    inner = _share if partial else _down_from(_share)
+    return Way(lambda box: inner(change(box)), (words,), alone=True)
+
+
+def _rounded(box: Box) -> Box:
+    """Both df as the fractional ones of a corrected test that were rounded."""
+    return {**box, "df1": rounded_df1(box["df1"]), "df2": rounded_df(box["df2"])}
+
+
+def _unequal(box: Box) -> Box:
+    """Where the classical F and df2 may lie beside Welch's.
+
+    Drawn around 2 to 4 normal samples of 5 to 60 with SDs apart by a factor of 1 to 4: in 98 of 100 F
+    is a fifth to three times Welch's, and df2 at most eight times.
+    """
+    F, df2 = box["F"].within(0.0, float("inf")), box["df2"]
+    return {**box, "F": Interval(F.low / 5, F.high * 3), "df2": Interval(df2.low, df2.high * 8)}
 
 
 SAME_ANALYSIS = "F and its effect size come from one analysis (df2 with decimals may be those of another than the effect size)"

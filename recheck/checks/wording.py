@@ -67,6 +67,10 @@ def tell(
         return f"{_capital(printed)} agrees with {others}{said}."
     if verdict == "conditional":
         first = implied[0]
+        if unstated and all(words in first.assuming for words in unstated):
+            # No reading that the text states can be followed: the range told is that of the open one.
+            told = f"{_capital(printed)} agrees with {others}, {span(first.low, first.high)},"
+            return f"{told} if {'; and if '.join(unstated)}, which the text does not say."
         start = f"{_capital(printed)} is printed, but {others} {imply} {span(first.low, first.high)}."
         if unstated:
             return f"{start} The numbers agree if {'; and if '.join(unstated)}, which the text does not say."

@@ -147,11 +147,29 @@ def _symbol_first(line: Line, index: int, spelled: Spelled) -> list[Assignment]:
     if no_value(line, spelled, symbol, (number, relation, loose), after):
         return []
     symbol = by_number(line, index, spelled, symbol, number)
+    both = _sizes_of_two(line, symbol, number)
+    if both and relation == "=":
+        return [Assignment(Symbol("sizes", "size"), number.printed(line, relation), index, both)]
     item = Assignment(
         symbol, number.printed(line, relation), index, number.after, df or (), spelled.label + _contrast(line, spelled),
         symbol.stated + spelled.stated, symbol.several or goes_on(line, number) or _plural(spelled, df, relation), loose or spelled.glued, announced,
     )  # fmt: skip
     return _with_what_follows(line, item, number)
+
+
+def _sizes_of_two(line: Line, symbol: Symbol, number: Number) -> int | None:
+    """Index after the sizes of two groups in one: `n = 17, 18;`, `n = 17 and 18)`; neither is that of the result."""
+    if symbol.part != "size" or line.at(number.after).low not in (",", "and", "&"):
+        return None
+    second = number_at(line, number.after + 1)
+    plain = (
+        second is not None
+        and line.at(number.after + 1).kind == "num"
+        and not (second.percent or second.decimals)
+    )
+    stops = (";", ")", "]", "respectively", *(() if line.at(number.after).text == "," else (",",)))
+    ends = second is not None and line.at(second.after).text in stops
+    return second.after if second is not None and plain and ends else None
 
 
 def _with_what_follows(line: Line, item: Assignment, number: Number) -> list[Assignment]:

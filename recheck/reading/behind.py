@@ -62,7 +62,8 @@ def two_df(line: Line, item: Assignment) -> Assignment | None:
     return replace(item, symbol=Symbol("df12", "df"), extra=extra, after=two.after, several=False)
 
 
-_UNLABELLED = "the interval in brackets is not labelled as a confidence interval"
+UNLABELLED = "the interval in brackets is not labelled as a confidence interval"
+"""Note on a claim: a table's heading may label it after all."""
 
 
 def unlabelled(line: Line, item: Assignment) -> Assignment | None:
@@ -79,7 +80,7 @@ def unlabelled(line: Line, item: Assignment) -> Assignment | None:
         return None
     low, high, after = ends
     extra = (("ci_low", low.printed(line)), ("ci_high", high.printed(line)))
-    notes = (_UNLABELLED,)
+    notes = (UNLABELLED,)
     doubt: Confidence = "high" if "ci" in item.announced.split() else "medium"
     return Assignment(
         CI, extra[0][1], item.after, after, extra, doubt=doubt, notes=notes if doubt == "medium" else ()
@@ -96,7 +97,7 @@ def _behind_comma(line: Line, item: Assignment) -> Assignment | None:
     if not low.value < item.printed.value < high.value or not any(t.low in ("to", "-") for t in spread_out):
         return None
     extra = (("ci_low", low.printed(line)), ("ci_high", high.printed(line)))
-    return Assignment(CI, extra[0][1], item.after, after, extra, doubt="medium", notes=(_UNLABELLED,))
+    return Assignment(CI, extra[0][1], item.after, after, extra, doubt="medium", notes=(UNLABELLED,))
 
 
 def df_behind(line: Line, item: Assignment) -> tuple[Printed, int] | None:

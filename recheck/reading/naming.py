@@ -106,7 +106,7 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
         name = "se_difference"
     if name == "df12":
         return list(item.extra)
-    if name in ("alpha", "power"):
+    if name in ("alpha", "power", "sizes"):
         return []
     return [(name, item.printed), *item.extra]
 

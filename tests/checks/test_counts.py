@@ -3,7 +3,7 @@
 from dataclasses import replace
 
 import pytest
-from hypothesis import given
+from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy import stats
 
@@ -243,6 +243,7 @@ def test_many_categories_may_be_tested_for_trend():
     assert verdict("p-from-counts", claim("estimate", p="0.9"), counts(HAIR)) == "unchecked"
 
 
+@settings(deadline=None)
 @given(st.lists(st.integers(0, 40), min_size=4, max_size=4), st.integers(0, 3))
 def test_an_honest_table_is_never_flagged(cells, decimals):
     a, b, c, d = cells

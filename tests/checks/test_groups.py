@@ -91,3 +91,11 @@ def test_percent_p_is_a_share():
         f.check: f.verdict for f in audit_text("The loaves differed, t(28) = 2.20, p = 3.6%.").findings
     }
     assert verdicts["p-from-t"] == "agrees"
+
+
+def test_a_test_that_is_said_to_be_paired_needs_no_other_name():
+    before = claim("group-summary", name="a", mean="18.37", sd="15.70")
+    after = claim("group-summary", name="b", mean="10.89", sd="8.83")
+    for said, expected in ((("paired",), "inconsistent"), (("repeated",), "conditional")):
+        of = claim("t-test", *said, t="1.12", df="50", groups=("a", "b"))
+        assert finding("t-from-groups", of, before, after).verdict == expected

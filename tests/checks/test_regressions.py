@@ -54,6 +54,54 @@ def test_rows_of_mtcars(check, of, expected):
     assert verdicts(check, of) == [expected]
 
 
+def test_the_implied_t_has_the_sign_of_the_printed_one():
+    (found,) = find_check("t-from-b").run(Case(claim=row(t="−6.59")))
+    assert found.implied[0].high < 0
+    assert found.reconciled_by[-1].high < 0
+    assert "t = −6.59 stands for −6.595 to −6.585" in found.tolerance
+
+
+def test_a_sign_by_coding_is_no_contradiction():
+    assert verdicts("t-from-b", row(t="9.56")) == [("t", "agrees")]
+
+
+def test_a_difference_over_its_own_se():
+    pair = {"mean_difference": "0.42", "se_difference": "0.25", "df": "22"}
+    assert verdicts("t-from-b", claim("t-test", **pair, t="1.68")) == [("t", "agrees")]
+    assert verdicts("t-from-b", claim("t-test", **pair, t="2.58")) == [("t", "inconsistent")]
+
+
+def test_both_ends_have_one_level():
+    # −0.063 ± 1.645 × 0.025: −0.104 to −0.022
+    base = {"b": "−0.063", "se": "0.025", "z": "−2.52", "p": ".012"}
+    (found,) = find_check("ci-from-b").run(Case(claim=row(base=base, ci_low="−0.104", ci_high="−0.022")))
+    assert "90%" in found.message
+    (found,) = find_check("ci-from-b").run(Case(claim=row(base=base, ci_low="−0.113", ci_high="−0.022")))
+    assert found.verdict == "conditional"
+    assert "90%" not in found.message
+    off = row("bootstrap", base=base, ci_low="−0.113", ci_high="−0.022")
+    assert verdicts("ci-from-b", off) == [("ci_high", "unchecked")]
+
+
+def test_a_coefficient_that_its_ratio_proves():
+    # exp(−0.41) = 0.664; exp(−0.41 ∓ 1.96 × 0.24): 0.415 to 1.062; z = 1.71, p = .087
+    base = {
+        "beta": "−0.41",
+        "se": "0.24",
+        "or": "0.66",
+        "ci_low": "0.41",
+        "ci_high": "1.06",
+        "ci_level": "95",
+    }
+    of = row("two-tailed", base=base, interval_of="or", p=".02")
+    for check in ("p-from-b", "p-from-ci"):
+        (found,) = find_check(check).run(Case(claim=of))
+        assert found.verdict == "conditional"
+        assert "profile" not in found.message
+    right = row("two-tailed", base=base, interval_of="or", p=".087")
+    assert verdicts("p-from-b", right) == [("p", "agrees")]
+
+
 # exp(−4.024 ∓ 1.959964 × 1.436): 0.00107 to 0.298
 ODDS = {"base": LOGIT, "interval_of": "or", "ci_low": "0.0011", "ci_high": "0.298", "ci_level": "95"}
 

@@ -36,6 +36,8 @@ HERE = claim("t-test", t="2.20", df="28", p=".036", d="0.83")
         ({"t": "2.196", "p": ".04"}, [("t", "agrees")]),
         ({"t": "2.02", "df": "28"}, [("t", "inconsistent")]),
         ({"t": "2.1", "df": "28"}, [("t", "conditional")]),  # cut off, not rounded
+        ({"t": "2.21", "df": "28"}, [("t", "conditional")]),  # 2.205 rounded to even here, up there
+        ({"t": "2.2", "p": ".04"}, [("t", "agrees")]),
         ({"t": "2.20", "p": ".018"}, [("p", "conditional")]),  # one-tailed here, two-tailed there
         ({"t": "2.20", "p": "> .10"}, [("p", "inconsistent")]),
         ({"t": "2.20", "df": "26"}, [("df", "inconsistent")]),

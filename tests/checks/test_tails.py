@@ -153,3 +153,18 @@ def test_chi2_without_df_has_those_of_its_table():
     # R 4.2: pchisq(12.1, 2, lower = F) = .00236
     assert finding("p-from-chi2", claim("chi2-test", chi2="12.1", p=".002"), *counts).verdict == "agrees"
     assert finding("p-from-chi2", claim("chi2-test", chi2="12.1", p=".20"), *counts).verdict == "conditional"
+
+
+def test_two_rare_readings_are_not_combined():
+    # R: pf(17.28, 1, 4, lower = FALSE) = .01418; the χ² tail with the floor of .001 would hold .001
+    wrong = claim("F-test", F="17.28", df1="1", df2="4", p=".001")
+    assert finding("p-from-F", wrong).verdict == "inconsistent"
+    floored = claim("F-test", F="47.28", df1="1", df2="40", p=".001")
+    assert finding("p-from-F", floored).verdict == "conditional"
+
+
+def test_heterogeneity_has_no_exact_p():
+    # R: pchisq(14.4, 5, lower = FALSE) = .01326
+    told = {"chi2": "14.4", "df": "5", "p": ".007"}
+    assert finding("p-from-chi2", claim("chi2-test", **told)).verdict == "conditional"
+    assert finding("p-from-chi2", claim("chi2-test", "heterogeneity", **told)).verdict == "inconsistent"

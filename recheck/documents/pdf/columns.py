@@ -18,11 +18,15 @@ _ALIKE = 0.72
 
 @dataclass(frozen=True, slots=True)
 class Gutter:
-    """A vertical strip that text keeps clear of; `rows` is the number of lines that say so."""
+    """A vertical strip that text keeps clear of; `rows` is the number of lines that say so.
+
+    `ruled` tells that tables side by side show it by their rules.
+    """
 
     left: float
     right: float
     rows: int
+    ruled: bool = False
 
     @property
     def middle(self) -> float:
@@ -191,7 +195,8 @@ def arranged(words: Words, chosen: NDArray[np.intp], own: list[Gutter], agreed: 
     edges = [left, *(x for gutter in gutters for x in (gutter.left, gutter.right)), right]
     bounds: list[tuple[float, float]] = []
     columns: list[int] = []
-    for members, column in _in_order(pieces, left, right, len(gutters) + 1):
+    ruled = any(gutter.ruled for gutter in gutters)
+    for members, column in _in_order(pieces, len(gutters) + 1, ruled):
         for piece in members:
             regions[pieces.words[piece]] = len(bounds)
         bounds.append((left, right) if column < 0 else (edges[2 * column], edges[2 * column + 1]))
@@ -239,13 +244,13 @@ def _pieces(
     return _Pieces(parts, base, column, widths / ((right - left) / (len(gutters) + 1)))
 
 
-def _in_order(pieces: _Pieces, left: float, right: float, count: int) -> list[tuple[NDArray[np.intp], int]]:
+def _in_order(pieces: _Pieces, count: int, ruled: bool) -> list[tuple[NDArray[np.intp], int]]:
     """Regions in reading order: what runs across, then the columns down to what runs across next."""
     order = np.argsort(pieces.base, kind="stable")
     across = pieces.column[order] == -1
     found: list[tuple[NDArray[np.intp], int]] = []
     for part in np.split(order, np.flatnonzero(np.diff(across)) + 1):
-        if pieces.column[part[0]] == -1 or _is_spread(pieces, part, found):
+        if pieces.column[part[0]] == -1 or (not ruled and _is_spread(pieces, part, found)):
             if found and found[-1][1] == -1:
                 found[-1] = (np.concatenate((found[-1][0], part)), -1)
             else:

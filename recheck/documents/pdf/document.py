@@ -17,9 +17,10 @@ from recheck.documents.pdf.furniture import furniture
 from recheck.documents.pdf.glyphs import Engine, Glyphs, Unopened, sideways, upright
 from recheck.documents.pdf.joining import put_together
 from recheck.documents.pdf.kinds import classified
-from recheck.documents.pdf.lines import Line, lines_of
+from recheck.documents.pdf.lines import Line, hosts_of, lines_of
 from recheck.documents.pdf.mending import mended
 from recheck.documents.pdf.passages import passages_of, title_of
+from recheck.documents.pdf.ruled_columns import ruled_gutters
 from recheck.documents.pdf.tables.captions import captions_of
 from recheck.documents.pdf.tables.page_tables import PageTable, page_tables, with_cells
 from recheck.documents.pdf.tables.parts import joined_tables, marked, tables_of, unread
@@ -77,7 +78,9 @@ def pages_read(pages: list[Glyphs]) -> tuple[list[Line], list[Line], list[PageTa
     words = [words_of(level) for _, level in turned]
     masks = furniture(words)
     chosen = [np.flatnonzero(~mask) for mask in masks]
-    own = [gutters_of(page, mine) for page, mine in zip(words, chosen, strict=True)]
+    own = [
+        gutters_of(page, mine) or ruled_gutters(page, mine) for page, mine in zip(words, chosen, strict=True)
+    ]
     agreed = agreed_gutters(own)
     lines: list[Line] = []
     surroundings: list[Line] = []
@@ -101,10 +104,11 @@ def _page(
     shown: Glyphs, words: Words, mask: NDArray[np.bool_], arrangement: Arrangement
 ) -> tuple[list[Line], list[Line], list[PageTable]]:
     """The lines of one page outside tables, those that surround the text, and the tables."""
-    lines = lines_of(shown, words, arrangement)
-    tables, changed = page_tables(shown.page, words, mask, arrangement, lines)
+    host = hosts_of(words, arrangement)
+    lines = lines_of(shown, words, arrangement, host)
+    tables, changed = page_tables(shown.page, words, mask, host, arrangement, lines)
     if tables:
-        lines = with_cells(tables, lines_of(shown, words, changed))
+        lines = with_cells(tables, lines_of(shown, words, changed, host))
     around = [line for line in lines if line.region == changed.around]
     return [line for line in lines if line.region != changed.around], around, tables
 

@@ -45,7 +45,7 @@ def _neighbours(
     index = small[one]
     size = words.size[big]
     rise = (words.base[big] - words.base[index]) / size
-    near = (words.size[index] < _SMALL * size) & (rise < 0.75) & (rise > -0.5) & (np.abs(rise) > 0.07)
+    near = (words.size[index] < _SMALL * size) & (rise < 0.75) & (rise > -0.52) & (np.abs(rise) > 0.07)
     follows, leads = (words.x0[index] - words.x1[big]) / size, (words.x0[big] - words.x1[index]) / size
     distance = np.where((follows > -0.4) & (follows < 0.45), np.abs(follows), np.inf)
     distance = np.where((leads > -0.1) & (leads < 0.2), np.minimum(distance, np.abs(leads) + 0.3), distance)

@@ -45,12 +45,20 @@ class Line:
     italic: float
 
 
-def lines_of(shown: Glyphs, words: Words, arrangement: Arrangement) -> list[Line]:
+def hosts_of(words: Words, arrangement: Arrangement) -> NDArray[np.intp]:
+    """For each word of a page the one that it is an index of, or itself."""
+    chosen = np.flatnonzero(arrangement.regions >= 0)
+    if not len(chosen):
+        return np.arange(len(words))
+    return hosts(words, chosen, arrangement.regions == arrangement.around)
+
+
+def lines_of(shown: Glyphs, words: Words, arrangement: Arrangement, host: NDArray[np.intp]) -> list[Line]:
     """Set the words of a page in lines, in reading order; words of region -1 are left out."""
     chosen = np.flatnonzero(arrangement.regions >= 0)
     if not len(chosen):
         return []
-    host = hosts(words, chosen, arrangement.regions == arrangement.around)
+    host = np.where(arrangement.regions[host] >= 0, host, np.arange(len(words)))
     regions = arrangement.regions[host]
     line = _line_numbers(words, chosen, host, regions)
     _adopt_strays(words, chosen, line, regions)

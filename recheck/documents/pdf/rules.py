@@ -85,3 +85,17 @@ def _joined(pieces: NDArray[np.float64]) -> NDArray[np.float64]:
         else:
             found.append([start, end, at])
     return np.array(sorted(found, key=lambda rule: (rule[2], rule[0])), np.float64).reshape(-1, 3)
+
+
+def side_by_side(bands: NDArray[np.float64]) -> NDArray[np.float64]:
+    """Bands (n, 4), those that were drawn cell by cell in one row joined."""
+    order = np.lexsort((bands[:, 0], np.round(bands[:, 3]), np.round(bands[:, 1])))
+    found: list[list[float]] = []
+    for left, top, right, bottom in bands[order].tolist():
+        last = found[-1] if found else None
+        same = last is not None and abs(last[1] - top) < 1 and abs(last[3] - bottom) < 1
+        if last is not None and same and left <= last[2] + _JOINED:
+            last[2] = max(last[2], right)
+        else:
+            found.append([left, top, right, bottom])
+    return np.array(found, np.float64).reshape(-1, 4)

@@ -7,7 +7,7 @@ from dataclasses import replace
 
 from recheck.model import ClaimKind, Printed
 from recheck.reading.tables.bundles import DEGREES, EFFECTS, STATISTICS, Bundle
-from recheck.reading.tables.compared import SAME_COLUMN, Link, link_of
+from recheck.reading.tables.compared import SAME_COLUMN, SAME_COLUMNS, Link, link_of
 from recheck.reading.tables.frame import Found, Frame, claim_of, star_of
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.links import as_group
@@ -29,7 +29,8 @@ def claims_of(frame: Frame, found: Sequence[Found]) -> list[Found]:
     start = frame.sheet.rows.start
     for rows in _rows_of_tests(frame):
         for column in frame.sheet.columns:
-            test = _of_column(frame, by_column.get(column, []), rows, column, range(start, rows[0]))
+            over = [item for c in _under(frame, rows, column) for item in by_column.get(c, [])]
+            test = _of_column(frame, over, rows, column, range(start, rows[0]))
             made += [test] if test is not None else []
         start = rows[-1] + 1
     compared = {one for test in made for one in test.claim.groups}
@@ -59,6 +60,26 @@ def _label(frame: Frame, row: int) -> Told | None:
     return told(path[-1]) if path else None
 
 
+def _under(frame: Frame, rows: Sequence[int], column: int) -> range:
+    """The columns that the cells of a test span, if all do: `t` printed once below two groups."""
+    spans = {
+        slot.cell.column_span
+        for row in rows
+        if (slot := frame.sheet.slot(row, column)) and slot.cell.column == column
+    }
+    return range(column, column + (spans.pop() if len(spans) == 1 else 1))
+
+
+def _only_one(frame: Frame, rows: Sequence[int], column: int) -> bool:
+    """Whether the columns beside have numbers above but no test: the one test may be of all columns, whose cell nobody marked."""
+    others = [c for c in frame.sheet.columns if c != column]
+    tested = any(piece.numbers for row in rows for c in others for piece in frame.pieces(row, c))
+    above = range(frame.sheet.rows.start, rows[0])
+    return not tested and any(
+        piece.numbers for row in above for c in others for piece in frame.pieces(row, c)
+    )
+
+
 def _of_column(
     frame: Frame, over: Sequence[Found], rows: Sequence[int], column: int, above: range
 ) -> Found | None:
@@ -78,12 +99,15 @@ def _of_column(
     members = [
         item for item in over if item.claim.kind == "group-summary" and item.row in above and not fitted
     ]
-    link = _link(frame, members, values, kind)
+    spanned = len(_under(frame, rows, column)) > 1
+    link = (_link_across if spanned else _link)(frame, members, values, kind)
     supported = values.keys() & (DEGREES | {"p"}) or _marked(frame, rows)
     if not (link.groups if kind == "estimate" else supported):
         return None
+    name = frame.group(column).name or frame.sheet.column_header(column).last
+    outcome = None if spanned or (members and _only_one(frame, rows, column)) else name
     return claim_of(
-        frame, kind, values, rows[0], (column,), rows=tuple(rows), outcome=frame.group(column).name or frame.sheet.column_header(column).last,
+        frame, kind, values, rows[0], (column,), rows=tuple(rows), outcome=outcome,
         stated=said_of(kind, numbers.stated, frame.legend.stated, several=len(link.groups) > 2), notes=(link.note,) if link.note else (),
         groups=link.groups, link=link.basis, link_confidence=link.confidence,
     )  # fmt: skip
@@ -125,3 +149,14 @@ def _link(frame: Frame, members: Sequence[Found], values: dict[str, Printed], ki
         for item, path in zip(members, paths, strict=True)
     ]
     return link_of(frame, renamed, Bundle((), ()), values, kind, SAME_COLUMN)
+
+
+def _link_across(frame: Frame, members: Sequence[Found], values: dict[str, Printed], kind: ClaimKind) -> Link:
+    """The summaries above a test that spans their columns: one in each, all of one row."""
+    if len({item.row for item in members}) != 1 or len({item.columns for item in members}) != len(members):
+        return Link()
+    named = [
+        replace(item, claim=replace(item.claim, group=item.claim.group or item.claim.outcome))
+        for item in members
+    ]
+    return link_of(frame, named, Bundle((), ()), values, kind, SAME_COLUMNS)

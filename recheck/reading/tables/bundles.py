@@ -66,7 +66,7 @@ def bundles_of(frame: Frame) -> tuple[Bundle, ...]:
         if role is None or not set(role.quantities) <= _JOINING:
             found.append(current)
             current = []
-        elif current and not _joins(current, column, roles):
+        elif current and (not _joins(current, column, roles) or _p_before(current, column, roles)):
             found.append(current)
             current = [column]
         else:
@@ -98,6 +98,21 @@ def _joins(current: list[int], column: int, roles: Mapping[int, Role]) -> bool:
         return _se_has_owner(told, held)
     # U and W are given with their z; r after another statistic is its effect size; a Wald χ² stands beside b.
     return bool(main <= {"u", "w"} and told & {"z", "r"}) or (told == {"r"} and "r" not in main)
+
+
+def _p_before(current: list[int], column: int, roles: Mapping[int, Role]) -> bool:
+    """Whether a statistic behind a p has a p of its own: `F | Sig. | t | df | Sig. (2-tailed)`, the first being Levene's."""
+    held = {q for c in current for q in roles[c].quantities}
+    following = [roles[c] for c in range(column + 1, column + _NEAR) if c in roles]
+    return (
+        held <= {"p"} | DEGREES
+        and "p" in held
+        and bool(set(roles[column].quantities) & STATISTICS)
+        and any("p" in role.quantities for role in following)
+    )
+
+
+_NEAR = 4
 
 
 def _groups_differ(last: Role, new: Role, told: set[str]) -> bool:

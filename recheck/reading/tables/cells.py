@@ -155,7 +155,12 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
             if fits(values, piece.numbers[0])
             else None
         )
-    if len(quantities) == 1 and quantities[0] in RATIOS and piece.shape == "triple" and _speaks_of_intervals(frame):
+    if (
+        len(quantities) == 1
+        and quantities[0] in RATIOS
+        and piece.shape == "triple"
+        and _speaks_of_intervals(frame)
+    ):
         values_ = matched(piece, (*quantities, "ci_low", "ci_high"))
         return Cell(values_, row, column, piece, "legend", stated=role.stated, n=role.n) if values_ else None
     if quantities == ("median",) and piece.shape == "triple":

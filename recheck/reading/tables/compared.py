@@ -29,6 +29,7 @@ class Link:
 SAME_ROW = "the same row of the table"
 SAME_ROWS = "the rows of the table beside which the test stands"
 SAME_COLUMN = "the same column of the table"
+SAME_COLUMNS = "the columns of the table below which the test stands"
 _OTHER_GROUPS = "the row has other groups than the test compares"
 _OTHER_TEST = "the heading of the test names something else than the groups of the row"
 
@@ -42,7 +43,8 @@ def link_of(
     basis: str,
 ) -> Link:
     """Choose those of the summaries beside a test that it compares; none where that is not sure."""
-    chosen = [member for member in _of_one_kind(members, kind) if not everyone(member.claim)]
+    beside = _of_one_kind(members, kind)
+    chosen = [member for member in beside if not everyone(member.claim) or _smaller(member, beside)]
     if len(chosen) < 2:
         return Link()
     said = " ".join(dict.fromkeys(text for text in (bundle.group, bundle.name) if text))
@@ -112,8 +114,8 @@ def _whole_sample() -> regex.Pattern[str]:
     return regex.compile(
         r"(?:the )?(?:total|all|overall|whole|entire|full|combined|pooled|both|complete|average|mean over|grand mean)\b(?: (?:the|sample|groups?|cohort|population"
         r"|patients|participants|subjects|samples|data|loaves|bakers|n))*[\s.:*]*$|(?:study )?(?:sample|population|cohort)$"
-        r"|(?:mean |average |total )?(?:across|averaged? over|pooled|entire|(?:mean|average|total) of|grand (?:mean|average|total))\b"
-        r"|(?:mean |average |total )?(?:in |of |for |over )?(?:both|all)(?: (?:of|the|two|three|four|five|six))* \p{L}+s$"
+        r"|(?:mean |average |total )?(?:across|averaged? over|entire|(?:mean|average|total) of|grand (?:mean|average|total))\b"
+        r"|(?:mean |average |total )?(?:in |of |for |over )?(?:both|all)(?: (?:of|the|two|three|four|five|six))* (?!others|controls)\p{L}+s$"
         r"|.*\b(?:across (?:all|both|the)\b|(?:combined|pooled|taken together|averaged|collapsed)$)",
         regex.IGNORECASE,
     )
@@ -123,6 +125,13 @@ def everyone(claim: Claim) -> bool:
     """Whether a summary is about all groups together."""
     levels = (claim.group or "").split(" | ")
     return any(_whole_sample().match(level.strip(), timeout=TIMEOUT) for level in levels)
+
+
+def _smaller(member: Found, members: Sequence[Found]) -> bool:
+    """Whether a column that is named like the whole has fewer cases than another: `Both loaves` beside `Rye`, `Wheat`."""
+    size = member.claim.values.get("n")
+    others = [other.claim.values["n"] for other in members if "n" in other.claim.values]
+    return size is not None and any(size.value < other.value for other in others)
 
 
 _CHANGES = words(

@@ -41,7 +41,9 @@ def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
 
 def _of_the_mean(frame: Frame, unit: Unit) -> bool:
     """Whether an SE stands under `standard error of the mean`: that of what was measured, not of the difference."""
-    heads = [frame.sheet.column_header(cell.column).last.lower() for cell in unit.cells if "se" in cell.values]
+    heads = [
+        frame.sheet.column_header(cell.column).last.lower() for cell in unit.cells if "se" in cell.values
+    ]
     return any("of mean" in head or "of the mean" in head for head in heads) and not any(
         "difference" in head for head in heads
     )

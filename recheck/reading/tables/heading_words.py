@@ -88,7 +88,9 @@ def _canonical() -> tuple[tuple[regex.Pattern[str], str], ...]:
         (regex.compile(r"\b(?:Exp|exp|EXP) ?\( ?[BbβΒ] ?\)"), "ExpB"),
         (regex.compile(r"\bPr(?:ob)?\.? ?(?:\( ?)?> ?\|?(?:[tzF]|χ²|Chi ?Sq)\|?(?: ?\))?"), "p"),
         (regex.compile(r"\(([12])-t\)"), r"(\1-tailed)"),
-        (regex.compile(r"^F ?(\d{1,2}) ?, ?(\d{1,4}(?:\.\d+)?)$"), r"F(\1,\2)"),
+        (regex.compile(r"\b[dD][fF]_?\(?(num|den|effect|error|between|within|residual)\b\)?"), r"df \1"),
+        (regex.compile(r"\b(?:df|d\.f\.|DF)_?₁"), "df1"),
+        (regex.compile(r"\b(?:df|d\.f\.|DF)_?₂"), "df2"),
         (regex.compile(r"(?<=\d) ?% ?(?:CI|C\.I\.|[Cc]onfidence [Ii]ntervals?)"), "% CI"),
         # French and German: `IC à 95 %`, `95 %-KI`.
         (

@@ -165,15 +165,10 @@ class _Parser:
     def _letter_of_name(self, at: int, after: int) -> bool:
         """Whether a letter is part of a name: `Group B`, `β:α`, `Q/R`."""
         before, letter = self.line.at(at - 1), self.line.at(at).text
-        named = (
-            letter.isupper()
-            and letter not in "PN"
-            and before.low in KINDS
-            and not self._spread_follows(after)
-        )
+        kind = letter.isupper() and letter not in "PN" and before.low in KINDS
         behind = self.line.at(after)
         return (
-            named
+            (kind and not self._spread_follows(after))
             or ":" in (before.text, behind.text)
             or (before.text == "/" and _capitals(self.line.at(at - 2).text, letter))
             or (behind.text == "/" and _capitals(letter, self.line.at(after + 1).text))
@@ -250,7 +245,12 @@ class _Parser:
         long = len(word.text) > 1 or item.after - item.first > 1
         if self._after_sign(item.first) or (item.quantity == "mean" and self.line.at(item.after).text == "±"):
             return True
-        if item.quantity in ("sd", "se") and long and item.first == first and self.line.at(item.after).low == "of":
+        if (
+            item.quantity in ("sd", "se")
+            and long
+            and item.first == first
+            and self.line.at(item.after).low == "of"
+        ):
             return True
         if word.text == "M" and item.after == after and self._spread_follows(after):
             return True

@@ -12,7 +12,15 @@ from recheck.model import N_OF_GROUP, Printed
 from recheck.reading.numerals import printed
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.headings import told
-from recheck.reading.tables.matrix_layout import Matrix, matrix_of, numbered, pieces_of, row_part, variable
+from recheck.reading.tables.matrix_layout import (
+    Matrix,
+    below_first,
+    matrix_of,
+    numbered,
+    pieces_of,
+    row_part,
+    variable,
+)
 from recheck.reading.tables.row_numbers import not_significant
 from recheck.reading.tables.saying import said_of
 from recheck.reading.tables.values import Piece
@@ -128,10 +136,19 @@ def _coefficient(frame: Frame, matrix: Matrix, row: int, column: int, *, sized: 
         values |= interval_level(frame, (column,))
     stated = said_of("correlation", role.stated if role else (), frame.legend.stated)
     outcome = f"{variable(frame, row)} – {matrix.names[column]}"
-    return claim_of(
+    made = claim_of(
         frame, "correlation", values, row, (column,), rows=tuple(rows) if len(rows) > 1 else (), outcome=outcome, stated=stated,
         interval_of="r" if "ci_low" in values else None, notes=notes, sure=matrix.sure,
     )  # fmt: skip
+    return _under_own_name(frame, matrix, made, row)
+
+
+def _under_own_name(frame: Frame, matrix: Matrix, made: Found, row: int) -> Found:
+    """A coefficient placed in the row of its variable alone, where the first row of the triangle looks like a heading."""
+    if not below_first(frame, row, matrix.twins.values()) or made.claim.place.row is None:
+        return made
+    place = replace(made.claim.place, row=made.claim.place.row.rpartition(" | ")[2])
+    return replace(made, claim=replace(made.claim, place=place))
 
 
 def _rows_below(frame: Frame, row: int) -> Iterator[int]:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import cache
 
@@ -208,16 +208,17 @@ def _name(frame: Frame, column: int, twins: Mapping[int, int]) -> str:
     return match["name"] if match and match["name"] else head
 
 
-def variable(frame: Frame, row: int) -> str:
-    """The name of a row without its number and without the words for the coefficient.
-
-    The first row of a triangle, which holds no number, is no heading of those below it.
-    """
-    variables = {
-        frame.sheet.row_header(r).path[-1:] for r in frame.sheet.rows if frame.sheet.is_subheading(r)
-    }
+def below_first(frame: Frame, row: int, variables: Iterable[int]) -> bool:
+    """Whether the row's outer name is that of one of these rows which holds no number, the first of a triangle."""
     path = frame.sheet.row_header(row).path
-    inner = len(path) > 1 and path[:1] in variables
+    return len(path) > 1 and any(
+        frame.sheet.row_header(r).path[-1:] == path[:1] for r in variables if frame.sheet.is_subheading(r)
+    )
+
+
+def variable(frame: Frame, row: int) -> str:
+    """The name of a row without its number and without the words for the coefficient."""
+    path, inner = frame.sheet.row_header(row).path, below_first(frame, row, frame.sheet.rows)
     own = (told(path[-1]).name if inner else frame.row_name(row)) or frame.sheet.row_header(row).last
     parts = []
     for part in own.split(" | "):

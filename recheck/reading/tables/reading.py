@@ -10,6 +10,7 @@ from recheck.reading.context import Setting
 from recheck.reading.tables import beneath, matrices, regression, row_tests, sources
 from recheck.reading.tables.counts import counts_of, whole_numbers
 from recheck.reading.tables.estimates import estimates_of
+from recheck.reading.tables.folding import folded
 from recheck.reading.tables.foreign import of_other_studies
 from recheck.reading.tables.frame import Found, Frame, frame_of
 from recheck.reading.tables.grid import sheets_of
@@ -48,7 +49,7 @@ def read_table(table: Table, setting: Setting, read_text: ReadText | None = None
     legend = legend_of(table)
     found: list[Found] = []
     unnamed = 0
-    for sheet in sheets_of(unfolded(table)):
+    for sheet in sheets_of(folded(unfolded(table), legend)):
         frame = frame_of(sheet, legend, setting)
         claims = _block(frame, read_text)
         found += claims

@@ -6,7 +6,8 @@ from collections.abc import Callable, Sequence
 from dataclasses import replace
 
 from recheck.model import Claim
-from recheck.reading.tables.frame import Found, Frame, claim_of
+from recheck.reading.behind import UNLABELLED
+from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
 from recheck.reading.tokens import DIGITS
 from recheck.reading.views import View
 
@@ -36,9 +37,15 @@ def told_in_cells(frame: Frame, found: Sequence[Found], read_text: ReadText) -> 
 
 
 def _at_cell(frame: Frame, claim: Claim, row: int, column: int) -> Found:
+    role = frame.roles.get(column)
+    values, notes, sure = dict(claim.values), claim.notes, claim.confidence == "high"
+    if UNLABELLED in notes and role is not None and "ci_low" in role.quantities:
+        # `RR 0.77 (0.25 to 2.38)` under `Relative effect (95% CI)`: the heading says what prose would have to.
+        notes, sure = tuple(note for note in notes if note != UNLABELLED), len(notes) == 1
+        values |= interval_level(frame, (column,))
     made = claim_of(
-        frame, claim.kind, claim.values, row, (column,), outcome=claim.outcome or frame.row_name(row, column),
-        group=claim.group or frame.group(column).name, stated=claim.stated, interval_of=claim.interval_of, notes=claim.notes,
+        frame, claim.kind, values, row, (column,), outcome=claim.outcome or frame.row_name(row, column),
+        group=claim.group or frame.group(column).name, stated=claim.stated, interval_of=claim.interval_of, notes=notes,
     )  # fmt: skip
-    confidence = claim.confidence if claim.confidence != "high" else made.claim.confidence
+    confidence = made.claim.confidence if sure else claim.confidence
     return replace(made, claim=replace(made.claim, confidence=confidence))

@@ -10,6 +10,7 @@ from recheck.reading.tables.grid import Header, Sheet
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.legend import Legend
 from recheck.reading.tables.values import Piece
+from recheck.reading.tokens import words
 
 
 @dataclass(frozen=True, slots=True)
@@ -124,10 +125,31 @@ def size_told(legend: Legend, names: Sequence[str]) -> Printed | None:
     for name in (*plain, *(name.removeprefix("in ") for name in plain)):
         if name in legend.ns:
             return legend.ns[name]
-        ending = [n for words, n in legend.ns.items() if words.endswith(f" {name}")]
-        if len(ending) == 1 and len(name) >= _SHORTEST_NAME:
+        ending = [
+            n
+            for told_, n in legend.ns.items()
+            if told_.endswith(f" {name}") and _leads(told_, name) and not _listed(told_, name)
+        ]
+        if len(legend.ns) > 1 and len(ending) == 1 and len(name) >= _SHORTEST_NAME:
             return ending[0]
     return None
+
+
+_LEADS = words(
+    "the a and or in on with for of by as to from group groups using received given versus vs than were was"
+)
+
+
+def _leads(text: str, name: str) -> bool:
+    """Whether the word before a name only leads to it: `working alone`, `in the malt`; not `no malt`, `late treatment`."""
+    before = text.removesuffix(name).split()[-1:]
+    return bool(before) and (before[0] in _LEADS or before[0].endswith("ing"))
+
+
+def _listed(text: str, name: str) -> bool:
+    """Whether a name only ends a list whose n is that of all: `scores before and after (N = 21)`."""
+    before = text.removesuffix(name).split()
+    return len(before) > 1 and (before[-1] in ("and", "or", "&") or before[-1].endswith(","))
 
 
 _SHORTEST_NAME = 3
@@ -237,10 +259,9 @@ def letters_as_names(letters: Iterable[str]) -> frozenset[str]:
 
 
 def _letter(header: Header) -> str:
-    """The single letter that a heading consists of at one of its levels, "" where there is none."""
-    return next(
-        (text for level in header.path if len(text := level.strip(" .*")) == 1 and text.isalpha()), ""
-    )
+    """The single letter that a heading consists of at one of its levels or ends with in brackets, "" where there is none."""
+    ends = (level[-2:-1] if level[-3:-2] == "(" and level[-1:] == ")" else level for level in header.path)
+    return next((text for end in ends if len(text := end.strip(" .*")) == 1 and text.isalpha()), "")
 
 
 # -- matching numbers with names ------------------------------------------------------------------------

@@ -69,9 +69,13 @@ def numbers_of(frame: Frame, row: int, bundle: Bundle) -> Numbers:
         if "ci_low" in given and found.ends_of is None:
             found.ends_of = _owner(given, role, last)
         named = [q for q in given if q in _OWNERS]
-        last = named[-1] if named else (last if set(given) <= ENDS | {"se"} else "")
+        last = named[-1] if named else (last if set(given) <= _PASSED else "")
     complete(found, bundle.roles, frame)
     return found
+
+
+_PASSED = ENDS | DEGREES | {"se", "p", "stars"}
+"""What may stand between a number and its interval: `difference | SE | p | 95% CI`."""
 
 
 def _owner(given: dict[str, Printed], role: Role, last: str) -> str | None:

@@ -117,7 +117,8 @@ def _test(
     values, notes = _sized(frame, numbers.values, kind, bundle)
     if kind != "correlation" and "r" in values:
         numbers.stated.append("effect-size-r")
-    outcome = frame.row_name(row)
+    # `A × B` is made of letters that are symbols elsewhere.
+    outcome = frame.row_name(row) or frame.sheet.row_header(row).last
     return claim_of(
         frame, kind, values, row, numbers.columns, outcome=outcome.rpartition(" | ")[0] if names_groups else outcome,
         group=bundle.group if kind == "correlation" else None,

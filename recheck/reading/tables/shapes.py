@@ -81,5 +81,7 @@ NAMES_LEVELS = regex.compile(
     regex.IGNORECASE,
 )
 """The heading of a column that tells the level or the time of each row."""
-JUDGES = regex.compile(r"^(?:certainty|quality of|strength of|GRADE\b|importance|risk of bias)", regex.IGNORECASE)
+JUDGES = regex.compile(
+    r"^(?:certainty|quality of|strength of|GRADE\b|importance|risk of bias)", regex.IGNORECASE
+)
 """The heading of a column that judges the evidence of each row."""

@@ -190,7 +190,7 @@ def _effect(
         values["ss_total"] = total
     stated = said_of("F-test", line.numbers.stated, frame.legend.stated, several=True)
     made = claim_of(
-        frame, "F-test", values, line.row, line.numbers.columns, outcome=frame.row_name(line.row), stated=stated,
+        frame, "F-test", values, line.row, line.numbers.columns, outcome=frame.row_name(line.row) or frame.sheet.row_header(line.row).last, stated=stated,
         interval_of=line.numbers.ends_of, notes=line.numbers.notes, sure=term is None or only or _quotient_fits(line, term),
     )  # fmt: skip
     return Found(made.claim, line.row, made.columns)

@@ -653,3 +653,67 @@ def test_a_value_that_runs_on_below_and_a_row_without_a_name(engine):
         return y + 110
 
     assert the_table(opened(pdf(page_with(bottom)), reader=engine)).doubts
+
+
+def test_two_tables_side_by_side_with_little_text(engine):
+    left, right = BASELINE[:4], [("Flour", "n", "p"), ("Rye", "41", ".04"), ("Wheat", "37", ".31")]
+    one = Drawn((60, 150, 205, 260), "lccc", left=55, right=285, size=6)
+    two = Drawn((315, 430, 500), "lcc", left=310, right=540, size=6)
+
+    def page(canvas):
+        line(canvas, 60, 60, "Table 1. Apprentices before the training, by bench", size=8)
+        one.draw(canvas, 80, left)
+        line(canvas, 315, 66, "Table 2. Doughs that were baked", size=8)
+        two.draw(canvas, 86, right)
+
+    first, second = opened(pdf(page), reader=engine).tables
+    assert (grid(first), grid(second)) == (wanted(left), wanted(right))
+    assert (first.label, second.label) == ("Table 1", "Table 2")
+    assert first.caption.text == "Table 1. Apprentices before the training, by bench"
+
+
+def test_wrapped_cells_at_the_bottom_of_their_rows(engine):
+    """Lines of one row stand closer than rows: the name is beside the last line of the values."""
+    drawn = Drawn((60, 220, 330, 420), "llll", rules=())
+    heights = (0, 20, 29, 49, 58, 78, 87)
+    lines = [
+        ("Trait", "Rye", "Wheat", "p"),
+        (None, "0.43 \u00b1", "0.48 \u00b1", None), ("Growth", "0.02 (7)", "0.02 (6)", ".003"),
+        (None, "11.3 \u00b1", "12.8 \u00b1", None), ("Yield", "0.47 (7)", "0.41 (8)", ".011"),
+        ("Lactate,", "32.4 \u00b1", "34.0 \u00b1", None), ("mmol", "1.57 (6)", "1.74 (7)", ".27"),
+    ]  # fmt: skip
+
+    def draw(canvas, y):
+        for height, row in zip(heights, lines, strict=True):
+            for column, text in enumerate(row):
+                if text:
+                    drawn.cell(canvas, column, y + height, text)
+        for height in (-9, 6, 92):
+            drawn.rule(canvas, y + height)
+        return y + 100
+
+    table = the_table(opened(pdf(page_with(draw)), reader=engine))
+    assert grid(table)[1:] == [
+        ["Growth", "0.43 \u00b1 0.02 (7)", "0.48 \u00b1 0.02 (6)", ".003"],
+        ["Yield", "11.3 \u00b1 0.47 (7)", "12.8 \u00b1 0.41 (8)", ".011"],
+        ["Lactate, mmol", "32.4 \u00b1 1.57 (6)", "34.0 \u00b1 1.74 (7)", ".27"],
+    ]
+    assert table.doubts == ()
+
+
+def test_a_header_over_sub_headers_that_repeat(engine):
+    drawn = Drawn((60, 200, 260, 340, 400, 480), "lccccc", rules=(0, 2, -1))
+    rows = [
+        ("Flour", None, None, None, None, None), (None, "n", "%", "n", "%", "All"),
+        ("White", "15", "33.3", "29", "40.8", "44"), ("Mixed", "15", "33.3", "24", "33.8", "39"),
+        ("Rye", "15", "33.3", "18", "25.4", "33"),
+    ]  # fmt: skip
+
+    def draw(canvas, y):
+        end = drawn.draw(canvas, y, rows)
+        for x, text in ((248, "Coast"), (388, "Plain")):
+            line(canvas, x, y, text, size=9)
+        return end
+
+    table = the_table(opened(pdf(page_with(draw)), reader=engine))
+    assert {name: spans(table)[name] for name in ("Coast", "Plain")} == {"Coast": 2, "Plain": 2}

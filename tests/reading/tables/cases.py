@@ -12,7 +12,7 @@ A case in `cases/*.txt` begins with `== name`. Then come, in this order,
         group-summary: mean = 4.1 | sd = 0.3 | outcome Rye
 
 In a cell `//` breaks the line, `^{2}` raises and `_{p}` lowers. A claim is written as in the passages; it may
-also name its `outcome`, its `group` and, divided by `;`, the groups of the summaries it is linked to (`of A ; B`).
+also name its `outcome`, its `group` (`>` divides levels of a name) and, divided by `;`, the groups of the summaries it is linked to (`of A ; B`).
 Claims in `caption:` and `note:` count as well. A case without claims must give none.
 """
 
@@ -153,7 +153,7 @@ def _wanted(line: str) -> Wanted:
     for part in rest.split(" | "):
         word, _, said = part.partition(" ")
         if word in ("outcome", "group", "of"):
-            own[word] = said
+            own[word] = said.replace(" > ", " | ")
         else:
             kept.append(part)
     of = tuple(name.strip() for name in own["of"].split(";") if name.strip()) if "of" in own else None

@@ -128,9 +128,9 @@ def test_tables_of_other_people_are_told_by_their_names() -> None:
     assert not of_other_studies(frame(head, "Census 2011 | 40 | 0.41", "Night shift | 96 | 0.22"))
 
 
-@pytest.mark.parametrize("name", [case.name for case in table_cases()])
+@pytest.mark.parametrize("name", [case.name for case in table_cases() if "wrong" not in case.name])
 def test_nothing_in_the_tables_is_called_wrong(name: str) -> None:
-    # The numbers of the set were computed from each other with scipy 1.17 and rounded once.
+    # Cases that say so in their name print a wrong number. Those of all others were computed from each other with scipy 1.17 and rounded once.
     document = document_of(next(case for case in table_cases() if case.name == name), "grid")
     findings = run_checks(read(document).claims, Settings())
     assert [finding.message for finding in findings if finding.verdict in DISCREPANT] == []

@@ -18,6 +18,7 @@ NARROWEST = 0.44
 """A strip of this share of the font size parts columns: word spaces stay below 0.4 em where text is not justified."""
 
 _SURE = 0.55
+_TOUCHING = 0.12
 _STEP = 0.25
 """Points from one sample to the next across the page."""
 
@@ -79,12 +80,9 @@ def _cover(row: Row, left: float, right: float) -> NDArray[np.bool_]:
     for at in own:
         cover[int((row.x0[at] - left) / _STEP) : ceil((row.x1[at] - left) / _STEP)] = True
     for one, two in pairwise(own):
-        # An index inside a cell, "9.6b (1.5)", keeps it together; stars at its end may hang out of the column.
-        if (
-            two > one + 1
-            and row.texts[two][0] in "(["
-            and row.x0[two] - row.x1[two - 1] < NARROWEST * row.size
-        ):
+        # An index inside a cell, "9.6b (1.5)" or "(h-1)", keeps it together; stars at its end may hang out of the column.
+        room = row.x0[two] - row.x1[two - 1]
+        if two > one + 1 and room < (NARROWEST if row.texts[two][0] in "([" else _TOUCHING) * row.size:
             cover[int((row.x0[one] - left) / _STEP) : ceil((row.x0[two] - left) / _STEP)] = True
     return cover
 

@@ -10,12 +10,13 @@ import numpy as np
 import regex
 from numpy.typing import NDArray
 
-from recheck.documents.pdf.rules import Rules
+from recheck.documents.pdf.rules import Rules, side_by_side
 from recheck.documents.pdf.tables.areas import Area
+from recheck.documents.pdf.tables.body_lines import Line, line_of
 from recheck.documents.pdf.tables.edges import NARROWEST, Columns, columns_of
 from recheck.documents.pdf.tables.heads import Headed, headed
 from recheck.documents.pdf.tables.notes import starts_note
-from recheck.documents.pdf.tables.rows import JOINED, Line, line_of, rows_joined
+from recheck.documents.pdf.tables.rows import JOINED, rows_joined
 from recheck.documents.pdf.tables.text_rows import Ground, Row, is_numeric
 
 NARROW = "two columns stand so close that they may be one"
@@ -98,7 +99,7 @@ def _inner_rules(area: Area, rules: Rules) -> _Inner:
         at for at, top, bottom in rules.upright.tolist()
         if area.left + 2 < at < area.right - 2 and min(bottom, area.bottom) - max(top, area.top) > 0.5 * height
     ]  # fmt: skip
-    bands = rules.bands
+    bands = side_by_side(rules.bands)
     wide = (bands[:, 2] - bands[:, 0] > 0.5 * width) & (bands[:, 3] - bands[:, 1] < 0.5 * height)
     wide &= (bands[:, 1] > area.top - 4) & (bands[:, 3] < area.bottom + 4)
     edges = sorted({round(float(y), 1) for band in bands[wide] for y in (band[1], band[3])})
@@ -156,7 +157,13 @@ def _head_count(rows: Sequence[Row], columns: Columns) -> int:
     if _is_data(lines[0]) and not _counts_up(lines[0]):
         return 0
     first = next(
-        (at for at in range(1, len(lines)) if _is_data(lines[at]) or _is_set_lower(lines[at - 1], lines[at])),
+        (
+            at
+            for at in range(1, len(lines))
+            if _is_data(lines[at])
+            or _is_set_lower(lines[at - 1], lines[at])
+            or (at + 1 < len(lines) and _is_set_higher(lines[at], lines[at + 1]))
+        ),
         1,
     )
     while first > 1 and set(lines[first - 1].cells) <= {0}:
@@ -177,6 +184,12 @@ def _is_data(line: Line) -> bool:
 def _is_set_lower(before: Line, line: Line) -> bool:
     """Whether a line holds the numbers of a label of two lines, set in the middle of them."""
     return set(before.cells) == {0} and not line.label and len(line.numbers) == len(line.cells)
+
+
+def _is_set_higher(line: Line, after: Line) -> bool:
+    """Whether a line holds the numbers of the label below it, that an index has moved down a little."""
+    close = after.row.base - line.row.base < 0.5 * line.row.size
+    return close and set(after.cells) == {0} and not line.label and len(line.numbers) == len(line.cells)
 
 
 def _counts_up(line: Line) -> bool:

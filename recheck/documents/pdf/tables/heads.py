@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from itertools import accumulate
 
 import numpy as np
+import regex
 
 from recheck.documents.pdf.tables.edges import Columns
 from recheck.documents.pdf.tables.text_rows import Row
@@ -63,10 +64,20 @@ def headed(rows: Sequence[Row], columns: Columns, under: Sequence[tuple[float, f
         below = found.levels[0] if found.levels else None
         heads = _heads(row, columns)
         ruled = _widened(heads, row, below, slots, under)
-        tiled = not ruled and below is not None and _tiled(heads, below, slots, row)
-        spanning = ruled or tiled or any(head.span > 1 for head in heads)
+        tiled = "" if ruled or below is None else _tiled(heads, below, slots, row)
+        spanning = ruled or bool(tiled) or any(head.span > 1 for head in heads)
         if below is None or (spanning and _covers(heads, below)):
-            if spanning and not ruled and not tiled and below is not None and not _stands_over(heads, slots):
+            if (
+                (
+                    spanning
+                    and not ruled
+                    and not tiled
+                    and below is not None
+                    and not _stands_over(heads, slots)
+                )
+                or tiled == "guess"
+                or (not ruled and below is not None and _may_be_wider(heads, below))
+            ):
                 found.doubts.append(SPANS)
             found.levels.insert(0, Level(heads, row.base))
         elif _is_apart(heads, below, row) or not _put_on_top(heads, below):
@@ -176,32 +187,96 @@ def _widened(
     return ruled
 
 
-def _tiled(heads: list[Head], below: Level, slots: _Slots, row: Row) -> bool:
-    """Let headers reach over the columns between them if each then stands in the middle of its own."""
+def _tiled(heads: list[Head], below: Level, slots: _Slots, row: Row) -> str:
+    """Let headers reach over the columns between them if each then stands in the middle of its own.
+
+    Gives "" if they do not, "sure", or "guess".
+    """
     base, size = row.base, row.size
     over = [head for head in heads if head.column > 0]
     if not over or not below.heads or all(_begins_with(head, below) for head in over):
-        return False
+        return ""
+    if _over_repeats(over, below, slots, size):
+        return "sure"
     if any(_is_open(head, below) for head in over):
-        return False
+        return ""
     last = max(len(slots.lefts) - 1, 0)
     columns = [c for c in range(1, last + 1) if below.at(c) is not None or any(h.column == c for h in over)]
     middles = np.array([(head.x0 + head.x1) / 2 for head in over])
     groups: list[list[int]] = [[] for _ in over]
     for column in columns:
         groups[int(np.abs(middles - slots.middle(column, column)).argmin())].append(column)
-    best = [_centred(head, group, slots, size) for head, group in zip(over, groups, strict=True)]
+    found = [_centred(head, group, slots, size) for head, group in zip(over, groups, strict=True)]
+    alike = [_over_alike(run, group, below) for run, group in zip(found, groups, strict=True)]
+    best = [one or two for one, two in zip(alike, found, strict=True)]
     if any(group is None or (len(group) < 2 and below.at(group[0]) is not None) for group in best):
-        return False
+        return ""
     if all(group is not None and len(group) < 2 for group in best):
-        return False
+        return ""
     # One header alone over the middle one of three may as well be the first line of that one.
     if len(over) == 1 and len(best[0] or ()) % 2 and below.base - base < 1.3 * size:
-        return False
+        return ""
     for head, group in zip(over, best, strict=True):
         if group:
             head.column, head.span = group[0], len(group)
+    return "guess" if any(alike) else "sure"
+
+
+def _over_repeats(over: Sequence[Head], below: Level, slots: _Slots, size: float) -> bool:
+    """Let headers reach over what repeats under them: "n", "%", "n", "%" under two; tells whether it does."""
+    under = [head for head in below.heads if head.column > 0]
+    texts = [head.text for head in under]
+    above = [head for head in over if below.at(head.column) is not None]
+    count = len(texts) // max(len(above), 1)
+    under, texts = under[: count * len(above)], texts[: count * len(above)]
+    if len(above) < 2 or count < 2 or texts != texts[:count] * len(above) or len(set(texts[:count])) < 2:
+        return False
+    places = [head.column for head in under]
+    if any(head.span > 1 for head in under) or places != list(range(places[0], places[0] + len(places))):
+        return False
+    starts = [places[0] + count * at for at in range(len(above))]
+    for head, start in zip(above, starts, strict=True):
+        middle = (head.x0 + head.x1) / 2
+        if not slots.lefts[start] - size < middle < slots.rights[start + count - 1] + size:
+            return False
+    for head, start in zip(above, starts, strict=True):
+        head.column, head.span = start, count
     return True
+
+
+def _over_alike(run: list[int] | None, group: list[int], below: Level) -> list[int] | None:
+    """A wider run around one over whose middle a header stands, where all headers under it are alike.
+
+    A first line that the one in the middle alone has would set it apart from its neighbours.
+    """
+    if not run or len(group) < len(run) + 2 or group != list(range(group[0], group[-1] + 1)):
+        return None
+    around = min(run[0] - group[0], group[-1] - run[-1])
+    wider = list(range(run[0] - around, run[-1] + around + 1))
+    under = [below.at(column) for column in wider]
+    shapes = {_shape(head.text) if head else "" for head in under}
+    return wider if around and len(shapes) == 1 and "" not in shapes else None
+
+
+def _may_be_wider(heads: Sequence[Head], below: Level) -> bool:
+    """Whether beside the columns of a header, under no other one, numbers of the same kind stand as under it."""
+    covered = {c for head in heads for c in range(head.column, head.column + head.span)}
+    for head in heads:
+        under = [below.at(c) for c in range(head.column, head.column + head.span)]
+        sides = [
+            below.at(c) for c in (head.column - 1, head.column + head.span) if c > 0 and c not in covered
+        ]
+        shapes = {_shape(one.text) for one in under if one}
+        if head.span > 1 and any(
+            one and _shape(one.text) in shapes and "1" in _shape(one.text) for one in sides
+        ):
+            return True
+    return False
+
+
+def _shape(text: str) -> str:
+    """A header with its words and numbers taken out."""
+    return regex.sub(r"\p{L}+", "a", regex.sub(r"\p{Nd}+(?:[.,]\p{Nd}+)?", "1", text))
 
 
 def _is_open(head: Head, below: Level) -> bool:

@@ -45,11 +45,18 @@ def note_rows(edges: Edges, cells: Sequence[Row], ground: Ground, lines: Sequenc
         if not found:
             if step > 2.6 * row.size or not (starts or row.size < 0.95 * sizes[len(sizes) // 2]):
                 break
-        elif abs(row.size - found[0].size) > 0.8 or step > (2.2 if starts else 1.5) * row.size:
+        elif (abs(row.size - found[0].size) > 0.8 and not _is_mark(found[-1], row)) or step > (
+            2.2 if starts else 1.5
+        ) * row.size:
             break
         found.append(row)
         base = row.base
     return found
+
+
+def _is_mark(mark: Row, row: Row) -> bool:
+    """Whether a row is but the raised mark of the note on the line below it."""
+    return len(mark.text) < 3 and mark.right < row.left + 2 and row.base - mark.base < 0.6 * row.size
 
 
 def _window(edges: Edges, lines: Sequence[Line]) -> tuple[float, float]:

@@ -50,9 +50,13 @@ class PageTable:
 
 
 def page_tables(
-    page: int, words: Words, mask: NDArray[np.bool_], arrangement: Arrangement, lines: Sequence[Line]
-) -> tuple[list[PageTable], Arrangement]:
-    """The tables of a page and the arrangement of what is left: their words taken out, captions and notes apart."""
+    page: int, words: Words, mask: NDArray[np.bool_], host: NDArray[np.intp], arrangement: Arrangement,
+    lines: Sequence[Line],
+) -> tuple[list[PageTable], Arrangement]:  # fmt: skip
+    """The tables of a page and the arrangement of what is left: their words taken out, captions and notes apart.
+
+    `host` tells for each word the one that it is an index of, or itself.
+    """
     captions = captions_of(lines)
     drawn = words.glyphs.drawn
     if not captions and not len(drawn):
@@ -60,7 +64,7 @@ def page_tables(
     rules = rules_of(drawn)
     if not captions and not len(rules.level):
         return [], arrangement
-    ground = Ground(words, np.flatnonzero(~mask))
+    ground = Ground(words, np.flatnonzero(~mask), host)
     found: list[tuple[Area, Grid]] = []
     for area in Finder(ground, rules, captions, lines).areas():
         grid = grid_of(area, ground, rules)

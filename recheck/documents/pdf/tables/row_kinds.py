@@ -6,6 +6,8 @@ from collections.abc import Sequence
 
 from recheck.documents.pdf.tables.text_rows import Row, is_numeric
 
+_RESTS = ("(", "[", "=", "±")
+
 
 def is_tabular(row: Row) -> bool:
     """Whether a row has cells: chunks with wide gaps between them, or numbers set apart."""
@@ -54,3 +56,24 @@ def has_prose(row: Row) -> bool:
         len(words) > 6 and sum(word.isalpha() and word.islower() for word in words) > 3
         for words in (chunk.text.split() for chunk in (chunks[1:] if numbers > 1 else chunks))
     )
+
+
+def ends_cells(row: Row, below: Row) -> bool:
+    """Whether all that stands in a line is the rest of cells of the line above: "(1.8)" under "10.0"."""
+    chunks = row.chunks(0.9)
+    for chunk in below.chunks(0.9):
+        over = next((one for one in chunks if one.x0 < chunk.x1 + 2 and one.x1 > chunk.x0 - 2), None)
+        if over is None or not ends(over.text, chunk.text):
+            return False
+    return True
+
+
+def ends(text: str, rest: str) -> bool:
+    """Whether a text goes on in the line below it: that begins with a bracket or a sign, or this one is open."""
+    return rest.lstrip().startswith(_RESTS) or is_open(text)
+
+
+def is_open(text: str) -> bool:
+    """Whether a text cannot end here: a bracket is open, or a sign joins it to what follows."""
+    opened = text.count("(") > text.count(")") or text.count("[") > text.count("]")
+    return opened or text.rstrip().endswith(("±", "–", ",", " to", "(", "=", "<"))

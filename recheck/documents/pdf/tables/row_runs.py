@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from itertools import pairwise
 
 from recheck.documents.pdf.tables.notes import starts_note
-from recheck.documents.pdf.tables.row_kinds import has_prose, is_tabular
+from recheck.documents.pdf.tables.row_kinds import ends_cells, has_prose, is_tabular
 from recheck.documents.pdf.tables.text_rows import Ground, Row, is_wordy
 
 TALLEST_TITLE = 9
@@ -49,6 +49,14 @@ def _trimmed(rows: list[Row]) -> list[Row]:
         if is_tabular(one) and is_tabular(two)
     )
     close = 0.86 * steps[len(steps) // 2] if steps else 0.0
-    while 0 <= last < len(rows) - 1 and abs(rows[last + 1].base - rows[last].base) < close:
+    while 0 <= last < len(rows) - 1 and _goes_on(rows[last], rows[last + 1], close):
         last += 1
     return rows[: last + 1]
+
+
+def _goes_on(last: Row, row: Row, close: float) -> bool:
+    """Whether a line holds the rest of the last row: as large, and closer than rows or ends of its cells."""
+    step = abs(row.base - last.base)
+    if abs(row.size - last.size) > 0.06 * last.size:
+        return False
+    return step < close or (step < 1.6 * row.size and ends_cells(last, row))

@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
 from itertools import pairwise
 
 import numpy as np
 import regex
 
-from recheck.documents.pdf.tables.edges import Columns
-from recheck.documents.pdf.tables.text_rows import Row, is_numeric
+from recheck.documents.pdf.tables.body_lines import Line
+from recheck.documents.pdf.tables.row_kinds import ends, is_open
+from recheck.documents.pdf.tables.spacing import are_torn, rows_by_spacing
 
 JOINED = "which lines make up one row is not sure"
 
@@ -21,33 +21,7 @@ _UNFINISHED = regex.compile(
     regex.IGNORECASE,
 )
 
-
-@dataclass(frozen=True, slots=True, eq=False)
-class Line:
-    """One line of a body: its text in each column that it stands in."""
-
-    row: Row
-    cells: dict[int, str]
-    left: float
-
-    @property
-    def numbers(self) -> frozenset[int]:
-        """The columns, the first left out, that hold numbers."""
-        return frozenset(at for at, text in self.cells.items() if at and is_numeric(text))
-
-    @property
-    def label(self) -> str:
-        """What stands in the first column."""
-        return self.cells.get(0, "")
-
-
-def line_of(row: Row, columns: Columns) -> Line:
-    """The cells of one line."""
-    column = columns.of(row)
-    cells: dict[int, list[str]] = {}
-    for at, text in zip(column, row.texts, strict=True):
-        cells.setdefault(at, []).append(text)
-    return Line(row, {at: " ".join(texts) for at, texts in cells.items()}, row.left)
+_VALUE_AND_BRACKET = regex.compile(r"[-−–+]?[\d.,]+\s*[(\[]")
 
 
 def rows_joined(lines: Sequence[Line], parted: Sequence[float]) -> tuple[list[list[int]], bool]:
@@ -58,6 +32,9 @@ def rows_joined(lines: Sequence[Line], parted: Sequence[float]) -> tuple[list[li
     """
     if _tell_rows(lines, parted):
         return _between(lines, parted), False
+    spaced = rows_by_spacing(lines)
+    if spaced is not None:
+        return spaced, are_torn(lines, spaced, False) or _is_label_lower(lines, spaced)
     usual = _usual(lines)
     apart, errors = _headings_apart(lines, usual), _has_error_rows(lines)
     rows: list[list[int]] = []
@@ -72,17 +49,20 @@ def rows_joined(lines: Sequence[Line], parted: Sequence[float]) -> tuple[list[li
                 and first.label
                 and first.numbers
                 and _plain_label(lines[at - 1], line, usual)
+                and not _is_outdented(lines[at - 1], line, lines[at + 1 : at + 2])
             ):
                 verdict = "sure"
             if not verdict and not errors and _completes(lines[at - 1], line):
-                verdict = "sure" if line.row.base - lines[at - 1].row.base < 1.05 * usual else "guess"
+                close = line.row.base - lines[at - 1].row.base < (0.86 if line.label else 1.05) * usual
+                verdict = "sure" if close or _are_brackets_of(lines[at - 1], line) else "guess"
             if verdict:
                 rows[-1].append(at)
                 guessed |= verdict == "guess"
                 continue
         rows.append([at])
     nameless = (row for row in rows if _is_nameless([lines[i] for i in row], errors))
-    return rows, guessed or any(_step_beside(lines, row) < 0.93 * usual for row in nameless)
+    guessed |= any(_step_beside(lines, row) < 0.93 * usual for row in nameless)
+    return rows, guessed or are_torn(lines, rows, errors) or _is_label_lower(lines, rows)
 
 
 def _in_brackets(line: Line) -> bool:
@@ -93,17 +73,35 @@ def _in_brackets(line: Line) -> bool:
 
 
 def _has_error_rows(lines: Sequence[Line]) -> bool:
-    """Whether numbers in brackets stand under most rows, as standard errors do in tables of regressions."""
+    """Whether numbers in brackets stand under most rows, as standard errors do in tables of regressions.
+
+    Where other rows have them behind the number, in one line, the cells were too narrow for both.
+    """
     named = sum(bool(line.label and line.numbers) for line in lines)
-    return sum(map(_in_brackets, lines)) >= 0.5 * named
+    below = sum(map(_in_brackets, lines))
+    beside = sum(any(_VALUE_AND_BRACKET.match(line.cells[at]) for at in line.numbers) for line in lines)
+    return below >= 0.5 * named and not beside
 
 
 def _completes(before: Line, line: Line) -> bool:
     """Whether each cell of a line is the rest of the one above it: "10.0" and "(1.8)", "0.43 ±" and "0.02"."""
-    return not line.label and all(
-        at in before.cells and (text.startswith(("(", "[")) or _is_open(before.cells[at]))
-        for at, text in line.cells.items()
-    )
+    rest = [at for at in line.cells if at]
+    if line.label and not (before.label and _continues(line.label.lstrip())):
+        return False
+    return bool(rest) and all(at in before.cells and ends(before.cells[at], line.cells[at]) for at in rest)
+
+
+def _is_label_lower(lines: Sequence[Line], rows: Sequence[Sequence[int]]) -> bool:
+    """Whether the first row of numbers has no label and later ones have: labels may stand in the middle of theirs."""
+    with_numbers = [[lines[at] for at in row] for row in rows if any(lines[at].numbers for at in row)]
+    named = [any(line.label for line in row) for row in with_numbers]
+    return bool(named) and not named[0] and any(named)
+
+
+def _are_brackets_of(before: Line, line: Line) -> bool:
+    """Whether a line has a bracket for each number of the line before, and nothing else."""
+    columns = before.cells.keys() - {0}
+    return columns == line.cells.keys() - {0} and all(line.cells[at][0] in "([" for at in columns)
 
 
 def _step_beside(lines: Sequence[Line], row: Sequence[int]) -> float:
@@ -136,12 +134,19 @@ def _plain_label(before: Line, line: Line, usual: float) -> bool:
     return set(line.cells) == {0} and bool(before.label) and close and line.row.bold == before.row.bold
 
 
+def _is_outdented(before: Line, line: Line, after: Sequence[Line]) -> bool:
+    """Whether a line begins left of those before and after it, as sub-headings do."""
+    if not before.label or not after or not after[0].label or _continues(line.label.lstrip()):
+        return False
+    return line.left < min(before.left, after[0].left) - 0.4 * line.row.size
+
+
 def _usual(lines: Sequence[Line]) -> float:
     """The usual distance of two rows that both have numbers; the smallest of the frequent ones."""
     steps = sorted(
         two.row.base - one.row.base
         for one, two in pairwise(lines)
-        if one.numbers and two.numbers and one.label and two.label
+        if one.numbers and two.numbers and one.label and two.label and not _completes(one, two)
     )
     if steps:
         return steps[len(steps) // 4]
@@ -210,12 +215,7 @@ def _without_label(row: Sequence[Line], line: Line, have: frozenset[int], close:
 
 def _halves(last: Line, line: Line) -> bool:
     """Whether every number of a line completes one that the line before leaves open: "(0.83," and "0.99)"."""
-    return all(_is_open(last.cells.get(at, "")) for at in line.numbers)
-
-
-def _is_open(text: str) -> bool:
-    opened = text.count("(") > text.count(")") or text.count("[") > text.count("]")
-    return opened or text.rstrip().endswith(("±", "–", ",", " to", "("))
+    return all(is_open(last.cells.get(at, "")) for at in line.numbers)
 
 
 def _centred(last: Line, line: Line, after: Sequence[Line]) -> bool:
@@ -228,7 +228,7 @@ def _wrapped_label(label: str, row: Sequence[Line], line: Line, after: Sequence[
     open_ = label.count("(") > label.count(")") or label.count("[") > label.count("]")
     runs_on = bool(_UNFINISHED.search(label)) or open_ or _continues(start)
     have = any(one.numbers for one in row)
-    if have and line.numbers:
+    if have and (line.numbers or _is_outdented(row[0], line, after)):
         return ""
     if close:
         return "sure"
@@ -241,4 +241,4 @@ def _wrapped_label(label: str, row: Sequence[Line], line: Line, after: Sequence[
 
 
 def _continues(start: str) -> bool:
-    return start[:1] == "(" or (start[:1].islower() and len(start.split()[0]) > 1)
+    return start[:1] in tuple("([{") or (start[:1].islower() and len(start.split()[0]) > 1)

@@ -14,13 +14,12 @@ from numpy.typing import NDArray
 
 from recheck.documents.characters import as_text
 from recheck.documents.pdf.glyphs import BOLD
-from recheck.documents.pdf.indices import hosts
 from recheck.documents.pdf.words import Words
 
 _NUMBER = regex.compile(r"[<>=≤≥≈~±+\-−–—(\[\"'“]*\p{Nd}*[.,·]?\p{Nd}")
 _DASHES = frozenset("-−–—…/")
 _STARS = frozenset("*∗⁎†‡§#·")
-_ALIKE = 0.22
+_ALIKE = 0.3
 _PADDING = 3.0
 
 
@@ -94,12 +93,13 @@ class Row:
 
 
 class Ground:
-    """The words of one page from which tables are made; `free` are those that are no furniture."""
+    """The words of one page from which tables are made; `free` are those that are no furniture.
 
-    def __init__(self, words: Words, free: NDArray[np.intp]) -> None:
-        self.words, self.free = words, free
-        none = np.zeros(len(words), dtype=bool)
-        self.host = hosts(words, free, none) if len(free) else np.arange(len(words))
+    `host` tells for each word the one that it is an index of, or itself.
+    """
+
+    def __init__(self, words: Words, free: NDArray[np.intp], host: NDArray[np.intp]) -> None:
+        self.words, self.free, self.host = words, free, host
         self._hosts: list[int] = self.host.tolist()
         self._x0: list[float] = words.x0.astype(np.float64).tolist()
         self._x1: list[float] = words.x1.astype(np.float64).tolist()
