@@ -25,7 +25,6 @@ from recheck.reading.placed import Placed
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
 from recheck.reading.relating import related
 from recheck.reading.significance import told_in_words
-from recheck.reading.tables import with_tables
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
 from recheck.reading.views import View, view_of
@@ -52,9 +51,13 @@ def read(document: Document) -> Reading:
             left[TOO_LONG] += 1
             continue
         placed += [_doubted(item, passages[number], repairs) for item in found]
-    placed, unnamed = with_tables(
-        placed, document, READ, setting, repairs, left, partial(_told_in, setting=setting, left=left)
-    )
+    unnamed: tuple[str, ...] = ()
+    if document.tables:
+        # Importing the layouts takes a twentieth of a second, and a text alone has no use for them.
+        from recheck.reading.tables import with_tables
+
+        told = partial(_told_in, setting=setting, left=left)
+        placed, unnamed = with_tables(placed, document, READ, setting, repairs, left, told)
     claims, same = related(_unique(placed), document, passages, [view.text for view in views])
     return Reading(claims, setting.context, (*_notes(document, left), *unnamed), same)
 
