@@ -134,5 +134,5 @@ def tables_of(box: Box, layout: Layout) -> Tables | None:
 
 def _choices(box: Box, i: int) -> Sequence[int]:
     if f"count{i}" in box:
-        return (round(box[f"count{i}"].low),)
-    return counts_behind(box[f"percent{i}"], round(box[f"total{i}"].low))
+        return (int(box[f"count{i}"].low),)
+    return counts_behind(box[f"percent{i}"], int(box[f"total{i}"].low))
