@@ -96,16 +96,31 @@ def _hand_slack(case: Case) -> Slack:
     """What working the interval out from rounded means and SDs can do to it.
 
     Two rounded means move the centre by at most one unit of their last digit, a rounded SD the
-    width by its own half unit. Without the groups, the difference and the ends tell the unit, and
-    an SD of two significant digits is taken for granted.
+    width by its own half unit. Without the groups, the difference and the ends tell the unit; an SD of
+    two significant digits is taken for granted, or fewer where the difference is printed too coarsely for that.
     """
     printed = [case.claim.values[n] for n in ("mean_difference", "ci_low") if n in case.claim.values]
     printed += [group.values["mean"] for group in case.groups]
     shift = max(float(number.unit) for number in printed)
     spreads = [group.values[n] for group in case.groups for n in ("sd", "se") if n in group.values]
     shares = [float(spread.unit) / 2 / max(abs(spread.number), float(spread.unit) / 2) for spread in spreads]
+    if not spreads:
+        shares.append(_coarseness(case.claim, shift))
     relative = min(max((0.05, *shares)), 0.95)
     return Slack(shift, 1 - relative, 1 + relative)
+
+
+def _coarseness(claim: Claim, unit: float) -> float:
+    """Half a unit as a share of the SD that the width of an interval tells of two groups of about one size.
+
+    The SE is at least 2 SD/√N, whatever the sizes of the groups, and 2 SE are about half the width; where
+    nothing tells N, 20 are assumed. Groups of unlike sizes are allowed for by four fifths.
+    """
+    low, high = ends(claim)
+    df = claim.values.get("df")
+    total = df.number + 2 if df is not None else 20.0
+    sd = 0.8 * (high.number - low.number) / 4 * math.sqrt(max(total, 2.0)) / 2
+    return unit / 2 / max(sd, unit / 2)
 
 
 @check(
