@@ -60,7 +60,7 @@ def F_fits_error(claim: Claim) -> bool:
 
 
 def p_fits_error(claim: Claim) -> bool:
-    """Tell whether a telling p follows from F with the df of the printed error."""
+    """Tell whether p follows from F with the df of the printed error, and from no error of half its df or fewer."""
     values = claim.values
     if not {"F", "p", "df1", "df2"} <= values.keys():
         return False
@@ -70,5 +70,11 @@ def p_fits_error(claim: Claim) -> bool:
     if df1 <= 0 or df2 <= 0:
         return False
     F = values["F"].interval().within(0.0, float("inf"))
-    p = as_interval(bounds.p_from_F_bounds(F.low, F.high, df1, df1, df2, df2))
-    return p.meets(values["p"].interval())
+    if not as_interval(bounds.p_from_F_bounds(F.low, F.high, df1, df1, df2, df2)).meets(
+        values["p"].interval()
+    ):
+        return False
+    others = np.arange(1.0, df2 / 2 + 1)
+    low, high = bounds.p_from_F_bounds(F.low, F.high, df1, df1, others, others)
+    printed = values["p"].interval()
+    return not np.any((low <= printed.high) & (printed.low <= high))
