@@ -4,8 +4,8 @@ from __future__ import annotations
 
 import math
 
-from recheck.checks.intervals import RATIOS, ends, exponential, level_of
-from recheck.model import Claim, Interval
+from recheck.checks.intervals import ends, exponential, level_of
+from recheck.model import RATIOS, Claim, Interval
 from recheck.recompute.tails import z_quantile
 
 SAME_COEFFICIENT = "β and SE are those of one coefficient (β may be standardized beside the SE of b)"

@@ -104,7 +104,7 @@ def _with_ties(p: Interval, r: Interval, n: int) -> Interval:
     inequality twice its one-tailed p is at most 2 / (1 + (n − 1) r²). In simulation it is seldom below a third of the untied p.
     """
     least = r.absolute().within(0.0, 1.0).low
-    return Interval(p.low / 3, max(3 * p.high, 2 / (1 + (n - 1) * least**2), 0.0)).within(0.0, 1.0)
+    return Interval(p.low / 3, max(3 * p.high, 2 / (1 + (n - 1) * least**2))).within(0.0, 1.0)
 
 
 def _normal_r(box: Box, n: int) -> tuple[Interval, ...]:

@@ -10,7 +10,7 @@ from recheck.checks.compare import Comparison, doubted, impossible, judge
 from recheck.checks.designs import whole
 from recheck.checks.examples import table
 from recheck.checks.registry import Case, check
-from recheck.model import STATED, TOTAL_OF_GROUP, Claim, Finding, Interval, Printed, Remedy
+from recheck.model import LEVELS, STATED, TOTAL_OF_GROUP, Claim, Finding, Interval, Printed, Remedy
 from recheck.reconcile.readings import Box, Way
 
 PERCENTS = Interval(0.0, math.inf)
@@ -125,7 +125,7 @@ NO_ANSWER = (
 
 def _left_out(claim: Claim) -> bool:
     """Tell whether a category holds the cases without an answer."""
-    return (claim.outcome or "").rpartition(" | ")[2].strip().lower().startswith(NO_ANSWER)
+    return (claim.outcome or "").rpartition(LEVELS)[2].strip().lower().startswith(NO_ANSWER)
 
 
 def _other_totals(claim: Claim) -> tuple[Remedy, ...]:

@@ -7,7 +7,7 @@ from collections.abc import Iterable
 
 from recheck.checks.compare import Comparison, impossible, judge, unchecked
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed, Remedy, shown
+from recheck.model import RATIOS, Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.reconcile.readings import Box, Way
 
 ALL_KINDS = (
@@ -34,7 +34,6 @@ ESTIMATES = (
     "or", "rr", "hr", "rd", "percent", "estimate", "intercept", "median",
 )  # fmt: skip
 
-RATIOS = ("or", "rr", "hr")
 BY_HAND = "the interval was worked out by hand from rounded figures"
 OTHER_METHOD = "the interval was made by another method than the test (bootstrap, simultaneous, robust)"
 

@@ -8,9 +8,9 @@ from itertools import combinations
 
 from recheck.checks.compare import doubted, impossible, unchecked
 from recheck.checks.examples import table
-from recheck.checks.intervals import ALL_KINDS, RATIOS, ends
+from recheck.checks.intervals import ALL_KINDS, ends
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed, Remedy, shown
+from recheck.model import RATIOS, Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.model.figures import printed_text, span
 from recheck.reconcile.slips import candidates
 

@@ -7,9 +7,9 @@ from collections.abc import Iterable
 
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.examples import table
-from recheck.checks.intervals import NEED_NOT_BE_SYMMETRIC, OFF_CENTRE, RATIOS, ends, exponential, log_middle
+from recheck.checks.intervals import NEED_NOT_BE_SYMMETRIC, OFF_CENTRE, ends, exponential, log_middle
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed
+from recheck.model import RATIOS, Claim, Finding, Interval, Printed
 from recheck.reconcile.readings import Box, Way, box_of
 
 POSITIVE = Interval(0.0, math.inf)

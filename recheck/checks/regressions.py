@@ -12,17 +12,17 @@ from recheck.checks.coefficients import coefficient, coefficient_doubts, ratio_o
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.groups import unsigned
-from recheck.checks.interval_tests import NORMAL, OPEN_DF, USUAL_LEVEL, other_widths
+from recheck.checks.interval_methods import NORMAL, USUAL_LEVEL, other_widths
+from recheck.checks.interval_tests import OPEN_DF
 from recheck.checks.intervals import (
     OFF_CENTRE,
     OTHER_METHOD,
-    RATIOS,
     ends,
     level_of,
 )
 from recheck.checks.p_values import ONE_TAILED, UNIT_DF, as_interval, judge_p
 from recheck.checks.registry import Case, check
-from recheck.model import DISCREPANT, Claim, Finding, Interval
+from recheck.model import DISCREPANT, RATIOS, Claim, Finding, Interval
 from recheck.recompute import bounds
 from recheck.recompute.arrays import quotient_bounds
 from recheck.recompute.tails import t_quantile, z_quantile
@@ -197,7 +197,7 @@ def ci_from_b(case: Case) -> Iterable[Finding]:
     claim, name = case.claim, coefficient(case.claim)
     if name is None or claim.interval_of not in (None, name):
         return
-    if claim.interval_of is None and RATIO_NAMES & claim.values.keys():
+    if claim.interval_of is None and any(name in claim.values for name in RATIOS):
         return
     low, high = ends(claim)
     if low.value > high.value:
@@ -228,7 +228,6 @@ def ci_from_b(case: Case) -> Iterable[Finding]:
 
 
 WORST_FIRST = (*DISCREPANT, "conditional", "unchecked", "agrees")
-RATIO_NAMES = frozenset(RATIOS)
 
 
 def _resampled(claim: Claim) -> tuple[str, ...]:

@@ -9,10 +9,9 @@ from typing import get_args
 
 from recheck.checks.compare import Comparison, judge
 from recheck.checks.groups import unsigned
-from recheck.checks.intervals import RATIOS
 from recheck.checks.p_values import P_RANGE
 from recheck.checks.registry import Case, Twin, check
-from recheck.model import P_IN_WORDS, Claim, ClaimKind, Finding, Interval, Printed, shown
+from recheck.model import P_IN_WORDS, RATIOS, Claim, ClaimKind, Finding, Interval, Printed, shown
 from recheck.model.figures import printed_text, whereabouts
 from recheck.reconcile.readings import ELSEWHERE, Box, Way, agrees_as_printed
 

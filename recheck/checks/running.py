@@ -9,7 +9,7 @@ from dataclasses import replace
 from recheck.checks.columns import by_columns
 from recheck.checks.compare import unchecked
 from recheck.checks.registry import Case, Check, Twin, all_checks
-from recheck.model import Claim, Finding, SameResult, Settings, shown
+from recheck.model import LEVELS, Claim, Finding, SameResult, Settings, shown
 
 logger = logging.getLogger("recheck")
 
@@ -52,7 +52,7 @@ def _block_of(claim: Claim) -> tuple[str, str]:
     values, label = claim.values, claim.place.table or ""
     if claim.kind == "correlation" and {"r", "p"} <= values.keys() and not values.keys() & {"df", "n", "N"}:
         return (label, "r") if claim.place.row else ("", "")
-    variable, divided, _ = (claim.outcome or "").rpartition(" | ")
+    variable, divided, _ = (claim.outcome or "").rpartition(LEVELS)
     return (label, variable) if claim.kind == "count" and divided and label else ("", "")
 
 

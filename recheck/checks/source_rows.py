@@ -7,7 +7,7 @@ import numpy as np
 from recheck.checks.p_values import as_interval
 from recheck.model import Claim, Interval
 from recheck.recompute import bounds
-from recheck.recompute.arrays import quotient_bounds
+from recheck.recompute.arrays import Floats, quotient_bounds
 from recheck.reconcile.readings import Box, box_of
 
 OTHER_ERROR = "F is tested against another row of the table, as with random factors"
@@ -69,12 +69,10 @@ def p_fits_error(claim: Claim) -> bool:
     df1, df2 = values["df1"].number, values["df2"].number
     if df1 <= 0 or df2 <= 0:
         return False
-    F = values["F"].interval().within(0.0, float("inf"))
-    if not as_interval(bounds.p_from_F_bounds(F.low, F.high, df1, df1, df2, df2)).meets(
-        values["p"].interval()
-    ):
-        return False
-    others = np.arange(1.0, df2 / 2 + 1)
-    low, high = bounds.p_from_F_bounds(F.low, F.high, df1, df1, others, others)
-    printed = values["p"].interval()
-    return not np.any((low <= printed.high) & (printed.low <= high))
+    F, printed = values["F"].interval().within(0.0, float("inf")), values["p"].interval()
+
+    def fits(error_dfs: Floats) -> bool:
+        low, high = bounds.p_from_F_bounds(F.low, F.high, df1, df1, error_dfs, error_dfs)
+        return bool(np.any((low <= printed.high) & (printed.low <= high)))
+
+    return fits(np.asarray(df2)) and not fits(np.arange(1.0, df2 / 2 + 1))

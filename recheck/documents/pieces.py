@@ -15,6 +15,7 @@ from recheck.documents.sections import (
     closes_references,
     looks_like_reference,
     opens_references,
+    unlabelled,
 )
 from recheck.model import Passage, PassageKind, Table
 
@@ -129,7 +130,7 @@ def _names(pieces: Sequence[Piece], labels: dict[int, str]) -> dict[int, str]:
     """The name under which each table's cells are found: its label, or a number among those without one."""
     grids = [at for at, piece in enumerate(pieces) if piece.grid is not None]
     without = [at for at in grids if not labels.get(at)]
-    numbered = {at: f"unlabelled table {number}" for number, at in enumerate(without, start=1)}
+    numbered = {at: unlabelled(number) for number, at in enumerate(without, start=1)}
     return {at: numbered.get(at) or labels[at] for at in grids}
 
 

@@ -46,6 +46,11 @@ _LEADING = regex.compile(_NUMBERING)
 _PATIENCE = 1.0
 
 
+def unlabelled(number: int) -> str:
+    """The name under which places give a table without a label, numbered through the document."""
+    return f"unlabelled table {number}"
+
+
 def opens_references(heading: str) -> bool:
     """Tell whether a line is the heading of a list of references."""
     return not _ends_a_sentence(heading) and bool(_REFERENCES.fullmatch(heading.strip(), timeout=_PATIENCE))

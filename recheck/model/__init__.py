@@ -24,13 +24,13 @@ from recheck.model.finding import (
     Settings,
     Verdict,
 )
-from recheck.model.passage import Layout, Passage, PassageKind, Place
+from recheck.model.passage import LEVELS, Layout, Passage, PassageKind, Place
 from recheck.model.printed import Box, Interval, Printed, Relation
-from recheck.model.quantities import QUANTITIES, shown
+from recheck.model.quantities import EFFECTS_ON_RISK, QUANTITIES, RATIOS, shown
 from recheck.model.table import Cell, Table
 
 __all__ = [
-    "DISCREPANT", "N_OF_GROUP", "P_IN_WORDS", "QUANTITIES", "STATED", "TOTAL_OF_GROUP", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
+    "DISCREPANT", "EFFECTS_ON_RISK", "LEVELS", "N_OF_GROUP", "P_IN_WORDS", "QUANTITIES", "RATIOS", "STATED", "TOTAL_OF_GROUP", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
     "Document", "DocumentFacts", "Finding", "Implied", "Interval", "Layout", "Passage", "PassageKind", "Place",
     "Printed", "Reading", "Relation", "Remedy", "SameResult", "Settings", "Table", "Verdict", "shown",
 ]  # fmt: skip

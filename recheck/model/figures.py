@@ -4,11 +4,10 @@ from __future__ import annotations
 
 import math
 
-from recheck.model.passage import Place
+from recheck.model.passage import LEVELS, Place
 from recheck.model.printed import Interval, Printed
 
 MINUS = "−"
-LEVEL = " | "
 A_POINT = 1e-8
 """Relative width below which an interval is a point, but for the guard against errors of computing."""
 
@@ -89,8 +88,8 @@ def table_name(place: Place) -> str:
 def _columns(column: str) -> str:
     """Write the columns of a result; what stands over all of them is told once."""
     headings = column.split("; ")
-    above = [heading.rpartition(LEVEL)[0] for heading in headings]
-    last = [heading.rpartition(LEVEL)[2] for heading in headings]
+    above = [heading.rpartition(LEVELS)[0] for heading in headings]
+    last = [heading.rpartition(LEVELS)[2] for heading in headings]
     if len(headings) == 1:
         return f"column “{column}”"
     if len(set(above)) > 1 or not above[0]:

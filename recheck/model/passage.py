@@ -13,6 +13,9 @@ from recheck.model.printed import Box
 PassageKind = Literal["body", "heading", "caption", "note", "table", "figure", "references", "aside"]
 """`aside` is what surrounds the text: running heads, page and line numbers, banners."""
 
+LEVELS = " | "
+"""What divides the levels of a heading, the outermost first, in the row and column of a place, and in what claims name."""
+
 
 @dataclass(frozen=True, slots=True)
 class Place:

@@ -18,6 +18,10 @@ QUANTITIES: dict[str, str] = {
     "ss": "SS", "ms": "MS", "ss_error": "SS of the error", "ms_error": "MS of the error", "ss_total": "total SS", "mse": "MSE", "estimate": "estimate",
 }  # fmt: skip
 
+RATIOS = ("or", "rr", "hr")
+"""What compares two risks, odds or hazards by division: computed with, and symmetric, on the log scale."""
+EFFECTS_ON_RISK = frozenset((*RATIOS, "rd"))
+
 
 def shown(quantity: str) -> str:
     """Write the name of a quantity as reports do."""

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache
 
 import regex
@@ -37,6 +37,14 @@ class Setting:
     pairs_alone: bool = False
     behind_medians: str = ""
     by_permutation: bool = False
+
+    def at_own_level(self, value: Printed) -> Printed:
+        """A p told in words at the document's own level: `ns` is larger than that, `significant` smaller."""
+        alpha = self.context.alpha
+        if value.text[:1].isalpha() and value.relation in "<>" and alpha is not None:
+            share = alpha.value / 100 if alpha.percent else alpha.value
+            return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
+        return value
 
 
 def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
@@ -79,12 +87,17 @@ def _decimals() -> regex.Pattern[str]:
 
 def decimal_comma(texts: Iterable[str]) -> bool:
     """Tell whether a document writes decimals with a comma after its relation signs."""
+    return mostly_commas(texts, _decimals(), default=False)
+
+
+def mostly_commas(texts: Iterable[str], decimals: regex.Pattern[str], *, default: bool) -> bool:
+    """Tell whether most numbers that a pattern finds in its groups `comma` and `point` are written with a comma; `default` where it finds none."""
     commas = points = 0
     for text in texts:
-        for match in _decimals().finditer(text, timeout=TIMEOUT):
+        for match in decimals.finditer(text, timeout=TIMEOUT):
             commas += match["comma"] is not None
             points += match["point"] is not None
-    return commas > points
+    return commas > points if commas or points else default
 
 
 def _announced(views: Sequence[View]) -> tuple[str, str, str]:

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
+from hashlib import blake2b
 
-from recheck.model import Claim
+from recheck.model import Claim, ClaimKind, Place
 
 
 @dataclass(frozen=True, slots=True)
@@ -23,3 +25,9 @@ class Placed:
     text: str
     span: tuple[int, int] = (0, 0)
     at: int = 0
+
+
+def claim_id(kind: ClaimKind, place: Place, quantities: Iterable[str]) -> str:
+    """An id made from what a claim holds and where it stands: the same manuscript gives the same ids."""
+    told = (kind, place.quote, place.section, place.table, place.row, place.column, *sorted(quantities))
+    return blake2b(repr(told).encode(), digest_size=5).hexdigest()

@@ -6,7 +6,6 @@ from collections import Counter
 from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from functools import partial
-from hashlib import blake2b
 
 from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading
 from recheck.reading.assignments import assignments, ns_at
@@ -21,7 +20,7 @@ from recheck.reading.naming import Named, named
 from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
 from recheck.reading.parallel import in_parallel
-from recheck.reading.placed import Placed
+from recheck.reading.placed import Placed, claim_id
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
 from recheck.reading.relating import related
 from recheck.reading.significance import told_in_words
@@ -229,7 +228,7 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
     marked_up = any(sign in raw for sign in ("\\", "$", "</", "_{", "^{")) or ("&" in raw and ";" in raw)
     quote = " ".join(view.text[start:end].split()) if marked_up else None
     place = view.passage.place(first, last, quote)
-    values = {quantity: _with_alpha(value, setting) for quantity, value in name.values.items()}
+    values = {quantity: setting.at_own_level(value) for quantity, value in name.values.items()}
     confidence, notes = name.confidence, name.notes
     if any(_maybe_decimal(quantity, value) for quantity, value in values.items()):
         confidence, notes = "low", (*notes, "a comma may be a decimal sign or group thousands")
@@ -238,7 +237,7 @@ def _claim(view: View, start: int, end: int, name: Named, setting: Setting) -> C
     also = ("permutation",) if setting.by_permutation and name.kind == "F-test" else ()
     spoken = dict.fromkeys((*setting.context.background, *also))
     return Claim(
-        _id(name, place.quote, view.passage), name.kind, place, values, name.stated,
+        claim_id(name.kind, place, values), name.kind, place, values, name.stated,
         tuple(word for word in spoken if word not in name.stated and word not in but),
         name.interval_of, confidence, notes=notes,
     )  # fmt: skip
@@ -250,28 +249,6 @@ _SELDOM_LARGE = frozenset(("t", "z", "r", "d", "g", "p"))
 def _maybe_decimal(quantity: str, value: Printed) -> bool:
     """Tell whether a number taken for thousands (`1,663`) is more likely one with a decimal comma."""
     return quantity in _SELDOM_LARGE and abs(value.value) >= 1000 and value.text.count(",") == 1
-
-
-def _with_alpha(value: Printed, setting: Setting) -> Printed:
-    """`ns` is larger than the document's own level, `significant` smaller."""
-    alpha = setting.context.alpha
-    if value.text[:1].isalpha() and value.relation in "<>" and alpha is not None:
-        share = alpha.value / 100 if alpha.percent else alpha.value
-        return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
-    return value
-
-
-def _id(name: Named, quote: str, passage: Passage) -> str:
-    told = (
-        name.kind,
-        quote,
-        passage.section,
-        passage.table,
-        passage.row,
-        passage.column,
-        *sorted(name.values),
-    )
-    return blake2b(repr(told).encode(), digest_size=5).hexdigest()
 
 
 def _unique(placed: Sequence[Placed]) -> list[Placed]:

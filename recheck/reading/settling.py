@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
-from recheck.model import Relation
+from recheck.model import EFFECTS_ON_RISK, Relation
 from recheck.reading.degrees import Values
 from recheck.reading.intervals import interval_at
 from recheck.reading.items import ESTIMATE
@@ -69,7 +69,7 @@ def _too_loose(line: Line, spelled: Spelled, symbol: Symbol, number: Number, aft
     """Whether a number without a relation sign is no value: `Moisture was 5.3%`, `the mean of 3 loaves`."""
     if spelled.glued and spelled.text[1:2].islower() and not spelled.text.startswith("Mean"):
         return True
-    if symbol.worded and symbol.quantity in _RATIOS and not _sure(line, after, number):
+    if symbol.worded and symbol.quantity in EFFECTS_ON_RISK and not _sure(line, after, number):
         return True
     if symbol.quantity == "b" and number.decimals == 0:
         return True
@@ -100,7 +100,6 @@ def by_number(line: Line, index: int, spelled: Spelled, symbol: Symbol, number: 
 
 
 _TRACES = words("pillai pillai's trace wilks manova pillai-bartlett bartlett")
-_RATIOS = frozenset(("or", "rr", "hr", "rd"))
 _OTHER_MEANS = words(
     "median risk rate proportion percentage relative standardized standardised geometric log"
 )

@@ -7,11 +7,11 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import lru_cache
 
-from recheck.model import Claim, Confidence
+from recheck.model import LEVELS, Claim, Confidence
 from recheck.reading.linking import alike, groups_compared, has_spread, of_two_shares, same_difference
 from recheck.reading.matching import CONDITIONS, Key
 from recheck.reading.referring import references
-from recheck.reading.told import LEVELS, Entry, Item, Names
+from recheck.reading.told import Entry, Item, Names
 
 WHOLE = frozenset(
     (

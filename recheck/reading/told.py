@@ -7,7 +7,7 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cached_property
 
-from recheck.model import Claim, Passage, Table
+from recheck.model import LEVELS, Claim, Passage, Table
 from recheck.reading.clauses import clauses
 from recheck.reading.matching import (
     CONDITIONS,
@@ -27,9 +27,6 @@ from recheck.reading.referring import Reference, figures, key_of, references
 
 _OPENING = 24
 """Characters within which a sentence opens with its reference: `As shown in Table 2`, `Table 2 shows`."""
-
-LEVELS = " | "
-"""What divides the levels of a header's path."""
 
 
 @dataclass(frozen=True, eq=False)

@@ -12,11 +12,11 @@ from collections.abc import Set as AbstractSet
 from dataclasses import dataclass
 from decimal import Decimal
 
-from recheck.model import Claim, Passage, SameResult
+from recheck.model import LEVELS, Claim, Passage, SameResult
 from recheck.reading.agreeing import SIZES, Agreement, agreement, family, rough
 from recheck.reading.matching import Key
 from recheck.reading.table_links import of_other_condition, surely_of_table
-from recheck.reading.told import LEVELS, Entry, Item, Names
+from recheck.reading.told import Entry, Item, Names
 
 _RETELLING = ("abstract", "summary", "author summary", "highlights", "key points", "discussion", "general discussion", "conclusion",
               "significance", "plain language", "lay summary", "editor")  # fmt: skip

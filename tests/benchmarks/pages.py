@@ -19,7 +19,7 @@ from pdfminer.high_level import extract_pages
 from reportlab.pdfgen.canvas import Canvas
 
 from recheck.documents.pdf import pdfium
-from recheck.documents.pdf.document import page_lines
+from recheck.documents.pdf.document import pages_read
 
 WORDS = [
     "loaf", "height", "crumb", "panel", "apprentice", "bench", "trial", "dough", "starter", "score",
@@ -65,7 +65,7 @@ def _column(canvas: Canvas, chance: random.Random, left: float, width: float) ->
 
 def glyphs_and_lines(data: bytes) -> int:
     """Read all glyphs and set them in lines, as an audit does; gives the number of lines."""
-    return len(page_lines(pdfium.read(data).pages)[0])
+    return len(pages_read(pdfium.read(data).pages)[0])
 
 
 def bare_loop(data: bytes) -> int:

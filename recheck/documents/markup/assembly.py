@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from recheck.documents.runs import Runs
+from recheck.documents.sections import unlabelled
 from recheck.model import Passage, PassageKind, Table
 
 
@@ -57,7 +58,7 @@ class Assembly:
         if label:
             return label
         self.unlabelled += 1
-        return f"unlabelled table {self.unlabelled}"
+        return unlabelled(self.unlabelled)
 
     def words(self) -> int:
         """The number of words in all passages and cells."""

@@ -31,6 +31,11 @@ class Block:
     section: str | None = None
     table: int | None = None
 
+    def take_in(self, other: Block) -> None:
+        """Go on with the lines of another block."""
+        self.lines = self.lines + other.lines
+        self.text = joined_text(self.lines)
+
 
 @dataclass(frozen=True, slots=True)
 class Type:

@@ -67,11 +67,6 @@ def pdf_document(
     )
 
 
-def page_lines(pages: list[Glyphs]) -> tuple[list[Line], list[Line]]:
-    """The lines of all pages in reading order, and apart from them the lines that surround the text."""
-    return pages_read(pages)[:2]
-
-
 def pages_read(pages: list[Glyphs]) -> tuple[list[Line], list[Line], list[PageTable]]:
     """The lines of all pages outside tables in reading order, those that surround the text, and the tables."""
     turned = [upright(glyphs) for glyphs in pages]

@@ -5,7 +5,7 @@ from __future__ import annotations
 from itertools import pairwise
 
 from recheck.documents.pdf.blocks import Block, Type, is_prose
-from recheck.documents.pdf.joining import is_finished, joined_text
+from recheck.documents.pdf.joining import is_finished
 from recheck.documents.sections import captioned, is_named_section, opens_references, unnumbered
 from recheck.model import PassageKind
 
@@ -67,8 +67,7 @@ def _with_whole_captions(blocks: list[Block], type_: Type) -> list[Block]:
                 and abs(above.size - below.size) < 0.06 * above.size
                 and not captioned(block.text)
             ):
-                found[-1].lines = found[-1].lines + block.lines
-                found[-1].text = joined_text(found[-1].lines)
+                found[-1].take_in(block)
                 continue
         found.append(block)
     return found

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from recheck.documents.pdf.blocks import Block, is_prose
-from recheck.documents.pdf.joining import goes_on, is_finished, joined_text, put_together
+from recheck.documents.pdf.joining import goes_on, is_finished, put_together
 from recheck.documents.pdf.lines import Line
 from recheck.documents.sections import closes_references, looks_like_reference, opens_references, states_title
 from recheck.model import Passage
@@ -49,8 +49,7 @@ def _joined(blocks: list[Block]) -> list[Block]:
             continue
         last = at
         while (following := _continuation(blocks, taken, block, last)) is not None:
-            block.lines = block.lines + blocks[following].lines
-            block.text = joined_text(block.lines)
+            block.take_in(blocks[following])
             taken[following] = True
             last = following
     return found

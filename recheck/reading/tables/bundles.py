@@ -8,6 +8,8 @@ from functools import cache
 
 import regex
 
+from recheck.model import EFFECTS_ON_RISK
+from recheck.reading.tables.cells import COEFFICIENTS
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.grid import Sheet
 from recheck.reading.tables.roles import Role
@@ -15,8 +17,6 @@ from recheck.reading.tables.which_test import OPEN, with_open_columns
 from recheck.reading.views import TIMEOUT
 
 STATISTICS = frozenset(("t", "F", "chi2", "z", "r", "u", "w"))
-COEFFICIENTS = frozenset(("b", "beta", "intercept", "estimate"))
-RATIOS = frozenset(("or", "rr", "hr", "rd"))
 EFFECTS = frozenset((
     "d", "g", "delta", "d_z", "d_av", "d_rm", "r_pb", "eta2", "partial_eta2", "generalized_eta2", "omega2", "epsilon2", "f", "f2",
     "phi", "cramers_v",
@@ -24,7 +24,9 @@ EFFECTS = frozenset((
 DIFFERENCES = frozenset(("mean_difference", "se_difference"))
 DEGREES = frozenset(("df", "df1", "df2"))
 ENDS = frozenset(("ci_low", "ci_high"))
-_OPENING = frozenset((OPEN,)) | STATISTICS | COEFFICIENTS | RATIOS | EFFECTS | DIFFERENCES | DEGREES | {"p"}
+_OPENING = (
+    frozenset((OPEN,)) | STATISTICS | COEFFICIENTS | EFFECTS_ON_RISK | EFFECTS | DIFFERENCES | DEGREES | {"p"}
+)
 _JOINING = _OPENING | ENDS | {"se", "n", "N", "other", "r2", "ss", "ms"}
 
 
@@ -91,7 +93,7 @@ def _joins(current: list[int], column: int, roles: Mapping[int, Role]) -> bool:
         return False
     if told & {"n", "N"} and held & {"n", "N"}:
         return False
-    if told & RATIOS and not held & COEFFICIENTS and held & (STATISTICS | EFFECTS | {"p"}):
+    if told & EFFECTS_ON_RISK and not held & COEFFICIENTS and held & (STATISTICS | EFFECTS | {"p"}):
         return False
     main = held & (STATISTICS | {OPEN})
     if not told & (STATISTICS | {OPEN}) or not main:
@@ -123,7 +125,7 @@ def _groups_differ(last: Role, new: Role, told: set[str]) -> bool:
 
 
 def _se_has_owner(told: set[str], held: set[str]) -> bool:
-    return "se" not in told or bool(held & (COEFFICIENTS | DIFFERENCES | RATIOS))
+    return "se" not in told or bool(held & (COEFFICIENTS | DIFFERENCES | EFFECTS_ON_RISK))
 
 
 def _bundle(columns: list[int], roles: Mapping[int, Role]) -> Bundle | None:
@@ -141,7 +143,7 @@ def _bundle(columns: list[int], roles: Mapping[int, Role]) -> Bundle | None:
     telling = [
         role
         for role in kept
-        if set(role.quantities) & (STATISTICS | COEFFICIENTS | RATIOS | DIFFERENCES | {OPEN})
+        if set(role.quantities) & (STATISTICS | COEFFICIENTS | EFFECTS_ON_RISK | DIFFERENCES | {OPEN})
     ] or list(kept)
     group = next((role.group for role in telling if role.group), None)
     name = next((role.name for role in (*telling, *kept) if role.name), "")

@@ -9,7 +9,7 @@ from typing import Literal
 
 import regex
 
-from recheck.model import Printed
+from recheck.model import EFFECTS_ON_RISK, Printed
 from recheck.reading.tables.frame import Frame, p_values
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.roles import Role, fits, matched
@@ -18,7 +18,7 @@ from recheck.reading.views import TIMEOUT
 
 Source = Literal["heading", "legend", "shape"]
 
-RATIOS = frozenset(("or", "rr", "hr", "rd", "mean_difference"))
+COMPARISONS = EFFECTS_ON_RISK | {"mean_difference"}
 COEFFICIENTS = frozenset(("b", "beta", "intercept", "estimate"))
 _OF_GROUPS = frozenset(
     (
@@ -92,8 +92,8 @@ def _named(frame: Frame, row: int, column: int, piece: Piece) -> Cell | None:
 
 def _of_column(own: Role | None, role: Role | None) -> Role | None:
     """What a sub-heading such as `Mean (SD), mean difference` says of one column: of a group, or of the effect with its interval."""
-    effects = [q for q in own.quantities if q in RATIOS] if own else []
-    groups = [q for q in own.quantities if q not in RATIOS] if own else []
+    effects = [q for q in own.quantities if q in COMPARISONS] if own else []
+    groups = [q for q in own.quantities if q not in COMPARISONS] if own else []
     if own is None or not effects or not {"mean", "median", "count", "percent"} & set(groups):
         return own
     ends = ("ci_low", "ci_high")
@@ -117,7 +117,7 @@ def _ordered(frame: Frame, row: int, own: Role | None, role: Role | None) -> lis
         role is not None
         and own is not None
         and not whole
-        and (len(role.quantities) == 1 or set(role.quantities) & RATIOS)
+        and (len(role.quantities) == 1 or set(role.quantities) & COMPARISONS)
     ):
         first, second = role, own
     return [candidate for candidate in (first, second) if candidate is not None]
@@ -141,23 +141,18 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
         return Cell(values_, row, column, piece, "heading", stated=role.stated, n=role.n)
     if quantities[:1] == ("mean",) and len(quantities) == 1:
         return _with_spread(frame, row, column, piece, "heading", role.stated)
+    bare: dict[str, Printed] | None = None
     if quantities == ("mean", "sd") and piece.shape == "number":
-        values = {"mean": piece.numbers[0]}
-        return (
-            Cell(values, row, column, piece, "heading", stated=role.stated, n=role.n)
-            if fits(values, piece.numbers[0])
-            else None
-        )
+        bare = {"mean": piece.numbers[0]}
     if quantities == ("ci_low", "ci_high") and piece.shape == "triple":
-        values = dict(zip(("estimate", *quantities), piece.numbers, strict=True))
-        return (
-            Cell(values, row, column, piece, "heading", stated=role.stated, n=role.n)
-            if fits(values, piece.numbers[0])
-            else None
-        )
+        bare = dict(zip(("estimate", *quantities), piece.numbers, strict=True))
+    if bare is not None:
+        if not fits(bare, piece.numbers[0]):
+            return None
+        return Cell(bare, row, column, piece, "heading", stated=role.stated, n=role.n)
     if (
         len(quantities) == 1
-        and quantities[0] in RATIOS
+        and quantities[0] in COMPARISONS
         and piece.shape == "triple"
         and _speaks_of_intervals(frame)
     ):
@@ -345,7 +340,7 @@ def _names_others(role: Role | None) -> bool:
 
 
 def _speaks_of_estimates(frame: Frame) -> bool:
-    estimates = COEFFICIENTS | RATIOS | {"r2", "adjusted_r2"}
+    estimates = COEFFICIENTS | COMPARISONS | {"r2", "adjusted_r2"}
     return any(set(role.quantities) & estimates for role in frame.roles.values()) or any(
         word in frame.legend.text for word in ("regression", "odds ratio", "hazard ratio", "coefficient")
     )

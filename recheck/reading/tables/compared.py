@@ -8,7 +8,7 @@ from functools import cache
 
 import regex
 
-from recheck.model import Claim, ClaimKind, Confidence, Printed
+from recheck.model import LEVELS, Claim, ClaimKind, Confidence, Printed
 from recheck.reading.tables.bundles import Bundle
 from recheck.reading.tables.frame import Found, Frame
 from recheck.reading.tokens import words
@@ -100,8 +100,8 @@ def _plain_design(chosen: Sequence[Found]) -> bool:
     """Whether the groups stand beside each other, not crossed: `Course | Before`, `Course | After`, `None | Before` …"""
     if len(chosen) == 2:
         return True
-    return not any(" | " in (member.claim.group or "") for member in chosen) or len(
-        {(member.claim.group or "").partition(" | ")[0] for member in chosen}
+    return not any(LEVELS in (member.claim.group or "") for member in chosen) or len(
+        {(member.claim.group or "").partition(LEVELS)[0] for member in chosen}
     ) == 1  # fmt: skip
 
 
@@ -123,7 +123,7 @@ def _whole_sample() -> regex.Pattern[str]:
 
 def everyone(claim: Claim) -> bool:
     """Whether a summary is about all groups together."""
-    levels = (claim.group or "").split(" | ")
+    levels = (claim.group or "").split(LEVELS)
     return any(_whole_sample().match(level.strip(), timeout=TIMEOUT) for level in levels)
 
 
@@ -166,7 +166,7 @@ def _plain(text: str) -> str:
 
 def _under(claim: Claim, said: str) -> bool:
     """Whether the heading over the test is also over the group: `Rye` over `Before`, `After`, `t` and `p`."""
-    return (claim.group or "").lower().startswith(said.lower() + " | ")
+    return (claim.group or "").lower().startswith(said.lower() + LEVELS)
 
 
 @cache
@@ -194,7 +194,7 @@ def _named_pair(said: str, chosen: Sequence[Found]) -> list[Found]:
 def _called(name: str, chosen: Sequence[Found]) -> Found | None:
     """The only group that goes by this name: the same words, or the one letter or number at its end."""
     key = _key(name)
-    keys = [_key((member.claim.group or "").rpartition(" | ")[2]) for member in chosen]
+    keys = [_key((member.claim.group or "").rpartition(LEVELS)[2]) for member in chosen]
     for same_name in (str.__eq__, _ends_alike, _begins_alike):
         same = [member for member, own in zip(chosen, keys, strict=True) if same_name(own, key)]
         if same:

@@ -4,14 +4,14 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from recheck.model import Printed
-from recheck.reading.tables.cells import RATIOS
+from recheck.model import LEVELS, Printed
+from recheck.reading.tables.cells import COMPARISONS
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.saying import marks_compare
 from recheck.reading.tables.summaries import own_names
 from recheck.reading.tables.units import Unit
 
-_MAIN = (*sorted(RATIOS), "estimate")
+_MAIN = (*sorted(COMPARISONS), "estimate")
 _KEPT = (*_MAIN, "se", "sd", "ci_low", "ci_high", "p", "stars", "n", "N")
 
 
@@ -34,7 +34,7 @@ def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
     if "ci_low" in values:
         values |= interval_level(frame, unit.columns, unit.rows)
     yield claim_of(
-        frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=" | ".join(label.name for label in own_names(frame, unit) if label.name),
+        frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=LEVELS.join(label.name for label in own_names(frame, unit) if label.name),
         group=unit.group, stated=_stated(frame, unit), interval_of=main if "ci_low" in values else None, sure=unit.sure, spans=unit.spans,
     )  # fmt: skip
 

@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from decimal import Decimal
-from hashlib import blake2b
 
-from recheck.model import Claim, ClaimKind, Confidence, Place, Printed, Table
+from recheck.model import LEVELS, Claim, ClaimKind, Confidence, Place, Printed, Table
 from recheck.reading.context import Setting
+from recheck.reading.placed import claim_id
 from recheck.reading.tables.grid import Header, Sheet
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.legend import Legend
@@ -86,7 +86,7 @@ class Frame:
 
     def row_name(self, row: int, column: int | None = None) -> str:
         """The name of a row without the words that say what its numbers are."""
-        return " | ".join(label.name for label in self.labels(row, column) if label.name)
+        return LEVELS.join(label.name for label in self.labels(row, column) if label.name)
 
     def once(self, name: str, ask: Callable[[Frame], bool]) -> bool:
         """The answer to a question about the whole block, worked out once."""
@@ -131,7 +131,7 @@ def frame_of(sheet: Sheet, legend: Legend, setting: Setting) -> Frame:
         if role.quantities in (("q1",), ("q3",))
     }
     groups |= {
-        c: Group(" | ".join(part for part in (group.name, sheet.column_header(c).last) if part), group.n)
+        c: Group(LEVELS.join(part for part in (group.name, sheet.column_header(c).last) if part), group.n)
         for c, group in groups.items()
         if c not in roles
         and len(sheet.column_header(c).last) == 1
@@ -233,11 +233,11 @@ def claim_of(
     """
     sheet, table = frame.sheet, frame.sheet.table
     place = _place(sheet, table, rows or (row,), columns, spans or {})
-    values = {quantity: _with_alpha(value, frame.setting) for quantity, value in values.items()}
+    values = {quantity: frame.setting.at_own_level(value) for quantity, value in values.items()}
     background = tuple(word for word in frame.setting.context.background if word not in stated)
     confidence: Confidence = frame.confidence if sure else "medium"
     claim = Claim(
-        _id(kind, place, values), kind, place, values, tuple(dict.fromkeys(stated)), background, interval_of, confidence,
+        claim_id(kind, place, values), kind, place, values, tuple(dict.fromkeys(stated)), background, interval_of, confidence,
         groups, link, link_confidence, tuple(notes), _printed(outcome, sheet), _printed(group, sheet),
     )  # fmt: skip
     return Found(claim, row, tuple(columns), tuple(rows))
@@ -280,21 +280,7 @@ def _place(
 
 def _printed(name: str | None, sheet: Sheet) -> str | None:
     """A name with the dashes that the manuscript prints; None for an empty one."""
-    return " | ".join(sheet.names.get(part, part) for part in name.split(" | ")) if name else None
-
-
-def _with_alpha(value: Printed, setting: Setting) -> Printed:
-    """`ns` is larger than the document's own level."""
-    alpha = setting.context.alpha
-    if value.text[:1].isalpha() and value.relation in "<>" and alpha is not None:
-        share = alpha.value / 100 if alpha.percent else alpha.value
-        return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
-    return value
-
-
-def _id(kind: str, place: Place, values: Mapping[str, Printed]) -> str:
-    told_ = (kind, place.quote, place.section, place.table, place.row, place.column, *sorted(values))
-    return blake2b(repr(told_).encode(), digest_size=5).hexdigest()
+    return LEVELS.join(sheet.names.get(part, part) for part in name.split(LEVELS)) if name else None
 
 
 # -- p and its marks ----------------------------------------------------------------------------------

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 
-from recheck.model import Table
+from recheck.model import LEVELS, Table
 from recheck.reading.tables.columns import Columns
 from recheck.reading.tables.flat_heads import parted
 from recheck.reading.tables.headings import told
@@ -32,7 +32,7 @@ class Header:
     @property
     def text(self) -> str:
         """All levels in one text."""
-        return " | ".join(self.path)
+        return LEVELS.join(self.path)
 
     @property
     def last(self) -> str:

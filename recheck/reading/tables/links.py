@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
 
-from recheck.model import ClaimKind, Printed
+from recheck.model import LEVELS, ClaimKind, Printed
 from recheck.reading.tables.bundles import Bundle
 from recheck.reading.tables.compared import SAME_ROW, SAME_ROWS, Link, everyone, link_of
 from recheck.reading.tables.contingency import (
@@ -105,6 +105,6 @@ def as_group(frame: Frame, item: Found) -> Found:
     claim = item.claim
     if frame.groups_in_rows:
         return item
-    outer, _, last = (claim.outcome or "").rpartition(" | ")
-    outcome = " | ".join(name for name in (outer, claim.group) if name) or None
+    outer, _, last = (claim.outcome or "").rpartition(LEVELS)
+    outcome = LEVELS.join(name for name in (outer, claim.group) if name) or None
     return replace(item, claim=replace(claim, outcome=outcome, group=last or claim.group))

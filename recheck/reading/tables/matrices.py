@@ -8,7 +8,7 @@ from functools import cache
 
 import regex
 
-from recheck.model import N_OF_GROUP, Printed
+from recheck.model import LEVELS, N_OF_GROUP, Printed
 from recheck.reading.numerals import printed
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.headings import told
@@ -147,7 +147,7 @@ def _under_own_name(frame: Frame, matrix: Matrix, made: Found, row: int) -> Foun
     """A coefficient placed in the row of its variable alone, where the first row of the triangle looks like a heading."""
     if not below_first(frame, row, matrix.twins.values()) or made.claim.place.row is None:
         return made
-    place = replace(made.claim.place, row=made.claim.place.row.rpartition(" | ")[2])
+    place = replace(made.claim.place, row=made.claim.place.row.rpartition(LEVELS)[2])
     return replace(made, claim=replace(made.claim, place=place))
 
 

@@ -8,6 +8,7 @@ from functools import cache
 
 import regex
 
+from recheck.model import LEVELS
 from recheck.reading.numerals import printed
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.headings import told
@@ -221,10 +222,10 @@ def variable(frame: Frame, row: int) -> str:
     path, inner = frame.sheet.row_header(row).path, below_first(frame, row, frame.sheet.rows)
     own = (told(path[-1]).name if inner else frame.row_name(row)) or frame.sheet.row_header(row).last
     parts = []
-    for part in own.split(" | "):
+    for part in own.split(LEVELS):
         match = numbered().match(part.strip())
         parts.append(match["name"] if match and match["name"] else part)
-    return " | ".join(part for part in parts if part)
+    return LEVELS.join(part for part in parts if part)
 
 
 def row_part(frame: Frame, row: int) -> str:

@@ -7,9 +7,9 @@ from functools import cache
 
 import regex
 
-from recheck.model import ClaimKind, Printed
-from recheck.reading.tables.bundles import COEFFICIENTS, RATIOS, STATISTICS, Bundle, bundles_of
-from recheck.reading.tables.cells import has_constant
+from recheck.model import EFFECTS_ON_RISK, RATIOS, ClaimKind, Printed
+from recheck.reading.tables.bundles import STATISTICS, Bundle, bundles_of
+from recheck.reading.tables.cells import COEFFICIENTS, has_constant
 from recheck.reading.tables.frame import Found, Frame, claim_of, star_of
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.row_numbers import Numbers, numbers_of
@@ -35,7 +35,7 @@ def _is_regression(bundle: Bundle) -> bool:
     held = bundle.quantities
     if held & COEFFICIENTS:
         return bool(held & (STATISTICS | {"se", "p", "ci_low"}))
-    return bool(held & RATIOS) and bool(held & (STATISTICS - {"r"}))
+    return bool(held & EFFECTS_ON_RISK) and bool(held & (STATISTICS - {"r"}))
 
 
 def _coefficient(frame: Frame, row: int, bundle: Bundle) -> Found | None:
@@ -44,7 +44,7 @@ def _coefficient(frame: Frame, row: int, bundle: Bundle) -> Found | None:
     values = {
         name: value for name, value in numbers.values.items() if name not in ("n", "N", "other", "ss", "ms")
     }
-    if not values.keys() & (COEFFICIENTS | RATIOS) or not values.keys() - COEFFICIENTS - {"or", "rr", "hr"}:
+    if not values.keys() & (COEFFICIENTS | EFFECTS_ON_RISK) or not values.keys() - COEFFICIENTS - set(RATIOS):
         return None
     if "estimate" in values and "b" not in values:
         values["b"] = values.pop("estimate")

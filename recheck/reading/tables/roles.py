@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
-from recheck.model import Printed
+from recheck.model import LEVELS, Printed
 from recheck.reading.tables.grid import Header, Sheet
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.legend import Legend
@@ -50,7 +50,7 @@ def role_of(header: Header, legend: Legend) -> Role | None:
     named = zip(levels, header.path, strict=True)
     others = [name for k, (level, text) in enumerate(named) if k != at and (name := _name(level, text))]
     return Role(
-        quantities, " | ".join(others) or None, _first_n(levels), next((t.df for t in reversed(levels) if t.df), ()),
+        quantities, LEVELS.join(others) or None, _first_n(levels), next((t.df for t in reversed(levels) if t.df), ()),
         tuple(dict.fromkeys(word for level in levels for word in level.stated)), name=levels[at].name,
         level=next((level.level for level in reversed(levels) if level.level is not None), None),
     )  # fmt: skip
@@ -112,7 +112,7 @@ def group_of(header: Header, legend: Legend) -> Group:
         _name(level, text) if k < last else level.name
         for k, (level, text) in enumerate(zip(levels, header.path, strict=True))
     ]
-    name = " | ".join(dict.fromkeys(name for name in names if name))
+    name = LEVELS.join(dict.fromkeys(name for name in names if name))
     n = _first_n(levels)
     if n is None and name:
         n = size_told(legend, (name, *reversed(names)))
@@ -190,7 +190,7 @@ def _quartiles(sheet: Sheet, found: Mapping[int, Role]) -> dict[int, Role]:
     ):
         return {}
     return {
-        c: Role((name,), " | ".join(told(text).name for text in heads[c].path[:-1]) or None)
+        c: Role((name,), LEVELS.join(told(text).name for text in heads[c].path[:-1]) or None)
         for c, name in ends.items()
     }
 

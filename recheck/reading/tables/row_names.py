@@ -7,7 +7,7 @@ from typing import Protocol
 
 import regex
 
-from recheck.model import Table
+from recheck.model import LEVELS, Table
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.shapes import MARKS, kind_of
 from recheck.reading.tables.slots import Slot
@@ -126,7 +126,7 @@ class RowNames:
             for c in grid.columns
         ):
             return None
-        return " | ".join(_plain_label(grid.texts[row, c]) for c in labels)
+        return LEVELS.join(_plain_label(grid.texts[row, c]) for c in labels)
 
     def _only_numbers(self, row: int) -> bool:
         """Whether a row has numbers outside the columns of tests and none in them."""

@@ -8,18 +8,17 @@ from functools import cache
 
 import regex
 
-from recheck.model import ClaimKind, Printed
+from recheck.model import EFFECTS_ON_RISK, ClaimKind, Printed
 from recheck.reading.numerals import printed
 from recheck.reading.tables.bundles import (
-    COEFFICIENTS,
     DEGREES,
     DIFFERENCES,
     EFFECTS,
     ENDS,
-    RATIOS,
     STATISTICS,
     Bundle,
 )
+from recheck.reading.tables.cells import COEFFICIENTS
 from recheck.reading.tables.frame import NOT_SIGNIFICANT, Frame, interval_level, p_values, star_of
 from recheck.reading.tables.grid import Slot
 from recheck.reading.tables.headings import told
@@ -28,7 +27,7 @@ from recheck.reading.tables.roles import Role, matched
 from recheck.reading.tables.values import Piece
 from recheck.reading.views import TIMEOUT
 
-_OWNERS = COEFFICIENTS | RATIOS | EFFECTS | DIFFERENCES | {"r"}
+_OWNERS = COEFFICIENTS | EFFECTS_ON_RISK | EFFECTS | DIFFERENCES | {"r"}
 
 
 @dataclass(slots=True)

@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
 
-from recheck.model import N_OF_GROUP, ClaimKind, Printed
-from recheck.reading.tables.bundles import COEFFICIENTS, RATIOS, Bundle, bundles_of
+from recheck.model import EFFECTS_ON_RISK, LEVELS, N_OF_GROUP, ClaimKind, Printed
+from recheck.reading.tables.bundles import Bundle, bundles_of
+from recheck.reading.tables.cells import COEFFICIENTS
 from recheck.reading.tables.compared import Link
 from recheck.reading.tables.contingency import rows_of_test
 from recheck.reading.tables.frame import Found, Frame, claim_of
@@ -24,7 +25,7 @@ def claims_of(frame: Frame, found: Sequence[Found]) -> list[Found]:
     shelf = Shelf(found)
     for given in bundles_of(frame):
         bundle = meant(frame, given)
-        if bundle is None or bundle.quantities & (COEFFICIENTS | RATIOS):
+        if bundle is None or bundle.quantities & (COEFFICIENTS | EFFECTS_ON_RISK):
             continue
         kept = shelf.all()
         matrix = {column for item in kept if item.claim.kind == "correlation" for column in item.columns}
@@ -120,7 +121,7 @@ def _test(
     # `A × B` is made of letters that are symbols elsewhere.
     outcome = frame.row_name(row) or frame.sheet.row_header(row).last
     return claim_of(
-        frame, kind, values, row, numbers.columns, outcome=outcome.rpartition(" | ")[0] if names_groups else outcome,
+        frame, kind, values, row, numbers.columns, outcome=outcome.rpartition(LEVELS)[0] if names_groups else outcome,
         group=bundle.group if kind == "correlation" else None,
         stated=_said(frame, kind, numbers, link, several=_omnibus(values, link)),
         interval_of=numbers.ends_of, notes=(*numbers.notes, *notes, *((link.note,) if link.note else ())),

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import replace
 
-from recheck.model import N_OF_GROUP, Printed
+from recheck.model import LEVELS, N_OF_GROUP, Printed
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
 from recheck.reading.tables.headings import Told
 from recheck.reading.tables.roles import size_told
@@ -98,9 +98,9 @@ def names_of(frame: Frame, unit: Unit) -> tuple[str, str]:
     # A sub-heading with an n is a group, and the columns beside it are its times or conditions.
     over = [label.name for label in told_[:-1] if label.name and label.n is not None]
     labels = [label.name for label in told_ if label.name and label.name not in over]
-    column = " | ".join((*over, *((unit.group,) if unit.group else ())))
+    column = LEVELS.join((*over, *((unit.group,) if unit.group else ())))
     if not labels and not over and not any(group.n is not None for group in frame.groups.values()):
         return unit.group, ""
     if not frame.groups_in_rows or over:
-        return " | ".join(labels), column
-    return " | ".join((*labels[:-1], *((column,) if column else ()))), labels[-1] if labels else ""
+        return LEVELS.join(labels), column
+    return LEVELS.join((*labels[:-1], *((column,) if column else ()))), labels[-1] if labels else ""

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 from typing import Literal
 
 from recheck.model import Printed
-from recheck.reading.tables.cells import COEFFICIENTS, RATIOS, TESTS, Cell, named_cell
+from recheck.reading.tables.cells import COEFFICIENTS, COMPARISONS, TESTS, Cell, named_cell
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.sizes import measured_again
 
@@ -53,7 +53,7 @@ def _unit(opened: _Open) -> Unit:
 def family_of(values: Mapping[str, Printed]) -> Family:
     """What kind of thing numbers tell of; "" for an n, an interval or a p alone."""
     names = set(values)
-    if names & (RATIOS | COEFFICIENTS):
+    if names & (COMPARISONS | COEFFICIENTS):
         return "estimate"
     if names & _PEOPLE:
         return "people"

@@ -7,23 +7,18 @@ from functools import cache
 
 import regex
 
+from recheck.reading.context import mostly_commas
 from recheck.reading.tables.cell_text import LineReader, Piece
 from recheck.reading.tables.plain_cells import plain_piece
 from recheck.reading.tables.slots import Slot
 from recheck.reading.tokens import DIGITS
-from recheck.reading.views import TIMEOUT
 
 __all__ = ["Piece", "decimal_comma_of", "pieces"]
 
 
 def decimal_comma_of(texts: Iterable[str], *, default: bool) -> bool:
     """Whether cells write their decimals with a comma: as most of them do, else as the document does."""
-    commas = points = 0
-    for text in texts:
-        for match in _decimals().finditer(text, timeout=TIMEOUT):
-            commas += match["comma"] is not None
-            points += match["point"] is not None
-    return commas > points if commas or points else default
+    return mostly_commas(texts, _decimals(), default=default)
 
 
 @cache

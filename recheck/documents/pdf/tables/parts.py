@@ -8,9 +8,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from recheck.documents.pdf.blocks import Block
-from recheck.documents.pdf.joining import joined_text
 from recheck.documents.pdf.tables.page_tables import CAPTION, PageTable
-from recheck.documents.sections import caption_label, captioned
+from recheck.documents.sections import caption_label, captioned, unlabelled
 from recheck.model import Cell, Passage, Table
 
 
@@ -25,15 +24,15 @@ class Paged:
 def joined_tables(found: Sequence[PageTable]) -> list[Paged]:
     """Put stretches of one table on successive pages together; tables without a label are numbered."""
     tables: list[Paged] = []
-    unlabelled = 0
+    count = 0
     for part in found:
         last = tables[-1] if tables else None
         if last is not None and _goes_on(last.parts[-1], part):
             last.parts.append(part)
             continue
         if not part.label:
-            unlabelled += 1
-        tables.append(Paged(part.label or f"unlabelled table {unlabelled}", [part]))
+            count += 1
+        tables.append(Paged(part.label or unlabelled(count), [part]))
     return tables
 
 
@@ -77,8 +76,7 @@ def marked(blocks: list[Block], tables: Sequence[Paged]) -> list[Block]:
             last = found[-1].lines[-1] if found else None
             if last is not None and block.kind == "caption" and (last.page, last.region) == key:
                 # Label and title on lines of their own are one caption.
-                found[-1].lines = found[-1].lines + block.lines
-                found[-1].text = joined_text(found[-1].lines)
+                found[-1].take_in(block)
                 continue
         found.append(block)
     return found
