@@ -50,11 +50,23 @@ def _a_level(_: click.Context, __: click.Parameter, value: float | None) -> floa
     return value
 
 
+def _of_scores(_: click.Context, __: click.Parameter, values: tuple[str, ...]) -> tuple[str, ...]:
+    if values:
+        from recheck.auditing import score_rules
+
+        try:
+            score_rules(values)
+        except ValueError as error:
+            raise click.BadParameter(str(error)) from None
+    return values
+
+
 @commands.command(
     epilog="""\b
 Examples:
   recheck audit manuscript.pdf
   recheck audit --all --alpha 0.01 manuscript.txt
+  recheck audit --scores "crumb score: 1..7" manuscript.pdf
   recheck audit --json first.pdf second.pdf > audits.json
   recheck audit - < manuscript.txt
 
@@ -80,6 +92,13 @@ Exit status: 0 no discrepancy, 1 something is impossible or inconsistent,
     show_default=True,
     help="Engine that reads a PDF; auto has both read what a finding hangs on.",
 )
+@click.option(
+    "--scores",
+    multiple=True,
+    callback=_of_scores,
+    metavar="NAME: SCORES",
+    help="What the scores of an outcome are: 1..7 (whole numbers from 1 to 7), 0..20, 5 items (whole answers, five averaged), 0..100, not whole; the name * is all. May be repeated.",
+)
 @click.pass_context
 def audit(
     ctx: click.Context,
@@ -88,6 +107,7 @@ def audit(
     everything: bool,
     alpha: float | None,
     reader: ReaderChoice,
+    scores: tuple[str, ...],
 ) -> None:
     """List the discrepancies in manuscripts, worst first.
 
@@ -98,7 +118,7 @@ def audit(
         raise click.UsageError("- (standard input) can be read only once.")
     if as_json and everything:
         raise click.UsageError("--json holds everything already: leave out --all.")
-    ctx.exit(_audit_files(files, as_json, everything, alpha, reader))
+    ctx.exit(_audit_files(files, as_json, everything, alpha, reader, scores))
 
 
 @commands.command(
@@ -159,7 +179,12 @@ def main(arguments: Sequence[str] | None = None) -> int:
 
 
 def _audit_files(
-    files: Sequence[str], as_json: bool, everything: bool, alpha: float | None, reader: ReaderChoice
+    files: Sequence[str],
+    as_json: bool,
+    everything: bool,
+    alpha: float | None,
+    reader: ReaderChoice,
+    scores: Sequence[str],
 ) -> int:
     """Audit each file and print what was found; return the exit status."""
     import logging
@@ -177,7 +202,7 @@ def _audit_files(
         title = STANDARD_INPUT if name == "-" else name
         _progress(f"reading {clean(title)} ({number} of {len(files)})")
         try:
-            done = _audited(name, alpha, reader)
+            done = _audited(name, alpha, reader, scores)
             text = "" if as_json else terminal_report(done, everything=everything, look=look)
             records += [json_report.audit_record(done)] if as_json else []
             statuses.append(DISCREPANT if done.discrepant else DONE)
@@ -196,15 +221,17 @@ def _audit_files(
     return max(statuses)
 
 
-def _audited(name: str, alpha: float | None, reader: ReaderChoice) -> Audit:
+def _audited(name: str, alpha: float | None, reader: ReaderChoice, scores: Sequence[str]) -> Audit:
     from recheck.auditing import audit as audit_document
     from recheck.errors import UnreadableDocument
 
     if name == "-":
         if sys.stdin is None:
             raise UnreadableDocument(STANDARD_INPUT, "it is closed", "send a manuscript into it")
-        return audit_document(sys.stdin.buffer.read(), name=STANDARD_INPUT, alpha=alpha, reader=reader)
-    return audit_document(name, alpha=alpha, reader=reader)
+        return audit_document(
+            sys.stdin.buffer.read(), name=STANDARD_INPUT, alpha=alpha, reader=reader, scores=scores
+        )
+    return audit_document(name, alpha=alpha, reader=reader, scores=scores)
 
 
 def _sentence(title: str, error: Exception) -> str:

@@ -51,7 +51,8 @@ def _used(finding: Finding, claim: str) -> frozenset[str]:
     """The numbers of a claim that a finding rests on."""
     if claim != finding.claims[0]:
         return GROUP_QUANTITIES | {finding.quantity}
-    return frozenset((finding.quantity, *find_check(finding.check).needs))
+    check = find_check(finding.check)
+    return frozenset((finding.quantity, *check.needs, *check.uses))
 
 
 def _found(claim: Claim, used: frozenset[str], seen: Iterable[Claim]) -> bool:

@@ -55,6 +55,9 @@ def started(*arguments, **more):
         (["clean.txt", "--alpha", "1.5"], WRONG_USE),
         (["clean.txt", "--alpha", "nan"], WRONG_USE),
         (["clean.txt", "--reader", "eyes"], WRONG_USE),
+        (["clean.txt", "--scores", "crumb"], WRONG_USE),
+        (["clean.txt", "--scores", "crumb: 7..1"], WRONG_USE),
+        (["clean.txt", "--scores", "crumb: 1..7"], DONE),
         (["-", "-"], WRONG_USE),
         (["clean.txt", "--json", "--all"], WRONG_USE),
     ],
@@ -67,6 +70,24 @@ def test_a_discrepancy_is_printed_with_its_quote(run):
     _, out, err = run("audit", "wrong.txt")
     assert "t(28) = 2.20, p = .010" in out and "0.0358" in out
     assert err == ""
+
+
+def test_scores_that_are_told_are_used_and_kept(run, tmp_path):
+    Path("scores.txt").write_text("Crumb scores rose (M = 4.19, SD = 1.17, n = 28).", encoding="utf-8")
+    assert run("audit", "scores.txt")[0] == DONE
+    # No 28 whole numbers have a mean from 4.185 to 4.195: 117/28 is 4.179, 118/28 is 4.214.
+    status, out, _ = run("audit", "--scores", "crumb score: 1..7", "scores.txt")
+    assert status == DISCREPANT and "crumb score: 1..7" in out
+    record = json.loads(run("audit", "--json", "--scores", "crumb score: 1..7", "scores.txt")[1])
+    assert record["settings"]["scores"] == ["crumb score: 1..7"]
+    validate(record, audit_schema())
+
+
+def test_scores_that_cannot_be_understood_get_one_sentence(run):
+    _, out, err = run("audit", "clean.txt", "--scores", "crumb: 7..1")
+    assert out == "" and err.rstrip().splitlines()[-1].startswith(
+        "Error: Invalid value for '--scores': The highest"
+    )
 
 
 def test_nothing_to_check_is_said(run):

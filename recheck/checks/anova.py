@@ -76,7 +76,7 @@ def _source(effect: str, *, total: str = "340.0") -> str:
 def f_from_groups(case: Case) -> Iterable[Finding]:
     """Compare F with what the groups imply under each one-way analysis that the df fit."""
     claim, name = case.claim, "F-from-groups"
-    if not 3 <= len(case.groups) <= MOST_GROUPS:
+    if not 3 <= len(case.groups) <= MOST_GROUPS or claim.says("variance-test"):
         return
     several = several_of(case.groups)
     if several is None:

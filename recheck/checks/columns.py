@@ -20,13 +20,17 @@ PROOF = 2
 COLUMNS = "the columns of the table hold what their headings say (most of its rows do not fit)"
 OTHER_SE = "β may be standardized beside the SE of another number: other rows of the table do not fit either"
 OTHER_WEIGHTS = "the percentage may be one of weighted counts, of which the document speaks"
+OF_COUNTS = "ratio-from-counts"
+SAME_GROUPS = (
+    "the ratio compares the two groups whose counts stand in its row (no other row of the table shows it)"
+)
 PROFILES = "the intervals of this table are not all symmetric in logarithms (profile or exact ones), so they do not tell p"
 MIXED = "p and interval of several rows of this table come from different methods, so the interval does not tell p"
 
 
 def by_columns(findings: Sequence[Finding]) -> tuple[Finding, ...]:
     """The findings, those of tables judged in the light of their other rows."""
-    return _doubting_columns(_other_methods(_unproved(findings)))
+    return _doubting_columns(_doubting_ratios(_other_methods(_unproved(findings))))
 
 
 def _tables(findings: Iterable[Finding], counted: Callable[[Finding], bool]) -> Counter[tuple[str, str]]:
@@ -47,6 +51,20 @@ def _doubting_columns(findings: Sequence[Finding]) -> tuple[Finding, ...]:
     doubtful = {key for key, rows in wrong.items() if rows >= FEW_ROWS and rows > fitting[key]}
     return tuple(
         doubted(f, COLUMNS) if (f.check, f.place.table or "") in doubtful and _wrong(f) else f
+        for f in findings
+    )
+
+
+def _doubting_ratios(findings: Sequence[Finding]) -> tuple[Finding, ...]:
+    """A ratio that the counts of its row do not give is conditional where no other row shows that they do in this table.
+
+    A table of two sexes may print the ratio of each risk factor for something else.
+    """
+    shown = _tables(findings, lambda f: f.check == OF_COUNTS and f.verdict == "agrees")
+    return tuple(
+        doubted(f, SAME_GROUPS)
+        if f.check == OF_COUNTS and f.verdict in DISCREPANT and not shown[OF_COUNTS, f.place.table or ""]
+        else f
         for f in findings
     )
 

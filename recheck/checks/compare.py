@@ -86,7 +86,7 @@ def judge(case: Case, comparison: Comparison) -> Finding:
     if match:
         plain = [a for a in tried if not a.unstated and a.implied]
         return _finding(case, comparison, claims, "conditional", [*plain, match], match)
-    doubts = (*comparison.doubts, *_doubts_of(claims))
+    doubts = (*comparison.doubts, *reading_doubts(claims))
     if doubts:
         return _finding(case, comparison, claims, "conditional", _listed(tried), None, doubts=doubts)
     return _finding(
@@ -122,7 +122,7 @@ def impossible(
 ) -> Finding:
     """A printed value that no data can have; `conditional` where it was read with doubt."""
     printed = case.claim.values[quantity]
-    doubts = _doubts_of((case.claim,))
+    doubts = reading_doubts((case.claim,))
     verdict: Verdict = "conditional" if doubts else "impossible"
     gap = printed.interval().distance(implied) / float(printed.unit)
     return Finding(
@@ -156,7 +156,8 @@ def _within(attempt: Attempt, bounds: Interval) -> Attempt:
     return replace(attempt, printed=attempt.printed.within(bounds.low, bounds.high), implied=implied)
 
 
-def _doubts_of(claims: Sequence[Claim]) -> tuple[str, ...]:
+def reading_doubts(claims: Sequence[Claim]) -> tuple[str, ...]:
+    """Say of each claim that was read with doubt that it was read rightly, and why it may not have been."""
     doubts = []
     for claim in claims:
         if claim.confidence != "high":

@@ -8,7 +8,7 @@ from collections.abc import Iterable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from recheck.checks.compare import unchecked
+from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.examples import table
 from recheck.checks.p_values import (
     NORMAL_P,
@@ -20,6 +20,7 @@ from recheck.checks.p_values import (
 from recheck.checks.registry import Case, check
 from recheck.model import N_OF_GROUP, Claim, Finding, Interval
 from recheck.recompute import bounds, ranks, tails
+from recheck.recompute.correlations import partial_r_bounds
 from recheck.reconcile.readings import Box, Way, agrees_as_printed
 
 
@@ -183,3 +184,70 @@ def _fitting(claim: Claim) -> NDArray[np.bool_]:
     r, p = claim.values["r"].interval().absolute().within(0.0, 1.0), claim.values["p"].interval()
     low, high = bounds.p_from_r_bounds(r.low, r.high, N_GRID - 2, N_GRID - 2)
     return np.asarray((low <= p.high) & (high >= p.low))
+
+
+@check(
+    "partial-r",
+    title="partial correlation against the three correlations told with it",
+    kinds=("correlation",),
+    quantity="r",
+    needs=("r",),
+    beside="just three plain correlations in the same passage",
+    formula="partial r = (r12 − r13 r23) / √((1 − r13²)(1 − r23²)); semipartial r = (r12 − r13 r23) / √(1 − r23²)",
+    source="Yule (1907) Proceedings of the Royal Society A 79:182-193; Cohen & Cohen (1983), 3.4",
+    limits="Conditional at most: which three variables are meant, and that one alone is held constant, is taken from the passage.",
+    agrees=(
+        "Height went with crumb score (r = .50), height with hydration (r = .40), and crumb score with hydration (r = .60). "
+        "The partial correlation of height and crumb score was r(81) = .35, p = .001.",
+    ),
+    conditional=(
+        "Height went with crumb score (r = .50), height with hydration (r = .40), and crumb score with hydration (r = .60). "
+        "The partial correlation of height and crumb score was r(81) = .53, p < .001.",
+    ),
+)
+def partial_r(case: Case) -> Iterable[Finding]:
+    """Compare a partial correlation with the one that three correlations of its passage imply, whichever of them is which."""
+    claim = case.claim
+    if not claim.says("partial") or len(case.block) != len(ORDERS) or claim in case.block:
+        return
+    numbers = {"r": claim.values["r"]}
+    numbers |= {f"r of pair {i}": other.values["r"] for i, other in enumerate(case.block, 1)}
+    if any(printed.interval().absolute().low > 1 for printed in numbers.values()):
+        return
+    ways = [Way(lambda box: tuple(i for order in ORDERS for i in _partial(box, order)))]
+    ways.append(
+        Way(lambda box: tuple(i for order in ORDERS for i in _semipartial(box, order)), (SEMI,), alone=True)
+    )
+    three = "the three correlations are those of its two variables with each other and with the only one held constant, of the same cases"
+    yield judge(
+        case,
+        Comparison(
+            "partial-r", "r", numbers, ways, (claim, *case.block), Interval(-1.0, 1.0), doubts=(three,)
+        ),
+    )
+
+
+ORDERS = ((1, 2, 3), (2, 1, 3), (3, 1, 2))
+"""Which of three pairs is the one whose partial correlation is told; the other two have the same part in it."""
+SEMI = "the coefficient is a semipartial (part) correlation"
+
+
+def _three(box: Box, order: tuple[int, int, int]) -> list[Interval]:
+    return [box[f"r of pair {i}"].within(-1.0, 1.0) for i in order]
+
+
+def _partial(box: Box, order: tuple[int, int, int]) -> Iterator[Interval]:
+    """The range of the partial correlation; none where no data have these three."""
+    low, high = partial_r_bounds(*(end for r in _three(box, order) for end in (r.low, r.high)))
+    if not np.isnan(low):
+        yield Interval(float(low), float(high))
+
+
+def _semipartial(box: Box, order: tuple[int, int, int]) -> Iterator[Interval]:
+    """The range of both semipartial correlations, from that of the partial one: each is √(1 − r²) of it."""
+    for whole in _partial(box, order):
+        for other in _three(box, order)[1:]:
+            size = other.absolute()
+            least, most = math.sqrt(1 - size.high**2), math.sqrt(1 - size.low**2)
+            low = whole.low * (most if whole.low < 0 else least)
+            yield Interval(low, whole.high * (most if whole.high > 0 else least))

@@ -14,12 +14,14 @@ from recheck.checks.examples import table
 from recheck.checks.groups import link_doubts
 from recheck.checks.p_values import ONE_TAILED, judge_p, loosely
 from recheck.checks.registry import Case, check
+from recheck.checks.risk_tables import excuses_of
 from recheck.checks.tabulated import Layout, Tables, laid_out, tables_of
 from recheck.checks.tails import other_chi2
 from recheck.model import STATED, Claim, Finding, Interval
 from recheck.recompute import contingency
+from recheck.recompute.exact_tests import fisher_p, freeman_halton_p
 from recheck.recompute.tails import chi2_tail
-from recheck.reconcile.readings import Box, Way
+from recheck.reconcile.readings import Box, Way, box_of
 
 YATES = "χ² has the continuity correction"
 N_MINUS_ONE = "χ² has N − 1 for N"
@@ -223,7 +225,9 @@ def _values(layout: Layout, statistic: Callable[[Tables], Tables]) -> Callable[[
 def p_from_counts(case: Case) -> Iterable[Finding]:
     """Compare a p that stands alone with those of the usual tests of the table of counts."""
     claim, name = case.claim, "p-from-counts"
-    if claim.values.keys() & {"chi2", "z", "t", "F", "u", "w", "or", "rr", "hr", "rd", "b", "r"}:
+    of_ratio = bool(claim.values.keys() & {"or", "rr", "rd"})
+    told_by_interval = of_ratio and "ci_low" in claim.values
+    if told_by_interval or claim.values.keys() & {"chi2", "z", "t", "F", "u", "w", "hr", "b", "r"}:
         return
     layout = _layout(case)
     if layout is None:
@@ -235,7 +239,7 @@ def p_from_counts(case: Case) -> Iterable[Finding]:
     numbers = {"p": claim.values["p"], **layout.numbers}
     named = claim.kind == "chi2-test" or claim.says("fisher-exact", "yates", "uncorrected-chi2")
     ways = list(_p_ways(claim, layout))
-    excuses, doubts = _foreign(claim), list(_doubts(case, layout))
+    excuses, doubts = _foreign(claim) + excuses_of(case) * of_ratio, list(_doubts(case, layout))
     if not named:
         doubts.append("p is that of a test of independence (no test is named)")
     ordered = layout.shape[0] > 2 and not named
@@ -268,7 +272,10 @@ def _p_ways(claim: Claim, layout: Layout) -> Iterator[Way]:
     def others(box: Box) -> tuple[Interval, ...]:
         return tuple(other_chi2(chi2, df == 1) for chi2 in pearson(box))
 
-    stated = df > 1 and fisher
+    larger = _freeman_halton(layout) if fisher and df > 1 else None
+    if larger is not None:
+        yield Way(lambda _: (larger,), (), (FISHER,))
+    stated = df > 1 and fisher and larger is None
     yield Way(_tail_of(others, df), () if stated else (loose,), (FISHER,) if stated else ())
     if df == 1 and not claim.suggests("two-tailed"):
         yield Way(
@@ -292,5 +299,18 @@ def _fisher(box: Box, layout: Layout) -> tuple[Interval, ...]:
     tables = tables_of(box, layout)
     if tables is None or len(tables) > MOST_EXACT:
         return ()
-    found = [contingency.fisher_p(table) for table in tables]
-    return (Interval(min(found), max(found)),)
+    found = fisher_p(tables)
+    return (Interval(float(found.min()), float(found.max())),)
+
+
+MOST_STEPS = 200_000
+"""Steps of the exact test of a larger table, about a twentieth of a second."""
+
+
+def _freeman_halton(layout: Layout) -> Interval | None:
+    """Fisher's exact p of a larger table whose counts are all printed; None where it takes too long."""
+    tables = tables_of(box_of(layout.numbers), layout)
+    if tables is None or len(tables) > 1:
+        return None
+    p = freeman_halton_p(tables[0], most=MOST_STEPS)
+    return None if math.isnan(p) else Interval(p, p)

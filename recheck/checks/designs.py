@@ -14,6 +14,7 @@ import numpy as np
 
 from recheck.model import N_OF_GROUP, Claim, Interval, Printed
 from recheck.recompute import two_groups
+from recheck.recompute.paired import paired_t_bounds
 from recheck.reconcile.readings import Box, Numbers, Way
 
 MOST_SPLITS = 2000
@@ -94,7 +95,7 @@ def sds(box: Box, groups: Groups, n1: float, n2: float, *, as_se: bool) -> Sprea
     return Spreads(*ends)
 
 
-def _t_interval(box: Box, groups: Groups, n1: float, n2: float, *, as_se: bool, welch: bool) -> Interval:
+def t_interval(box: Box, groups: Groups, n1: float, n2: float, *, as_se: bool, welch: bool) -> Interval:
     """|t| over the box of means and spreads."""
     s, a, b = sds(box, groups, n1, n2, as_se=as_se), box["mean1"], box["mean2"]
     bounds = two_groups.welch_t_bounds if welch else two_groups.pooled_t_bounds
@@ -112,9 +113,7 @@ def _paired_interval(box: Box, groups: Groups, n: float, *, as_se: bool) -> Inte
     """|t| that some correlation from −1 to 1 between the two measures allows."""
     s, a, b = sds(box, groups, n, n, as_se=as_se), box["mean1"], box["mean2"]
     with np.errstate(divide="ignore", invalid="ignore"):
-        low, high = two_groups.paired_t_bounds(
-            a.low, a.high, s.low1, s.high1, b.low, b.high, s.low2, s.high2, n
-        )
+        low, high = paired_t_bounds(a.low, a.high, s.low1, s.high1, b.low, b.high, s.low2, s.high2, n)
     return known(float(low), float(high)).absolute()
 
 
@@ -240,10 +239,10 @@ def _known_ways(
         extra = (SE_READING,) if as_se else ()
 
         def by_pooled(box: Box, as_se: bool = as_se) -> tuple[Interval, ...]:
-            return (_t_interval(box, groups, n1, n2, as_se=as_se, welch=False),)
+            return (t_interval(box, groups, n1, n2, as_se=as_se, welch=False),)
 
         def by_welch(box: Box, as_se: bool = as_se) -> tuple[Interval, ...]:
-            return (_t_interval(box, groups, n1, n2, as_se=as_se, welch=True),)
+            return (t_interval(box, groups, n1, n2, as_se=as_se, welch=True),)
 
         def by_pairs(box: Box, as_se: bool = as_se) -> tuple[Interval, ...]:
             return (_paired_interval(box, groups, n1, as_se=as_se),)

@@ -15,7 +15,7 @@ from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
 from recheck.model import Claim, Finding, Interval
-from recheck.recompute import effects
+from recheck.recompute import effect_bounds, effect_sizes
 from recheck.reconcile.readings import Box, Way
 
 INFINITY = float("inf")
@@ -48,7 +48,9 @@ def correction(kind: str, df: float) -> float:
     if kind == "none" or df <= 1:
         return 1.0
     return float(
-        effects.hedges_correction(df) if kind == "exact" else effects.hedges_correction_approximate(df)
+        effect_sizes.hedges_correction(df)
+        if kind == "exact"
+        else effect_sizes.hedges_correction_approximate(df)
     )
 
 
@@ -70,7 +72,7 @@ def _from_box(
 ) -> Interval:
     s, a, b = sds(box, groups, n1, n2, as_se=as_se), box["mean1"], box["mean2"]
     with np.errstate(divide="ignore", invalid="ignore"):
-        low, high = effects.d_bounds(
+        low, high = effect_bounds.d_bounds(
             a.low, a.high, s.low1, s.high1, n1, b.low, b.high, s.low2, s.high2, n2, denominator=denominator
         )
     return known(float(low), float(high)).absolute()
@@ -243,7 +245,7 @@ def _factor(n1: float, n2: float) -> float:
     return math.sqrt(1.0 / n1 + 1.0 / n2)
 
 
-def _t_ways(claim: Claim, name: str, sizes: Sizes) -> Iterator[Way]:
+def t_ways(claim: Claim, name: str, sizes: Sizes) -> Iterator[Way]:
     """Ways from t to d: two groups (sizes printed, equal or any), pairs, rough formulas."""
     paired_only = claim.says("paired", "repeated", "one-sample")
     independent_only = claim.says("independent", "pooled", "welch", "between-groups") or (
@@ -331,7 +333,7 @@ def d_from_t(case: Case) -> Iterable[Finding]:
     yield judge(
         case,
         Comparison(
-            "d-from-t", name, numbers, tuple(_t_ways(claim, name, sizes)), bounds=Interval(0.0, INFINITY),
+            "d-from-t", name, numbers, tuple(t_ways(claim, name, sizes)), bounds=Interval(0.0, INFINITY),
             doubts=doubts, excuses=(foreign,) if foreign else (),
         ),
     )  # fmt: skip

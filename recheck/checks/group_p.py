@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable, Iterator, Sequence
 
 from recheck.checks.compare import unchecked
-from recheck.checks.designs import MISSING, PAIRED, POOLED, SE_READING, WELCH, known, sds, welch_df
+from recheck.checks.designs import MISSING, PAIRED, POOLED, SE_READING, WELCH, known, sds
 from recheck.checks.designs import Groups as Pair
 from recheck.checks.examples import table
 from recheck.checks.groups import link_doubts, linked_groups
@@ -16,6 +16,8 @@ from recheck.checks.several import ONE_WAY, WELCH_F, Several, one_way_F, several
 from recheck.model import Claim, Finding, Interval
 from recheck.recompute import bounds, two_groups
 from recheck.recompute.anova import MOST_GROUPS
+from recheck.recompute.mean_differences import welch_p_bounds
+from recheck.recompute.paired import paired_t_bounds
 from recheck.reconcile.readings import Box, Numbers, Way
 
 STATISTICS = frozenset(("t", "F", "z", "chi2", "u", "w", "r", "or", "rr", "hr", "b", "beta"))
@@ -139,7 +141,8 @@ def _pair_ways(claim: Claim, pair: Pair) -> Iterator[Way]:
             open_ = equal if welch else unequal
             mark = (words,) if open_ else ()
             p_of = _p_of_pair(pair, n1, n2, as_se=as_se, welch=welch)
-            yield Way(_tails(p_of, 1.0), (*extra, *mark), () if mark else (words,))
+            costly = welch and not unequal
+            yield Way(_tails(p_of, 1.0), (*extra, *mark), () if mark else (words,), costly)
             if not claim.suggests("two-tailed"):
                 yield Way(_tails(p_of, 0.5), (*extra, *mark, ONE_TAILED))
         if n1 == n2 and not claim.says("independent", "pooled", "welch", "between-groups"):
@@ -160,16 +163,17 @@ def _tails(p_of: Callable[[Box], Interval], factor: float) -> Callable[[Box], tu
 def _p_of_pair(
     pair: Pair, n1: float, n2: float, *, as_se: bool, welch: bool, normal: bool = False
 ) -> Callable[[Box], Interval]:
-    """Two-sided p over the box: |t| and, for Welch, its df each by its own range."""
+    """Two-sided p over the box: of Welch's test by its own range, else by that of |t|."""
     t_bounds = two_groups.welch_t_bounds if welch else two_groups.pooled_t_bounds
+    df = UNIT_DF if normal else n1 + n2 - 2
 
     def p_of(box: Box) -> Interval:
         s, a, b = sds(box, pair, n1, n2, as_se=as_se), box["mean1"], box["mean2"]
-        ends = t_bounds(a.low, a.high, s.low1, s.high1, n1, b.low, b.high, s.low2, s.high2, n2)
-        t = known(float(ends[0]), float(ends[1])).absolute()
-        df = welch_df(box, pair, as_se=as_se) if welch else Interval(n1 + n2 - 2, n1 + n2 - 2)
-        df = Interval(UNIT_DF, UNIT_DF) if normal else df
-        return as_interval(bounds.p_from_t_bounds(t.low, t.high, df.low, df.high, 2))
+        corners = (a.low, a.high, s.low1, s.high1, n1, b.low, b.high, s.low2, s.high2, n2)
+        if welch and not normal and max(s.high1, s.high2) > 0:
+            return as_interval(welch_p_bounds(*corners))
+        t = known(*(float(end) for end in t_bounds(*corners))).absolute()
+        return as_interval(bounds.p_from_t_bounds(t.low, t.high, df, df, 2))
 
     return p_of
 
@@ -179,7 +183,7 @@ def _p_of_pairs(pair: Pair, n: float, *, as_se: bool) -> Callable[[Box], tuple[I
 
     def implied(box: Box) -> tuple[Interval, ...]:
         s, a, b = sds(box, pair, n, n, as_se=as_se), box["mean1"], box["mean2"]
-        ends = two_groups.paired_t_bounds(a.low, a.high, s.low1, s.high1, b.low, b.high, s.low2, s.high2, n)
+        ends = paired_t_bounds(a.low, a.high, s.low1, s.high1, b.low, b.high, s.low2, s.high2, n)
         t = known(float(ends[0]), float(ends[1])).absolute()
         return (as_interval(bounds.p_from_t_bounds(t.low, t.high, n - 1, n - 1, 2)),)
 

@@ -9,6 +9,8 @@ from functools import lru_cache
 from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import Fit, Groups, fit_designs, groups_of
 from recheck.checks.models import foreign_model
+from recheck.checks.pairing import correlation_told
+from recheck.checks.pooling import pooled_or_welch
 from recheck.checks.registry import Case, check
 from recheck.model import DISCREPANT, Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.reconcile.readings import Box, Way, agrees_as_printed, box_of
@@ -16,8 +18,8 @@ from recheck.reconcile.readings import Box, Way, agrees_as_printed, box_of
 
 @lru_cache(maxsize=4)
 def linked_groups(case: Case) -> tuple[Groups, tuple[Claim, ...]] | None:
-    """The two summaries that a test is linked to, with all claims involved."""
-    if len(case.groups) != 2:
+    """The two summaries whose means a test compares, with all claims involved."""
+    if len(case.groups) != 2 or case.claim.says("variance-test") or case.claim.kind == "rank-test":
         return None
     groups = groups_of(*case.groups)
     return (groups, (case.claim, *case.groups)) if groups else None
@@ -65,7 +67,11 @@ def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Ite
         finding = replace(
             finding, reconciled_by=(*_spread_slip(case, groups, quantity, squared), *finding.reconciled_by)
         )
-    yield finding
+    if finding.verdict in ("conditional", "inconsistent") and fit.design != "paired":
+        told = pooled_or_welch(box_of(groups.numbers), groups)
+        finding = replace(finding, message=f"{finding.message} {told}".rstrip())
+    told = correlation_told(finding, case.claim, groups) if quantity == "t" else ""
+    yield replace(finding, message=f"{finding.message} {told}".rstrip())
 
 
 def _followed(ways: Iterable[Way], *, squared: bool) -> tuple[Way, ...]:

@@ -49,7 +49,7 @@ def hand_slack(case: Case) -> Slack:
     two significant digits is taken for granted, or fewer where the difference is printed too coarsely for that.
     """
     printed = [case.claim.values[n] for n in ("mean_difference", "ci_low") if n in case.claim.values]
-    printed += [group.values["mean"] for group in case.groups]
+    printed += [group.values["mean"] for group in case.groups if "mean" in group.values]
     shift = max(float(number.unit) for number in printed)
     spreads = [group.values[n] for group in case.groups for n in ("sd", "se") if n in group.values]
     shares = [float(spread.unit) / 2 / max(abs(spread.number), float(spread.unit) / 2) for spread in spreads]

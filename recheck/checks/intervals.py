@@ -159,11 +159,12 @@ def _belonging(
 
 def _surely_of_effect(case: Case, low: Printed, high: Printed) -> bool:
     """Tell whether an interval beside a test and its effect can be that of no mean or difference."""
-    means = [group.values["mean"] for group in case.groups]
+    means = [group.values["mean"].interval() for group in case.groups if "mean" in group.values]
     interval = Interval(low.interval().low, high.interval().high)
-    difference = abs(means[0].number - means[1].number)
-    told = (*(mean.number for mean in means), difference, -difference)
-    return not any(interval.holds(value) for value in told)
+    if len(means) != 2:
+        return False
+    told = (*means, means[0].minus(means[1]), means[1].minus(means[0]))
+    return not any(interval.meets(other) for other in told)
 
 
 def _inside(printed: Printed, low: Printed, high: Printed) -> bool:
@@ -195,6 +196,8 @@ def ci_centre(case: Case) -> Iterable[Finding]:
     inside = low.interval().low <= printed.interval().high and printed.interval().low <= high.interval().high
     if claim.interval_of != "mean_difference" or not inside or low.value > high.value:
         return
+    if any(group.kind == "count" for group in case.groups):
+        return  # the intervals of a difference of two shares are mostly not symmetric
 
     def centre(box: Box, off: float = 0.0, units: float = 0.0) -> tuple[Interval, ...]:
         a, b = box["ci_low"], box["ci_high"]

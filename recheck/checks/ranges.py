@@ -30,11 +30,12 @@ RANGES: dict[str, Interval] = {
     "omega2": Interval(-math.inf, 1.0),
     "epsilon2": Interval(-math.inf, 1.0),
     "adjusted_r2": Interval(-math.inf, 1.0),
+    "delta_r2": Interval(-1.0, 1.0),
     "cramers_v": Interval(0.0, 1.0),
     "or": Interval(0.0, math.inf),
     "rr": Interval(0.0, math.inf),
     "hr": Interval(0.0, math.inf),
-    "rd": Interval(-1.0, 1.0),
+    "rd": Interval(-1000.0, 1000.0),  # printed as a share, in percentage points or per thousand
     "n": Interval(0.0, math.inf),
     "N": Interval(0.0, math.inf),
     "power": Interval(0.0, 1.0),
@@ -59,7 +60,8 @@ EXCUSES = {
     needs=(),
     formula="0 ≤ p ≤ 1; −1 ≤ r ≤ 1; SD, SE, F, χ², OR, RR, HR ≥ 0; 0 ≤ η², R² ≤ 1",
     source="by definition of each quantity",
-    limits="Percentages are left out; so are adjusted R² and ω² below 0, and disattenuated correlations.",
+    limits="Percentages are left out; so are adjusted R² and ω² below 0, and disattenuated correlations. R² of predictions for other data may be negative: conditional.",
+    conditional=("The model did not carry over to the second bakery, R² = −.05.",),
     impossible=(
         "Height and crumb score went together, r(48) = 1.30, p = .034.",
         "The panel agreed (M = 5.2, SD = −1.1).",
@@ -78,9 +80,12 @@ def in_range(case: Case) -> Iterable[Finding]:
             yield unchecked(case, "range", name, reason)
             continue
         text = f"{shown(name)} {printed_text(printed)} lies outside what it can be, {span(allowed.low, allowed.high)}."
-        yield impossible(case, "range", name, text, allowed, remedies=_misprints(name, printed, allowed))
+        found = impossible(case, "range", name, text, allowed, remedies=_misprints(name, printed, allowed))
+        below = name == "r2" and printed.value < 0 and found.verdict == "impossible"
+        yield doubted(found, OF_ITS_OWN_DATA) if below else found
 
 
+OF_ITS_OWN_DATA = "the R² is that of a least-squares fit to the same data, not of predictions for other data"
 OWN_SCALE = "the interval is one of the ratio itself made in logarithms, neither ratio ± c SE nor that of a difference"
 
 

@@ -9,6 +9,7 @@ from recheck.checks.compare import Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.intervals import NEED_NOT_BE_SYMMETRIC, OFF_CENTRE, ends, exponential, log_middle
 from recheck.checks.registry import Case, check
+from recheck.checks.risk_intervals import told_by_counts
 from recheck.model import RATIOS, Claim, Finding, Interval, Printed
 from recheck.reconcile.readings import Box, Way, box_of
 
@@ -84,7 +85,7 @@ def _interval_around(claim: Claim, name: str) -> bool:
     beside="OR, RR or HR with its interval",
     formula="ratio = √(lower end × upper end)",
     source="Woolf (1955) Annals of Human Genetics 19:251-253; Altman & Bland (2011) BMJ 343:d2090",
-    limits="Exact, profile and bootstrap intervals are not symmetric about ln ratio: a ratio somewhat off the middle is unchecked, one far off conditional.",
+    limits="Exact, profile and bootstrap intervals are not symmetric about ln ratio: a ratio somewhat off the middle is unchecked, one far off conditional. Where counts give the ratio, its interval is compared with theirs instead.",
     agrees=("Steam halved collapse (OR = 0.50, 95% CI 0.28 to 0.90).",),
     conditional=("Steam halved collapse (OR = 0.80, 95% CI 0.28 to 0.90).",),
     unchecked=("Steam halved collapse (OR = 0.55, 95% CI 0.28 to 0.90).",),
@@ -98,7 +99,7 @@ def ratio_centre(case: Case) -> Iterable[Finding]:
     low, high = ends(claim)
     if low.value > high.value or high.interval().low <= 0 or low.interval().high <= 0:
         return
-    if not _inside(claim.values[name], low, high):
+    if not _inside(claim.values[name], low, high) or told_by_counts(case):
         return
 
     def implied(box: Box, off: float = 0.0) -> tuple[Interval, ...]:

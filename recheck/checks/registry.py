@@ -13,21 +13,46 @@ from recheck.model import Claim, ClaimKind, Finding, Settings
 FAMILIES = (
     "tails",
     "correlations",
+    "matrices",
     "groups",
     "group_p",
     "anova",
+    "variances",
+    "one_group",
+    "slopes",
+    "rank_tests",
     "variance_shares",
     "effects",
+    "effect_intervals",
+    "share_intervals",
+    "association_intervals",
+    "other_shares",
+    "effect_conversions",
     "intervals",
     "interval_tests",
     "counts",
     "count_tests",
     "regressions",
+    "model_fit",
+    "predictors",
     "ratios",
     "stars",
     "sizes",
+    "totals",
+    "granularity",
+    "scale_limits",
     "ranges",
+    "spreads",
+    "mean_intervals",
+    "spread_limits",
+    "unions",
+    "change_scores",
     "repeats",
+    "power",
+    "risks",
+    "risk_intervals",
+    "shares",
+    "changes",
 )
 """Modules of checks, in the order in which they are listed and run."""
 
@@ -47,7 +72,8 @@ class Case:
 
     `groups` are those that it is linked to, `twins` the same result elsewhere, `block` all counts of the
     categories of one variable of a table, or all correlations of a table, its own among them; for an
-    estimate the counts of its row.
+    estimate the counts of its row; for a group summary all of its table or passage;
+    for correlations and regressions what `beside` says.
     """
 
     claim: Claim
@@ -62,8 +88,8 @@ class Check:
     """One relation between printed numbers.
 
     `needs` names the quantities without which the check does not run, `beside` what else must be
-    read with them, in words; the examples are whole
-    passages with the verdict that each must get.
+    read with them, in words, and `uses` which quantities a finding rests on where they are printed; the
+    examples are whole passages with the verdict that each must get.
     """
 
     name: str
@@ -76,6 +102,7 @@ class Check:
     limits: str
     run: Callable[[Case], Iterable[Finding]]
     beside: str = ""
+    uses: tuple[str, ...] = ()
     agrees: tuple[str, ...] = ()
     conditional: tuple[str, ...] = ()
     inconsistent: tuple[str, ...] = ()
@@ -97,6 +124,7 @@ def check(
     source: str,
     limits: str,
     beside: str = "",
+    uses: tuple[str, ...] = (),
     **examples: tuple[str, ...],
 ) -> Callable[[Callable[[Case], Iterable[Finding]]], Callable[[Case], Iterable[Finding]]]:
     """Declare a check; the decorated function yields its findings for one case."""
@@ -106,7 +134,7 @@ def check(
             raise ValueError(f"two checks are named {name!r}")
         _CHECKS[name] = Check(
             name=name, title=title, kinds=kinds, quantity=quantity, needs=needs,
-            formula=formula, source=source, limits=limits, run=run, beside=beside, **examples,
+            formula=formula, source=source, limits=limits, run=run, beside=beside, uses=uses, **examples,
         )  # fmt: skip
         return run
 

@@ -19,7 +19,7 @@ COMPARED = (
     "t", "F", "chi2", "z", "r", "u", "w", "df", "df1", "df2", "p", "mean", "sd", "se", "median", "q1", "q3", "iqr", "min", "max",
     "mean_difference", "se_difference", "ci_low", "ci_high", "d", "g", "delta", "d_z", "d_av", "d_rm", "r_pb",
     "eta2", "partial_eta2", "generalized_eta2", "omega2", "epsilon2", "f", "f2", "phi", "cramers_v",
-    "b", "beta", "intercept", "estimate", "r2", "adjusted_r2", "or", "rr", "rd", "hr", "count", "percent", "total",
+    "b", "beta", "intercept", "estimate", "r2", "adjusted_r2", "delta_r2", "or", "rr", "rd", "hr", "count", "percent", "total",
     "ss", "ms", "ss_error", "ms_error", "n", "N",
 )  # fmt: skip
 """Quantities that must be the same wherever one result is told, in the order in which they are compared."""

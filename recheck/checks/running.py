@@ -6,10 +6,11 @@ import logging
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 
+from recheck.checks.beside import beside
 from recheck.checks.columns import by_columns
 from recheck.checks.compare import unchecked
 from recheck.checks.registry import Case, Check, Twin, all_checks
-from recheck.model import LEVELS, Claim, Finding, SameResult, Settings, shown
+from recheck.model import LEVELS, Claim, Finding, Place, SameResult, Settings, shown
 
 logger = logging.getLogger("recheck")
 
@@ -24,12 +25,16 @@ def run_checks(
     claims = [_as_shares(claim) for claim in claims]
     by_id = {claim.id: claim for claim in claims}
     twins, blocks, rows = _twins(by_id, same), _blocks(claims), _counts_of_rows(claims)
+    summaries, near = _summaries(claims), beside(claims)
     findings: list[Finding] = []
     for claim in claims:
         groups = tuple(by_id[g] for g in claim.groups if g in by_id)
         block = blocks.get(_block_of(claim), ())
         if claim.kind == "estimate":
             block = rows.get((claim.place.table, claim.place.row), ())
+        elif claim.kind == "group-summary":
+            block = summaries[_told_together(claim.place)]
+        block = near.get(claim.id, block)
         case = Case(claim, groups, settings, twins=twins.get(claim.id, ()), block=block)
         for check in all_checks():
             if claim.kind in check.kinds:
@@ -76,6 +81,22 @@ def _counts_of_rows(claims: Sequence[Claim]) -> dict[tuple[str | None, str | Non
     return rows
 
 
+def _told_together(place: Place) -> tuple[object, ...]:
+    """What is the same for all that stands in one table, or in one passage."""
+    if place.table:
+        return (place.table,)
+    return place.section, place.paragraph, place.line if place.paragraph is None else None
+
+
+def _summaries(claims: Sequence[Claim]) -> dict[tuple[object, ...], tuple[Claim, ...]]:
+    """All group summaries of each table and of each passage."""
+    told: dict[tuple[object, ...], list[Claim]] = {}
+    for claim in claims:
+        if claim.kind == "group-summary":
+            told.setdefault(_told_together(claim.place), []).append(claim)
+    return {key: tuple(together) for key, together in told.items()}
+
+
 SHARES = frozenset(
     (
         "p",
@@ -83,6 +104,7 @@ SHARES = frozenset(
         "power",
         "r2",
         "adjusted_r2",
+        "delta_r2",
         "eta2",
         "partial_eta2",
         "generalized_eta2",

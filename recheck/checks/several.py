@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 
 from recheck.checks.designs import MISSING, SE_READING, UNNAMED, Fit, whole
 from recheck.model import N_OF_GROUP, Claim, Interval, Printed
-from recheck.recompute import anova
+from recheck.recompute import anova, anova_box
 from recheck.reconcile.readings import Box, Numbers, Way
 
 ONE_WAY = "one-way analysis of variance"
@@ -86,7 +86,11 @@ def _known(low: object, high: object) -> Interval:
 
 def one_way_F(box: Box, several: Several, *, as_se: bool = False) -> Interval:
     """F of the one-way analysis of variance over the box."""
-    return _known(*anova.f_one_way_bounds(*box_arrays(box, several, as_se=as_se)))
+    factors = [math.sqrt(n) if as_se or several.spread == "se" else 1.0 for n in several.ns]
+    spreads = [box[f"{several.spread}{i}"] for i in range(1, several.size + 1)]
+    means = tuple((m.low, m.high) for m in (box[f"mean{i}"] for i in range(1, several.size + 1)))
+    sds = tuple((s.low * factor, s.high * factor) for s, factor in zip(spreads, factors, strict=True))
+    return _known(*anova_box.f_one_way_range(means, sds, several.ns))
 
 
 def brown_forsythe_F(box: Box, several: Several, *, as_se: bool = False) -> Interval:

@@ -77,6 +77,8 @@ def df_from_ns(case: Case) -> Iterable[Finding]:
 def _several(case: Case) -> Iterable[Finding]:
     """df2 of an analysis of variance of three or more groups; another df1 belongs to another comparison."""
     claim = case.claim
+    if claim.says("variance-test"):
+        return
     several = several_of(case.groups) if len(case.groups) <= MOST_GROUPS else None
     if several is None or "df2" not in claim.values or "df1" not in claim.values:
         return
@@ -103,7 +105,7 @@ def _several(case: Case) -> Iterable[Finding]:
         else "more units entered the test than these groups hold, or it belongs to another model"
     )
     message = f"df2 {printed_text(printed)} is printed; {several.size} groups of {several.total} in all imply {expected}."
-    yield _only_if(finding, case, why, message=message, tolerance="group sizes taken as exact")
+    yield only_if(finding, case, why, message=message, tolerance="group sizes taken as exact")
 
 
 def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:
@@ -117,7 +119,7 @@ def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:
     else:
         why = f"more units entered the test than the {n1 + n2} of the two groups, or it belongs to another model"
     implied = "; or ".join(f"{span(row.low, row.high)} ({row.assuming})" for row in finding.implied)
-    return _only_if(
+    return only_if(
         finding,
         case,
         why,
@@ -126,7 +128,7 @@ def _other_df(finding: Finding, case: Case, n1: int, n2: int) -> Finding:
     )
 
 
-def _only_if(finding: Finding, case: Case, why: str, *, message: str, tolerance: str) -> Finding:
+def only_if(finding: Finding, case: Case, why: str, *, message: str, tolerance: str) -> Finding:
     """The finding as a conditional one: df and sizes agree only for a reason that the text does not state."""
     printed = case.claim.values[finding.quantity]
     value = printed.number
@@ -178,4 +180,4 @@ def r_df_from_n(case: Case) -> Iterable[Finding]:
         else "more units entered than n"
     )
     message = f"df {printed_text(printed)} is printed; n = {n} implies {n - 2}."
-    yield _only_if(finding, case, why, message=message, tolerance="n and df taken as exact")
+    yield only_if(finding, case, why, message=message, tolerance="n and df taken as exact")

@@ -46,6 +46,9 @@ def laid_out(claims: Sequence[Claim]) -> Layout | str | None:
     """Lay counts out as a table; a reason in words where they overlap, None where they make no table."""
     if not 2 <= len(claims) <= MOST_CELLS:
         return None
+    if len(claims) == 2 and not any(claim.place.table for claim in claims):
+        # Two counts of a sentence are those of two groups, whatever their names.
+        claims = [replace(claim, outcome="", group=str(i)) for i, claim in enumerate(claims)]
     rows = list(dict.fromkeys(_category(claim) for claim in claims))
     columns = list(dict.fromkeys(_group(claim) for claim in claims))
     at = {(_category(claim), _group(claim)): i for i, claim in enumerate(claims, 1)}

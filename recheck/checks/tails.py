@@ -6,6 +6,7 @@ import math
 from collections.abc import Callable, Iterable
 
 from recheck.checks.compare import unchecked
+from recheck.checks.designs import whole
 from recheck.checks.group_df import df_of_groups
 from recheck.checks.p_values import (
     ANY_DF,
@@ -26,6 +27,7 @@ from recheck.checks.registry import Case, check
 from recheck.checks.source_rows import OTHER_ERROR, PRINTED_ERROR, F_fits_error, alone_in_table, from_source
 from recheck.model import Claim, Finding, Interval, shown
 from recheck.recompute import bounds
+from recheck.recompute.variances import p_of_ratio_bounds
 from recheck.reconcile.readings import Box, Way
 
 
@@ -95,7 +97,27 @@ def p_from_z(case: Case) -> Iterable[Finding]:
     if claim.kind == "rank-test" or claim.suggests("rank-test"):
         words = "p of the rank test is exact or continuity-corrected"
         ways += tail_ways(claim, True, lambda box, used: p_of(box, used, True), words=(words,))
+    if claim.kind == "rank-test" and _may_be_tiny(case):
+        ways.append(Way(_of_few_ranks, ("p is the exact one of a test of a few ranks",)))
     yield judge_p(case, "p-from-z", ways, numbers)
+
+
+LEAST_OF_FEW = 0.02
+"""Below any two-sided exact p of seven ranks or fewer: that of 3 and 4 is 2/35 at least, of 6 pairs 2/64."""
+
+
+def _may_be_tiny(case: Case) -> bool:
+    """Tell whether groups so small may stand behind a test of ranks that its z says little of its exact p."""
+    sizes = [whole(group.values.get("n")) for group in case.groups]
+    sizes += [whole(case.claim.values[name]) for name in ("n", "N") if name in case.claim.values]
+    return sum(n for n in sizes if n is not None) <= 12
+
+
+def _of_few_ranks(box: Box) -> tuple[Interval, ...]:
+    """An exact p, by Chebyshev's inequality at most 1/z²."""
+    z = box["z"].absolute()
+    most = min(1.0, 1 / z.low**2) if z.low else 1.0
+    return (Interval(LEAST_OF_FEW, most),) if most > LEAST_OF_FEW else ()
 
 
 def _exact_z(z: Interval) -> Interval:
@@ -210,6 +232,8 @@ def p_from_F(case: Case) -> Iterable[Finding]:
         return (as_interval(bounds.p_corrected_F_bounds(low, high, box["df1"].low, box["df2"].high)),)
 
     ways = [Way(p_of)]
+    if claim.says("variance-test") and not claim.says("levene"):
+        ways.append(Way(_both_tails, (), ("twice the smaller tail of the ratio of two variances",)))
     whole = numbers["df1"].decimals <= 0, numbers["df2"].decimals <= 0
     between = claim.says("between-groups", "independent")
     if all(whole) and numbers["df1"].value > 1 and not between:
@@ -234,6 +258,12 @@ def p_from_F(case: Case) -> Iterable[Finding]:
         ways.append(Way(lambda box: p_of(box, None, Interval(1.0, box["df2"].high)), (OTHER_ERROR,)))
         doubts = () if F_fits_error(claim) else (PRINTED_ERROR,)
     yield judge_p(case, "p-from-F", ways, numbers, omnibus=numbers["df1"].value > 1, doubts=doubts)
+
+
+def _both_tails(box: Box) -> tuple[Interval, ...]:
+    """Two-sided p of a ratio of two variances."""
+    F, n1, n2 = box["F"].within(0.0, math.inf), box["df1"].low + 1, box["df2"].low + 1
+    return (as_interval(p_of_ratio_bounds(F.low, F.high, n1, n2)),)
 
 
 def _without_df(case: Case, name: str, statistic: str) -> Iterable[Finding]:

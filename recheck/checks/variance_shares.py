@@ -55,7 +55,7 @@ def eta2_from_F(case: Case) -> Iterable[Finding]:
             case,
             Comparison(
                 "eta2-from-F", name, numbers, ways, bounds=Interval(0.0, 1.0),
-                doubts=doubts, excuses=_other_model(claim),
+                doubts=doubts, excuses=other_model(claim),
             ),
         )  # fmt: skip
 
@@ -104,7 +104,8 @@ def _both_fractional(claim: Claim) -> bool:
     return all(claim.values[name].decimals > 0 for name in ("df1", "df2"))
 
 
-def _other_model(claim: Claim) -> tuple[str, ...]:
+def other_model(claim: Claim) -> tuple[str, ...]:
+    """Say that the effect size may be of an analysis that F does not rebuild, where the text speaks of one."""
     said = [word for word in OTHER_MODELS if claim.says(word)]
     said += [word for word in ("mixed-model", "imputed", "robust") if claim.suggests(word)]
     return tuple(f"the effect size may be that of {STATED[word]}" for word in said[:1])

@@ -1,8 +1,13 @@
 """The nouns of recheck: plain data, no statistics."""
 
 from recheck.model.claim import (
+    N_BY_PAIR,
     N_OF_GROUP,
+    OF_DIFFERENCES,
     P_IN_WORDS,
+    SCALE_ENDS_INFERRED,
+    SCALE_INFERRED,
+    SCORES_ASKED,
     STATED,
     TOTAL_OF_GROUP,
     Claim,
@@ -21,6 +26,7 @@ from recheck.model.finding import (
     Finding,
     Implied,
     Remedy,
+    ScoreRule,
     Settings,
     Verdict,
 )
@@ -30,7 +36,7 @@ from recheck.model.quantities import EFFECTS_ON_RISK, QUANTITIES, RATIOS, shown
 from recheck.model.table import Cell, Table
 
 __all__ = [
-    "DISCREPANT", "EFFECTS_ON_RISK", "LEVELS", "N_OF_GROUP", "P_IN_WORDS", "QUANTITIES", "RATIOS", "STATED", "TOTAL_OF_GROUP", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
+    "DISCREPANT", "EFFECTS_ON_RISK", "LEVELS", "N_BY_PAIR", "N_OF_GROUP", "OF_DIFFERENCES", "P_IN_WORDS", "QUANTITIES", "RATIOS", "SCALE_ENDS_INFERRED", "SCALE_INFERRED", "SCORES_ASKED", "STATED", "TOTAL_OF_GROUP", "VERDICTS", "Audit", "Box", "Cell", "Claim", "ClaimKind", "Confidence", "Context",
     "Document", "DocumentFacts", "Finding", "Implied", "Interval", "Layout", "Passage", "PassageKind", "Place",
-    "Printed", "Reading", "Relation", "Remedy", "SameResult", "Settings", "Table", "Verdict", "shown",
+    "Printed", "Reading", "Relation", "Remedy", "SameResult", "ScoreRule", "Settings", "Table", "Verdict", "shown",
 ]  # fmt: skip

@@ -44,6 +44,10 @@ STATED = {
     "marginal": "estimated marginal means",
     "within-subject-se": "a spread normalised within subjects",
     "rank-test": "a test of ranks",
+    "signed-ranks": "a test of signed ranks, of pairs",
+    "variance-test": "a test of equal variances",
+    "levene": "Levene's test of equal variances, or Brown and Forsythe's, which needs the single scores",
+    "bartlett": "Bartlett's test of equal variances",
     "spearman": "a rank correlation",
     "partial": "a partial correlation",
     "disattenuated": "a correlation corrected for unreliability or between latent variables",
@@ -52,11 +56,36 @@ STATED = {
     "likelihood-ratio": "a likelihood-ratio test",
     "fisher-exact": "Fisher's exact test",
     "multi-regression": "a regression with several predictors",
+    "model-step": "a step of a regression, what it adds",
+    "pseudo-r2": "an R² of another kind (Nagelkerke, McFadden, marginal, conditional and the like)",
     "model-fit": "the fit of a model (structural equations, nested models)",
     "spread-unlabelled": "a spread that is not said to be SD or SE",
     "effect-size-r": "r as the effect size of a test",
     "glass-delta": "d by the SD of one group",
+    "n-required": "a sample size planned for a power",
+    "power-achieved": "the power of a given sample",
+    "effect-detectable": "the effect that a given sample detects",
+    "per-group": "the size of each group",
+    "in-total": "the size of all groups together",
+    "t-test-named": "a t test",
+    "anova-named": "an analysis of variance",
+    "correlation-named": "a correlation",
+    "regression-named": "a regression",
+    "chi2-named": "a χ² test",
+    "clustered": "clusters or nested units",
+    "simulated": "a simulation",
+    "sequential": "interim analyses",
+    "interaction": "several factors or an interaction",
+    "other-effect": "an effect of another kind (odds ratio, mediation, precision and the like)",
     "inferred": "put together from numbers that stand apart",
+    "matched": "groups matched to each other",
+    "crude": "an analysis without covariates",
+    "rates": "rates, events over the time that cases were watched",
+    "whole-scores": "scores are whole numbers (answers on a scale with whole steps, points, counts)",
+    "single-item": "one answer a person",
+    "averaged-scores": "scores averaged over items, trials, raters or the like",
+    "summed-scores": "scores summed over items",
+    "prorated": "scores of missing items prorated or imputed",
 }
 """What a manuscript can say of a result, in the words that reports use for it."""
 
@@ -66,6 +95,21 @@ P_IN_WORDS = "p is told in words"
 
 N_OF_GROUP = "n is that of the whole group"
 """The note of a claim whose n comes from a header, a caption or a note: of this variable some cases may be missing."""
+
+OF_DIFFERENCES = "the mean beside the test is one of differences"
+"""The note of a t test with one group summary, before which a difference, a change or a gain is named."""
+
+SCALE_INFERRED = "the scale is told near by, not of this outcome by name"
+"""The note of a summary whose scale, and whether its scores are whole numbers, was not told of its own outcome in so many words."""
+
+SCALE_ENDS_INFERRED = "the ends of the scale are not printed; it is taken to begin at 1"
+"""The note of a summary whose scale is told by its number of points alone: how wide it is is sure, where it begins is not."""
+
+SCORES_ASKED = "what the scores are was said by the reader of the manuscript, not read in it"
+"""The note of a summary whose scale and whole numbers were stated with the request for the audit."""
+
+N_BY_PAIR = "n differs from pair to pair"
+"""The note of a correlation matrix whose coefficients rest on different numbers of cases."""
 
 TOTAL_OF_GROUP = "the total is the group's n"
 """The note of a count whose total is the size of its group, not printed in its own cell."""
@@ -81,7 +125,8 @@ class Claim:
     group summaries, in the order in which they are printed; `link` says on what ground, and
     `link_confidence` how sure that is (`confidence` speaks of the claim's own numbers alone).
     `outcome` names what was measured and `group` whom a summary or a count is about, in the
-    manuscript's words, where a table or the text says so.
+    manuscript's words, where a table or the text says so. A `correlation-matrix` has its coefficients
+    in `values` as `r(3,1)`, row and column of the names in `variables`, counted from 1, the greater first.
     """
 
     id: str
@@ -98,6 +143,7 @@ class Claim:
     notes: tuple[str, ...] = field(default=())
     outcome: str | None = None
     group: str | None = None
+    variables: tuple[str, ...] = ()
 
     def says(self, *words: str) -> bool:
         """Tell whether any of the words is stated of this claim itself."""

@@ -76,13 +76,30 @@ class DocumentFacts:
 
 
 @dataclass(frozen=True, slots=True)
+class ScoreRule:
+    """What the reader of a manuscript says of the scores of one outcome, `*` for all.
+
+    `low` and `high` are the ends of the scale, `items` the number of answers that one score averages,
+    `whole` tells that answers are whole numbers, `text` is what was said.
+    """
+
+    outcome: str
+    low: int | None
+    high: int | None
+    items: int | None
+    whole: bool
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
 class Settings:
-    """How an audit was asked for."""
+    """How an audit was asked for; `scores` is what was said of scores with the request."""
 
     alpha: float = 0.05
     alpha_source: Literal["default", "stated", "asked"] = "default"
     reader: Literal["auto", "pdfium", "pdfminer"] = "auto"
     rounding: str = "half up or half to even"
+    scores: tuple[ScoreRule, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, eq=False)

@@ -10,12 +10,15 @@ QUANTITIES: dict[str, str] = {
     "d": "d", "g": "g", "delta": "Δ", "d_z": "d_z", "d_av": "d_av", "d_rm": "d_rm", "r_pb": "r_pb",
     "eta2": "η²", "partial_eta2": "partial η²", "generalized_eta2": "generalized η²", "omega2": "ω²",
     "epsilon2": "ε²", "f": "f", "f2": "f²", "phi": "φ", "cramers_v": "V",
-    "b": "b", "beta": "β", "intercept": "intercept", "r2": "R²", "adjusted_r2": "adjusted R²",
+    "b": "b", "beta": "β", "intercept": "intercept", "r2": "R²", "adjusted_r2": "adjusted R²", "delta_r2": "ΔR²",
     "or": "OR", "rr": "RR", "rd": "RD", "hr": "HR",
     "auc": "AUC", "icc": "ICC", "kappa": "κ", "tau": "τ", "bf10": "BF₁₀", "bf01": "BF₀₁",
     "count": "count", "total": "total", "percent": "percent", "power": "power", "stars": "stars",
     "scale_min": "lowest score", "scale_max": "highest score", "items_per_score": "items per score",
+    "effect_size": "effect size", "h": "h", "cohens_w": "w", "proportion1": "first proportion", "proportion2": "second proportion",
+    "ratio": "allocation ratio", "k": "number of groups", "predictors": "number of predictors",
     "ss": "SS", "ms": "MS", "ss_error": "SS of the error", "ms_error": "MS of the error", "ss_total": "total SS", "mse": "MSE", "estimate": "estimate",
+    "comparison_value": "comparison value",
 }  # fmt: skip
 
 RATIOS = ("or", "rr", "hr")

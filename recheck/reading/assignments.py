@@ -9,6 +9,7 @@ from recheck.model import Printed, Relation
 from recheck.reading.behind import df_behind, plus_minus, two_df, unlabelled
 from recheck.reading.degrees import Values, bracketed_df, closing, fallen_df, subscript_df
 from recheck.reading.following import goes_on, value_after
+from recheck.reading.fractions import with_fractions
 from recheck.reading.frequencies import NUMBER_WORDS, count_at, count_in_words, sized_count, with_whole
 from recheck.reading.intervals import interval_at
 from recheck.reading.items import DF, MEAN, Assignment, P
@@ -30,7 +31,7 @@ def assignments(line: Line) -> list[Assignment]:
             index = max(item.after for item in group)
         else:
             index += 1
-    return with_whole(found, line) if line.shares else found
+    return with_fractions(with_whole(found, line) if line.shares else found, line)
 
 
 def _at(line: Line, index: int) -> list[Assignment]:

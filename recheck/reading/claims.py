@@ -235,7 +235,8 @@ def _statistic(s: Situation) -> bool:
     if s.has("estimate", "effect"):
         if s.holds("p"):
             return not s.coming("p", "statistic")
-        return s.has("estimate") or not s.divided
+        of_model = s.item.quantity == "F" and s.holds("r2", "adjusted_r2", "delta_r2")
+        return s.has("estimate") or of_model or not s.divided
     if s.holds("p"):
         return not s.coming("p", "statistic") and not (s.has("other") and s.semicolon)
     return True
@@ -305,7 +306,8 @@ def _effect(s: Situation) -> bool:
     if s.taken or not s.tight or (s.has(*_GROUP) and not s.has(*_RESULT)):
         return False
     if s.has("statistic", "estimate", "effect"):
-        return not (s.coming("statistic", "p") and s.holds("p") and s.semicolon)
+        apart = s.semicolon or s.item.quantity == "delta_r2"
+        return not (s.coming("statistic", "p") and s.holds("p") and apart)
     return not s.holds("p") or not (s.semicolon or s.coming("p", "effect"))
 
 

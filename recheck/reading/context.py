@@ -15,6 +15,7 @@ from recheck.reading.medians import announced_ends
 from recheck.reading.numerals import Line, number_at, relation_at
 from recheck.reading.tokens import DIGITS, Spans, tokens, words
 from recheck.reading.views import TIMEOUT, View
+from recheck.reading.widths import MARGIN, tells_margins
 from recheck.reading.wording import background, pairs_alone
 
 
@@ -22,7 +23,7 @@ from recheck.reading.wording import background, pairs_alone
 class Setting:
     """The context, with what the reader itself needs of it.
 
-    `plus_minus` and `in_brackets` are what an unlabelled spread is said to be, `behind_medians` what
+    `plus_minus` and `in_brackets` are what an unlabelled spread is said to be (`margin`: no spread at all), `behind_medians` what
     stands in brackets behind a median (`iqr`, `range`, ""); `by_permutation` tells that its F may be
     those of a permutational analysis (PERMANOVA); `credible` tells
     that the document's intervals are credible intervals, also where it writes CI; `pairs_alone`
@@ -52,7 +53,7 @@ def setting_of(views: Sequence[View], spans: Sequence[Spans]) -> Setting:
     comma = decimal_comma(view.text for view in views)
     alpha, notes = _alpha(zip(views, spans, strict=True), comma)
     signs, brackets, ends = _announced(views)
-    whole = " ".join(view.text for view in views if _tells(view)).lower()
+    whole = " ".join(view.text for view in views if tells(view)).lower()
     credible = (
         "credible interval" in whole or "credibility interval" in whole or "highest-density interval" in whole
     )
@@ -68,7 +69,7 @@ _NOT_HERE = ("introduction", "background", "discussion", "limitations", "conclus
              "funding", "author", "conflict", "competing", "abstract", "general discussion", "theor")  # fmt: skip
 
 
-def _tells(view: View) -> bool:
+def tells(view: View) -> bool:
     """Introductions and discussions speak of other studies too: what they say is not taken for this one."""
     section = (view.passage.section or "").lower().lstrip("0123456789. ")
     return not section.startswith(_NOT_HERE)
@@ -77,7 +78,7 @@ def _tells(view: View) -> bool:
 @cache
 def _decimals() -> regex.Pattern[str]:
     return regex.compile(
-        r"""[=<>≤≥±]\ ?-?(?:
+        r"""(?:[=<>≤≥±] | \b(?:[Mm]eans?|[Mm]edian|M|SD|SE)\b)\ ?-?(?:
             (?P<comma>0?,\d+ | \d+,(?:\d{1,2}|0\d{2}|\d{4,}))  # 2,1  0,102  1,05  112,4848: no thousands
             | (?P<point>\d*[.·]\d+)
         )(?![.,]?\d)""",
@@ -86,7 +87,7 @@ def _decimals() -> regex.Pattern[str]:
 
 
 def decimal_comma(texts: Iterable[str]) -> bool:
-    """Tell whether a document writes decimals with a comma after its relation signs."""
+    """Tell whether a document writes decimals with a comma after its relation signs, or after `mean` and `SD`."""
     return mostly_commas(texts, _decimals(), default=False)
 
 
@@ -105,8 +106,11 @@ def _announced(views: Sequence[View]) -> tuple[str, str, str]:
     signs: set[str] = set()
     brackets: set[str] = set()
     ends: set[str] = set()
+    margins = False
     for view in views:
         low = view.text.lower()
+        # What a caption or a note says of `±` is said of its own table.
+        margins = margins or (view.passage.kind == "body" and tells_margins(low))
         if "median" in low:
             ends.add(announced_ends(low))
         if "±" not in low and "mean" not in low:
@@ -114,7 +118,18 @@ def _announced(views: Sequence[View]) -> tuple[str, str, str]:
         sign, bracket = announced_spread(view.text)
         signs.add(sign)
         brackets.add(bracket)
-    return _only(signs), _only(brackets), _only(ends)
+    return MARGIN if margins else _only(signs), _only(brackets), _only(ends)
+
+
+def in_paragraph(view: View, spans: Spans) -> str | None:
+    """What the sentences of one paragraph say stands after `±`: "" where they differ, None where none tells."""
+    text = view.text
+    if "±" not in text and "+/" not in text:
+        return None
+    kinds = {announced_spread(text[start:end])[0] for start, end in spans} - {""}
+    if tells_margins(text):
+        return MARGIN
+    return _only(kinds) if kinds else None
 
 
 def _only(kinds: set[str]) -> str:

@@ -46,15 +46,15 @@ def count_at(line: Line, index: int, first: Number) -> Assignment | None:
     if first.percent:
         return _percent_first(line, index, first)
     count = whole(first)
-    if count.decimals or not _may_count(line, index, count):
+    if count.decimals or not may_count(line, index, count):
         return None
-    total = _total(line, count.after)
+    total = total_behind(line, count.after)
     if total is None:
         return _alone(line, index, count)
     size, after = total
-    end = _past_words(line, after, 6)
+    end = past_words(line, after, 6)
     percent = _percent(line, end, whole=False) or _unbracketed(line, after)
-    if percent is None or count.value > size.value or _measured(line, after) or _no_fraction(line, index):
+    if percent is None or count.value > size.value or measured(line, after) or no_fraction(line, index):
         return None
     return _count(line, index, count, size, percent)
 
@@ -68,16 +68,25 @@ NUMBER_WORDS = {
 }
 
 
-def count_in_words(line: Line, index: int) -> Assignment | None:
-    """`Fifteen of 18 bakers (83.3%)`, `twenty-five bakers (83%)`: a count in words."""
-    if line.at(index - 1).text == "-":
+def number_in_words(line: Line, index: int) -> tuple[int, int] | None:
+    """`Fifteen`, `twenty-five`: its value and the index after it."""
+    if line.at(index - 1).text == "-" or line.at(index).low not in NUMBER_WORDS:
         return None
     value, after = NUMBER_WORDS[line.at(index).low], index + 1
     if value >= 20 and line.at(after).text == "-" and NUMBER_WORDS.get(line.at(after + 1).low, 10) < 10:
         value, after = value + NUMBER_WORDS[line.at(after + 1).low], after + 2
-    total = _total(line, after)
-    percent = _percent(line, _past_words(line, total[1] if total else after, 5), whole=total is None)
-    alone = total is None and (value == 1 or line.at(index - 1).low in _LABELS or _measured(line, after))
+    return value, after
+
+
+def count_in_words(line: Line, index: int) -> Assignment | None:
+    """`Fifteen of 18 bakers (83.3%)`, `twenty-five bakers (83%)`: a count in words."""
+    told = number_in_words(line, index)
+    if told is None:
+        return None
+    value, after = told
+    total = total_behind(line, after)
+    percent = _percent(line, past_words(line, total[1] if total else after, 5), whole=total is None)
+    alone = total is None and (value == 1 or line.at(index - 1).low in _LABELS or measured(line, after))
     if percent is None or alone or (total is not None and value > total[0].value):
         return None
     words_ = Number(Decimal(value), 0, line.at(index).start, line.at(after - 1).end, after)
@@ -86,7 +95,7 @@ def count_in_words(line: Line, index: int) -> Assignment | None:
 
 def sized_count(line: Line, index: int, size: Number) -> Assignment | None:
     """`n = 12 (35%)`, `n = 12, 35%`, `n = 12; 35.3%`: `size` is the number of the n that starts at `index`."""
-    total = _total(line, size.after)
+    total = total_behind(line, size.after)
     after = total[1] if total else size.after
     percent = _percent(line, after, whole=total is None) or _unbracketed(line, after)
     return (
@@ -106,7 +115,7 @@ def _unbracketed(line: Line, index: int) -> tuple[Number, int] | None:
     return (number, number.after) if closed else None
 
 
-def _may_count(line: Line, index: int, count: Number) -> bool:
+def may_count(line: Line, index: int, count: Number) -> bool:
     """Whether a whole number may count units: no label, no year, no end of a range, no part of another number."""
     token, before = line.at(index), line.at(index - 1)
     if not token.spaced and before.text not in ("(", "[", "end", "") and before.kind != "end":
@@ -136,11 +145,16 @@ def _may_count(line: Line, index: int, count: Number) -> bool:
 
 
 def _behind_group(line: Line, index: int, label: str) -> bool:
-    """Whether a number behind `group` counts its members, not the groups: `in the trained group 65 of 210`, `group 12/34`."""
+    """Whether a number behind `group` counts its members, not the groups: `in the trained group 65 of 210`, `group 12/34`.
+
+    Or one behind `by` those who did it, not by how much: `passed by 29 of 34 apprentices`.
+    """
+    if label == "by":
+        return line.at(index + 1).low in ("of", "out") and total_behind(line, index + 1) is not None
     if line.at(index + 1).text == "/":
         return label in _GROUPS
     named = line.at(index - 2).kind == "word" and line.at(index - 2).low not in _BARE
-    return label in _NAMED_GROUPS and named and _total(line, index + 1) is not None
+    return label in _NAMED_GROUPS and named and total_behind(line, index + 1) is not None
 
 
 def _totals(line: Line, index: int) -> bool:
@@ -157,7 +171,7 @@ def _is_year(number: Number) -> bool:
     return 1900 <= number.value < 2100 and number.end - number.start == 4
 
 
-def _total(line: Line, index: int) -> tuple[Number, int] | None:
+def total_behind(line: Line, index: int) -> tuple[Number, int] | None:
     """The total behind a count: `of 34`, `out of the 34`, `of a total of 34`, `/34`."""
     if line.at(index).text == "/":
         number = number_at(line, index + 1)
@@ -177,15 +191,15 @@ def _total(line: Line, index: int) -> tuple[Number, int] | None:
     if number is None or line.at(at).kind != "num" or number.percent:
         return None
     number = whole(number)
-    return None if number.decimals or _measured(line, number.after) else (number, number.after)
+    return None if number.decimals or measured(line, number.after) else (number, number.after)
 
 
-def _measured(line: Line, index: int) -> bool:
+def measured(line: Line, index: int) -> bool:
     """Whether a unit stands behind a number."""
     return line.at(index).low in _UNITS or line.at(index).text in ("°", "-")
 
 
-def _past_words(line: Line, index: int, most: int) -> int:
+def past_words(line: Line, index: int, most: int) -> int:
     """Index after up to `most` words without a number or a stop among them."""
     at = index
     while at < index + most and (line.at(at).kind == "word" or line.at(at).text in ("-", "'")):
@@ -193,7 +207,7 @@ def _past_words(line: Line, index: int, most: int) -> int:
     return at
 
 
-def _no_fraction(line: Line, index: int) -> bool:
+def no_fraction(line: Line, index: int) -> bool:
     """Whether `12/34` is a date, a ratio or an acuity."""
     if line.at(index + 1).text != "/":
         return False
@@ -234,7 +248,7 @@ def _is_level(line: Line, index: int) -> bool:
 
 def _alone(line: Line, index: int, count: Number) -> Assignment | None:
     """A count without its total: `12 (35%)`, `12 bakers (35%)`; with it behind: `12 (35%) of 34`."""
-    at = _past_words(line, count.after, 5)
+    at = past_words(line, count.after, 5)
     between = line.tokens[count.after : at]
     if any(token.low in _UNITS for token in between) or (not between and _is_year(count)):
         return None
@@ -242,7 +256,7 @@ def _alone(line: Line, index: int, count: Number) -> Assignment | None:
     percent = _percent(line, at) or (_unbracketed(line, count.after) if alone else None)
     if percent is None:
         return None
-    total = _total(line, percent[1]) if line.at(percent[1]).text != "/" else None
+    total = total_behind(line, percent[1]) if line.at(percent[1]).text != "/" else None
     if total and total[0].value >= count.value and line.at(percent[1]).low == "of":
         # `12 (35%) of 20 loaves` may tell the percentage of a larger whole.
         return replace(_count(line, index, count, total[0], (percent[0], total[1])), doubt="medium")
@@ -251,7 +265,7 @@ def _alone(line: Line, index: int, count: Number) -> Assignment | None:
 
 def _percent_first(line: Line, index: int, percent: Number) -> Assignment | None:
     """`35% (12/34)`, `35% (12 of 34 loaves)`, `(35%; 12/34)`."""
-    at = _past_words(line, percent.after, 6)
+    at = past_words(line, percent.after, 6)
     if line.at(index - 1).low == "by" or (
         line.at(index - 1).low == "of" and line.at(index - 2).low in _CHANGES
     ):
@@ -273,14 +287,14 @@ def _percent_first(line: Line, index: int, percent: Number) -> Assignment | None
         return None
     if opened and line.at(count.after).text in (")", "]") and line.at(count.after + 1).low == "of":
         # `67% (87) of the 130 loaves`
-        behind = _total(line, count.after + 1)
+        behind = total_behind(line, count.after + 1)
         fits = behind is not None and count.value <= behind[0].value and percent.value <= 100
         found = _count(line, index, count, behind[0], (percent, behind[1])) if behind and fits else None
         return replace(found, doubt="medium") if found else None
-    total = _total(line, count.after)
+    total = total_behind(line, count.after)
     if total is None or total[0].value < count.value or percent.value > 100:
         return None
-    after = _past_words(line, total[1], 5)
+    after = past_words(line, total[1], 5)
     if line.at(after).text not in (")", "]", ",", ";"):
         return None
     return _count(
@@ -298,8 +312,8 @@ def with_whole(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     first, other = line.at(0).low, line.at(0).low in _OPENERS
     if first not in ("of", "among", "out") and not other:
         return list(items)
-    total = _opening(line) if other or first == "among" else _total(line, 0)
-    at = _past_words(line, total[1], 8) if total else 0
+    total = _opening(line) if other or first == "among" else total_behind(line, 0)
+    at = past_words(line, total[1], 8) if total else 0
     # Only English puts a comma there for sure: `Von den 34 Betrieben kamen 12 (35 %)`.
     if total is None or (line.at(at).text != "," and not other):
         return list(items)
@@ -330,7 +344,7 @@ def _opening(line: Line) -> tuple[Number, int] | None:
     number = number_at(line, at) if line.at(at).kind == "num" else None
     number = whole(number) if number else None
     plain = number is not None and not number.percent and not number.decimals
-    return (number, number.after) if number and plain and not _measured(line, number.after) else None
+    return (number, number.after) if number and plain and not measured(line, number.after) else None
 
 
 _CHANGES = words(

@@ -6,6 +6,7 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
 from recheck.model import Claim
+from recheck.reading.other_links import of_variances, with_one_group, with_sizes, with_variances
 from recheck.reading.placed import Placed
 from recheck.reading.tokens import words
 
@@ -15,7 +16,8 @@ def in_prose(placed: Sequence[Placed]) -> dict[str, Claim]:
     summaries = _by_sentence(item for item in placed if has_spread(item.claim))
     tests = _by_sentence(item for item in placed if groups_compared(item.claim) == 2)
     larger = _by_sentence(item for item in placed if groups_compared(item.claim) > 2)
-    found = _counted(placed)
+    found = {**_counted(placed), **_ranked(placed), **_of_one_group(placed, summaries)}
+    found |= with_variances((item for item in placed if of_variances(item.claim)), summaries)
     for test in (test for group in (*tests.values(), *larger.values()) for test in group):
         place = (test.passage, test.sentence)
         if groups_compared(test.claim) > 2:
@@ -30,6 +32,19 @@ def in_prose(placed: Sequence[Placed]) -> dict[str, Claim]:
                 link=basis,
                 link_confidence="high" if near else "medium",
             )
+    return found
+
+
+def _of_one_group(placed: Sequence[Placed], summaries: _Sentences) -> dict[str, Claim]:
+    """Each t that is the only test of its sentence, with the one summary that stands there."""
+    tests = _by_sentence(item for item in placed if item.claim.kind in ("t-test", "F-test", "z-test"))
+    found = {}
+    for place, own in tests.items():
+        here = summaries.get(place, [])
+        if len(own) == len(here) == 1 and own[0].claim.kind == "t-test" and _alike(here):
+            claim = with_one_group(own[0], here)
+            if claim is not None:
+                found[claim.id] = claim
     return found
 
 
@@ -52,6 +67,22 @@ def _counted(placed: Sequence[Placed]) -> dict[str, Claim]:
     return found
 
 
+def _ranked(placed: Sequence[Placed]) -> dict[str, Claim]:
+    """Each test of ranks that is the only one of its sentence, with the two groups whose sizes stand there."""
+    tests = [
+        item for item in placed if item.claim.kind == "rank-test" and {"u", "w"} & item.claim.values.keys()
+    ]
+    if not tests:
+        return {}
+    return with_sizes(tests, _by_sentence(item for item in placed if _has_size(item.claim)))
+
+
+def _has_size(claim: Claim) -> bool:
+    return (
+        claim.kind == "group-summary" and "n" in claim.values and bool({"mean", "median"} & set(claim.values))
+    )
+
+
 def of_two_shares(claim: Claim, groups: int = 2) -> bool:
     """Whether a χ² may compare the shares of so many groups: its df are one less, or not printed for two groups."""
     df = claim.values.get("df")
@@ -64,7 +95,9 @@ def has_spread(claim: Claim) -> bool:
 
 
 def groups_compared(claim: Claim) -> int:
-    """How many groups a test compares: two for t and for F with one numerator df, one more than that df for F; else 0."""
+    """How many groups' means a test compares: two for t and for F with one numerator df, one more than that df for F; else 0."""
+    if of_variances(claim):
+        return 0
     if claim.kind == "t-test":
         return 0 if claim.says("one-sample") else 2
     df1 = claim.values.get("df1")

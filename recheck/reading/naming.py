@@ -8,6 +8,7 @@ from recheck.model import ClaimKind, Confidence, Printed
 from recheck.reading.claims import Draft
 from recheck.reading.items import Assignment
 from recheck.reading.tokens import words
+from recheck.reading.widths import MARGIN
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,6 +51,8 @@ def named(draft: Draft, label: str, sentence_says: tuple[str, ...]) -> Named | N
         return None
     if draft.get("spread") and not label:
         stated.append("spread-unlabelled")
+    if draft.get("spread") and label == MARGIN:
+        notes.append("no spread, but the width of an interval is said to stand after ±")
     if kind != "correlation" and "r" in values:
         stated.append("effect-size-r")
     if kind == "group-summary" and "N" in values and "n" not in values and _in_own_brackets(draft):
@@ -98,6 +101,8 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
         level = [("ci_level", given["ci_level"])] if "ci_level" in given and item.quantity == "ci" else []
         return [(ends[0], given["ci_low"]), (ends[1], given["ci_high"]), *level]
     name = item.quantity
+    if name == "spread" and label == MARGIN:
+        return []
     if name == "spread":
         name = label or "sd"
     if item.part == "centre" and item.loose and draft.line.at(item.after).low in _COMPARING:
@@ -112,7 +117,7 @@ def _values(item: Assignment, draft: Draft, label: str) -> list[tuple[str, Print
 
 
 def _kind(draft: Draft, values: dict[str, Printed], says: tuple[str, ...]) -> ClaimKind | None:
-    if "count" in values:
+    if "count" in values or {"percent", "total"} <= values.keys():
         return "count"
     for quantity, kind in _KINDS:
         if quantity in values:

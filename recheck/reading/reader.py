@@ -7,10 +7,10 @@ from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from functools import partial
 
-from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading
+from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading, ScoreRule
 from recheck.reading.assignments import assignments, ns_at
 from recheck.reading.claims import Draft, drafts
-from recheck.reading.context import Setting, decimal_comma, setting_of
+from recheck.reading.context import Setting, decimal_comma, in_paragraph, setting_of
 from recheck.reading.glyphs import Repairs, doubted, repaired
 from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
@@ -21,21 +21,29 @@ from recheck.reading.notes import TOO_LONG, notes_of
 from recheck.reading.numerals import Line
 from recheck.reading.parallel import in_parallel
 from recheck.reading.placed import Placed, claim_id
+from recheck.reading.power_statements import (
+    in_reading_order,
+    numbered,
+    power_statements,
+    without_their_numbers,
+)
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
 from recheck.reading.relating import related
 from recheck.reading.significance import told_in_words
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
 from recheck.reading.traps import trapped
+from recheck.reading.variance_tests import of_variances
 from recheck.reading.views import View, view_of
+from recheck.reading.widths import MARGIN, tells_margins
 from recheck.reading.wording import stated
 
 READ = ("body", "heading", "caption", "note")
 
 
-def read(document: Document) -> Reading:
+def read(document: Document, scores: Sequence[ScoreRule] = ()) -> Reading:
     """Read the claims of a document, its context, and what was left unread.
 
-    A passage that takes longer than its patterns may is left out with a note.
+    `scores` is what is known of scores beside what the document says. A passage that takes longer than its patterns may is left out with a note.
     """
     passages, repairs = repaired([passage for passage in document.passages if passage.kind in READ])
     views = [view_of(passage) for passage in passages]
@@ -57,8 +65,45 @@ def read(document: Document) -> Reading:
 
         told = partial(_told_in, setting=setting, left=left)
         placed, unnamed = with_tables(placed, document, READ, setting, repairs, left, told)
+    powers = numbered(
+        list(_powers(views, spans, setting, passages, repairs, left)), [item.claim for item in placed]
+    )
+    placed = without_their_numbers(placed, powers)
     claims, same = related(_unique(placed), document, passages, [view.text for view in views])
-    return Reading(claims, setting.context, (*_notes(document, left), *unnamed), same)
+    claims, unmet = _scaled(placed, claims, document, views, spans, scores)
+    claims = in_reading_order(claims, placed, powers)
+    return Reading(claims, setting.context, (*_notes(document, left), *unnamed, *unmet), same)
+
+
+def _scaled(
+    placed: Sequence[Placed], claims: tuple[Claim, ...], document: Document, views: Sequence[View], spans: Sequence[Spans],
+    scores: Sequence[ScoreRule],
+) -> tuple[tuple[Claim, ...], tuple[str, ...]]:  # fmt: skip
+    """The claims, means with the scale of their scores where it is told, and a note on what was said of scores that are not there."""
+    if not scores and not any(claim.kind == "group-summary" for claim in claims):
+        return claims, ()
+    from recheck.reading.scales import with_scales
+
+    try:
+        return with_scales(placed, claims, document, views, spans, scores)
+    except TimeoutError:
+        return claims, ("What is said of scores took too long to read.",)
+
+
+def _powers(
+    views: Sequence[View], spans: Sequence[Spans], setting: Setting, passages: Sequence[Passage],
+    repairs: Repairs, left: Counter[str],
+) -> Iterator[Placed]:  # fmt: skip
+    """The power statements of all paragraphs, notes and captions."""
+    for number, view in enumerate(views):
+        if view.passage.kind == "heading":
+            continue
+        try:
+            found = list(power_statements(view, spans[number], number, setting))
+        except TimeoutError:
+            left[TOO_LONG] += 1
+            continue
+        yield from (_doubted(item, passages[number], repairs) for item in found)
 
 
 def _told_in(view: View, *, setting: Setting, left: Counter[str]) -> list[Claim]:
@@ -77,6 +122,8 @@ def _notes(document: Document, left: Counter[str]) -> tuple[str, ...]:
 
 
 def _passage(view: View, spans: Spans, number: int, setting: Setting, left: Counter[str]) -> Iterator[Placed]:
+    own = in_paragraph(view, spans)
+    setting = setting if own is None else replace(setting, plus_minus=own)
     for order, (start, end) in enumerate(spans):
         text = view.text[start:end]
         if DIGITS.isdisjoint(text) or not (any(sign in text for sign in _SIGNS) or _words_of_results(text)):
@@ -106,6 +153,8 @@ def _words_of_results(text: str) -> bool:
     if "%" in text and any(sign in text for sign in _SHARES):
         return True
     low = text.lower()
+    if "%" in text and low.startswith(("of ", "among ")):
+        return True
     return any(word in low for word in _WORDS)
 
 
@@ -124,7 +173,7 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     worded = "p" not in parts and parts.count("statistic") == 1
     items, together = in_parallel(items, line)
     for draft in sorted((*drafts(items, line), *together), key=lambda draft: draft.first):
-        label = (sign or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
+        label = (_own_sign(sentence, sign) or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
         name = named(draft, label, says)
         if name is None:
             continue
@@ -137,6 +186,11 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
         if earlier or beside_earlier_work(draft, sentence):
             name = _of_earlier_work(name)
         yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
+
+
+def _own_sign(sentence: Sentence, told: str) -> str:
+    """What the sentence itself says stands after `±`, "" where it does not."""
+    return MARGIN if not told and tells_margins(sentence.low) else told
 
 
 def _of_earlier_work(name: Named) -> Named:
@@ -182,7 +236,7 @@ def _said(draft: Draft, name: Named, says: tuple[str, ...]) -> tuple[str, ...]:
     Adjusted post hoc comparisons are not said of an omnibus test; where a sentence speaks of one-
     and of two-tailed tests, only the words beside the numbers count.
     """
-    said = dict.fromkeys((*name.stated, *says))
+    said = dict.fromkeys((*name.stated, *says, *of_variances(draft)))
     if name.kind in ("t-test", "F-test") and any(
         t.low in ("t", "anova") for t in draft.line.tokens[: draft.first]
     ):

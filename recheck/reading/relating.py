@@ -8,6 +8,7 @@ from dataclasses import replace
 from recheck.model import Claim, Document, Passage, SameResult
 from recheck.reading.linking import in_prose
 from recheck.reading.placed import Placed
+from recheck.reading.risk_links import with_counts
 from recheck.reading.table_links import linked_further, unlinked_others
 from recheck.reading.told import Item, items_of, names_of
 from recheck.reading.twice import same_results
@@ -30,6 +31,7 @@ def related(
     claims |= {item.claim.id: item.claim for item in items}
     claims |= linked_further(items, texts, names)
     claims |= {i.claim.id: _named(i, claims[i.claim.id]) for i in items if i.about.outcome or i.about.group}
+    claims |= with_counts(placed, claims)
     order = {item.claim.id: at for at, item in enumerate(placed)}
     same = same_results(items, passages, names, order)
     return tuple(claims[item.claim.id] for item in placed), same

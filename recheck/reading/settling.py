@@ -21,7 +21,7 @@ SHARES = frozenset(("auc", "icc", "kappa", "tau"))
 def settled(line: Line, spelled: Spelled, df: Values | None) -> Symbol:
     """`f` with two df is F; `T` and `H` without df are neither t nor the H of Kruskal and Wallis."""
     symbol, text = spelled.symbol, spelled.text
-    if text == "f":
+    if text == "f" and symbol.quantity != "f2":
         return symbol if df and len(df) > 1 else replace(symbol, quantity="f", part="effect")
     if (text in _NEED_DF or text.startswith("Q")) and not df and not _df_follows(line, spelled.after):
         return OTHER

@@ -26,6 +26,9 @@ class Spelled:
 NUMBERED = Symbol("other", "size")
 """`n1 = 14`, `n2 = 11`: sizes of single groups beside a test."""
 
+OTHER = Symbol("other", "other")
+"""What looks like a quantity and is none that a claim holds: `ΔR` without its square."""
+
 _SQUARES = frozenset(
     (
         "g",
@@ -40,9 +43,13 @@ _SQUARES = frozenset(
         "f",
         "r2",
         "adjusted_r2",
+        "delta_r2",
     )
 )
 _NEEDS_SQUARE = frozenset(("X", "x", "G", "ε", "epsilon", "omega", "v", "c", "w", "h", "khi"))
+_NEEDS_SQUARE_OR_OTHER = frozenset(
+    ("ΔR", "change in R", "Rchange", "increment in R", "incremental R", "marginal R", "conditional R", "K")
+)
 _NEEDS_DF = frozenset(("v", "c", "w"))
 """What a wrong code table makes of χ; only `v2(1)` with its degrees of freedom is taken for it."""
 _LOWERED = frozenset(("t", "F", "chi2", "r", "n", "N", "df"))
@@ -157,7 +164,7 @@ def _is_square(line: Line, index: int, base: Spelled) -> bool:
     return (
         following.kind in ("rel", "sub")
         or following.text in ("(", "[", "_")
-        or following.low in ("p", "g", "adj")
+        or following.low in ("p", "g", "adj", "change")
     )
 
 
@@ -179,7 +186,9 @@ def _is_subscript(line: Line, index: int, after_square: bool) -> bool:
     following = line.at(index + 1)
     if following.text == "2" and following.spaced:
         following = line.at(index + 2)
-    return token.low in ("p", "g", "adj", "partial") and following.kind == "rel" and token.text != "P"
+    return (
+        token.low in ("p", "g", "adj", "partial", "change") and following.kind == "rel" and token.text != "P"
+    )
 
 
 _ADJUSTED = ("adj", "bonf", "corr", "cor", "fdr", "tukey", "holm", "fwe", "hb", "bh", "sidak", "scheffe")
@@ -189,11 +198,18 @@ _VARIANTS = {
     ("eta2", "g"): "generalized_eta2", ("eta2", "gen"): "generalized_eta2", ("eta2", "generalized"): "generalized_eta2",
     ("d", "z"): "d_z", ("d", "av"): "d_av", ("d", "avg"): "d_av", ("d", "rm"): "d_rm", ("r", "pb"): "r_pb",
     ("r2", "adj"): "adjusted_r2", ("r2", "adjusted"): "adjusted_r2",
+    ("r2", "change"): "delta_r2", ("r2", "chg"): "delta_r2", ("r2", "inc"): "delta_r2", ("r2", "Δ"): "delta_r2", ("r2", "δ"): "delta_r2",
     ("mean", "diff"): "mean_difference", ("mean", "d"): "mean_difference", ("mean", "difference"): "mean_difference",
     ("se", "diff"): "se_difference", ("se", "difference"): "se_difference", ("mse", "e"): "mse",
     ("phi", "c"): "cramers_v", ("bf10", "01"): "bf01", ("df", "1"): "df1", ("df", "2"): "df2",
 }  # fmt: skip
-_PARTS = {"mean_difference": "estimate", "r_pb": "effect", "r2": "effect", "adjusted_r2": "effect"}
+_PARTS = {
+    "mean_difference": "estimate",
+    "r_pb": "effect",
+    "r2": "effect",
+    "adjusted_r2": "effect",
+    "delta_r2": "effect",
+}
 
 
 def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
@@ -208,6 +224,8 @@ def _resolved(line: Line, spelled: Spelled, squared: bool) -> Spelled | None:
         or (spelled.text in ("η", "ω", "eta", "np") and not label)
     ):
         return None
+    if spelled.text in _NEEDS_SQUARE_OR_OTHER and not squared:
+        return replace(spelled, symbol=OTHER)
     if spelled.text in _NEEDS_DF and line.at(spelled.after).text not in ("(", "["):
         return None
     if squared:

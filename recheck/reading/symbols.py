@@ -51,9 +51,9 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family("statistic", t="t|T|tStudent|tstudent|Student t|t value|t statistic|t test|t ratio|t score"),
     *_family(
         "statistic",
-        F="F|f|ΔF|Fchange|F change|F value|F statistic|F test|F ratio|ANOVA F",
+        F="F|f|F value|F statistic|F test|F ratio|ANOVA F",
         chi2="chi square|chi squared|Chi square|Chi squared|Chi sq|chisq|chi sq|chisquare|khi|X|x|v|c|w|χ|chi|Chi"
-        "|Wald χ|Pearson χ|Wald|Wald statistic",
+        "|Wald χ|Pearson χ|Wald|Wald statistic|K|K squared|Bartlett K|Bartlett K squared|Bartlett χ",
         z="z|Z|z value|z statistic|z score|Wald z|Wald Z|z test|z ratio",
         r="r|R|Pearson r",
         u="U|Mann-Whitney U",
@@ -70,6 +70,7 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family("statistic", stated=("rank-test",), chi2="H|Kruskal-Wallis H|Kruskal-Wallis χ"),
     *_family("statistic", stated=("likelihood-ratio",), chi2="G|LR χ|likelihood ratio χ"),
     *_family("statistic", stated=("model-fit",), chi2="Δχ"),
+    *_family("statistic", stated=("model-step",), F="ΔF|Fchange|F change|Fchg|F chg|F for change|Finc|change in F|incremental F"),
     *_family(
         "statistic",
         stated=("spearman",),
@@ -150,10 +151,13 @@ SPELLINGS: list[tuple[str, Symbol]] = [
         r_pb="rpb|point-biserial r|point biserial r",
         phi="φ|phi|phi coefficient",
         cramers_v="Cramer V|Cramér V|Cramers V|Cramer φ|Cramér φ|φc|φC",
-        r2="R squared|R square|r squared|Nagelkerke R|pseudo R|Rsq|RSquared",
+        r2="R squared|R square|r squared|Rsq|RSquared|coefficient of determination",
         adjusted_r2="adjusted R squared|adjusted R square|Radj|adjusted R|adj R",
         delta="Glass Δ|Glass delta",
     ),
+    *_family("effect", stated=("pseudo-r2",), r2="Nagelkerke R|Nagelkerkes R|pseudo R|pseudo R squared|McFadden R|McFadden pseudo R|Cox and Snell R"
+             "|Tjur R|marginal R|conditional R"),
+    *_family("effect", stated=("model-step",), delta_r2="ΔR|ΔR squared|ΔR square|R squared change|R square change|change in R|change in R squared|increment in R|incremental R|Rchange"),
     *_family("effect", several=True, partial_eta2="ηps|ηs"),
     *_family(
         "effect",
@@ -175,10 +179,10 @@ SPELLINGS: list[tuple[str, Symbol]] = [
     *_family("other", alpha="α|alpha|significance level", power="power"),
     *_family(
         "other",
-        other="ΔR|AIC|BIC|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|Λ|I|MS|SS|rtt|KR|test-retest r"
+        other="AIC|BIC|CFI|TLI|RMSEA|SRMR|NFI|GFI|VIF|λ|lambda|Λ|I|MS|SS|rtt|KR|test-retest r"
         "|concordance correlation|concordance correlation coefficient"
         "|canonical correlation|multiple correlation|Matthews correlation coefficient|cophenetic correlation"
-        "|pMCMC|logBF|RT|ER|C|D|S|A|E|K|L|J|k|m|y|q|ELPD|LOOIC|PPV|NPV|sensitivity|specificity",
+        "|pMCMC|logBF|RT|ER|C|D|S|A|E|L|J|k|m|y|q|ELPD|LOOIC|PPV|NPV|sensitivity|specificity",
     ),
     *_family("interval", ci="CI|CIs|IC|KI|confidence interval|confidence limits|confidence intervals|CI's|Conf Int|conf int"),
     *_family("interval", stated=("bayesian",), ci="CrI|CrIs|HDI|HDIs|HPD|HPDI|HPDs|credible interval|credible intervals|PI"

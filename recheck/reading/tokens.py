@@ -65,7 +65,7 @@ def tokens(view: View, start: int, end: int) -> list[Token]:
 
 _ABBREVIATED = words(
     "vs e.g i.e fig figs al approx cf dr no nos eq eqs exp expt ca resp st mr mrs ms prof tab sec vol pp p "
-    "et std dev diff min max incl excl stat sig conf int"
+    "et std dev diff min max incl excl stat sig conf int adj"
 )
 
 

@@ -26,6 +26,9 @@ STEMS: dict[str, tuple[str, ...]] = {
         "repeated measures t-", "correlated sample", "within-subject t-", "within-subjects t-", "within-participants t-",
         "student's paired",
     ),
+    "matched": ("conditional logistic", "matched control", "matched case", "matched group", "matched sample", "matched cohort", "matched design",
+                "matched for", "matched on", "matched by", "were matched", "was matched", "age-matched", "sex-matched", "gender-matched",
+                "age- and sex-matched", "propensity score", "propensity-score", "individually matched", "frequency matched"),
     "one-sample": ("one-sample", "one sample t", "single-sample t", "single sample t"),
     "between-groups": (
         "between-subject", "between subject", "between-group", "between-participant", "one-way anova",
@@ -68,7 +71,9 @@ STEMS: dict[str, tuple[str, ...]] = {
     "weighted": (
         "weighted least", "weighted regression", "weighted analys", "weighted by", "weighted data", "weighted estimat",
         "weighted mean", "survey weight", "sampling weight", "inverse probability", "inverse-probability", "weights were",
-        "post-stratif",
+        "post-stratif", "population-weighted", "survey-weighted", "design-weighted", "weighted to ", "weighted for ", "weighted using",
+        "weighted sample", "weighted percent", "weighted n ", "weighted frequenc", "weighted count", "sample weight", "design weight",
+        "calibration weight", "raking weight", "weights from ", "weighting factor", "weighting procedure", "complex survey", "complex sampl",
     ),
     "robust": (
         "robust standard", "robust se", "robust varian", "robust estimat", "robust regress", "robust chi", "robust maximum",
@@ -91,6 +96,8 @@ STEMS: dict[str, tuple[str, ...]] = {
                           "within-subject error", "normalised within", "normalized within"),
     "rank-test": ("mann-whitney", "mann whitney", "wilcoxon", "kruskal", "friedman", "signed-rank", "signed rank",
                   "rank-sum", "rank sum", "nonparametric", "non-parametric"),
+    "signed-ranks": ("signed-rank", "signed rank", "wilcoxon matched", "wilcoxon's matched", "paired wilcoxon", "wilcoxon paired",
+                     "wilcoxon test for paired"),
     "spearman": ("spearman", "rank correlation", "rank-order correlation"),
     "partial": ("partial correlation", "partial r", "semi-partial", "semipartial", "part correlation"),
     "disattenuated": ("disattenuat", "corrected for attenuation", "corrected for unreliability", "latent variable",

@@ -95,6 +95,17 @@ def ss_between_bounds(low: ArrayLike, high: ArrayLike, weights: ArrayLike) -> Bo
 
 def _least_ss(low: Floats, high: Floats, weights: Floats) -> Floats:
     """The least weighted sum of squares of means within their intervals; see `ss_between_bounds`."""
+    means = nearest_to_their_mean(low, high, weights)
+    meet = np.max(low, axis=-1) <= np.min(high, axis=-1)
+    return np.where(meet, 0.0, ss_between(means, weights))
+
+
+def nearest_to_their_mean(low: Floats, high: Floats, weights: Floats) -> Floats:
+    """The point of each interval that is nearest to the weighted mean c of these very points.
+
+    It solves sum w (nearest - c) = 0, whose left side falls with c and is linear between the ends of
+    intervals: see `ss_between_bounds`. Intervals lie along the last axis.
+    """
     ends = np.concatenate([low, high], axis=-1)
     nearest = np.clip(ends[..., None], low[..., None, :], high[..., None, :])
     slope = np.sum(weights[..., None, :] * (ends[..., None] - nearest), axis=-1)
@@ -104,9 +115,7 @@ def _least_ss(low: Floats, high: Floats, weights: Floats) -> Floats:
     pull = np.where(below | above, weights, 0.0)
     fixed = np.where(below, high, np.where(above, low, 0.0))
     centre = quotient(np.sum(pull * fixed, axis=-1, keepdims=True), np.sum(pull, axis=-1, keepdims=True))
-    means = np.clip(np.where(np.isnan(centre), left, centre), low, high)
-    meet = np.max(low, axis=-1) <= np.min(high, axis=-1)
-    return np.where(meet, 0.0, ss_between(means, weights))
+    return np.asarray(np.clip(np.where(np.isnan(centre), left, centre), low, high))
 
 
 def f_one_way_bounds(

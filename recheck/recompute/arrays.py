@@ -59,3 +59,9 @@ def quotient_bounds(top_low: Floats, top_high: Floats, bottom_low: Floats, botto
     high = quotient(top_high, np.where(top_high > 0, bottom_low, bottom_high))
     low = quotient(top_low, np.where(top_low < 0, bottom_low, bottom_high))
     return low, high
+
+
+def absolute_bounds(low: ArrayLike, high: ArrayLike) -> Bounds:
+    """Range of |x| where x runs from `low` to `high`."""
+    low, high = floats(low, high)
+    return np.maximum(np.maximum(low, -high), 0.0), np.asarray(np.maximum(-low, high))

@@ -57,29 +57,5 @@ def yates_chi2(counts: ArrayLike) -> Floats:
     return np.asarray(np.sum(quotient(deviation**2, expected), axis=(-2, -1)))
 
 
-SAME_LIKELIHOOD = 1e-7
-"""Relative distance within which two tables count as equally likely, as in R's fisher.test."""
-
-
-def fisher_p(counts: ArrayLike) -> float:
-    """Two-sided p of Fisher's exact test of one 2 x 2 table: all tables that are no likelier, margins fixed.
-
-    Source: Fisher (1935), J. R. Stat. Soc. 98:39-82; two-sided as Freeman & Halton (1951), Biometrika 38:141-149.
-    """
-    (counts,) = floats(counts)
-    (a, b), (c, d) = counts.tolist()
-    first, whole, column = a + b, a + b + c + d, a + c
-    support = np.arange(max(0.0, column - (whole - first)), min(first, column) + 1)
-    logs = _log_choose(first, support) + _log_choose(whole - first, column - support)
-    logs -= _log_choose(whole, np.asarray(column))
-    likelihood = np.exp(logs)
-    own = likelihood[int(a - support[0])]
-    return float(min(np.sum(likelihood[likelihood <= own * (1 + SAME_LIKELIHOOD)]), 1.0))
-
-
 def _whole(counts: Floats) -> Floats:
     return np.asarray(counts.sum(axis=(-2, -1)))
-
-
-def _log_choose(n: float, k: Floats) -> Floats:
-    return np.asarray(special.gammaln(n + 1) - special.gammaln(k + 1) - special.gammaln(n - k + 1))

@@ -96,13 +96,13 @@ def _mended(
         return ends
     sign = 1.0 if least else -1.0
     others = [part[inside] for part in fixed]
-    found = sign * _valley_floor(lambda x: sign * curve(x, *others), low[inside], high[inside])
+    found = sign * valley_floor(lambda x: sign * curve(x, *others), low[inside], high[inside])
     mended = np.array(ends)
     mended[inside] = np.minimum(mended[inside], found) if least else np.maximum(mended[inside], found)
     return mended
 
 
-def _valley_floor(curve: Callable[[Floats], Floats], low: Floats, high: Floats) -> Floats:
+def valley_floor(curve: Callable[[Floats], Floats], low: Floats, high: Floats) -> Floats:
     """Least value of a curve that falls and then rises, by golden section."""
     left, right = high - GOLDEN * (high - low), low + GOLDEN * (high - low)
     at_left, at_right = curve(left), curve(right)

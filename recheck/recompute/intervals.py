@@ -1,4 +1,4 @@
-"""Confidence intervals against SE, t and p; Fisher's z; intervals from the noncentral t.
+"""Confidence intervals against SE and t.
 
 `level` runs from 0 to 1; an infinite df means the normal distribution.
 """
@@ -9,8 +9,7 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from recheck.recompute.arrays import Bounds, Floats, floats, quotient, together
-from recheck.recompute.noncentral import noncentrality
-from recheck.recompute.tails import t_quantile, z_quantile
+from recheck.recompute.tails import t_quantile
 
 
 def critical_t(level: ArrayLike, df: ArrayLike) -> Floats:
@@ -61,25 +60,3 @@ def t_from_ci_bounds(
     high = np.where(touching & (most > 0), np.inf, np.fmax.reduce(ratios))
     scale = critical_t(level, df)
     return np.where(some, scale * low, np.nan), np.where(some, scale * high, np.nan)
-
-
-def noncentral_t_ci(t: ArrayLike, df: ArrayLike, level: ArrayLike = 0.95) -> Bounds:
-    """Interval of the noncentrality delta of which `t` is an observation, by inversion of two tests.
-
-    Times sqrt(1/n1 + 1/n2) it is the interval of d_s, over sqrt(n) that of d_z. Either end is good to
-    1e-8. Source: Steiger & Fouladi (1997), in What If There Were No Significance Tests?, ch. 9.
-    """
-    (level,) = floats(level)
-    miss = (1 - level) / 2
-    return noncentrality(t, df, 1 - miss), noncentrality(t, df, miss)
-
-
-def r_ci(r: ArrayLike, n: ArrayLike, level: ArrayLike = 0.95) -> Bounds:
-    """Interval of a correlation, tanh(atanh r ∓ z / sqrt(n - 3)); nan where n < 3 or |r| > 1.
-
-    Source: Fisher (1921), Metron 1:3-32.
-    """
-    r, n, level = floats(r, n, level)
-    with np.errstate(divide="ignore", invalid="ignore"):
-        middle, half = np.arctanh(r), z_quantile((1 - level) / 2) / np.sqrt(n - 3)
-        return np.asarray(np.tanh(middle - half)), np.asarray(np.tanh(middle + half))

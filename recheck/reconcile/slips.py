@@ -21,7 +21,7 @@ DIGITS = "0123456789"
 GROUP_NUMBERS = {
     f"{name}{i}": (name, str(i))
     for i in range(1, 41)
-    for name in ("mean", "sd", "se", "n", "count", "percent", "total")
+    for name in ("mean", "sd", "se", "n", "median", "min", "max", "count", "percent", "total")
 }
 """Names of the numbers of groups, each with its quantity and its group: `sd2` is the SD of the second."""
 

@@ -49,6 +49,8 @@ def _head(audit: Audit, look: Look) -> list[str]:
     if audit.claims:
         alpha = figure(audit.settings.alpha)
         lines += look.paragraph(f"Alpha is {alpha} ({ALPHA_SOURCES[audit.settings.alpha_source]}).")
+    for rule in audit.settings.scores:
+        lines += look.paragraph(f"Scores, as told with the request: {rule.text}.")
     for note in audit.notes:
         lines += look.paragraph(f"Note: {note}", hanging=3)
     return [*lines, "", *look.paragraph(_outcome(audit))]

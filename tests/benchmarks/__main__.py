@@ -6,7 +6,7 @@ import sys
 from collections.abc import Iterator
 from pathlib import Path
 
-from tests.benchmarks import documents_docx, marked_up, pages, startup
+from tests.benchmarks import documents_docx, formulas, marked_up, pages, startup
 from tests.benchmarks.claims import claims_ratios
 from tests.benchmarks.triples import triples_ratio
 
@@ -22,6 +22,7 @@ def rows(paths: list[str]) -> Iterator[tuple[str, float, str]]:
         "at most 1.6",
     )
     yield "10^6 t, df, p triples / one scipy.special.stdtr call", triples_ratio(), "at most 8"
+    yield from formulas.measured()
     for path in paths or sorted(str(path) for path in CORPUS.glob("*.pdf")):
         name, data = Path(path).name, Path(path).read_bytes()
         to_extraction, to_pages = claims_ratios(data)

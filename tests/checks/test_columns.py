@@ -89,3 +89,20 @@ def test_profile_intervals_of_a_table_do_not_tell_p():
 def test_one_method_behind_many_rows_is_no_question_for_each():
     other = odds("0.58", "0.31", "1.08", ".03")
     assert verdicts("p-from-ci", [other] * 3, "estimate", interval_of="or") == ["unchecked"] * 3
+
+
+def test_a_ratio_is_denied_by_its_counts_where_another_row_is_given_by_them():
+    def row(name, ratio, *counts):
+        place = Place(name, table="Table 2", row=name)
+        groups = [
+            replace(claim("count", name=f"{name}{k}", count=str(k), total=str(n)), place=place, group=f"g{n}")
+            for k, n in counts
+        ]
+        told = claim("estimate", "crude", name=name, groups=tuple(g.id for g in groups), **{"or": ratio})
+        return [replace(told, place=place), *groups]
+
+    wrong = row("Split crust", "0.55", (17, 139), (31, 140))
+    right = row("Dark crust", "0.68", (40, 139), (52, 140))
+    for rows, expected in ((wrong, ["conditional"]), ([*wrong, *right], ["inconsistent", "agrees"])):
+        found = run_checks(rows, Settings())
+        assert [f.verdict for f in found if f.check == "ratio-from-counts"] == expected

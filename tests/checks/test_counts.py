@@ -7,6 +7,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy import stats
 
+from recheck import audit_text
 from recheck.checks.registry import Case, all_checks, find_check
 from recheck.checks.running import run_checks
 from recheck.model import TOTAL_OF_GROUP, Place, Settings
@@ -285,3 +286,17 @@ def test_categories_of_a_block(columns, expected):
     found = [f for f in run_checks(block(columns), Settings()) if f.check == "categories-in-group"]
     assert [f.verdict for f in found] == expected
     assert all(len(f.claims) == 3 for f in found)
+
+
+def test_a_chi2_of_a_sentence_is_compared_with_its_two_counts():
+    told = "Rye loaves split in 12/40 and wheat loaves in 20/41 cases, χ²(1, N = 81) = {}, p = .084."
+    for shown, expected in (("2.99", "agrees"), ("9.29", "conditional")):
+        found = [f for f in audit_text(told.format(shown)).findings if f.check == "chi2-from-counts"]
+        assert [f.verdict for f in found] == [expected]
+
+
+def test_fishers_p_of_a_larger_table_is_worked_out():
+    # R 4.2.2: fisher.test(matrix(c(20, 12, 15, 22, 11, 9), 2))$p.value = 0.1906
+    told = counts([[20, 15, 11], [12, 22, 9]])
+    assert verdict("p-from-counts", claim("chi2-test", "fisher-exact", p=".191", df="2"), told) == "agrees"
+    assert verdict("p-from-counts", claim("chi2-test", "fisher-exact", p=".911", df="2"), told) != "agrees"

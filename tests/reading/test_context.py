@@ -148,3 +148,43 @@ def test_comparisons_of_pairs_say_nothing_of_an_omnibus_test() -> None:
 )  # fmt: skip
 def test_other_meanings_and_negations_do_not_count(text: str, word: str) -> None:
     assert word not in stated(text)
+
+
+HEIGHTS = "Height was 92.4 ± 6.1 mm with rye (n = 25) and 86.0 ± 5.8 mm with wheat (n = 25), t(48) = 3.80."
+
+
+@pytest.mark.parametrize(
+    "told",
+    [
+        "Values are mean ± 95% confidence limits.",
+        "Means ± 95% CI are given.",
+        "Figures are means ± 2 SE.",
+        "Heights are given ± half the 95% confidence interval.",
+        "Uncertainties are 95% confidence intervals (± values).",
+        "± denotes the 95% confidence limits.",
+        "Plus-minus values are 95% CIs.",
+    ],
+)
+def test_half_an_interval_is_no_spread(told: str) -> None:
+    # What its own paragraph says of ± wins over what another one says.
+    for texts in ((f"{told} {HEIGHTS}",), ("Data are mean ± s.e.m.", f"{told} {HEIGHTS}"), (told, HEIGHTS)):
+        claims = reading(*texts).claims
+        assert not any({"sd", "se"} & c.values.keys() for c in claims), texts
+        assert "t-test" in [c.kind for c in claims]
+
+
+@pytest.mark.parametrize(
+    ("texts", "spread"),
+    [
+        (("Data are mean ± s.e.m.", f"Heights are mean ± SD. {HEIGHTS}"), "sd"),
+        (("Data are mean ± SD.", f"{HEIGHTS} Here means ± SE are given."), "se"),
+        (("Data are mean ± s.e.m.", HEIGHTS), "se"),
+        (("Mean differences are given with 95% confidence intervals.", HEIGHTS), "sd"),
+        (("Errors are rare. The 95% CI is given in brackets.", HEIGHTS), "sd"),
+        (("Heights are mean ± SE. Figure 2 shows means ± 95% CI.", HEIGHTS), "se"),
+        (("Limits of agreement were the mean ± 1.96 times the standard error.", HEIGHTS), "sd"),
+    ],
+)
+def test_a_paragraph_says_what_stands_after_its_own_signs(texts: tuple[str, ...], spread: str) -> None:
+    summaries = [c for c in reading(*texts).claims if c.kind == "group-summary"]
+    assert len(summaries) == 2 and all(spread in c.values for c in summaries)

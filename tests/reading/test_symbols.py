@@ -11,7 +11,8 @@ from recheck.reading.symbols import SPELLINGS, Symbol
 from recheck.reading.tokens import tokens
 from recheck.reading.views import view_of
 
-SQUARED = {"X", "x", "v", "c", "w", "G", "khi", "ε", "epsilon", "ω", "omega", "η", "eta", "np", "h"}
+SQUARED = {"X", "x", "v", "c", "w", "G", "khi", "ε", "epsilon", "ω", "omega", "η", "eta", "np", "h",
+           "ΔR", "change in R", "increment in R", "incremental R", "Rchange", "marginal R", "conditional R", "K"}  # fmt: skip
 """Letters that stand for the quantity with a raised 2 alone."""
 
 
@@ -46,9 +47,9 @@ def test_quantities_are_those_of_the_model() -> None:
         ("η_p²", "partial_eta2"), ("η̂²G", "generalized_eta2"), ("ηG2", "generalized_eta2"), ("η2 G", "generalized_eta2"),
         ("partial η²", "partial_eta2"), ("generalised eta-squared", "generalized_eta2"), ("eta-squared", "eta2"),
         ("χ²", "chi2"), ("χ2", "chi2"), ("χ 2", "chi2"), ("X2", "chi2"), ("Chi-square", "chi2"), ("G²", "chi2"),
-        ("R²", "r2"), ("r2", "r2"), ("R2adj", "adjusted_r2"), ("R²_adj", "adjusted_r2"), ("adjusted R²", "adjusted_r2"),
+        ("R²", "r2"), ("r2", "r2"), ("ΔR²", "delta_r2"), ("R² change", "delta_r2"), ("R²change", "delta_r2"), ("adj. R²", "adjusted_r2"), ("R2adj", "adjusted_r2"), ("R²_adj", "adjusted_r2"), ("adjusted R²", "adjusted_r2"),
         ("f²", "f2"), ("Cohen's f²", "f2"), ("Cohen’s d", "d"), ("Cohen’s dz", "d_z"), ("d_z", "d_z"), ("d_av", "d_av"),
-        ("Hedges’ g", "g"), ("Hedge's g", "g"), ("Cramér's V", "cramers_v"), ("Glass’s Δ", "delta"), ("ω²", "omega2"),
+        ("Hedges’ g", "g"), ("Hedge's g", "g"), ("Cramér's V", "cramers_v"), ("Glass’s Δ", "delta"), ("ω²", "omega2"), ("K²", "chi2"), ("Bartlett's K-squared", "chi2"),
         ("s.d.", "sd"), ("S.D.", "sd"), ("std. dev.", "sd"), ("s.e.m.", "se"), ("S.E.", "se"), ("d.f.", "df"),
         ("M_diff", "mean_difference"), ("Mdiff", "mean_difference"), ("SE_diff", "se_difference"), ("r_s", "r"),
         ("df1", "df1"), ("df2", "df2"), ("Mage", "mean"), ("SDage", "sd"), ("M_control", "mean"), ("r_pb", "r_pb"),

@@ -7,7 +7,7 @@ from hypothesis import strategies as st
 from scipy import optimize, stats
 from statsmodels.stats.oneway import anova_oneway
 
-from recheck.recompute import anova
+from recheck.recompute import anova, anova_box
 from recheck.recompute.tails import f_tail
 from tests.recompute.boxes import SHARES, at, holds, intervals
 from tests.reference import rows
@@ -132,3 +132,17 @@ def test_large_means_lose_nothing():
 def test_too_many_groups_are_refused():
     with pytest.raises(ValueError, match="at most 12 groups"):
         anova.ss_between_bounds(np.zeros(13), np.ones(13), np.ones(13))
+
+
+@BOX
+@given(groups=GROUPS)
+def test_one_box_in_plain_floats_is_the_same(groups):
+    means, sds, ns = (tuple(part) for part in zip(*groups, strict=True))
+    expected = [float(end) for end in anova.f_one_way_bounds(*split(groups))]
+    assert anova_box.f_one_way_range(means, sds, ns) == pytest.approx(expected, rel=1e-10, abs=1e-12)
+
+
+def test_one_box_without_spread():
+    means, ns = ((1.0, 1.1), (2.0, 2.1)), (5, 5)
+    assert anova_box.f_one_way_range(means, ((0.0, 0.1), (0.0, 0.1)), ns)[1] == np.inf
+    assert np.isnan(anova_box.f_one_way_range(((1.0, 1.0),) * 2, ((0.0, 0.0),) * 2, ns)[0])

@@ -18,7 +18,7 @@ NAMES = [
     "z_tail",
 ]
 MODULES = (
-    "anova", "bounds", "contingency", "effects", "intervals", "noncentral", "ranks", "tails", "triples", "two_groups",
+    "anova", "bounds", "ci_and_p", "combining", "contingency", "conversions", "correlations", "matrices", "regressions", "effect_bounds", "effect_intervals", "effect_sizes", "effect_variances", "exact_tests", "granularity", "paired_counts", "proportions", "risk_intervals", "risks", "score_intervals", "shares", "intervals", "noncentral", "noncentral_f", "quantile_estimates", "ranks", "spread_limits", "tails", "triples", "two_groups", "variance_explained",
 )  # fmt: skip
 
 

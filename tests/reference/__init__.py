@@ -26,6 +26,11 @@ class Reference(dict[str, str]):
         pairs = (pair.split("=") for pair in self["inputs"].split(";"))
         return {name: float(value) for name, value in pairs}
 
+    def lists(self) -> dict[str, list[float]]:
+        """The `inputs` by name where each is one number or several, one for each group."""
+        pairs = (pair.split("=") for pair in self["inputs"].split(";"))
+        return {name: [float(x) for x in value.split()] for name, value in pairs}
+
 
 @cache
 def rows(table: str) -> tuple[Reference, ...]:

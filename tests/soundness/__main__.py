@@ -13,10 +13,22 @@ import numpy as np
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST
+from tests.soundness.honest_conversions import EFFECT_CONVERSIONS
+from tests.soundness.honest_effects import EFFECT_INTERVALS
+from tests.soundness.honest_granularity import GRANULARITY
+from tests.soundness.honest_power import HONEST_POWER
+from tests.soundness.honest_spreads import HONEST_SPREADS
 from tests.soundness.honest_tables import HONEST_TABLES
 from tests.soundness.other_models import OTHER_MODELS
 from tests.soundness.other_tables import OTHER_TABLES
 from tests.soundness.planted import PLANTS, plant
+from tests.soundness.planted_designs import DESIGN_PLANTS
+from tests.soundness.planted_effects import EFFECT_PLANTS
+from tests.soundness.planted_granularity import GRANULARITY_PLANTS
+from tests.soundness.planted_matrices import MATRIX_PLANTS
+from tests.soundness.planted_power import POWER_PLANTS
+from tests.soundness.planted_risks import RISK_PLANTS
+from tests.soundness.planted_spreads import SPREAD_PLANTS
 from tests.soundness.planted_tables import TABLE_PLANTS
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.traps import TRAPS
@@ -55,6 +67,13 @@ def planted_run(count: int, seed: int, shown: int) -> None:
     plants: dict[str, Callable[[np.random.Generator], tuple[Sample, bool]]] = {
         **{name: partial(plant, name) for name in PLANTS},
         **TABLE_PLANTS,
+        **SPREAD_PLANTS,
+        **DESIGN_PLANTS,
+        **GRANULARITY_PLANTS,
+        **EFFECT_PLANTS,
+        **MATRIX_PLANTS,
+        **POWER_PLANTS,
+        **RISK_PLANTS,
     }
     for name, planted in plants.items():
         row: Counter[str] = Counter()
@@ -88,7 +107,18 @@ def main() -> int:
     parser.add_argument("--only", help="one generator of honest results, by its name")
     parser.add_argument("--shown", type=int, default=2, help="texts shown of each kind")
     asked = parser.parse_args()
-    generators = {**HONEST, **OTHER_MODELS, **TRAPS, **HONEST_TABLES, **OTHER_TABLES}
+    generators = {
+        **HONEST,
+        **OTHER_MODELS,
+        **TRAPS,
+        **HONEST_TABLES,
+        **OTHER_TABLES,
+        **HONEST_SPREADS,
+        **GRANULARITY,
+        **EFFECT_INTERVALS,
+        **EFFECT_CONVERSIONS,
+        **HONEST_POWER,
+    }
     if asked.only:
         generators = {asked.only: generators[asked.only]}
     start = time.perf_counter()

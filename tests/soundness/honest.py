@@ -12,6 +12,8 @@ from tests.soundness import computing, raw, sentences
 from tests.soundness.computing import Test, Values, finite
 from tests.soundness.hand import Hand, draw_hand, one, written_by
 from tests.soundness.honest_counts import COUNTS
+from tests.soundness.honest_matrices import FITS
+from tests.soundness.honest_risks import RISKS
 from tests.soundness.samples import Generator, Piece, Sample, Told, make
 
 SHOW = ("each", "each", "each", "before", "before-n", "total", "none")
@@ -282,7 +284,7 @@ def compound(rng: np.random.Generator) -> Sample:
 SINGLE: dict[str, Generator] = {
     "pooled t": pooled_t, "welch t": welch_t, "lone t": lone_t, "paired t": paired_t,
     "one-sample t": one_sample_t, "one-way F": one_way_f, "two-way F": two_way_f,
-    "repeated F": repeated_f, "correlation": correlation, "slope": slope, **COUNTS,
+    "repeated F": repeated_f, "correlation": correlation, "slope": slope, **COUNTS, **RISKS, **FITS,
 }  # fmt: skip
 HONEST: dict[str, Generator] = {**SINGLE, "compound": compound}
 

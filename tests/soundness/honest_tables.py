@@ -10,7 +10,9 @@ from statsmodels.stats.oneway import anova_oneway  # type: ignore[import-untyped
 
 from tests.soundness import computing, raw
 from tests.soundness.hand import Hand, one
+from tests.soundness.honest_matrices import MATRICES
 from tests.soundness.honest_models import MODEL_TABLES
+from tests.soundness.honest_risks import RISK_TABLES
 from tests.soundness.raw import Values
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.tabling import (
@@ -292,6 +294,6 @@ def told_again(rng: Rng) -> Sample:
 
 HONEST_TABLES: dict[str, Generator] = {
     "baseline table": baseline, "two groups in rows": two_group_rows, "several groups in rows": several_group_rows,
-    **MODEL_TABLES,
+    **MODEL_TABLES, **RISK_TABLES, **MATRICES,
     "counts in rows": chi2_rows, "paired counts": paired_counts, "told again in a table": told_again,
 }  # fmt: skip

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from hypothesis import strategies as st
 
+from tests.soundness.honest_designs import DESIGNS
+from tests.soundness.honest_risks import OTHER_RISKS
 from tests.soundness.other_adjusted import OTHER_ADJUSTED
 from tests.soundness.other_counts import OTHER_COUNTS
 from tests.soundness.other_effects import OTHER_EFFECTS
@@ -21,6 +23,8 @@ OTHER_MODELS: dict[str, Generator] = {
     **OTHER_EFFECTS,
     **OTHER_ROUNDING,
     **OTHER_SCORES,
+    **DESIGNS,
+    **OTHER_RISKS,
 }
 
 

@@ -8,6 +8,7 @@ from scipy import stats
 
 from tests.soundness import computing, raw
 from tests.soundness.hand import one
+from tests.soundness.honest_risks import OTHER_RISK_TABLES
 from tests.soundness.honest_tables import chi2_by
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.tabling import (
@@ -337,5 +338,5 @@ OTHER_TABLES: dict[str, Generator] = {
     "adjusted means": adjusted_means,
     "other percentages": other_percentages, "corrected stars": corrected_stars, "contingency table": contingency,
     "repeated source table": repeated_source, "odds beside counts": odds, "categories with chi2": long_counts,
-    "list of r": list_of_r,
+    "list of r": list_of_r, **OTHER_RISK_TABLES,
 }  # fmt: skip

@@ -10,10 +10,22 @@ from hypothesis import HealthCheck, given, settings
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST, honest_samples
+from tests.soundness.honest_conversions import EFFECT_CONVERSIONS
+from tests.soundness.honest_effects import EFFECT_INTERVALS
+from tests.soundness.honest_granularity import GRANULARITY
+from tests.soundness.honest_power import HONEST_POWER
+from tests.soundness.honest_spreads import HONEST_SPREADS
 from tests.soundness.honest_tables import HONEST_TABLES
 from tests.soundness.other_models import OTHER_MODELS, other_samples
 from tests.soundness.other_tables import OTHER_TABLES
 from tests.soundness.planted import PLANTS, plant
+from tests.soundness.planted_designs import DESIGN_PLANTS
+from tests.soundness.planted_effects import EFFECT_PLANTS
+from tests.soundness.planted_granularity import GRANULARITY_PLANTS
+from tests.soundness.planted_matrices import MATRIX_PLANTS
+from tests.soundness.planted_power import POWER_PLANTS
+from tests.soundness.planted_risks import RISK_PLANTS
+from tests.soundness.planted_spreads import SPREAD_PLANTS
 from tests.soundness.planted_tables import TABLE_PLANTS
 from tests.soundness.samples import Generator, Sample
 from tests.soundness.sharpness import GROUP_CHECKS, STATISTICS, unattained, unattained_by_groups
@@ -24,8 +36,30 @@ QUICK = settings(max_examples=30, deadline=None, derandomize=True, suppress_heal
 
 @pytest.mark.parametrize(
     ("generators", "each"),
-    [(HONEST, 36), (OTHER_MODELS, 20), (TRAPS, 14), (HONEST_TABLES, 15), (OTHER_TABLES, 12)],
-    ids=["plain", "other models", "traps", "tables", "other tables"],
+    [
+        (HONEST, 36),
+        (OTHER_MODELS, 20),
+        (TRAPS, 14),
+        (HONEST_TABLES, 15),
+        (OTHER_TABLES, 12),
+        (HONEST_SPREADS, 12),
+        (GRANULARITY, 12),
+        (EFFECT_INTERVALS, 10),
+        (EFFECT_CONVERSIONS, 15),
+        (HONEST_POWER, 12),
+    ],
+    ids=[
+        "plain",
+        "other models",
+        "traps",
+        "tables",
+        "other tables",
+        "spreads",
+        "granularity",
+        "effect intervals",
+        "effect conversions",
+        "power",
+    ],
 )
 def test_honest_results_are_never_flagged(generators: Mapping[str, Generator], each: int) -> None:
     drawn = outcomes(generators, each * len(generators), seed=11)
@@ -91,9 +125,35 @@ def test_most_honest_tables_are_read() -> None:
     assert np.mean(read) > 0.9
 
 
-@pytest.mark.parametrize("name", sorted(TABLE_PLANTS))
-def test_misprints_in_tables_are_noticed(name: str) -> None:
-    drawn = [TABLE_PLANTS[name](np.random.default_rng([19, i])) for i in range(16)]
+@pytest.mark.parametrize(
+    "name",
+    sorted(
+        {
+            **TABLE_PLANTS,
+            **SPREAD_PLANTS,
+            **DESIGN_PLANTS,
+            **GRANULARITY_PLANTS,
+            **EFFECT_PLANTS,
+            **MATRIX_PLANTS,
+            **POWER_PLANTS,
+            **RISK_PLANTS,
+        }
+    ),
+)
+def test_other_misprints_are_noticed(name: str) -> None:
+    drawn = [
+        {
+            **TABLE_PLANTS,
+            **SPREAD_PLANTS,
+            **DESIGN_PLANTS,
+            **GRANULARITY_PLANTS,
+            **EFFECT_PLANTS,
+            **MATRIX_PLANTS,
+            **POWER_PLANTS,
+            **RISK_PLANTS,
+        }[name](np.random.default_rng([19, i]))
+        for i in range(16)
+    ]
     wrong = [sample for sample, contradicted in drawn if contradicted]
     passed = [s.text for s in wrong if audit_document([s])[0].verdict not in ("flagged", "conditional")]
     assert len(passed) <= 0.1 * len(wrong), "\n".join(passed)

@@ -98,8 +98,12 @@ def _joins(current: list[int], column: int, roles: Mapping[int, Role]) -> bool:
     main = held & (STATISTICS | {OPEN})
     if not told & (STATISTICS | {OPEN}) or not main:
         return _se_has_owner(told, held)
-    # U and W are given with their z; r after another statistic is its effect size; a Wald χ² stands beside b.
-    return bool(main <= {"u", "w"} and told & {"z", "r"}) or (told == {"r"} and "r" not in main)
+    # U and W are given with their z; r after another statistic is its effect size; a Wald χ² stands beside b,
+    # and a predictor's own correlation before it.
+    of_predictor = main == {"r"} and {"b", "se"} <= held
+    return (
+        bool(main <= {"u", "w"} and told & {"z", "r"}) or (told == {"r"} and "r" not in main) or of_predictor
+    )
 
 
 def _p_before(current: list[int], column: int, roles: Mapping[int, Role]) -> bool:

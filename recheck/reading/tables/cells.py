@@ -10,11 +10,13 @@ from typing import Literal
 import regex
 
 from recheck.model import EFFECTS_ON_RISK, Printed
+from recheck.reading.tables.bare_shares import bare_share
 from recheck.reading.tables.frame import Frame, p_values
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.roles import Role, fits, matched
 from recheck.reading.tables.values import Piece
 from recheck.reading.views import TIMEOUT
+from recheck.reading.widths import MARGIN
 
 Source = Literal["heading", "legend", "shape"]
 
@@ -42,7 +44,7 @@ _OF_GROUPS = frozenset(
 )
 TESTS = frozenset((
     "t", "F", "chi2", "z", "r", "u", "w", "df", "df1", "df2", "p", "d", "g", "delta", "eta2", "partial_eta2", "generalized_eta2",
-    "omega2", "epsilon2", "f", "f2", "phi", "cramers_v", "r2", "adjusted_r2", "ss", "ms", "mse", "d_z", "d_av", "d_rm", "r_pb", "se_difference",
+    "omega2", "epsilon2", "f", "f2", "phi", "cramers_v", "r2", "adjusted_r2", "delta_r2", "ss", "ms", "mse", "d_z", "d_av", "d_rm", "r_pb", "se_difference",
 ))  # fmt: skip
 """Quantities whose columns and rows other layouts read."""
 
@@ -201,6 +203,8 @@ def _with_spread(
         (legend.spread or setting.plus_minus) if sign else (legend.brackets or setting.in_brackets)
     )
     mean, spread, *n = piece.numbers
+    if kind == MARGIN:
+        return Cell({"mean": mean}, row, column, piece, source, stated=stated)
     values = {"mean": mean, kind or "sd": spread} | ({"n": n[0]} if n else {})
     if not fits(values, mean) or (spread.decimals == 0 and mean.decimals > 0 and not sign):
         return None
@@ -224,7 +228,7 @@ def _by_legend(
             _speaks_of_estimates(frame) or has_constant(frame)
         )
         fitting = [] if of_coefficient else [("mean", frame.legend.brackets)]
-    if not fitting and piece.shape in ("pair±", "pair±(") and frame.legend.spread:
+    if not fitting and piece.shape in ("pair±", "pair±(") and frame.legend.spread not in ("", MARGIN):
         fitting = [("mean", frame.legend.spread)]
     if len(fitting) > 1:
         # A pair under `median (IQR) or mean (SD)` is the latter: the former prints two ends.
@@ -287,6 +291,9 @@ def _by_shape(
     if piece.shape == "fraction%" and not piece.numbers[0].decimals:
         found = matched(piece, ("count", "total", "percent"))
         return Cell(found, row, column, piece, "heading") if found else None
+    share = bare_share(frame, row, column, piece)
+    if share is not None and not _of_two_kinds(frame, row, column):
+        return Cell(share[0], row, column, piece, "heading" if share[1] else "shape")
     if any(_names_others(r) for r in (role, own)):
         return None
     if piece.label in ("sd", "se"):

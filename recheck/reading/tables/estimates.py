@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from recheck.model import LEVELS, Printed
+from recheck.model import EFFECTS_ON_RISK, LEVELS, Printed
 from recheck.reading.tables.cells import COMPARISONS
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.saying import marks_compare
@@ -16,7 +16,7 @@ _KEPT = (*_MAIN, "se", "sd", "ci_low", "ci_high", "p", "stars", "n", "N")
 
 
 def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
-    """The estimate that a unit prints, where an interval, a standard error or a p stands beside it."""
+    """The estimate that a unit prints, where an interval, a standard error or a p stands beside it, or counts beside a ratio."""
     if unit.family != "estimate":
         return
     values = {name: value for name, value in unit.values.items() if name in _KEPT}
@@ -24,12 +24,13 @@ def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
     if main is None or {"b", "beta", "intercept"} & set(unit.values):
         return
     values |= _starred(frame, unit, values)
-    if not {"ci_low", "ci_high", "se", "p"} & set(values):
+    counted = main in EFFECTS_ON_RISK and main != "hr" and _beside_counts(frame, unit)
+    if not counted and not {"ci_low", "ci_high", "se", "p"} & set(values):
         return
     if main == "mean_difference" and "se" in values and _of_the_mean(frame, unit):
         values.pop("se")
     values.pop("sd", None)
-    if not {"ci_low", "ci_high", "se", "p"} & set(values):
+    if not counted and not {"ci_low", "ci_high", "se", "p"} & set(values):
         return
     if "ci_low" in values:
         values |= interval_level(frame, unit.columns, unit.rows)
@@ -37,6 +38,12 @@ def estimates_of(frame: Frame, unit: Unit) -> Iterator[Found]:
         frame, "estimate", values, unit.rows[0], unit.columns, rows=unit.rows, outcome=LEVELS.join(label.name for label in own_names(frame, unit) if label.name),
         group=unit.group, stated=_stated(frame, unit), interval_of=main if "ci_low" in values else None, sure=unit.sure, spans=unit.spans,
     )  # fmt: skip
+
+
+def _beside_counts(frame: Frame, unit: Unit) -> bool:
+    """Whether the row of a ratio prints counts with their share or their total, which it can be held against."""
+    shapes = [piece.shape for column in frame.sheet.columns for piece in frame.pieces(unit.rows[0], column)]
+    return any(shape in ("count%", "fraction", "fraction%") for shape in shapes)
 
 
 def _of_the_mean(frame: Frame, unit: Unit) -> bool:

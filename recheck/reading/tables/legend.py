@@ -14,6 +14,7 @@ from recheck.model import Passage, Printed, Table
 from recheck.reading.groups import announced_spread
 from recheck.reading.numerals import printed
 from recheck.reading.views import TIMEOUT, view_of
+from recheck.reading.widths import MARGIN, tells_margins
 from recheck.reading.wording import stated
 
 
@@ -65,6 +66,8 @@ def legend_of(table: Table) -> Legend:
     if not spread and not brackets:
         brackets = _alone(whole)
         spread = _after_sign(whole)
+    if not spread and tells_margins(whole):
+        spread = MARGIN
     sizes = _sizes(whole)
     return Legend(
         stars=_stars(texts), spread=spread, brackets=brackets, ns=sizes.ns, N=sizes.N, each=sizes.each,

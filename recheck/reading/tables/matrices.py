@@ -24,6 +24,7 @@ from recheck.reading.tables.matrix_layout import (
 from recheck.reading.tables.row_numbers import not_significant
 from recheck.reading.tables.saying import said_of
 from recheck.reading.tables.values import Piece
+from recheck.reading.tables.whole_matrices import matrices_of
 from recheck.reading.views import TIMEOUT
 
 
@@ -32,7 +33,9 @@ def claims_of(frame: Frame, found: Sequence[Found]) -> list[Found]:
     matrix = matrix_of(frame)
     if matrix is None:
         return list(found)
-    made = list(_coefficients(frame, matrix))
+    both = _both_sides(frame, matrix)
+    made = list(_coefficients(frame, matrix, both))
+    made += list(matrices_of(frame, matrix, made, both))
     cells = {(row, column) for row in frame.sheet.rows for column in matrix.columns}
     kept = [_renumbered(_sized(frame, item)) for item in found if not cells & set(item.cells)]
     return [*kept, *made]
@@ -58,8 +61,7 @@ def _renumbered(item: Found) -> Found:
     )
 
 
-def _coefficients(frame: Frame, matrix: Matrix) -> Iterator[Found]:
-    both = _both_sides(frame, matrix)
+def _coefficients(frame: Frame, matrix: Matrix, both: str) -> Iterator[Found]:
     for row in frame.sheet.rows:
         if row_part(frame, row) not in ("r", "") or row in frame.size_rows:
             continue

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from recheck.model import Table
 from recheck.reading.context import Setting
-from recheck.reading.tables import beneath, matrices, regression, row_tests, sources
+from recheck.reading.tables import beneath, matrices, model_fit, regression, row_tests, sources
 from recheck.reading.tables.counts import counts_of, whole_numbers
 from recheck.reading.tables.estimates import estimates_of
 from recheck.reading.tables.folding import folded
@@ -22,6 +22,7 @@ from recheck.reading.tables.units import bands_of, units_of
 
 AFTER: tuple[Callable[[Frame, Sequence[Found]], list[Found]], ...] = (
     sources.claims_of, matrices.claims_of, regression.claims_of, row_tests.claims_of, beneath.claims_of,
+    model_fit.claims_of,
 )  # fmt: skip
 """Readers of tests and coefficients; each gives all claims of the block, those it was given completed, replaced or left out."""
 

@@ -17,7 +17,7 @@ from recheck.reading.tables.saying import marks_compare, said_of
 from recheck.reading.tables.shelf import without
 from recheck.reading.views import TIMEOUT
 
-_FIT = frozenset(("r2", "adjusted_r2", "F", "n", "N", "other", "p", "df", "df1", "df2", "chi2"))
+_FIT = frozenset(("r2", "adjusted_r2", "delta_r2", "F", "n", "N", "other", "p", "df", "df1", "df2", "chi2"))
 
 
 def claims_of(frame: Frame, found: Sequence[Found]) -> list[Found]:

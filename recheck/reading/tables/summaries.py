@@ -8,6 +8,7 @@ from dataclasses import replace
 from recheck.model import LEVELS, N_OF_GROUP, Printed
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
 from recheck.reading.tables.headings import Told
+from recheck.reading.tables.modelled import modelled
 from recheck.reading.tables.roles import size_told
 from recheck.reading.tables.units import Unit
 
@@ -37,6 +38,7 @@ def summaries_of(frame: Frame, unit: Unit) -> Iterator[Found]:
         return
     stated = [word for cell in unit.cells for word in cell.stated]
     stated += [word for word in frame.legend.stated if word in _OF_MEANS]
+    stated += [word for word in modelled(frame.legend.text, _heads(frame, unit)) if word not in stated]
     if not all(cell.spread_told for cell in unit.cells):
         stated.append("spread-unlabelled")
     if "ci_low" in values:
@@ -48,6 +50,12 @@ def summaries_of(frame: Frame, unit: Unit) -> Iterator[Found]:
         stated=stated, notes=notes, sure=unit.sure, spans=unit.spans,
         interval_of=centre if "ci_low" in values else None,
     )  # fmt: skip
+
+
+def _heads(frame: Frame, unit: Unit) -> str:
+    """What stands over the columns of a unit and before its row."""
+    heads = (frame.sheet.column_header(column).text for column in unit.columns)
+    return " ; ".join((frame.sheet.row_header(unit.rows[0], unit.columns[0]).text, *heads))
 
 
 def _size(frame: Frame, unit: Unit, values: dict[str, Printed]) -> tuple[Printed | None, tuple[str, ...]]:
