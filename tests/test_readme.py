@@ -1,6 +1,7 @@
 """The README shows real output: every block that begins with a command is run again."""
 
 import re
+import shlex
 import subprocess
 import sys
 from pathlib import Path
@@ -15,7 +16,7 @@ BLOCKS = re.findall(r"```\n\$ (.+?)\n(.+?)\n```", README.read_text(encoding="utf
 def test_shown_output_is_what_the_command_prints(command, shown):
     told, _, command = command.rpartition(" | ")
     text = told.removeprefix("echo ").strip('"')
-    words = [sys.executable, "-m", *command.split()]
+    words = [sys.executable, "-m", *shlex.split(command)]
     done = subprocess.run(
         words, input=text, capture_output=True, encoding="utf-8", cwd=README.parent, timeout=60,
         env={"COLUMNS": "92", "PYTHONIOENCODING": "utf-8", "NO_COLOR": "1", "PATH": ""},

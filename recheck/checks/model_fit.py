@@ -121,7 +121,8 @@ def _r2_ways(claim: Claim, numbers: Numbers) -> Iterator[Way]:
         yield Way(_adjusted_share, (CALLED_R2,), alone=True)
     if not _of_whole_model(claim, numbers):
         # Beside the t of one coefficient stands the R² of its whole model as a rule.
-        unstated, given = ((), (STEP,)) if "t" in numbers else ((STEP,), ())
+        told = "t" in numbers or claim.says("model-step")
+        unstated, given = ((), (STEP,)) if told else ((STEP,), ())
         yield Way(lambda box: (Interval(_share(box).low, 1.0),), unstated, given, alone=True)
         yield Way(lambda box: (Interval(0.0, _share(box).high),), (GAIN,), alone=True)
 
@@ -156,7 +157,10 @@ def adjusted_r2_from_F(case: Case) -> Iterable[Finding]:
     ways = [Way(_adjusted_share)]
     ways += [Way(_by(formula), (words,), alone=True) for words, formula in OTHER_FORMULAS]
     if not _of_whole_model(claim, numbers):
-        ways.append(Way(lambda box: (Interval(_adjusted_share(box)[0].low, 1.0),), (STEP,), alone=True))
+        unstated, given = ((), (STEP,)) if claim.says("model-step") else ((STEP,), ())
+        ways.append(
+            Way(lambda box: (Interval(_adjusted_share(box)[0].low, 1.0),), unstated, given, alone=True)
+        )
         ways.append(Way(lambda box: (Interval(-math.inf, _share(box).high),), (GAIN,), alone=True))
     yield _judged(case, "adjusted-r2-from-F", "adjusted_r2", numbers, ways, ADJUSTED)
 
@@ -247,6 +251,9 @@ OTHER_FORMULAS: tuple[tuple[str, Callable[[Floats, Floats, Floats], Floats]], ..
     ("R² is adjusted by the formula of Olkin and Pratt", regressions.adjusted_r2_olkin_pratt),
     ("R² is adjusted by Stein's formula for new cases", regressions.adjusted_r2_stein),
 )
+MOST_EARLIER = 20
+"""Predictors of earlier steps that are expected at most beside those of one step; more are an assumption."""
+EARLIER = "df1 counts the predictors of this step alone, the model has those of earlier steps too"
 MORE_PREDICTORS = "the model has more predictors than F tests, or a larger penalty was used"
 OTHER_DF = "the df of F are not those of the residual (clustered standard errors, one predictor of several)"
 
@@ -280,13 +287,31 @@ def adjusted_r2(case: Case) -> Iterable[Finding]:
     tested = _tested(claim)
     if tested is not None and "df1" in tested:
         numbers |= {name: tested[name] for name in ("df1", "df2")}
-        ways = [Way(_usual)]
+        ways = [_of_step()] if _is_of_step(claim, tested) else [Way(_usual)]
         ways += [Way(_beside(formula), (words,), alone=True) for words, formula in OTHER_FORMULAS]
         ways.append(
             Way(lambda box: (Interval(-math.inf, _usual(box)[0].high),), (MORE_PREDICTORS,), alone=True)
         )
         ways.append(Way(below.implied, (OTHER_DF,), alone=True))
     yield _judged(case, "adjusted-r2", "adjusted_r2", numbers, ways, ADJUSTED, doubts=())
+
+
+def _is_of_step(claim: Claim, tested: Numbers) -> bool:
+    """Tell whether F and its df are those of what a step adds: the model has the predictors of earlier steps besides."""
+    if "delta_r2" in claim.values and "r2" in claim.values:
+        return not _fits_whole_model({"r2": claim.values["r2"], **tested})
+    return claim.says("model-step")
+
+
+def _of_step() -> Way:
+    """The usual formula where df1 counts the predictors of one step alone."""
+
+    def implied(box: Box) -> tuple[Interval, ...]:
+        df1 = box["df1"]
+        with_earlier = {**box, "df1": Interval(df1.low, df1.high + MOST_EARLIER)}
+        return _usual(with_earlier)
+
+    return Way(implied, (), (EARLIER,))
 
 
 def _at_most_r2(box: Box) -> tuple[Interval, ...]:

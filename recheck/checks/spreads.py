@@ -70,11 +70,12 @@ def se_from_sd(case: Case) -> Iterable[Finding]:
     together = pooled_beside(case)
     if together is not None and all(_se_fits(c, together[0]) for c in together[1] if exact(c, "se")):
         ways.append(Way(lambda box: (_scaled(together[0], 1 / math.sqrt(n)),), (POOLED,)))
+    would = _n_told(numbers)
     left = max(n / 4 if of_group(claim) else n * FEWEST_LEFT, 2.0)
     ways.append(
         Way(
             lambda box: (Interval(box["sd"].low / math.sqrt(n), box["sd"].high / math.sqrt(left)),),
-            (SOME_MISSING,),
+            (f"{SOME_MISSING} ({would})",) if would else (SOME_MISSING,),
         )
     )
     foreign = model_of(claim, proved=around.proved)
@@ -82,9 +83,20 @@ def se_from_sd(case: Case) -> Iterable[Finding]:
         case,
         Comparison(
             "se-from-sd", "se", numbers, ways, bounds=SPREAD, excuses=(foreign,) if foreign else (),
-            doubts=() if around.proved else (OWN_SCORES.format("the SE"),),
+            doubts=() if around.proved else (OWN_SCORES.format("the SE") + (f"; else {would}" if would else ""),),
         ),
     )  # fmt: skip
+
+
+def _n_told(numbers: Numbers) -> str:
+    """The whole n that would go with SE and SD, "" where there is none."""
+    se, sd = numbers["se"].interval(), numbers["sd"].interval()
+    if se.low <= 0 or sd.low <= 0:
+        return ""
+    least, most = math.ceil((sd.low / se.high) ** 2), math.floor((sd.high / se.low) ** 2)
+    if least > most or most < 2:
+        return ""
+    return f"n would be {least}" if least == most else f"n would be {least} to {most}"
 
 
 def _se_told(claim: Claim) -> tuple[Numbers, Way] | None:

@@ -29,7 +29,9 @@ def test_every_function_is_named_in_a_test():
 
 
 def test_every_function_names_its_source():
-    assert [name for name, function in sorted(functions().items()) if not _has_source(name, function, ())] == []
+    assert [
+        name for name, function in sorted(functions().items()) if not _has_source(name, function, ())
+    ] == []
 
 
 def test_the_names_are_found():
@@ -53,14 +55,18 @@ def _named(path: Path) -> set[str]:
         if isinstance(node, ast.Attribute) and isinstance(node.value, ast.Name) and node.value.id in modules:
             found |= _full(getattr(modules[node.value.id], node.attr, None))
         elif isinstance(node, ast.Constant) and isinstance(node.value, str) and node.value.isidentifier():
-            found |= {name for module in modules.values() for name in _full(getattr(module, node.value, None))}
+            found |= {
+                name for module in modules.values() for name in _full(getattr(module, node.value, None))
+            }
     return found
 
 
 def _imported(tree: ast.AST) -> Iterator[tuple[str, object]]:
     """What a file imports from recompute, modules and functions, by the name it has there."""
     for node in ast.walk(tree):
-        if not isinstance(node, ast.ImportFrom) or not (node.module or "").startswith(recompute.__name__.split(".")[0]):
+        if not isinstance(node, ast.ImportFrom) or not (node.module or "").startswith(
+            recompute.__name__.split(".")[0]
+        ):
             continue
         home = import_module(node.module or "")
         for alias in node.names:
@@ -81,7 +87,9 @@ def _has_source(name: str, function: Callable[..., object], seen: tuple[str, ...
     if name.startswith(MACHINERY) or PLAIN.search(text) or PLAIN.search(module.__doc__ or ""):
         return bool(text)
     others = functions()
-    referred = {word for word in regex.findall(r"`([\w.]+)`", text)} | {function.__name__.removesuffix("_bounds")}
+    referred = {word for word in regex.findall(r"`([\w.]+)`", text)} | {
+        function.__name__.removesuffix("_bounds")
+    }
     return any(
         _has_source(other, others[other], (*seen, name))
         for word in referred

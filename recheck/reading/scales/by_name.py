@@ -59,7 +59,7 @@ def merged(best: Scale, other: Scale) -> Scale:
     one, two = best.hints, other.hints
     hints = replace(
         one, averaged=one.averaged or two.averaged, summed=one.summed or two.summed, multiple=one.multiple or two.multiple, single=one.single or two.single,
-        prorated=one.prorated or two.prorated, uneven=one.uneven or two.uneven, of_items=one.of_items or two.of_items, near=one.near or two.near,
+        prorated=one.prorated or two.prorated, uneven=one.uneven or two.uneven, of_items=one.of_items or two.of_items, near=one.near or two.near, moved=one.moved or two.moved, why=one.why or two.why,
     )  # fmt: skip
     items = best.items or other.items
     if best.items and other.items and best.items.value != other.items.value:

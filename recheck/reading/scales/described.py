@@ -14,7 +14,7 @@ from recheck.reading.matching import Key, terms, words_of
 from recheck.reading.scales.hints import NOTHING, SIGNS, Hints, hints_of
 from recheck.reading.scales.patterns import Span
 from recheck.reading.scales.pieces import Piece, named_number, pieces_of, value_of
-from recheck.reading.scales.whose import canonical, named_before, whose
+from recheck.reading.scales.whose import canonical, measure_told, named_before, whose
 from recheck.reading.tokens import DIGITS, Spans
 from recheck.reading.views import TIMEOUT, View
 
@@ -133,13 +133,30 @@ def sentence_scales(
         if said.before and order:
             names = _inherited(sentences[:order])
         keys = tuple(dict.fromkeys(alias for key, name in names for alias in _aliases(key, name)))
-        hints = hints_of(text) if len(pieces) == 1 else _own_hints(text, piece)
+        hints = _landed(hints_of(text) if len(pieces) == 1 else _own_hints(text, piece), text, piece)
         yield _scale(view, text, piece, start, keys, hints, (number, order))
 
 
 def _own_hints(text: str, piece: Piece) -> Hints:
     """What a sentence with several scales says beside one of them."""
     return hints_of(text[max(0, piece.start - 60) : piece.end + 40])
+
+
+def _landed(hints: Hints, text: str, piece: Piece) -> Hints:
+    """The hints of a scale to which scores were converted: they lie on it, in fractions."""
+    if hints.moved and _onto().search(text[max(0, piece.start - 60) : piece.end], timeout=TIMEOUT):
+        return replace(hints, moved=False, uneven=True)
+    return hints
+
+
+@cache
+def _onto() -> regex.Pattern[str]:
+    """`converted to a scale from`, `rescaled to range from`, `transformed into a 0-100 scale`."""
+    return regex.compile(
+        r"\b(?:converted|rescaled|re-scaled|normali[sz]ed|transformed|standardi[sz]ed)(?: linearly)? (?:to|into|onto|so as to) "
+        r"(?:(?:a|an|the|range|lie|run|go|from|between|scores?|values|with|common|on|new) ){0,5}(?:\d|scale|range|percent)",
+        regex.IGNORECASE,
+    )
 
 
 def _inherited(before: Sequence[str]) -> tuple[tuple[Key, str], ...]:
@@ -203,7 +220,7 @@ def _of_all() -> regex.Pattern[str]:
     )
 
 
-_CORRECT = ("correct answer", "correctly answered", "number of correct", "correct response", "one point for each", "one point per", "1 point for each", "1 point per", "number correct", "points for each correct")  # fmt: skip
+_CORRECT = ("correct answer", "correctly answered", "number of correct", "correct response", "one point for each", "one point per", "worth one point", "worth 1 point", "worth a point", "worth one mark", "one point each", "one mark each", "one mark for each", "one mark per", "1 point for each", "1 point per", "number correct", "points for each correct")  # fmt: skip
 
 
 def _counts_correct(text: str) -> bool:
@@ -263,7 +280,7 @@ def _with_mentions(
 
 def _of_another(scale: Scale, text: str) -> bool:
     """Whether a sentence speaks of the measure of another outcome."""
-    named = [key for key, _ in named_before(text)]
+    named = [key for key, _ in (*named_before(text), *measure_told(text))]
     return (
         bool(named)
         and bool(scale.names)
@@ -295,12 +312,17 @@ def joined(
         averaged=old.averaged or hints.averaged, summed=old.summed or hints.summed, multiple=old.multiple or hints.multiple,
         single=old.single or hints.single, prorated=old.prorated or hints.prorated, uneven=old.uneven or (hints.uneven and behind),
         of_items=old.of_items or of_items, number=old.number, judges=old.judges, near=old.near or hints.near,
+        moved=old.moved or (hints.moved and behind and beside), why=old.why or (hints.why if _averages(hints) else ""),
     )  # fmt: skip
     return replace(
         scale, hints=merged, items=items, stepped=scale.stepped and not merged.uneven,
         of_items=scale.of_items or (hints.multiple and not scale.hints.single and not hints.single and scale.stepped and not scale.hints.summed),
         counts=(*scale.counts, *_counts(hints)),
     )  # fmt: skip
+
+
+def _averages(hints: Hints) -> bool:
+    return hints.averaged or hints.near or hints.of_items or hints.multiple
 
 
 def said_in(text: str) -> Hints:

@@ -158,7 +158,7 @@ def _uneven() -> regex.Pattern[str]:
 SIGNS = (
     "averag", "mean", "percent", "residual", "transform", "daily", "diary", "momentary", "last ", "composite", "aggregat", "collaps", "combined", "index", "indices", "factor score", "z-sc", "standardi", "latent", "rate", "tast", "scor", "evaluat", "judg", "assess", "trial", "block", "replicat", "duplicat",
     "triplicat", "session", "twice", "times", "daily", " per ", "each ", "item", "question", "statement", "cronbach", "α", "reliab", "consisten", "summ", "total", "sum", "single", "half", "halves", "step", "increment", "decimal", "visual", "vas",
-    "slid", "analog", "cent", "convert", "t score", "t-score", "rescal", "re-scal", "normali", "percentile", "stanine", "pomp", "whole", "integer", "prorat", "pro-rat", "missing", "imputation", "substitution", "0.",
+    "slid", "analog", "cent", "convert", "t score", "t-score", "rescal", "re-scal", "normali", "percentile", "stanine", "ipsati", "pomp", "whole", "integer", "prorat", "pro-rat", "missing", "imputation", "substitution", "0.",
 )  # fmt: skip
 """One of them stands in every sentence that says anything of the kind, in lower case."""
 

@@ -210,10 +210,18 @@ def _first_name() -> regex.Pattern[str]:
 
 def _continues(text: str, first: Piece, second: Piece) -> bool:
     """Whether the second expression only says more of the scale of the first."""
-    if (first.low and second.low) or (first.points and second.points):
+    if first.points and second.points:
+        return False
+    if first.low and second.low and not _same_ends(text, first, second):
         return False
     gap = text[first.end : second.start]
     if text[second.start : second.start + 1] in ("(", "["):
         # `from not at all (1) to …`: the name of the first end stands before its number.
         gap = _first_name().sub(" from ", gap, timeout=TIMEOUT)
     return len(gap) <= 90 and _linking().fullmatch(gap, timeout=TIMEOUT) is not None
+
+
+def _same_ends(text: str, first: Piece, second: Piece) -> bool:
+    """Whether two expressions print the same two numbers: `from 1 to 4 (1 = never, 4 = always)`."""
+    both = [[text[slice(*span)] for span in (piece.low, piece.high) if span] for piece in (first, second)]
+    return both[0] == both[1]

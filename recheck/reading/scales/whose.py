@@ -23,7 +23,8 @@ _THINGS = words(
     "adult rater judge assessor they we it he she one each all both this that these those stimulus picture image face video trial word sentence scale score rating "
     "questionnaire measure variable attribute outcome dimension following aspect other same point value category level option format end test anchor aim study "
     "data result group condition experiment likert type first second third last number us them who which what there here researcher expert half time day week "
-    "range ranging month page text table figure section part procedure task session block set list total range minimum maximum mean average median sd sum"
+    "range ranging month page text table figure section part procedure task session block set list total range minimum maximum mean average median sd sum "
+    "single global closed direct two three four five six seven eight nine ten twelve twenty several multiple"
 )
 """What is scored, who scores, and words that name no outcome by themselves."""
 
@@ -41,7 +42,7 @@ _AUX = r"(?:was|were|is|are|has been|have been|had been|being|been)"
 _ADV = r"(?: (?:then|also|each|all|both|again|always|first|subsequently|independently|separately|individually|subjectively|visually|finally|similarly|likewise|once|only|usually|blindly|be))*"
 _DONE = (
     r"(?:rated|scored|measured|assessed|evaluated|judged|recorded|quantified|graded|indicated|reported|expressed|estimated|marked|determined|tested|captured|"
-    r"operationali[sz]ed|gauged|ranked|answered|obtained|collected|made|given|provided|taken|noted|coded|(?:the |an? )?(?:mean|average|sum|composite|total)\b)"
+    r"operationali[sz]ed|gauged|ranked|answered|obtained|collected|made|given|provided|taken|noted|coded|asked|enquired|elicited|surveyed|addressed|examined|(?:the |an? )?(?:mean|average|sum|composite|total)\b)"
 )
 _TO_DO = r"to (?:rate|score|judge|assess|evaluate|indicate|report|measure|grade|express|mark|estimate|state)"
 _DO = (
@@ -122,9 +123,14 @@ def _short() -> regex.Pattern[str]:
     )
 
 
+_SAID_BY_SELF = frozenset(("reported", "report", "rated", "scored", "rating", "assessed", "assessment", "perceived", "score"))
+
+
 def canonical(key: Key) -> Key:
     """A key without the words that every score's name may have: `sourness rating` and `rated sourness` are sourness."""
-    kept = tuple(stem for stem in key if stem not in OF_SCORES)
+    # `self-rated sourness` is sourness, but self-efficacy is not efficacy.
+    own = "self" in key and _SAID_BY_SELF.isdisjoint(key)
+    kept = tuple(stem for stem in key if stem not in OF_SCORES or (own and stem == "self"))
     return kept if kept and not all(stem in LEFT_OUT for stem in kept) else ()
 
 
@@ -135,7 +141,7 @@ def whose(text: str, piece: Piece, start: int = 0) -> Whose:
     bracketed = _named_in_front(text, piece, start)
     if bracketed:
         return Whose(bracketed)
-    names = _verbal(before)
+    names = _verbal(before) or _asked_on(before)
     if not names:
         behind = _asked().search(text, piece.end, min(len(text), piece.end + 160), timeout=TIMEOUT)
         names = _names(behind["name"]) if behind else ()
@@ -143,6 +149,7 @@ def whose(text: str, piece: Piece, start: int = 0) -> Whose:
         ranging := _ranging().search(text[start : max(piece.start, start)] or before, timeout=TIMEOUT)
     ):
         names = _names(ranging["name"])
+    names = names or measure_told(before)
     if names:
         return Whose(tuple(dict.fromkeys((*names, *_instrument(before)))))
     short = _instrument(before)
@@ -161,6 +168,38 @@ def _verbal(text: str) -> tuple[tuple[Key, str], ...]:
             if names := _names(phrase):
                 return names
     return ()
+
+
+@cache
+def _consists() -> regex.Pattern[str]:
+    """`The quiz had twenty questions`, `The knowledge test consisted of ten items`."""
+    return regex.compile(
+        rf"^(?:[^,;.]{{1,40}}, )?(?P<name>{_NP}) (?:had|has|have|consist(?:s|ed)? of|compris(?:es|ed?)|contain(?:s|ed)?|includ(?:es|ed?)|was made up of|involve[ds]?|posed|asked|used) (?:a total of )?"
+        r"(?:\d{1,3}|\p{L}+(?:-\p{L}+)?) (?:[\w-]+ ){0,3}?(?:items|questions|statements|problems|exercises|tasks|points)\b",
+        regex.IGNORECASE,
+    )
+
+
+def measure_told(text: str) -> tuple[tuple[Key, str], ...]:
+    """The measure of which a sentence tells how many questions it has."""
+    match = _consists().search(text, timeout=TIMEOUT)
+    return _names(match["name"]) if match else ()
+
+
+@cache
+def _question_on() -> regex.Pattern[str]:
+    """`one question on boredom,`, `a single item about trust in the dough from`, `a rating of crumb`."""
+    return regex.compile(
+        r"\b(?:item|question|statement|single-item measure|one-item measure) (?:on|about|of|for|regarding|concerning|assessing|measuring|addressing|tapping|capturing|asking about|that asked about) "
+        rf"(?P<name>{_NP})(?=,? {_ON}\b| ?[(\[]|,|$|,? (?:was|were|is|answered|rated|scored|that|which)\b)",
+        regex.IGNORECASE,
+    )
+
+
+def _asked_on(text: str) -> tuple[tuple[Key, str], ...]:
+    """What the last question that a text names is about."""
+    match = next(reversed(list(_question_on().finditer(text, timeout=TIMEOUT))), None)
+    return _names(match["name"]) if match else ()
 
 
 def named_before(text: str) -> tuple[tuple[Key, str], ...]:
@@ -286,10 +325,20 @@ def _key_of(name: str) -> Key:
     )
     if not good or (key[0] in _THINGS and len(key) == 1) or all(stem in _THINGS for stem in key):
         return ()
+    told = _disposed().sub(r"\1", name, timeout=TIMEOUT)
     return (
         ()
-        if _DENIED.intersection(name.lower().split()) or _GROUPS.intersection(name.lower().split())
+        if _DENIED.intersection(told.lower().split()) or _GROUPS.intersection(name.lower().split())
         else key
+    )
+
+
+@cache
+def _disposed() -> regex.Pattern[str]:
+    """Names that hold a verb: `willingness to recommend`, `readiness to bake`."""
+    return regex.compile(
+        r"\b((?:un)?willingness|intentions?|intent|readiness|ability|inability|tendency|motivation|desire|likelihood|propensity|wish|urge|reluctance|confidence|commitment|sensitivity|resistance|adherence|attitudes?|openness|attachment|exposure|access) to\b",
+        regex.IGNORECASE,
     )
 
 
@@ -297,5 +346,5 @@ _GROUPS = words(
     "group groups condition conditions arm arms cohort cohorts sample samples participants patients controls apprentices bakers"
 )
 _DENIED = words(
-    "was were is are who which that how they we i you whether if because did had has have be been not n't than when what from using use used to by"
+    "was were is are who which that how they we i you whether if because answered responded did had has have be been not n't than when what from using use used to by"
 )
