@@ -142,6 +142,23 @@ def power_of_t(d: float, n: int) -> float:
     return float(upper + lower)
 
 
+def n_of_t(d: float, power: float) -> int:
+    """The least n in each of two groups with that power of a two-sided t test at .05."""
+    return next(n for n in range(2, 10**6) if power_of_t(d, n) >= power)
+
+
+def standard_error(data: Data) -> Numbers:
+    """Mean, SD, n and the standard error of the mean."""
+    return {**summary(data), "se": data.std(ddof=1) / np.sqrt(len(data))}
+
+
+def odds_ratio(table: Counts) -> Numbers:
+    """The odds ratio of the first group against the second with its 95% CI (log scale, Woolf 1955)."""
+    (a, b), (c, d) = table.tolist()
+    ratio, spread = a * d / (b * c), stats.norm.ppf(0.975) * np.sqrt(1 / a + 1 / b + 1 / c + 1 / d)
+    return {"or": ratio, "lo": ratio * np.exp(-spread), "hi": ratio * np.exp(spread)}
+
+
 def risk_ratio(table: Counts) -> Numbers:
     """The risk ratio of the first group against the second with its 95% CI and Wald p (log scale, Katz 1978)."""
     (a, b), (c, d) = table.tolist()

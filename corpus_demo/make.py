@@ -42,7 +42,7 @@ class Style:
 USUAL = {
     "m": 1, "sd": 1, "difference": 1, "lo": 1, "hi": 1, "t": 2, "F": 2, "chi2": 2, "r": 2, "d": 2,
     "v": 2, "eta2": 2, "partial_eta2": 2, "epsilon": 2, "percent": 1, "power": 2,
-    "liking": 2, "sourness": 2, "rr": 2, "b": 2, "se": 2, "r2": 2, "ss": 2, "ms": 2, "ss_error": 2, "ms_error": 2,
+    "liking": 2, "sourness": 2, "rr": 2, "or": 2, "b": 2, "se": 2, "r2": 2, "ss": 2, "ms": 2, "ss_error": 2, "ms_error": 2,
 }  # fmt: skip
 BOUNDED = {"p", "r", "v", "eta2", "partial_eta2", "epsilon", "power", "liking", "sourness", "r2"}
 WASTE = {("waste", name): 2 for name in ("difference", "lo", "hi")}
@@ -58,6 +58,7 @@ STYLES = {
     "oven_gloves.xml": Style(USUAL | {"percent": 0}, zero=True, special=RISKS),
     "recipe_recall.docx": Style(USUAL | {"m": 2, "sd": 2}),
     "crumb_structure.html": Style(USUAL | {"m": 2, "sd": 2}, zero=True),
+    "evening_class.html": Style(USUAL | {"m": 2, "sd": 2, "lo": 2, "hi": 2, "percent": 0}),
 }  # fmt: skip
 HEADS = {
     "steam_oven.pdf": "Proceedings of the Quernford Symposium on Hearth Baking, Volume 11",
@@ -104,7 +105,7 @@ def _slot(result: str, name: str, value: float, style: Style, is_correlation: bo
     )
     if base in ("p", "pF"):
         return printed_p(value, style)
-    if base in ("n", "c") or (base.startswith("df") and float(value).is_integer()):
+    if base in ("n", "c", "N") or (base.startswith("df") and float(value).is_integer()):
         return str(int(value))
     if base.startswith("df"):
         return printed(value, 1)

@@ -29,6 +29,7 @@ class Plant:
 STEAM, COACHING = "steam_oven.pdf", "bench_coaching.pdf"
 STARTER, PANEL = "starter_hydration.md", "tasting_panel.txt"
 GLOVES, RECALL, CRUMB = "oven_gloves.xml", "recipe_recall.docx", "crumb_structure.html"
+CLASS = "evening_class.html"
 PLANTS = (
     Plant(
         STEAM, "interaction", "p", "= .015",
@@ -119,5 +120,35 @@ PLANTS = (
         CRUMB, "salt", "se", "1.40",
         "{salt[b]}|{salt[se]}",
         "t", "inconsistent", False, "t of a coefficient that is not b/SE: the digits of the SE are swapped",
+    ),
+    Plant(
+        CLASS, "power", "n", "24",
+        "power = .80) gave {power[n]} apprentices per group",
+        "n", "inconsistent", False, "size of the groups that the planned power needs: a digit is wrong",
+    ),
+    Plant(
+        CLASS, "trust", "m1", "4.86",
+        "*M* = {trust[m1]}, *SD* = {trust[sd1]}",
+        "mean", "impossible", False, "mean that no 34 answers to one question from 1 to 7 have: a digit is wrong",
+    ),
+    Plant(
+        CLASS, "minutes", "se", "1.92",
+        "*SE* = {minutes[se]}",
+        "se", "conditional", False, "SE that is not SD/√n: digits swapped",
+    ),
+    Plant(
+        CLASS, "passed", "or", "5.63",
+        "odds ratio {passed[or]}, 95% CI",
+        "or", "conditional", False, "odds ratio that the counts do not give: digits swapped",
+    ),
+    Plant(
+        CLASS, "model", "r2", ".15",
+        "*R*^2^ = {model[r2]}, *F*",
+        "r2", "conditional", False, "R² that F and its df do not give: digits swapped",
+    ),
+    Plant(
+        CLASS, "loaves_hours", "r", "−.75",
+        "{score_loaves[r]}|{loaves_hours[r]}",
+        "r(2,1)", "conditional", False, "correlation that cannot stand beside the others of its table: a sign is added",
     ),
 )  # fmt: skip

@@ -14,6 +14,8 @@ from analyses import (
     collapsed,
     correlation,
     cronbach_alpha,
+    n_of_t,
+    odds_ratio,
     omnibus_contrast,
     one_way,
     paired,
@@ -21,6 +23,7 @@ from analyses import (
     regression,
     repeated,
     risk_ratio,
+    standard_error,
     summary,
     two_groups,
     two_way,
@@ -180,6 +183,31 @@ def crumb_structure(seed: int = 63) -> Results:
     }  # fmt: skip
 
 
+def evening_class(seed: int = 74) -> Results:
+    """Apprentices in an evening class or left to a book: ratings, a quiz, a certificate, and a regression."""
+    draw = default_rng(seed)
+    each = 34
+    ratings = [_on_scale(draw.normal(mean, 1.1, each)) for mean in (5.3, 4.4)]
+    trust = [_on_scale(draw.normal(mean, 1.2, each)) for mean in (4.9, 4.8)]
+    points = [_points(draw, mean, each) for mean in (14.6, 11.9)]
+    passed = _collapses(draw, (each, each), (0.76, 0.44))
+    shared = draw.normal(0, 1, 2 * each)
+    hours = np.round(5 + 1.4 * shared + draw.normal(0, 1.0, 2 * each), 1)
+    loaves = np.round(31 + 7 * shared + draw.normal(0, 5, 2 * each))
+    score = np.round(60 + 6 * shared + draw.normal(0, 5, 2 * each))
+    age = np.round(23 - 1.2 * shared + draw.normal(0, 3.0, 2 * each), 1)
+    measures = {"score": score, "hours": hours, "loaves": loaves, "age": age}
+    pairs = {f"{a}_{b}": correlation(measures[a], measures[b]) for a in measures for b in measures if a > b}
+    model = regression(score, [hours, loaves, age])
+    return {
+        "rating": two_groups(*ratings), "trust": two_groups(*trust), "quiz": two_groups(*points),
+        "minutes": standard_error(_minutes(draw, 41.0, 9.0, 2 * each)),
+        "passed": {**collapsed(passed), **odds_ratio(passed)}, **pairs, "model": model[0],
+        "power": {"d": 0.7, "n": n_of_t(0.7, 0.8), "N": 2 * n_of_t(0.7, 0.8)},
+        **{name: summary(data) for name, data in measures.items()},
+    }  # fmt: skip
+
+
 TRIALS = {
     "steam_oven.pdf": steam_oven,
     "bench_coaching.pdf": bench_coaching,
@@ -188,6 +216,7 @@ TRIALS = {
     "oven_gloves.xml": oven_gloves,
     "recipe_recall.docx": recipe_recall,
     "crumb_structure.html": crumb_structure,
+    "evening_class.html": evening_class,
 }
 
 
@@ -225,6 +254,11 @@ def _scale_means(draw: Generator, mean: float, people: int) -> Data:
 def _on_scale(scores: Data) -> Data:
     """Whole ratings from 1 to 7."""
     return np.asarray(np.clip(np.round(scores), 1, 7))
+
+
+def _points(draw: Generator, mean: float, people: int) -> Data:
+    """Points of a quiz of twenty questions."""
+    return draw.binomial(20, np.clip(draw.normal(mean / 20, 0.1, people), 0, 1)).astype(float)
 
 
 def _related(draw: Generator, n: int, rho: float) -> tuple[Data, Data]:

@@ -57,7 +57,8 @@ def _near(place: Place, plant: dict[str, Any]) -> bool:
     if "line" in plant:
         return abs((place.line or 0) - plant["line"]) <= 1
     if "table" in plant:
-        return place.table == plant["table"] and plant["row"] in (place.row or "")
+        whole = place.row is None
+        return place.table == plant["table"] and (whole or plant["row"] in place.row)
     return place.section == plant["section"] and place.table is None
 
 
