@@ -1,5 +1,6 @@
-"""The README shows real output: every block that begins with a command is run again."""
+"""The README shows real output: every block that begins with a command, and every example of Python, is run again."""
 
+import doctest
 import re
 import shlex
 import subprocess
@@ -26,3 +27,9 @@ def test_shown_output_is_what_the_command_prints(command, shown):
 
 def test_there_is_output_to_hold_it_to():
     assert len(BLOCKS) >= 2
+
+
+def test_shown_values_are_what_python_gives():
+    failed, tried = doctest.testfile(str(README), module_relative=False, encoding="utf-8")
+    assert tried >= 10
+    assert not failed

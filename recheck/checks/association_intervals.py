@@ -24,7 +24,7 @@ from recheck.checks.effect_ends import (
 )
 from recheck.checks.intervals import OTHER_METHOD, ends, level_of
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed
+from recheck.model import N_OF_GROUP, Claim, Finding, Interval, Printed
 from recheck.recompute.tails import t_quantile, z_quantile
 from recheck.reconcile.readings import Box, Way
 
@@ -35,12 +35,15 @@ from recheck.reconcile.readings import Box, Way
     kinds=("correlation",),
     quantity="ci_low",
     needs=("r", "ci_low", "ci_high"),
-    beside="df or n",
+    beside="df, n or N",
     formula="tanh(atanh r ∓ z/√(n − 3)), n = df + 2",
     source="Fisher (1921) Metron 1:3-32; for ranks Bonett & Wright (2000) Psychometrika 65:23-28",
     limits="Bootstrap, partial and disattenuated correlations are not rebuilt. Intervals by other formulas that come near are conditional.",
     agrees=("Height and crumb were related, r(55) = .42, p = .001, 95% CI [.18, .61].",),
-    conditional=("Height and crumb were related, r(55) = .42, p = .001, 95% CI [.20, .64].",),
+    conditional=(
+        "Height and crumb were related, r(55) = .42, p = .001, 95% CI [.20, .64].",
+        "Height and crumb were related, r = .42, 95% CI [.38, .46], N = 57.",
+    ),
     inconsistent=("Height and crumb were related, r(55) = .42, p = .001, 95% CI [.41, .43].",),
 )
 def ci_of_r(case: Case) -> Iterable[Finding]:
@@ -53,10 +56,11 @@ def ci_of_r(case: Case) -> Iterable[Finding]:
         return
     if abs(r.number) >= 1 or r.relation != "=" or not low.interval().low <= r.number <= high.interval().high:
         return
-    inputs = tuple(n for n in ("df", "n") if n in claim.values)
+    size = next(name for name in SIZES_OF_R if name in claim.values)
+    missing = (NONE_MISSING,) if size == "N" or N_OF_GROUP in claim.notes else ()
     yield worse(
-        case, "ci-of-r", "r", inputs, lambda end: _r_ways(claim, sizes, end), bounds=Interval(-1.0, 1.0),
-        doubts=_beside_r(claim, low), excuses=excuses(claim, ("partial", "disattenuated", "mixed-model", "imputed", "multi-regression")),
+        case, "ci-of-r", "r", (size,), lambda end: _r_ways(claim, sizes, end), bounds=Interval(-1.0, 1.0),
+        doubts=(*_beside_r(claim, low), *missing), excuses=excuses(claim, ("partial", "disattenuated", "mixed-model", "imputed", "multi-regression")),
     )  # fmt: skip
 
 
@@ -65,14 +69,18 @@ def _beside_r(claim: Claim, low: Printed) -> tuple[str, ...]:
     return (NOT_BESIDE.format(name="r"),) if claim.place.table or low.text not in claim.place.quote else ()
 
 
+SIZES_OF_R = ("n", "df", "N")
+"""What tells the n behind r, the surest first."""
+NONE_MISSING = "no case is missing for these two variables (the number of cases is that of all)"
+
+
 def _sizes_of_r(claim: Claim) -> list[tuple[float, tuple[str, ...]]]:
     """The n behind r, with what is assumed of it."""
-    if "n" in claim.values:
-        return [(claim.values["n"].number, ())] if claim.values["n"].number > 4 else []
-    if "df" in claim.values and claim.values["df"].number > 4:
-        df = claim.values["df"].number
-        return [(df + 2, ()), (df, ("what is printed as df is n",))]
-    return []
+    size = next((name for name in SIZES_OF_R if name in claim.values), None)
+    number = claim.values[size].number if size else 0.0
+    if number <= 4:
+        return []
+    return [(number + 2, ()), (number, ("what is printed as df is n",))] if size == "df" else [(number, ())]
 
 
 def _r_ways(claim: Claim, sizes: list[tuple[float, tuple[str, ...]]], end: str) -> Iterator[Way]:

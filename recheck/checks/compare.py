@@ -9,7 +9,19 @@ from hashlib import sha256
 
 from recheck.checks.registry import Case
 from recheck.checks.wording import question_for, stands_for, tell
-from recheck.model import Claim, Confidence, Finding, Implied, Interval, Printed, Remedy, Verdict, shown
+from recheck.model import (
+    EXACT_VALUE,
+    OF_DIFFERENCES,
+    Claim,
+    Confidence,
+    Finding,
+    Implied,
+    Interval,
+    Printed,
+    Remedy,
+    Verdict,
+    shown,
+)
 from recheck.model.figures import interval_text, printed_text
 from recheck.reconcile.readings import Attempt, Numbers, Way, attempts, mender
 from recheck.reconcile.slips import slip_remedies
@@ -156,12 +168,19 @@ def _within(attempt: Attempt, bounds: Interval) -> Attempt:
     return replace(attempt, printed=attempt.printed.within(bounds.low, bounds.high), implied=implied)
 
 
+_NO_DOUBTS = (OF_DIFFERENCES, EXACT_VALUE)
+"""Notes that say what was read, not why it may be wrong."""
+
+
 def reading_doubts(claims: Sequence[Claim]) -> tuple[str, ...]:
     """Say of each claim that was read with doubt that it was read rightly, and why it may not have been."""
     doubts = []
     for claim in claims:
         if claim.confidence != "high":
-            why = "; ".join(claim.notes) or "a number was read with doubt"
+            why = (
+                "; ".join(note for note in claim.notes if note not in _NO_DOUBTS)
+                or "a number was read with doubt"
+            )
             doubts.append(f"“{claim.place.quote}” was read rightly ({why})")
     return tuple(dict.fromkeys(doubts))
 

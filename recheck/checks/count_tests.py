@@ -19,7 +19,8 @@ from recheck.checks.tabulated import Layout, Tables, laid_out, tables_of
 from recheck.checks.tails import other_chi2
 from recheck.model import STATED, Claim, Finding, Interval
 from recheck.recompute import contingency
-from recheck.recompute.exact_tests import fisher_p, freeman_halton_p
+from recheck.recompute.arrays import Floats
+from recheck.recompute.exact_tests import fisher_one_sided_p, fisher_p, freeman_halton_p
 from recheck.recompute.tails import chi2_tail
 from recheck.reconcile.readings import Box, Way, box_of
 
@@ -28,6 +29,7 @@ N_MINUS_ONE = "χ² has N − 1 for N"
 RATIO = "χ² is that of the likelihood ratio"
 PEARSON = "χ² is Pearson's"
 FISHER = "p is that of Fisher's exact test"
+BOTH_SIDES = "p is two-tailed"
 ALL_CASES = "all cases of the groups entered the test"
 NOT_PAIRED = "the groups are independent, not the same units counted twice"
 STATISTICS: dict[str, tuple[Callable[[Tables], Tables], str]] = {
@@ -226,8 +228,19 @@ def p_from_counts(case: Case) -> Iterable[Finding]:
     """Compare a p that stands alone with those of the usual tests of the table of counts."""
     claim, name = case.claim, "p-from-counts"
     of_ratio = bool(claim.values.keys() & {"or", "rr", "rd"})
-    told_by_interval = of_ratio and "ci_low" in claim.values
-    if told_by_interval or claim.values.keys() & {"chi2", "z", "t", "F", "u", "w", "hr", "b", "r"}:
+    beside_interval = of_ratio and "ci_low" in claim.values
+    named = claim.kind == "chi2-test" or claim.says("fisher-exact", "yates", "uncorrected-chi2")
+    if (beside_interval and not named) or claim.values.keys() & {
+        "chi2",
+        "z",
+        "t",
+        "F",
+        "u",
+        "w",
+        "hr",
+        "b",
+        "r",
+    }:
         return
     layout = _layout(case)
     if layout is None:
@@ -237,11 +250,15 @@ def p_from_counts(case: Case) -> Iterable[Finding]:
         yield unchecked(case, name, "p", layout, claims)
         return
     numbers = {"p": claim.values["p"], **layout.numbers}
-    named = claim.kind == "chi2-test" or claim.says("fisher-exact", "yates", "uncorrected-chi2")
-    ways = list(_p_ways(claim, layout))
+    one = list(_one_sided(claim, layout))
+    both = [_both_sided(claim, way) for way in _p_ways(claim, layout)]
+    # Beside Fisher's test one side is likelier than another test.
+    ways = [*one, *both] if claim.says("one-tailed", "fisher-exact") else [*both, *one]
     excuses, doubts = _foreign(claim) + excuses_of(case) * of_ratio, list(_doubts(case, layout))
     if not named:
         doubts.append("p is that of a test of independence (no test is named)")
+    elif beside_interval:
+        doubts.append("p is that of the test named, not of the ratio's interval")
     ordered = layout.shape[0] > 2 and not named
     if ordered or ((not named or not layout.complete) and loosely(claim.values["p"], numbers, ways)):
         why = (
@@ -258,7 +275,7 @@ def _p_ways(claim: Claim, layout: Layout) -> Iterator[Way]:
     """
     df = (layout.shape[0] - 1) * (layout.shape[1] - 1)
     fisher = claim.says("fisher-exact")
-    bare = claim.kind != "chi2-test"
+    bare = claim.kind != "chi2-test" and not (fisher and not claim.place.table)
     for words in _formulas(claim, layout):
         plain = (words in (PEARSON, YATES)) if bare else (_is_stated(claim, words) and not fisher)
         chi2 = _values(layout, STATISTICS[words][0])
@@ -277,11 +294,27 @@ def _p_ways(claim: Claim, layout: Layout) -> Iterator[Way]:
         yield Way(lambda _: (larger,), (), (FISHER,))
     stated = df > 1 and fisher and larger is None
     yield Way(_tail_of(others, df), () if stated else (loose,), (FISHER,) if stated else ())
-    if df == 1 and not claim.suggests("two-tailed"):
-        yield Way(
-            lambda box: tuple(Interval(i.low / 2, i.high / 2) for i in _tail_of(pearson, 1)(box)),
-            (ONE_TAILED,),
-        )
+
+
+def _one_sided(claim: Claim, layout: Layout) -> Iterator[Way]:
+    """Half the tail of χ² with 1 df, and Fisher's p of one side."""
+    said = claim.says("one-tailed")
+    if (layout.shape[0] - 1) * (layout.shape[1] - 1) != 1 or (claim.suggests("two-tailed") and not said):
+        return
+    unstated, given = ((), (ONE_TAILED,)) if said else ((ONE_TAILED,), ())
+    fisher = claim.says("fisher-exact")
+    if layout.shape == (2, 2) and (fisher or said):
+        yield Way(lambda box: _fisher(box, layout, fisher_one_sided_p), unstated, (*given, FISHER))
+    pearson = _tail_of(_values(layout, contingency.pearson_chi2), 1)
+    other = (PEARSON,) if fisher and not claim.place.table else ()
+    yield Way(
+        lambda box: tuple(Interval(i.low / 2, i.high / 2) for i in pearson(box)), (*unstated, *other), given
+    )
+
+
+def _both_sided(claim: Claim, way: Way) -> Way:
+    """A way to a two-sided p, as an assumption where the p is called one-sided."""
+    return replace(way, unstated=(*way.unstated, BOTH_SIDES)) if claim.says("one-tailed") else way
 
 
 def _tail_of(chi2: Callable[[Box], tuple[Interval, ...]], df: int) -> Callable[[Box], tuple[Interval, ...]]:
@@ -295,11 +328,11 @@ MOST_EXACT = 100
 """Tables behind percentages up to which Fisher's p of each is worked out."""
 
 
-def _fisher(box: Box, layout: Layout) -> tuple[Interval, ...]:
+def _fisher(box: Box, layout: Layout, p_of: Callable[[Tables], Floats] = fisher_p) -> tuple[Interval, ...]:
     tables = tables_of(box, layout)
     if tables is None or len(tables) > MOST_EXACT:
         return ()
-    found = fisher_p(tables)
+    found = p_of(tables)
     return (Interval(float(found.min()), float(found.max())),)
 
 

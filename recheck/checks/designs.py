@@ -27,6 +27,8 @@ POOLED, WELCH, PAIRED = (
     "the same units measured twice",
 )
 
+TWO_GROUPS = "the two groups are different units, not the same ones measured twice"
+
 
 @dataclass(frozen=True, slots=True)
 class Groups:

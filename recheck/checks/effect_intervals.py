@@ -9,23 +9,24 @@ from dataclasses import dataclass
 import numpy as np
 
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import whole
+from recheck.checks.designs import TWO_GROUPS, whole
 from recheck.checks.effect_ends import UNSTATED_KIND, beside, worst
 from recheck.checks.effect_interval_methods import Method, Setting, others, swapped, usual
 from recheck.checks.effects import NAMES, OTHER_SD, correction
-from recheck.checks.groups import linked_groups, unsigned
+from recheck.checks.groups import link_doubts, linked_groups, unsigned
 from recheck.checks.interval_methods import USUAL_LEVEL
 from recheck.checks.intervals import OTHER_METHOD, ends, level_of
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
 from recheck.model import Claim, Finding, Interval, Printed, shown
 from recheck.recompute.intervals import t_from_ci_bounds
-from recheck.reconcile.readings import Box, Way
+from recheck.reconcile.readings import Box, Numbers, Way
 
 INFINITY = math.inf
 OTHER_FORMULA = "the interval is by another published formula (of the variance; t in place of z; the interval of the difference over the SD)"
 OTHER_CORRECTION = "the interval is that of {other}, not of {name}"
 OF_DIFFERENCE = "the interval may be that of the mean difference, which t fits as well"
+OF_A_MEAN = "the interval may be that of a mean, told beside the effect"
 SAME_SD = "the interval and the effect rest on the same SD (the variances are unequal, or the test is one for unequal ones)"
 
 
@@ -47,10 +48,10 @@ def slack_of(end: str, d: float, k: float, setting: Setting) -> tuple[float, flo
 @check(
     "ci-of-d",
     title="confidence interval of d or g against the effect, t and df",
-    kinds=("t-test", "F-test"),
+    kinds=("t-test", "F-test", "estimate", "comparison"),
     quantity="ci_low",
     needs=("ci_low", "ci_high"),
-    beside="d, g, Δ, d_z or d_av; t and df, or F(1, df)",
+    beside="d, g, Δ, d_z or d_av; t and df, or F(1, df), or two linked groups with n",
     formula="ends k δ with P(T ≤ d/k | df, δ) = (1 ± level)/2, k = √(1/n1 + 1/n2), 1/√n or d/t; or d ∓ z √V",
     source="Steiger & Fouladi (1997) in What If There Were No Significance Tests? ch. 9; Hedges & Olkin (1985) Statistical Methods for Meta-Analysis, ch. 5",
     limits="Noncentral and normal intervals agree; other published formulas and bootstraps that come near are conditional.",
@@ -59,6 +60,7 @@ def slack_of(end: str, d: float, k: float, setting: Setting) -> tuple[float, flo
     ),
     conditional=(
         "The apprentices improved, paired t(23) = 2.94, p = .007, dz = 0.60, 95% CI [0.11, 1.01].",
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), d = 1.08, 95% CI [1.02, 1.14].",
     ),
     inconsistent=(
         "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, p = .003, d = 1.08, 95% CI [1.02, 1.14].",
@@ -67,9 +69,10 @@ def slack_of(end: str, d: float, k: float, setting: Setting) -> tuple[float, flo
 def ci_of_d(case: Case) -> Iterable[Finding]:
     """Compare both ends with the effect; the end that fits worse is told."""
     claim, name = case.claim, case.claim.interval_of
-    statistic = "t" if "t" in claim.values else "F" if _of_two_groups(claim) else None
-    if name not in NAMES or name not in claim.values or statistic is None:
+    statistic = "t" if "t" in claim.values else "F" if _of_two_groups(claim) else ""
+    if name not in NAMES or name not in claim.values:
         return
+    df = claim.values["df2" if statistic == "F" else "df"].number if statistic else _df_of_groups(case, name)
     low, high = ends(claim)
     d = claim.values[name]
     if (
@@ -77,7 +80,6 @@ def ci_of_d(case: Case) -> Iterable[Finding]:
         or not low.interval().low <= d.number <= high.interval().high
     ):
         return
-    df = claim.values["df2" if statistic == "F" else "df"].number
     if df < 2 or d.relation not in ("=", "≈"):
         return
     setting = _setting(case, name, df)
@@ -86,11 +88,19 @@ def ci_of_d(case: Case) -> Iterable[Finding]:
             case, "ci-of-d", "ci_low", f"{shown(name)} may be 0, and the group sizes are not printed"
         )
         return
-    numbers = {name: d, statistic: unsigned(claim.values[statistic])}
-    doubts = [*beside(claim, name, low)]
-    if claim.says("welch") or df != round(df) or _spreads_apart(case):
+    if statistic:
+        numbers = {name: d, statistic: unsigned(claim.values[statistic])}
+    else:
+        numbers = {name: d, **{f"n{i}": group.values["n"] for i, group in enumerate(case.groups, 1)}}
+    doubts = [*beside(claim, name, low), *(() if statistic else (*link_doubts(case), *_maybe_pairs(case)))]
+    if (
+        claim.says("welch")
+        or df != round(df)
+        or _spreads_apart(case)
+        or _another_sd(claim, numbers, statistic, setting)
+    ):
         doubts.append(SAME_SD)
-    excuses = _excuses(case, numbers[statistic], low, high, df)
+    excuses = _excuses(case, numbers.get(statistic), low, high, df)
     found = []
     for end, printed in (("ci_low", low), ("ci_high", high)):
         ways = tuple(_ways(claim, name, statistic, setting, end))
@@ -106,7 +116,25 @@ def _spreads_apart(case: Case) -> bool:
     spreads = [
         abs(group.values[n].number) for group in case.groups for n in ("sd", "se") if n in group.values
     ]
-    return len(spreads) == 2 and max(spreads) > 1.8 * min(spreads)
+    return len(spreads) == 2 and max(spreads) > _APART * min(spreads)
+
+
+def _another_sd(claim: Claim, numbers: Numbers, statistic: str, setting: Setting) -> bool:
+    """Tell whether d, beside t, shows that it may be divided by an SD quite unlike the pooled one.
+
+    With equal groups d is 2 t / √N; sizes that are not printed may part the two as well.
+    """
+    if not statistic or not setting.total > 2 or claim.says("paired", "one-sample"):
+        return False
+    name = next(iter(numbers))
+    t = numbers[statistic].number if statistic == "t" else math.sqrt(max(numbers[statistic].number, 0.0))
+    factor = setting.factor or 2 / math.sqrt(setting.total)
+    ratio = abs(numbers[name].number) / (factor * t) if t > 0 else 1.0
+    return name in ("d", "g", "delta") and not 1 / _APART < ratio < _APART
+
+
+_APART = 1.8
+"""How many times one SD is the other where a bootstrap, or the choice of the SD below d, gives quite another interval."""
 
 
 def _of_two_groups(claim: Claim) -> bool:
@@ -128,10 +156,30 @@ def _setting(case: Case, name: str, df: float) -> Setting:
     return Setting(df, df + 2, None, (df / 2,), correction("exact", df), corrected)
 
 
-def _excuses(case: Case, statistic: Printed, low: Printed, high: Printed, df: float) -> tuple[str, ...]:
+def _df_of_groups(case: Case, name: str) -> float:
+    """n1 + n2 − 2 of two linked groups behind a d or g that is told without a test; 0 where there are none."""
+    sizes = [whole(group.values.get("n")) or 0 for group in case.groups] if linked_groups(case) else []
+    usable = len(sizes) == 2 and min(sizes) > 1 and name in ("d", "g")
+    return sum(sizes) - 2.0 if usable and not case.claim.says("paired", "repeated", "one-sample") else 0.0
+
+
+def _maybe_pairs(case: Case) -> tuple[str, ...]:
+    """A doubt where two groups of one size, told without a test, may be the same units measured twice."""
+    sizes = {group.values["n"].value for group in case.groups}
+    told = case.claim.says("independent", "between-groups", "pooled", "welch")
+    return () if told or len(sizes) > 1 else (TWO_GROUPS,)
+
+
+def _excuses(
+    case: Case, statistic: Printed | None, low: Printed, high: Printed, df: float
+) -> tuple[str, ...]:
     claim = case.claim
     said = [words for word, words in UNSTATED_KIND.items() if claim.suggests(word)]
     foreign = foreign_model((claim, *case.groups), fitted=bool(case.groups))
+    if _of_raw_scores(case, low, high):
+        said.append(OF_A_MEAN)
+    if statistic is None:
+        return tuple(said[:1] or ([foreign] if foreign else []))
     t = statistic.interval().absolute()
     if "t" not in claim.values:
         t = Interval(math.sqrt(t.low), math.sqrt(t.high))
@@ -140,6 +188,20 @@ def _excuses(case: Case, statistic: Printed, low: Printed, high: Printed, df: fl
     ):
         said.append(OF_DIFFERENCE)
     return tuple(said[:1] or ([foreign] if foreign else []))
+
+
+def _of_raw_scores(case: Case, low: Printed, high: Printed) -> bool:
+    """Tell whether an interval holds a mean of its groups, or is far too wide for a standardized difference."""
+    interval = Interval(low.interval().low, high.interval().high)
+    means = [group.values["mean"].interval() for group in case.groups if "mean" in group.values]
+    effect = abs(case.claim.values[case.claim.interval_of or ""].number)
+    return interval.high - interval.low > _WIDEST * (1 + effect) or any(
+        interval.meets(mean) for mean in means
+    )
+
+
+_WIDEST = 15
+"""Intervals of d from two groups of two are at most so wide, in units of 1 + |d|."""
 
 
 def _fits_difference(t: Interval, low: Interval, high: Interval, level: float, df: float) -> bool:
@@ -170,7 +232,7 @@ def _ways(claim: Claim, name: str, statistic: str, setting: Setting, end: str) -
     given = () if printed else (USUAL_LEVEL,)
     other_name = OTHER_CORRECTION.format(name=shown(name), other="d" if setting.corrected else "g")
     factors: list[tuple[float | None, tuple[str, ...]]] = [(setting.factor, ())]
-    if setting.factor and name in ("d", "g"):
+    if setting.factor and statistic and name in ("d", "g"):
         factors.append((None, (OTHER_SD,)))
     for factor, words in factors:
         base = _Base(name, statistic, factor, setting.correction if setting.corrected else 1.0, end)

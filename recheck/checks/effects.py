@@ -118,15 +118,18 @@ def _paired_way(groups: Groups, name: str, n: float, *, stated: bool) -> Way:
 @check(
     "d-from-groups",
     title="d or g against the means, SDs and ns of its two groups",
-    kinds=("t-test", "F-test"),
+    kinds=("t-test", "F-test", "estimate", "comparison"),
     quantity="d",
     needs=(),
     beside="d or g; two linked groups, each with mean and SD or SE; n of each, else whole df",
     formula="d = (M1 − M2) / s, s pooled; g = J d, J = Γ(m/2) / (√(m/2) Γ((m − 1)/2)), m = n1 + n2 − 2",
     source="Hedges (1981) Journal of Educational Statistics 6:107-128; Cohen (1988) Statistical Power Analysis",
-    limits="Other denominators are readings. Adjusted effects are not rebuilt.",
+    limits="Other denominators are readings. Adjusted effects are not rebuilt. Without a test beside it d is conditional at most.",
     agrees=(
         "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, d = 1.08.",
+    ),
+    conditional=(
+        "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), d = 1.80.",
     ),
     inconsistent=(
         "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, d = 1.80.",
@@ -138,7 +141,9 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
     if name is None or linked is None or fit is None:
         return
     groups, claims = linked
-    if groups.impossible:
+    # Of pairs d_z and d_rm have no bound as long as neither t nor the correlation of both measures is known.
+    of_pairs = case.claim.says("paired", "repeated") and not {"t", "F"} & case.claim.values.keys()
+    if groups.impossible or of_pairs:
         return
     if fit.reason:
         yield unchecked(case, "d-from-groups", name, fit.reason, claims)
@@ -148,9 +153,10 @@ def d_from_groups(case: Case) -> Iterable[Finding]:
     if "t" in case.claim.values:
         numbers["t"] = unsigned(case.claim.values["t"])
     sized = groups.n1 is not None and groups.n2 is not None
+    tested = case.claim.kind.endswith("-test")
     doubts = (
         *link_doubts(case),
-        *(() if case.claim.values.keys() & {"df", "df2"} else fit.doubts),
+        *(() if case.claim.values.keys() & {"df", "df2"} else fit.doubts if tested else (UNADJUSTED,)),
         *(() if sized else ("the effect is that of these two groups (their sizes are not printed)",)),
     )
     comparison = Comparison(
@@ -214,6 +220,7 @@ class Sizes:
 
 HAND = "d was worked out by hand from rounded means and SDs"
 SPLIT = "the groups are of unequal size"
+UNADJUSTED = "d is that of these very scores, unadjusted"
 BY_DF = "d = 2t/√df"
 BY_TOTAL = "d = 2t/√N"
 PAIRS = "the effect is that of paired differences (d_z, d_av or d_rm)"

@@ -38,7 +38,7 @@ if TYPE_CHECKING:
     beside="n; scores that are said to be whole numbers, or averages of so many",
     formula="mean = whole number / (n × items), on the scale",
     source="Brown & Heathers (2017) Social Psychological and Personality Science 8:363-369 (GRIM)",
-    limits="Conditional where an average of several answers to a score would do and no words rule it out, or where n may be that of more people than answered. Blind where n × items is as large as the means that the decimals tell apart.",
+    limits="Conditional where an average of several answers to a score would do and no words rule it out, where words elsewhere tell of several things rated, or where n may be that of more people than answered. Blind where n × items is as large as the means that the decimals tell apart.",
     impossible=(
         "Sourness was rated with a single item from 1 (none) to 7 (strong). The sourness of the rye loaves was fair (M = 5.19, SD = 1.10, n = 28).",
     ),

@@ -36,7 +36,10 @@ def link_doubts(case: Case) -> tuple[str, ...]:
     """What is inferred about the link between a test and its groups."""
     if case.claim.link_confidence == "high":
         return ()
-    return (f"the groups belong to this test ({case.claim.link or 'put together from different sentences'})",)
+    what = "test" if case.claim.kind.endswith("-test") else "result"
+    return (
+        f"the groups belong to this {what} ({case.claim.link or 'put together from different sentences'})",
+    )
 
 
 def _judge_statistic(case: Case, name: str, quantity: str, squared: bool) -> Iterable[Finding]:

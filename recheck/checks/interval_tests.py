@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterable, Iterator, Sequence
 
 from recheck.checks.coefficients import is_wald
 from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import Groups, sds
+from recheck.checks.designs import TWO_GROUPS, Groups, sds
 from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
 from recheck.checks.interval_methods import NORMAL, USUAL_LEVEL, Slack, hand_slack, other_widths
 from recheck.checks.intervals import (
@@ -24,7 +24,7 @@ from recheck.checks.intervals import (
 from recheck.checks.models import foreign_model
 from recheck.checks.p_values import ONE_TAILED, P_RANGE, UNIT_DF, as_interval
 from recheck.checks.registry import Case, check
-from recheck.model import RATIOS, VERDICTS, Claim, Finding, Interval
+from recheck.model import RATIOS, STATED, VERDICTS, Claim, Finding, Interval
 from recheck.recompute import bounds, intervals, two_groups
 from recheck.recompute.tails import t_quantile, z_quantile
 from recheck.reconcile.readings import Box, Way, first_agreement
@@ -193,7 +193,7 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
     dfs = (UNIT_DF,) if ratio else (df.number,) if known and df is not None else OPEN_DF
     numbers = {"p": claim.values["p"], "ci_low": low, "ci_high": high}
     ways = _p_ways(case, dfs, ratio=ratio)
-    excuses = _ci_excuses(claim)
+    excuses = _ci_excuses(claim) + (_other_test(claim) if claim.interval_of != "mean_difference" else ())
     if ratio and _off_middle(claim) and first_agreement("p", numbers, ways):
         excuses = (
             *excuses,
@@ -210,6 +210,15 @@ def p_from_ci(case: Case) -> Iterable[Finding]:
         excess="p may be adjusted for several tests" if adjusted else "",
     )
     yield judge(case, comparison)
+
+
+_OTHER_TESTS = ("fisher-exact", "yates", "uncorrected-chi2", "chi2-named", "likelihood-ratio", "permutation")
+
+
+def _other_test(claim: Claim) -> tuple[str, ...]:
+    """Why p is not told by the interval of a ratio or of a difference of risks: another test is named for it."""
+    named = next((word for word in _OTHER_TESTS if claim.says(word)), None)
+    return () if named is None else (f"p is that of {STATED[named]}, not of the interval",)
 
 
 def _off_middle(claim: Claim) -> bool:
@@ -256,10 +265,10 @@ def _logs(interval: Interval) -> Interval:
 @check(
     "ci-from-groups",
     title="confidence interval of a mean difference against its two groups",
-    kinds=("t-test",),
+    kinds=("t-test", "comparison"),
     quantity="ci_low",
-    needs=("ci_low", "ci_high", "df"),
-    beside="two linked groups, each with mean, SD and n",
+    needs=("ci_low", "ci_high"),
+    beside="two linked groups, each with mean, SD and n; df of a t that is printed",
     formula="(M1 − M2) ∓ c SE, SE pooled or Welch, c the critical value of t with df at the level of the interval",
     source="Welch (1938) Biometrika 29:350-362; Altman, Machin, Bryant & Gardner (2000) Statistics with Confidence, ch. 4, from memory",
     limits="Independent groups of printed size only; otherwise as for t against its interval.",
@@ -268,6 +277,7 @@ def _logs(interval: Interval) -> Interval:
     ),
     conditional=(
         "Steamed loaves (M = 92.4, SD = 6.1, n = 18) rose higher than dry ones (M = 86.0, SD = 5.8, n = 18), t(34) = 3.23, mean difference = 6.4, 95% CI [3.07, 9.73].",
+        "Steamed loaves rose higher (M = 92.4, SD = 6.1, n = 18) than dry ones (M = 86.0, SD = 5.8, n = 20), a mean difference of 6.4 (95% CI 5.4 to 7.4).",
     ),
 )
 def ci_from_groups(case: Case) -> Iterable[Finding]:
@@ -276,24 +286,24 @@ def ci_from_groups(case: Case) -> Iterable[Finding]:
     if claim.interval_of != "mean_difference" or linked is None or fit is None:
         return
     groups, claims = linked
-    if (
-        fit.reason
-        or fit.design != "independent"
-        or groups.unlabelled
-        or groups.n1 is None
-        or groups.n2 is None
+    alone = claim.kind == "comparison"
+    if fit.reason or groups.unlabelled or groups.n1 is None or groups.n2 is None:
+        return
+    if not (fit.design == "independent" or (alone and not fit.design)) or (
+        "df" not in claim.values and not alone
     ):
         return
     low, high = ends(claim)
     if low.value > high.value:
         return
+    own = (() if fit.design else (TWO_GROUPS,)) if alone else fit.doubts
     foreign = foreign_model(claims, fitted=fit.sure)
     excuses = (foreign,) if foreign else _ci_excuses(claim)
     found = []
     for name, printed, side in (("ci_low", low, -1.0), ("ci_high", high, 1.0)):
         ways = tuple(_end_ways(claim, groups, side))
         numbers = {name: printed, **groups.numbers}
-        doubts = (*fit.doubts, *link_doubts(case))
+        doubts = (*own, *link_doubts(case))
         found.append(
             judge(
                 case,
@@ -307,16 +317,19 @@ def _end_ways(claim: Claim, groups: Groups, side: float) -> Iterator[Way]:
     """Ways to one end of the interval: `side` −1 for the lower, 1 for the upper."""
     level, printed = level_of(claim)
     given = () if printed else (USUAL_LEVEL,)
-    df = claim.values["df"].number
-    exact = float(t_quantile((1 - level) / 2, df))
-    normal = float(z_quantile((1 - level) / 2))
+    n1, n2 = groups.n1 or 2, groups.n2 or 2
+    df = claim.values["df"].number if "df" in claim.values else n1 + n2 - 2.0
+    # Without a printed df Welch's may be any between those of the smaller group and the pooled ones.
+    fewest = df if "df" in claim.values else max(min(n1, n2) - 1.0, 1.0)
+    exact, normal = (float(q) for q in (t_quantile((1 - level) / 2, df), z_quantile((1 - level) / 2)))
     for welch in (claim.says("welch"), not claim.says("welch")):
         words = (
             ()
             if welch == claim.says("welch")
             else ("the interval is Welch's" if welch else "the interval is pooled",)
         )
-        yield Way(_end(groups, side, exact, exact, welch=welch), words, given)
+        most = float(t_quantile((1 - level) / 2, fewest)) if welch else exact
+        yield Way(_end(groups, side, exact, most, welch=welch), words, given)
         yield Way(_end(groups, side, normal, normal, welch=welch), (*words, NORMAL), given)
     for other in () if printed else (0.90, 0.99):
         if other != level:

@@ -10,7 +10,7 @@ from recheck.checks.designs import SE_READING, known, whole
 from recheck.checks.groups import link_doubts, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
-from recheck.model import N_OF_GROUP, OF_DIFFERENCES, Claim, Finding, Interval, Printed
+from recheck.model import EXACT_VALUE, N_OF_GROUP, OF_DIFFERENCES, Claim, Finding, Interval, Printed
 from recheck.recompute.one_sample import one_sample_t_bounds
 from recheck.reconcile.readings import Box, Numbers, Way
 
@@ -18,6 +18,7 @@ POSITIVE = Interval(0.0, math.inf)
 AGAINST_ZERO = "t tests the mean of the differences against 0"
 ROUNDED_VALUE = "the comparison value is rounded"
 N_FROM_DF = "n is df + 1"
+PAIRS_IN_WORDS = "t tests these differences against 0, and n is df + 1"
 NAMED_VALUE = "the mean is tested against the value that the sentence names"
 OTHER_DF = "df and n do not belong to a test of one sample or of pairs"
 
@@ -72,11 +73,11 @@ def t_from_one_group(case: Case) -> Iterable[Finding]:
     title="paired t against the mean and SD of the differences",
     kinds=("t-test",),
     quantity="t",
-    needs=("t", "mean_difference", "sd"),
-    beside="df",
+    needs=("t", "sd"),
+    beside="df; the mean difference",
     formula="t = difference / (SD / √n), df = n − 1",
     source="Student (1908) Biometrika 6:1-25",
-    limits="Only where words or n say that the test is one of pairs: else the SD may be that of groups.",
+    limits="Only where words or n say that the test is one of pairs: else the SD may be that of groups. Conditional at most where neither n nor the kind of test is told.",
     agrees=(
         "Bench scores rose in a paired t test (mean difference = 3.2, SD = 4.1, n = 24), t(23) = 3.82, p < .001.",
     ),
@@ -87,16 +88,26 @@ def t_from_one_group(case: Case) -> Iterable[Finding]:
 def t_from_difference(case: Case) -> Iterable[Finding]:
     """Compare |t| with the mean and SD of differences that are printed with it."""
     claim, values = case.claim, case.claim.values
-    if "df" not in values:
+    of_differences = OF_DIFFERENCES in claim.notes
+    mean = next(
+        (
+            name
+            for name in ("mean_difference", "estimate")
+            if name in values and (of_differences or name != "estimate")
+        ),
+        None,
+    )
+    if "df" not in values or mean is None:
         return
     sizes = [name for name in ("n", "N") if whole(values.get(name)) is not None]
     n = whole(values[sizes[0]]) if sizes else None
-    numbers = {"mean_difference": values["mean_difference"], "sd": values["sd"]}
+    numbers = {"mean_difference": values[mean], "sd": values["sd"]}
     if sizes:
         numbers["n"] = values[sizes[0]]
-    of_pairs = claim.says("paired", "one-sample") or (n is not None and whole(values["df"]) == n - 1)
-    if of_pairs and not claim.says("independent", "welch", "pooled", "between-groups"):
-        yield from _judged(case, "t-from-difference", numbers, "sd", n, (claim,), [])
+    told = claim.says("paired", "one-sample") or (n is not None and whole(values["df"]) == n - 1)
+    if (told or of_differences) and not claim.says("independent", "welch", "pooled", "between-groups"):
+        doubts = [] if told else [PAIRS_IN_WORDS]
+        yield from _judged(case, "t-from-difference", numbers, "sd", n, (claim,), doubts)
 
 
 def _judged(
@@ -114,7 +125,16 @@ def _judged(
     mean = "mean" if "mean" in numbers else "mean_difference"
     foreign = foreign_model(claims, fitted=n is not None)
     unlabelled = any(c.says("spread-unlabelled") for c in claims)
-    ways = list(_ways(mean, spread, df + 1, numbers.get("comparison_value"), unlabelled=unlabelled))
+    ways = list(
+        _ways(
+            mean,
+            spread,
+            df + 1,
+            numbers.get("comparison_value"),
+            unlabelled=unlabelled,
+            told_exact=EXACT_VALUE in case.claim.notes,
+        )
+    )
     told = {"t": unsigned(case.claim.values["t"]), "df": case.claim.values["df"], **numbers}
     yield judge(
         case,
@@ -125,12 +145,14 @@ def _judged(
     )  # fmt: skip
 
 
-def _ways(mean: str, spread: str, n: int, value: Printed | None, *, unlabelled: bool) -> Iterable[Way]:
+def _ways(
+    mean: str, spread: str, n: int, value: Printed | None, *, unlabelled: bool, told_exact: bool
+) -> Iterable[Way]:
     """|t| with the spread as labelled, an unlabelled one also as SE; the comparison value as it stands, or rounded."""
     for as_se in (False, True) if unlabelled else (False,):
         factor = math.sqrt(n) if as_se or spread == "se" else 1.0
         words = (SE_READING,) if as_se else ()
-        for exact in (True,) if value is None else (True, False):
+        for exact in (True,) if value is None or told_exact else (True, False):
 
             def implied(box: Box, factor: float = factor, exact: bool = exact) -> tuple[Interval, ...]:
                 m, s = box[mean], box[spread]

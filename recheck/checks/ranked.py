@@ -10,13 +10,14 @@ from recheck.checks.designs import whole
 from recheck.checks.groups import link_doubts
 from recheck.checks.p_values import ONE_TAILED
 from recheck.checks.registry import Case
-from recheck.model import N_OF_GROUP, Claim, Interval
+from recheck.model import N_OF_GROUP, SIZES_IN_WORDS, Claim, Interval
 from recheck.recompute import rank_tests as ranks
 from recheck.recompute.tails import z_two_sided
 from recheck.reconcile.readings import Box, Numbers, Way
 
 RANK_SUM = "it is the sum of ranks of one group (Wilcoxon's W), not U"
 MISSING = "no case is missing (n is that of the whole group)"
+IN_WORDS = "the numbers of cases that the sentence tells are the sizes of the two groups"
 UNNAMED = "this is the test of Mann and Whitney, or Wilcoxon's of two groups (it is not named)"
 NO_ZEROS = "no pair was left out for want of a difference"
 SIGNED_SUM = "W is the sum of all signed ranks, not that of the positive ones"
@@ -51,14 +52,20 @@ def sizes_of(case: Case) -> Sizes | None:
     claim = case.claim
     if claim.says("signed-ranks", "paired", "one-sample"):
         return _pairs_of(case)
-    if claim.says("repeated") or len(case.groups) != 2:
+    if claim.says("repeated"):
         return None
-    n1, n2 = (whole(group.values.get("n")) for group in case.groups)
+    if len(case.groups) == 2:
+        told = [group.values.get("n") for group in case.groups]
+    else:
+        told = [claim.values.get("n1"), claim.values.get("n2")]
+    n1, n2 = (whole(size) for size in told)
     if n1 is None or n2 is None or min(n1, n2) < 1:
         return None
-    numbers = {f"n{i}": group.values["n"] for i, group in enumerate(case.groups, 1)}
+    numbers = {f"n{i}": size for i, size in enumerate(told, 1) if size is not None}
     doubts = list(link_doubts(case))
-    if any(N_OF_GROUP in group.notes for group in case.groups):
+    if SIZES_IN_WORDS in claim.notes:
+        doubts.append(IN_WORDS)
+    if any(N_OF_GROUP in holder.notes for holder in (claim, *case.groups)):
         doubts.append(MISSING)
     if not claim.says("rank-test"):
         doubts.append(UNNAMED)

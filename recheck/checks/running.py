@@ -9,6 +9,7 @@ from dataclasses import replace
 from recheck.checks.beside import beside
 from recheck.checks.columns import by_columns
 from recheck.checks.compare import unchecked
+from recheck.checks.missing_cases import with_fewer_cases
 from recheck.checks.registry import Case, Check, Twin, all_checks
 from recheck.model import LEVELS, Claim, Finding, Place, SameResult, Settings, shown
 
@@ -22,7 +23,7 @@ def run_checks(
 
     `same` are pairs of claims that tell one result.
     """
-    claims = [_as_shares(claim) for claim in claims]
+    claims = with_fewer_cases([_as_shares(claim) for claim in claims])
     by_id = {claim.id: claim for claim in claims}
     twins, blocks, rows = _twins(by_id, same), _blocks(claims), _counts_of_rows(claims)
     summaries, near = _summaries(claims), beside(claims)

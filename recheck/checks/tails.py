@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable
+from dataclasses import replace
 
 from recheck.checks.compare import unchecked
 from recheck.checks.designs import whole
@@ -96,7 +97,8 @@ def p_from_z(case: Case) -> Iterable[Finding]:
     ways = list(tail_ways(claim, True, p_of))
     if claim.kind == "rank-test" or claim.suggests("rank-test"):
         words = "p of the rank test is exact or continuity-corrected"
-        ways += tail_ways(claim, True, lambda box, used: p_of(box, used, True), words=(words,))
+        exact = tail_ways(claim, True, lambda box, used: p_of(box, used, True), words=(words,))
+        ways += (replace(way, likely=True) for way in exact)
     if claim.kind == "rank-test" and _may_be_tiny(case):
         ways.append(Way(_of_few_ranks, ("p is the exact one of a test of a few ranks",)))
     yield judge_p(case, "p-from-z", ways, numbers)

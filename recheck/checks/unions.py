@@ -13,10 +13,10 @@ from recheck.checks.compare import Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.registry import Case, check
 from recheck.checks.surroundings import exact, model_of, of_group, printed_n
-from recheck.model import LEVELS, Claim, Finding, Interval, Printed
+from recheck.model import LEVELS, SUM_OF_GROUPS, Claim, Finding, Interval, Printed
 from recheck.recompute import combining
 from recheck.recompute.anova import MOST_GROUPS, ss_between_bounds
-from recheck.reconcile.readings import Box, Numbers, Way
+from recheck.reconcile.readings import Box, Numbers, Way, box_of
 
 WHOLE = regex.compile(
     r"""(?:grand\s+)?(?:total|overall|all|combined|pooled|both|whole|entire|full|everyone)\b
@@ -32,6 +32,7 @@ MISSING = "not all cases of the groups have a value of this variable"
 POPULATION = "the SDs have n, not n − 1, in their denominators"
 MEAN_SD = "the SD of the total is the plain mean of the groups' SDs"
 SD_OF_MEANS = "the SD of the total is the one of the groups' means, not of all cases"
+TOLD = "these groups are all of the total, and all these numbers are of one variable (their ns add up)"
 WITHIN = "the SD of the total is the one within the groups"
 
 
@@ -64,7 +65,11 @@ class Whole:
 def whole_of(case: Case, *names: str) -> Whole | None:
     """The groups that a total is made of: all others of its row or column, where their ns add up to its own."""
     claim, n = case.claim, printed_n(case.claim)
-    if n is None or not claim.place.table or not exact(claim, *names) or not _is_whole(claim):
+    if n is None or not exact(claim, *names):
+        return None
+    if not claim.place.table:
+        return _told_whole(case, *names)
+    if not _is_whole(claim):
         return None
     others = [c for c in case.block if c.id != claim.id and not _is_whole(c)]
     parts = [c for c in others if _same_row(c, claim)] or [c for c in others if _same_columns(c, claim)]
@@ -74,6 +79,41 @@ def whole_of(case: Case, *names: str) -> Whole | None:
     return (
         whole if all(whole.ns) and sum(whole.ns) == n and all(exact(part, *names) for part in parts) else None
     )
+
+
+MOST_TOLD = 5
+"""Groups of a text that may follow their total at most."""
+
+
+def _told_whole(case: Case, *names: str) -> Whole | None:
+    """In a text that says so: the summaries that follow one at once, where their ns add up to its own and all may be of one variable."""
+    claim, n = case.claim, printed_n(case.claim)
+    if SUM_OF_GROUPS not in claim.notes:
+        return None
+    at = next((i for i, c in enumerate(case.block) if c.id == claim.id), None)
+    parts: list[Claim] = []
+    for other in case.block[at + 1 : at + 1 + MOST_TOLD] if at is not None else ():
+        if printed_n(other) is None or not _of_one_variable(claim, other, names):
+            return None
+        parts.append(other)
+        if len(parts) > 1 and sum(printed_n(part) or 0 for part in parts) == n:
+            return Whole(claim, tuple(parts))
+    return None
+
+
+def _of_one_variable(total: Claim, part: Claim, names: tuple[str, ...]) -> bool:
+    """Whether a group may be one of a total's: printed as finely, of no other outcome, and its mean not far away."""
+    if not exact(part, *names) or (total.outcome and part.outcome and total.outcome != part.outcome):
+        return False
+    if any(total.values[name].decimals != part.values[name].decimals for name in names):
+        return False
+    sds = [c.values["sd"].number for c in (total, part) if "sd" in c.values]
+    apart = abs(total.values[names[0]].number - part.values[names[0]].number)
+    return bool(sds) and apart <= FARTHEST * max(sds)
+
+
+FARTHEST = 2.0
+"""SDs that the mean of a total and of one of its groups are apart at most, where only their ns tell that they belong together."""
 
 
 def _named(claim: Claim) -> str:
@@ -111,8 +151,17 @@ def _ends(box: Box, name: str, k: int) -> tuple[list[float], list[float]]:
 
 def _judged(case: Case, whole: Whole, name: str, quantity: str, numbers: Numbers, ways: list[Way]) -> Finding:
     claims = (whole.total, *whole.parts)
-    models = [model for claim in claims if (model := model_of(claim))]
-    return judge(case, Comparison(name, quantity, numbers, ways, claims, excuses=tuple(models[:1])))
+    excuses = [model for claim in claims if (model := model_of(claim))][:1]
+    doubts: tuple[str, ...] = ()
+    if not whole.total.place.table:
+        # Heads are counted in a text, and missing values of some are too common to be a finding.
+        doubts, missing = (TOLD,), [way for way in ways if MISSING in way.unstated]
+        ways = [way for way in ways if MISSING not in way.unstated]
+        box = box_of(numbers)
+        excuses += [MISSING for way in missing if any(i.meets(box[quantity]) for i in way.implied(box))]
+    return judge(
+        case, Comparison(name, quantity, numbers, ways, claims, excuses=tuple(excuses), doubts=doubts)
+    )
 
 
 @check(
@@ -121,10 +170,10 @@ def _judged(case: Case, whole: Whole, name: str, quantity: str, numbers: Numbers
     kinds=("group-summary",),
     quantity="mean",
     needs=("mean", "n"),
-    beside="all groups of the same table, their ns adding up to the total's",
+    beside="all groups of the same table or told after their total, their ns adding up to the total's",
     formula="mean = Σ n M/Σ n",
     source="by definition",
-    limits="Only where the ns add up exactly. Where they are those of whole groups, missing cases may move the mean within the range of the groups' means.",
+    limits="Only where the ns add up exactly. Where they are those of whole groups, missing cases may move the mean within the range of the groups' means. Conditional at most in a text, where the groups follow their total. Weighted, adjusted and modelled means are not rebuilt.",
     agrees=(
         table(
             "Table 1. Height of loaves in mm, mean (SD).",
@@ -183,7 +232,7 @@ def _extremes(name: str, k: int) -> Callable[[Box], tuple[Interval, ...]]:
     kinds=("group-summary",),
     quantity="sd",
     needs=("mean", "sd", "n"),
-    beside="all groups of the same table, their ns adding up to the total's",
+    beside="all groups of the same table or told after their total, their ns adding up to the total's",
     formula="SD² (N − 1) = Σ (n − 1) SD² + Σ n (M − mean)²",
     source="Higgins, Li & Deeks, Cochrane Handbook for Systematic Reviews of Interventions, 6.5.2.10",
     limits="As for the mean of a total; where cases may be missing, only an SD that no numbers of them explain is inconsistent.",

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 
 import numpy as np
 
@@ -22,23 +22,25 @@ OTHER_DF = (
     "these df are not n − 1 of both groups, so F is another test's of equal variances, such as Levene's"
 )
 NO_CORRECTION = "the statistic lacks Bartlett's correction"
+LISTED = "the SDs in the text are those of the groups that this test compares"
 MISSING = "no case is missing (n is that of the whole group)"
 
 
 class _Spreads:
-    """SDs or SEs of groups with their ns, as numbers named `sd1`, `n1`, `sd2` …"""
+    """SDs or SEs of groups with their ns, as numbers named `sd1`, `n1`, `sd2` …; those of linked groups, else those told with the test."""
 
-    def __init__(self, groups: Sequence[Claim]) -> None:
-        self.spread = "sd" if all("sd" in group.values for group in groups) else "se"
-        self.ns = [whole(group.values.get("n")) or 0 for group in groups]
-        self.complete = min(self.ns) >= 2 and all(self.spread in group.values for group in groups)
+    def __init__(self, claim: Claim, groups: Sequence[Claim]) -> None:
+        rows = [group.values for group in groups] or _told(claim)
+        self.size = len(rows)
+        self.told = not groups
+        self.spread = "sd" if all("sd" in row for row in rows) else "se"
+        self.ns = [whole(row.get("n")) or 0 for row in rows]
+        self.complete = min(self.ns, default=0) >= 2 and all(self.spread in row for row in rows)
         self.unlabelled = any(group.says("spread-unlabelled") for group in groups)
         self.of_whole = any(N_OF_GROUP in group.notes for group in groups)
         numbers: dict[str, Printed] = {}
-        for i, group in enumerate(groups, 1):
-            numbers |= {
-                f"{name}{i}": group.values[name] for name in (self.spread, "n") if name in group.values
-            }
+        for i, row in enumerate(rows, 1):
+            numbers |= {f"{name}{i}": row[name] for name in (self.spread, "n") if name in row}
         self.numbers: Numbers = numbers
 
     def ends(self, box: Box, *, as_se: bool) -> tuple[list[float], list[float]]:
@@ -54,6 +56,15 @@ class _Spreads:
     def readings(self) -> tuple[tuple[bool, tuple[str, ...]], ...]:
         """Whether the spreads are read as SE, each with the assumptions that takes."""
         return ((False, ()), (True, (SE_READING,))) if self.unlabelled else ((False, ()),)
+
+
+def _told(claim: Claim) -> list[Mapping[str, Printed]]:
+    """The SDs and ns of all groups, as they are listed beside the test."""
+    rows: list[Mapping[str, Printed]] = []
+    while {f"sd{len(rows) + 1}", f"n{len(rows) + 1}"} <= claim.values.keys():
+        i = len(rows) + 1
+        rows.append({"sd": claim.values[f"sd{i}"], "n": claim.values[f"n{i}"]})
+    return rows
 
 
 @check(
@@ -79,14 +90,14 @@ class _Spreads:
 def f_of_variances(case: Case) -> Iterable[Finding]:
     """Compare F with the ratio of the two printed variances."""
     claim, groups = case.claim, case.groups
-    if not claim.says("variance-test") or len(groups) < 2 or not {"df1", "df2"} <= claim.values.keys():
+    spreads = _Spreads(claim, groups)
+    if not claim.says("variance-test") or spreads.size < 2 or not {"df1", "df2"} <= claim.values.keys():
         return
     claims = (claim, *groups)
-    spreads = _Spreads(groups)
     if claim.says("levene"):
         yield unchecked(case, "F-of-variances", "F", f"summaries cannot rebuild {STATED['levene']}", claims)
         return
-    if len(groups) != 2 or not spreads.complete:
+    if spreads.size != 2 or not spreads.complete:
         return
     df1, df2 = (whole(claim.values[name]) for name in ("df1", "df2"))
     own = tuple(n - 1 for n in spreads.ns)
@@ -131,11 +142,11 @@ def _ratios(spreads: _Spreads, orders: Sequence[tuple[int, int]]) -> Iterable[Wa
 def bartlett_from_groups(case: Case) -> Iterable[Finding]:
     """Compare Bartlett's statistic with that of the printed SDs."""
     claim, groups = case.claim, case.groups
-    if not claim.says("bartlett") or not 2 <= len(groups) <= MOST_GROUPS:
+    spreads = _Spreads(claim, groups)
+    if not claim.says("bartlett") or not 2 <= spreads.size <= MOST_GROUPS:
         return
-    spreads = _Spreads(groups)
     df = claim.values.get("df")
-    if not spreads.complete or (df is not None and df.value != len(groups) - 1):
+    if not spreads.complete or (df is not None and df.value != spreads.size - 1):
         return
     yield _judged(case, "bartlett-from-groups", "chi2", spreads, list(_bartlett_ways(spreads)))
 
@@ -158,7 +169,8 @@ def _bartlett_ways(spreads: _Spreads) -> Iterable[Way]:
 def _judged(case: Case, name: str, quantity: str, spreads: _Spreads, ways: list[Way]) -> Finding:
     claims = (case.claim, *case.groups)
     foreign = foreign_model(claims, fitted=True)
-    doubts = (*link_doubts(case), *((MISSING,) if spreads.of_whole else ()))
+    listed = (LISTED,) if spreads.told else ()
+    doubts = (*link_doubts(case), *listed, *((MISSING,) if spreads.of_whole else ()))
     numbers = {quantity: case.claim.values[quantity], **spreads.numbers}
     return judge(
         case,

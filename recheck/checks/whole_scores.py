@@ -11,6 +11,8 @@ import regex
 from recheck.checks.designs import whole
 from recheck.checks.models import FOREIGN
 from recheck.model import (
+    AVERAGED_BY,
+    FEWER_CASES,
     N_OF_GROUP,
     SCALE_ENDS_INFERRED,
     SCALE_INFERRED,
@@ -50,6 +52,7 @@ class Scored:
 OF_THESE = "N = {n} is the number of these scores"
 ANSWERED = "all {n} of the group answered"
 NEAR_BY = "the scale told near by is that of these scores"
+ONE_ANSWER = "each score is one answer and no average, although the manuscript says {words}"
 COMPLETE = "everyone answered all {items} items, and no score was rounded before the mean was taken"
 LABEL = "the spread is the one that it is taken for"
 APART = "these numbers describe the same scores"
@@ -67,7 +70,7 @@ def scored(claim: Claim) -> Scored:
     told = claim.says("single-item", "summed-scores") or SCORES_ASKED in claim.notes
     return Scored(
         n=whole(size), items=items, low=low, high=high, width=width,
-        single=(told or items > 1) and not (claim.says("averaged-scores") and items == 1),
+        single=(told or items > 1) and not (items == 1 and (claim.says("averaged-scores") or _averaged_by(claim))),
         doubts=tuple(_doubts(claim)), excuse=_excuse(claim),
         of_size=tuple(_of_size(claim)),
         of_items=(COMPLETE.format(items=items),) if items > 1 else (),
@@ -82,13 +85,15 @@ def are_whole(claim: Claim) -> bool:
 def _of_size(claim: Claim) -> Iterable[str]:
     if "n" not in claim.values and "N" in claim.values:
         yield OF_THESE.format(n=claim.values["N"].text)
-    elif N_OF_GROUP in claim.notes and "n" in claim.values:
+    elif (N_OF_GROUP in claim.notes or FEWER_CASES in claim.notes) and "n" in claim.values:
         yield ANSWERED.format(n=claim.values["n"].text)
 
 
 def _doubts(claim: Claim) -> Iterable[str]:
     if SCALE_INFERRED in claim.notes:
         yield NEAR_BY
+    if (words := _averaged_by(claim)) and not claim.says("averaged-scores"):
+        yield ONE_ANSWER.format(words=words)
     if claim.says("spread-unlabelled"):
         yield LABEL
     if claim.says("inferred"):
@@ -100,9 +105,20 @@ def _doubts(claim: Claim) -> Iterable[str]:
 
 def _excuse(claim: Claim) -> str:
     if claim.says("averaged-scores") and "items_per_score" not in claim.values:
-        return "each score is an average over a number of answers that is not told"
+        return f"each score may be an average over a number of answers that is not told{_told_by(claim)}"
     said = [word for word in ("prorated", *FOREIGN) if claim.says(word)]
     return f"summaries cannot rebuild {STATED[said[0]]}" if said else ""
+
+
+def _averaged_by(claim: Claim) -> str:
+    """The quoted words for which scores may be averages, "" for none."""
+    return next((note.removeprefix(AVERAGED_BY) for note in claim.notes if note.startswith(AVERAGED_BY)), "")
+
+
+def _told_by(claim: Claim) -> str:
+    """The words for which scores may be averages, and how to say that they are not."""
+    quoted = _averaged_by(claim)
+    return f": the manuscript says {quoted}; --scores can say that each is one whole number" if quoted else ""
 
 
 @cache

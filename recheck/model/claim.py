@@ -96,11 +96,26 @@ P_IN_WORDS = "p is told in words"
 N_OF_GROUP = "n is that of the whole group"
 """The note of a claim whose n comes from a header, a caption or a note: of this variable some cases may be missing."""
 
+SIZES_IN_WORDS = "the sizes of the two groups are told in words of the sentence"
+"""The note of a test of ranks whose `n1` and `n2` are printed without n: `24 growers and 21 buyers`."""
+
+FEWER_CASES = "the df of its test are fewer than these n give"
+"""The note of a summary whose test shows that not all of the n that is printed beside it have a value."""
+
+SUM_OF_GROUPS = "its n is the sum of those of the groups that follow"
+"""The note of a summary after which a text tells the groups that it is made of."""
+
 OF_DIFFERENCES = "the mean beside the test is one of differences"
 """The note of a t test with one group summary, before which a difference, a change or a gain is named."""
 
+EXACT_VALUE = "the value that the mean is compared with is exact"
+"""The note of a t test against the midpoint of a scale, or a level of chance that is a round share."""
+
 SCALE_INFERRED = "the scale is told near by, not of this outcome by name"
 """The note of a summary whose scale, and whether its scores are whole numbers, was not told of its own outcome in so many words."""
+
+AVERAGED_BY = "perhaps an average: "
+"""Begins the note of a summary that quotes the words for which its scores may be averages."""
 
 SCALE_ENDS_INFERRED = "the ends of the scale are not printed; it is taken to begin at 1"
 """The note of a summary whose scale is told by its number of points alone: how wide it is is sure, where it begins is not."""

@@ -3,7 +3,7 @@
 QUANTITIES: dict[str, str] = {
     "t": "t", "z": "z", "F": "F", "chi2": "χ²", "r": "r", "u": "U", "w": "W",
     "df": "df", "df1": "df1", "df2": "df2", "p": "p", "alpha": "α",
-    "mean": "mean", "sd": "SD", "se": "SE", "n": "n", "N": "N",
+    "mean": "mean", "sd": "SD", "se": "SE", "n": "n", "N": "N", "n1": "n1", "n2": "n2",
     "median": "median", "iqr": "IQR", "q1": "first quartile", "q3": "third quartile", "min": "minimum", "max": "maximum",
     "mean_difference": "mean difference", "se_difference": "SE of the difference",
     "ci_low": "lower end of the CI", "ci_high": "upper end of the CI", "ci_level": "level of the CI",

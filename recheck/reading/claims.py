@@ -220,6 +220,7 @@ def _closes(line: Line, last: Assignment, item: Assignment) -> bool:
     return bool({")", "]"} & set(between)) and bool({"(", "["} & set(between))
 
 
+_DIFFERENCES = ("difference", "differences", "change", "changes")
 _GROUP = ("centre",)
 _RESULT = ("statistic", "estimate", "effect")
 
@@ -280,11 +281,27 @@ def _spread(s: Situation) -> bool:
         return False
     if s.has(*_GROUP):
         return s.tight or s.current[-1].part == "centre"
+    if s.item.quantity == "sd" and s.current[-1].part == "estimate" and _behind_unit(s):
+        return s.holds("mean_difference") or _of_differences(s)
     if not s.tight:
         return False
     if s.item.quantity == "sd":
         return s.holds("mean_difference") and not s.has("statistic")
     return (s.has("statistic", "estimate", "effect") and not s.semicolon) or s.has("estimate")
+
+
+def _behind_unit(s: Situation) -> bool:
+    """Whether nothing but a unit stands before the brackets that a spread opens: `3.1 mmHg (SD 8.4`."""
+    between = s.line.tokens[s.current[-1].after : s.item.first]
+    unit = between[:-1]
+    return (
+        bool(between) and between[-1].text == "(" and len(unit) <= 2 and all(t.kind == "word" for t in unit)
+    )
+
+
+def _of_differences(s: Situation) -> bool:
+    """Whether a spread is named that of differences: `rose by 4.2 points (SD of the differences = 6.0`."""
+    return any(t.low in _DIFFERENCES for t in s.line.tokens[s.item.first : s.item.after])
 
 
 def _estimate(s: Situation) -> bool:

@@ -1,6 +1,7 @@
 """Counts that stand without their percentage, and percentages without their count.
 
-`12/40 against 20/41 (OR = 0.45)`, `12 of 40`: beside a ratio or a χ² of two shares alone, as fractions are common.
+`12/40 against 20/41 (OR = 0.45)`, `12 of 40`: beside a ratio, a difference of percentages, a χ² of two shares or a p of Fisher's
+test alone, as fractions are common.
 `31.3% of the 40 bakers`, `Of the 40 bakers, 31.3% came`. `12 changed from sour to sweet and 3 back`, for McNemar's test.
 """
 
@@ -44,7 +45,14 @@ def with_fractions(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     """The assignments of a line with those counts and percentages, in their order."""
     taken = {k for item in items for k in range(item.first, item.after)}
     found = list(items)
-    if any(item.quantity in _COMPARED or _of_two(item) for item in items):
+    by_fisher = any(_is_fisher(line, index) for index in range(len(line.tokens)))
+    if any(
+        item.quantity in _COMPARED
+        or _of_two(item)
+        or _of_points(item)
+        or (by_fisher and item.quantity == "p")
+        for item in items
+    ):
         fractions = list(_fractions(line, taken))
         counted = sum(any(name == "total" for name, _ in item.extra) for item in items)
         if counted + len(fractions) > 1:
@@ -61,6 +69,18 @@ def _of_two(item: Assignment) -> bool:
     """Whether a χ² may compare two shares: its df are 1, or not told with it."""
     df = dict(item.extra).get("df")
     return item.quantity == "chi2" and (df is None or df.value == 1)
+
+
+def _is_fisher(line: Line, index: int) -> bool:
+    """Whether Fisher's exact test is named here, not his z or his least significant difference."""
+    if not line.at(index).low.startswith("fisher"):
+        return False
+    return any(token.low in ("exact", "test") for token in line.tokens[index + 1 : index + 5])
+
+
+def _of_points(item: Assignment) -> bool:
+    """Whether a difference is one of percentages."""
+    return item.quantity in ("estimate", "mean_difference") and item.printed.percent
 
 
 def _whole_at(line: Line, index: int) -> Number | None:
@@ -138,11 +158,15 @@ def _opened(line: Line) -> tuple[Number, int] | None:
 
 
 def _changes(line: Line, taken: set[int]) -> Iterator[Assignment]:
-    """Numbers of those who changed: `12 tasters changed from sour to sweet and 3 from sweet to sour`."""
+    """Numbers of those who changed: `12 tasters changed from sour to sweet and 3 from sweet to sour`, `… and 3 to sour`."""
+    told = False
     for index in range(len(line.tokens)):
         number = _whole_at(line, index) if index not in taken else None
-        if number is None or measured(line, number.after):
+        if number is None or (measured(line, number.after) and line.at(number.after).low != "to"):
             continue
         words_ = [token.low for token in line.tokens[number.after : past_words(line, number.after, 7)]]
-        if _CHANGED.intersection(words_) or (words_[:1] == ["from"] and "to" in words_):
+        other_way = words_[:1] == ["from"] and "to" in words_
+        other_way = other_way or (told and words_[:1] == ["to"] and len(words_) > 1)
+        if _CHANGED.intersection(words_) or other_way:
+            told = True
             yield Assignment(COUNT, number.printed(line), index, number.after, loose=True)

@@ -140,7 +140,8 @@ def may_count(line: Line, index: int, count: Number) -> bool:
         return False
     if _totals(line, index) or (before.low == "in" and second.kind == "num"):
         return False
-    ranged = before.low in ("to", "and", "or") and second.kind == "num"
+    fractions = line.at(index + 1).text == "/" == line.at(index - 3).text
+    ranged = before.low in ("to", "and", "or") and second.kind == "num" and not fractions
     return not ranged and not (before.low == "in" and _is_year(count))
 
 

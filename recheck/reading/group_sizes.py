@@ -26,8 +26,7 @@ def with_group_sizes(told: Sequence[Told]) -> list[Told]:
     """The drafts of a sentence with their names; summaries without n get that of their group, where the sentence tells it.
 
     `The class (n = 28) rated it high (M = 5.19, SD = 1.10)`; where all groups are named first, in their order:
-    `In the class (n = 28) and the shop (n = 30) heights were 92.4 (SD = 6.1) and 86.0 (SD = 5.8)`. Two groups of a test of
-    ranks, of which nothing but n is told, become summaries of their own. Some of a group's cases may be missing of a variable.
+    `In the class (n = 28) and the shop (n = 30) heights were 92.4 (SD = 6.1) and 86.0 (SD = 5.8)`. Some of a group's cases may be missing of a variable.
     """
     lone = [at for at, (draft, _) in enumerate(told) if _lone(draft)]
     if not lone:
@@ -41,11 +40,6 @@ def with_group_sizes(told: Sequence[Told]) -> list[Told]:
     for at in bare:
         if at - 1 in lone and at - 2 not in lone and _of_whom(told[at - 1][0], told[at][0]):
             found[at] = _sized(told[at], told[at - 1][0])
-    if len(lone) == 2 and not bare and [name.kind for _, name in told if name is not None] == ["rank-test"]:
-        for at in lone:
-            draft = told[at][0]
-            values = {"n": draft.items[0].printed}
-            found[at] = draft, Named("group-summary", values, (), None, "high", (N_OF_GROUP,))
     return found
 
 

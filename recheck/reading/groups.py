@@ -7,7 +7,7 @@ from dataclasses import replace
 from itertools import pairwise
 
 from recheck.model import Printed
-from recheck.reading.items import ESTIMATE, MEAN, NEXT_TO_INTERVAL, SPREADS, Assignment
+from recheck.reading.items import ESTIMATE, MEAN, MEDIAN, NEXT_TO_INTERVAL, SPREADS, Assignment
 from recheck.reading.numerals import Line, Number, number_at, part_of_unit
 from recheck.reading.tokens import words
 
@@ -33,7 +33,7 @@ def with_means(
         if item.quantity == "ci" and not item.several and not _has_centre(found, item, line):
             number = _estimate_before(line, item, found[-1].after if found else 0)
             if number:
-                found.append(number)
+                found.append(_as_the_one_before(number, found))
         found.append(item)
         pair = _in_brackets(line, item, announced)
         if pair:
@@ -67,6 +67,17 @@ def _estimate_before(line: Line, interval: Assignment, stop: int) -> Assignment 
     return replace(number, symbol=ESTIMATE, doubt="medium", notes=(NEXT_TO_INTERVAL,), loose=loose)
 
 
+def _as_the_one_before(number: Assignment, found: Sequence[Assignment]) -> Assignment:
+    """`a median of 14.2 (95% CI …) versus 10.6 (95% CI …)`: what is set against a median is a median."""
+    named = next((item for item in reversed(found) if item.part in _NAMED), None)
+    return (
+        replace(number, symbol=MEDIAN)
+        if number.symbol is MEAN and named and named.quantity == "median"
+        else number
+    )
+
+
+_NAMED = ("centre", "estimate", "effect", "statistic")
 _AGAINST = words("vs versus v than")
 
 

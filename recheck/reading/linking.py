@@ -6,17 +6,26 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
 from recheck.model import Claim
-from recheck.reading.other_links import of_variances, with_one_group, with_sizes, with_variances
+from recheck.reading.effect_links import with_pairs
+from recheck.reading.other_links import (
+    of_variances,
+    with_differences,
+    with_one_group,
+    with_sizes,
+    with_variances,
+)
 from recheck.reading.placed import Placed
 from recheck.reading.tokens import words
 
 
 def in_prose(placed: Sequence[Placed]) -> dict[str, Claim]:
-    """Each test whose group summaries stand in its sentence or a neighbouring one, by its id, with the ids of its summaries."""
+    """Each test and effect whose group summaries stand in its sentence or a neighbouring one, by its id, with the ids of its summaries."""
     summaries = _by_sentence(item for item in placed if has_spread(item.claim))
     tests = _by_sentence(item for item in placed if groups_compared(item.claim) == 2)
     larger = _by_sentence(item for item in placed if groups_compared(item.claim) > 2)
     found = {**_counted(placed), **_ranked(placed), **_of_one_group(placed, summaries)}
+    found |= with_differences(item for item in placed if item.claim.kind == "t-test")
+    found |= with_pairs(placed, has_spread, _alike)
     found |= with_variances((item for item in placed if of_variances(item.claim)), summaries)
     for test in (test for group in (*tests.values(), *larger.values()) for test in group):
         place = (test.passage, test.sentence)

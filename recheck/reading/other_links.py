@@ -8,7 +8,7 @@ from functools import cache
 
 import regex
 
-from recheck.model import OF_DIFFERENCES, Claim, Printed
+from recheck.model import EXACT_VALUE, OF_DIFFERENCES, Claim, Printed
 from recheck.reading.numerals import printed
 from recheck.reading.placed import Placed
 from recheck.reading.views import TIMEOUT
@@ -57,9 +57,10 @@ def with_one_group(test: Placed, here: Sequence[Placed]) -> Claim | None:
     if n is not None and df is not None and df.value != n.value - 1:
         return None
     claim = _linked(claim, here, _SAME.format("group summary"))
-    value = _compared_with(test)
+    value, exact = _compared_with(test)
     if value is not None and value.percent == summary.claim.values["mean"].percent:
-        return replace(claim, values={**claim.values, "comparison_value": value})
+        notes = (*claim.notes, EXACT_VALUE) if exact else claim.notes
+        return replace(claim, values={**claim.values, "comparison_value": value}, notes=notes)
     before = test.text[: max(summary.start - test.at, 0)]
     sure = summary.start < test.start and (n is not None or claim.says("paired"))
     if sure and _of_differences().search(before, timeout=TIMEOUT):
@@ -77,6 +78,7 @@ def _named_value() -> regex.Pattern[str]:
     """A value that a mean is compared with, named as such: `the target of 500 g`, `chance (50%)`, `test value = 4`."""
     return regex.compile(
         r"""\b(?:(?:test|reference|comparison|target|neutral|hypothesi[sz]ed|criterion|standard|norm\w*)\ (?:value|mean|weight|height|score|level|point)
+        | (?:the|a)\ (?:\w+\ )?(?:standard|benchmark|reference)
         | target | chance(?:\ (?:level|performance))? | (?:scale(?:'s)?\ |theoretical\ )?mid-?point(?:\ of\ the\ (?:\S+\ ){0,2}scale)? | population\ mean | μ0? | norm )
         (?:\ (?:of|was|is|at|level\ of))? \ ?[(=:,]?\ ?(?:of\ )?(?P<value>[-−]?\d+(?:[.,]\d+)?\ ?%?)(?![\d.,]*\d)""",
         regex.VERBOSE | regex.IGNORECASE,
@@ -103,15 +105,50 @@ def _of_differences() -> regex.Pattern[str]:
     )
 
 
-def _compared_with(test: Placed) -> Printed | None:
-    """The one value that the sentence says the mean is compared with; None where there are none or several."""
+def _compared_with(test: Placed) -> tuple[Printed | None, bool]:
+    """The one value that the sentence says the mean is compared with, and whether it is exact; None where there are none or several."""
     patterns = [_named_value()]
     if test.claim.says("one-sample"):
         patterns.append(_plain_value())
     for pattern in patterns:
-        texts = {match["value"] for match in pattern.finditer(test.text, timeout=TIMEOUT)}
-        if len(texts) == 1:
-            return printed(texts.pop().replace(" ", ""))
-        if texts:
-            return None
-    return None
+        found = {match["value"]: match[0] for match in pattern.finditer(test.text, timeout=TIMEOUT)}
+        if len(found) == 1:
+            ((text, whole),) = found.items()
+            value = printed(text.replace(" ", ""))
+            return value, value is not None and _exact(whole.lower(), value)
+        if found:
+            return None, False
+    return None, False
+
+
+_CHANCES = frozenset((5, 10, 20, 25, 50))
+"""Percentages that are one half, quarter, fifth, tenth or twentieth; of three answers chance is no such number."""
+
+
+def _exact(words: str, value: Printed) -> bool:
+    """Whether a value is not rounded: the midpoint of a scale in halves, one answer of two, four, five, ten or twenty by chance."""
+    if "midpoint" in words or "mid-point" in words or "neutral" in words:
+        return (2 * value.value) % 1 == 0
+    return "chance" in words and (value.value if value.percent else 100 * value.value) in _CHANCES
+
+
+def with_differences(tests: Iterable[Placed]) -> dict[str, Claim]:
+    """Tests with a mean and SD of their own that are called those of differences before them in the sentence."""
+    found = {}
+    for test in tests:
+        claim = test.claim
+        own = {"sd", "t"} <= claim.values.keys() and {"mean_difference", "estimate"} & claim.values.keys()
+        if own and _paired_words().search(test.text[: test.end - test.at], timeout=TIMEOUT):
+            found[claim.id] = replace(claim, notes=(*claim.notes, OF_DIFFERENCES))
+    return found
+
+
+@cache
+def _paired_words() -> regex.Pattern[str]:
+    """What is told of differences within pairs alone: `SD of the differences`, `mean of the differences`, `mean change`."""
+    return regex.compile(
+        r"""\b(?:sd|s\.d\.|standard\ deviation)\ of\ (?:the\ |their\ )?(?:paired\ |individual\ )?(?:differences?|changes?|gains?|improvements?)\b
+        | \bmeans?\ of\ (?:the\ |their\ |all\ )?(?:paired\ |individual\ |\d+\ )?differences\b
+        | \b(?:mean|average)\ (?:paired\ |individual\ |within-\w+\ )?(?:changes?|gains?|improvements?|increases?|decreases?|reductions?|rises?|falls?|drops?)\b(?!\ (?:differed|in\ the\ difference))""",
+        regex.VERBOSE | regex.IGNORECASE,
+    )

@@ -10,6 +10,7 @@ from functools import cache
 import regex
 
 from recheck.model import Printed, Relation
+from recheck.reading.frequencies import NUMBER_WORDS
 from recheck.reading.numerals import Line, number_at, relation_at, whole
 from recheck.reading.power_patterns import COUNTED, NUMBER, inflated, needed, obtained, patterns
 from recheck.reading.views import TIMEOUT
@@ -45,6 +46,7 @@ def mentions(line: Line, start: int, end: int) -> list[Mention]:
             taken.append(mention.alone)
             found.append(mention)
     found += _proportions(line, start, end, taken)
+    found += _means(line, start, end, found)
     found.sort(key=lambda mention: mention.alone)
     return [mention for mention in found if mention.role != "aside"]
 
@@ -56,12 +58,33 @@ def _mention(role: str, match: regex.Match[str], line: Line) -> Mention | None:
         return (
             Mention(role, printed, *match.span(), match.span("g")) if printed.value >= LEAST[role] else None
         )
+    if "w" in groups and match["w"]:
+        return _worded(role, match)
     alone = match.span("v")
     printed_ = _printed(line, alone[0])
     if printed_ is None:
         return None
     role, printed = _settled(role, printed_)
     return Mention(role, printed, *match.span(), alone) if role else None
+
+
+def _worded(role: str, match: regex.Match[str]) -> Mention | None:
+    """A number of cases in words; one below ten is a number of groups, of days or of pages rather."""
+    text = match["w"]
+    value = _value(text.lower())
+    if value < FEWEST_IN_WORDS:
+        return None
+    return Mention(role, Printed(text, Decimal(value), 0), *match.span(), match.span("w"))
+
+
+FEWEST_IN_WORDS = 10
+
+
+def _value(text: str) -> int:
+    """`fifty-two`, `a hundred and twenty`."""
+    hundreds, hundred, rest = text.rpartition("hundred") if "hundred" in text else ("", "", text)
+    value = 100 * NUMBER_WORDS.get(hundreds.strip(), 1) if hundred else 0
+    return value + sum(NUMBER_WORDS.get(word, 0) for word in rest.replace("-", " ").split())
 
 
 def _counted(text: str) -> Printed:
@@ -146,6 +169,34 @@ def _proportions(line: Line, start: int, end: int, taken: Sequence[tuple[int, in
         yield Mention(role, printed, first, last, (first, last))
 
 
+def _means(line: Line, start: int, end: int, found: Sequence[Mention]) -> Iterator[Mention]:
+    """The difference of two means that are told in its place, beside an SD: `to detect 10 against 15 mm (SD 8)`."""
+    roles = {mention.role for mention in found}
+    if "sd" not in roles or roles & {"mean_difference", "d", "d_z", "effect_size", "f", "r", "delta"}:
+        return
+    text = line.view.text
+    pairs = list(_two_means().finditer(text, start, end, timeout=TIMEOUT))
+    if len(pairs) != 1 or any(m.alone[0] < pairs[0].end() and pairs[0].start() < m.alone[1] for m in found):
+        return
+    first, second = (_printed(line, pairs[0].start(name)) for name in ("one", "other"))
+    if first is None or second is None or first.percent or second.percent or first.value == second.value:
+        return
+    larger, smaller = sorted((first, second), key=lambda printed: printed.value, reverse=True)
+    decimals = max(first.decimals, second.decimals)
+    told = Printed(f"{larger.text} − {smaller.text}", larger.value - smaller.value, decimals)
+    yield Mention("mean_difference", told, *pairs[0].span(), (pairs[0].start("one"), pairs[0].end("other")))
+
+
+@cache
+def _two_means() -> regex.Pattern[str]:
+    return regex.compile(
+        rf"""(?<one>{NUMBER})(?!\ ?[-%])(?:\ (?!and\b|to\b)[\p{{L}}/°²³]{{1,12}}){{0,4}}\ (?:vs\.?|versus|against|compared\ (?:with|to)|rather\ than|as\ opposed\ to|and)\ (?:an?\ |the\ |mean\ |of\ |in\ ){{0,3}}
+            (?<other>{NUMBER})(?!\ ?(?:-|%|{_OF_CASES}))""",
+        regex.VERBOSE,
+    )
+
+
+_OF_CASES = r"participants?|subjects?|patients?|people|groups?|arms?|conditions?|per\b|in\ each|weeks?|months?|years?|days?|times?"
 _CHANGED = r"(?:absolute|relative|differences?|reductions?|increases?|improvements?|decreases?|changes?|margin|points?|coefficient|variation|CV)\b"
 
 

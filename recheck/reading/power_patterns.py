@@ -16,6 +16,13 @@ _V = rf"(?P<v>{NUMBER})"
 COUNTED = ("one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten")
 _COUNT = rf"(?:{'|'.join(COUNTED)}|\d{{1,2}})"
 _G = rf"(?P<g>{'|'.join(COUNTED)}|\d{{1,2}})"
+_ONES = r"one|two|three|four|five|six|seven|eight|nine"
+_TENS = r"twenty|thirty|forty|fifty|sixty|seventy|eighty|ninety"
+_BELOW_100 = rf"(?:(?:{_TENS})(?:[\ -](?:{_ONES}))?|ten|eleven|twelve|(?:thir|four|fif|six|seven|eigh|nine)teen|{_ONES})"
+IN_WORDS = (
+    rf"(?<![\p{{L}}-])(?i:(?:(?:a|{_ONES})\ hundred(?:\ (?:and\ )?{_BELOW_100})?|{_BELOW_100}))(?![\p{{L}}-])"
+)
+_N = rf"(?:{_V}|(?P<w>{IN_WORDS}))"
 LINKS = (
     r"(?:[\ ,]*(?:=|:|≥|>|≤|<|≈|of|was|were|is|are|at|to|level|set|being|as|about|approximately|around|least|equal|equals|fixed"
     r"|desired|minimum|estimated|estimate|assumed|a|an|the|be|kept|held|value|criterion|threshold|rate|probability|prob\.?|error|err"
@@ -34,6 +41,11 @@ _PEOPLE = (
 )
 _WHO = r"(?:\ (?!of\b|and\b|or\b|to\b|with\b|for\b|in\b|were\b|was\b|per\b|each\b|we\b|points?\b|weeks?\b|days?\b|months?\b|years?\b)[\p{L}-]{2,20}){0,3}"
 _GROUP = r"(?:treatment\ |study\ |experimental\ |randomi[sz]ed\ )?(?:groups?|arms?|conditions?|cells?|samples?|recipes?|ovens?|flours?|treatments?|batch|teams?|cohorts?|centres?\ and\ arm)\b"
+_IN_ONE = rf"(?:\ [\p{{L}}-]+){{0,3}}?\ (?:in|to|for|on)\ (?:the\ |an?\ )[\p{{L}}-]+(?:\ [\p{{L}}-]+)?(?:\ {_GROUP})?"
+_IN_OTHER = (
+    rf"(?:\ [\p{{L}}-]+){{0,3}}?\ (?:in|to|for|on)\ (?:the\ |an?\ )(?:[\p{{L}}-]+\ ){{0,2}}(?:{_GROUP}|one\b)"
+)
+_AND = r"(?:,?\ and\ |\ vs\.?\ |\ versus\ )(?:at\ least\ )?"
 _NEEDED = r"(?:needed|required|necessary|sufficient|adequate|enough|requested|called\ for|suggested|recommended|indicated|planned|to\ be)"
 
 ROLES: tuple[tuple[str, str], ...] = (
@@ -102,20 +114,23 @@ ROLES: tuple[tuple[str, str], ...] = (
     ("n2", rf"\b(?i:sample\ size)\ (?:of\ )?group\ 2\ ?(?:=|:)\ ?{_V}"),
     ("n1", rf"(?<![\p{{L}}])n_?(?:1|₁)\ ?=\ ?{_V}"),
     ("n2", rf"(?<![\p{{L}}])n_?(?:2|₂)\ ?=\ ?{_V}"),
-    ("n", rf"{_V}(?:\ \(?[\p{{L}}-]{{2,20}}\)?){{0,4}}?\ ?(?:/|\b(?:per|in\ each|for\ each|in\ either|in\ every|for\ every|to\ each|each\ in|in\ both|within\ each|each\ for)\b)[\ -]?(?:of\ the\ )?(?:{_COUNT}\ )?(?:[\p{{L}}-]+\ )?{_GROUP}"),
+    ("n1", rf"{_V}(?={_IN_ONE}{_AND}{NUMBER}{_IN_OTHER})"),
+    ("n2", rf"(?<={NUMBER}{_IN_ONE}{_AND}){_V}(?={_IN_OTHER})"),
+    ("n", rf"\b(?:2|[Tt]wo)\ ?[×x]\ ?{_N}(?=[.,;)]|\ (?:[\p{{L}}-]+\ ){{0,2}}{_PEOPLE}|$)"),
+    ("n", rf"{_N}(?:\ \(?[\p{{L}}-]{{2,20}}\)?){{0,4}}?\ ?(?:/|\b(?:per|in\ each|for\ each|in\ either|in\ every|for\ every|to\ each|each\ in|in\ both|within\ each|each\ for)\b)[\ -]?(?:of\ the\ )?(?:{_COUNT}\ )?(?:[\p{{L}}-]+\ )?{_GROUP}"),
     ("n", rf"\b(?:per|each|every|in\ each|for\ each)[\ -](?:[\p{{L}}-]+\ )?{_GROUP}(?:'s)?(?:\ (?:must|should|would|needs?|needed|requires?|required|to|have|has|include|includes|contain|consist|be|at|least|a|minimum|size|sizes|of|is|was|had|did|comprise|comprised|had\ to|\d?))*\ ?(?:[,:=]\ ?|\(\ ?(?=n\ ?=))?(?:n\ ?=\ ?)?{_V}"),
     ("n", rf"\bgroup\ sizes?(?:\ (?:of|was|were|is|should\ be|would\ be|required))*\ ?=?\ ?{_V}"),
     ("n", rf"\b(?:{'|'.join(COUNTED)}|both|equal)\ {_GROUP}\ of\ (?:at\ least\ )?(?:size\ )?{_V}"),
-    ("n", rf"{_V}{_WHO}\ each\b"),
+    ("n", rf"{_N}{_WHO}\ each\b"),
     ("N", rf"(?<![\p{{L}}])N\ ?(?:=|≥|>|of|:)\ ?{_V}"),
     ("N", rf"\b(?:total|overall|combined|whole|entire|full)(?:\ (?:of|number|sample|size|N|n|for|the|required|minimum|study|would|be|is|was|were|both|all|{_PEOPLE[3:-1]}))*\ ?(?:\(?\ ?[Nn]\ ?)?(?:=|:|≥)?\ ?(?:at\ least\ |about\ )?{_V}"),
-    ("N", rf"{_V}{_WHO}\ (?:in\ (?:total|all)|overall|altogether|total)\b"),
+    ("N", rf"{_N}{_WHO}\ (?:in\ (?:total|all)|overall|altogether|total)\b"),
     ("size", rf"(?<![\p{{L}}_])n\ ?(?:=|≥|>|of|:)\ ?{_V}"),
     ("size", rf"\bsample(?:\ sizes?)?(?:\ (?:of|was|is|should|would|be|required|needed|to|at|least|a|minimum|estimated|calculated|as|necessary|recommended))*\ ?=?\ ?(?:n\ ?=\ ?)?{_V}"),
     ("size", rf"\b(?:need(?:s|ed)?|requir(?:e|es|ed|ing)|minimum\ of|at\ least|suggested|indicated|recommended|asked\ for|called\ for|calls\ for|yielded|gave)(?:\ (?:to|a|an|minimum|of|at|least|about|that|we|test|recruit|the|total|n))*\ ?(?:n\ ?=\ ?)?{_V}(?=\ {_PEOPLE}|(?:\ [\p{{L}}-]+)?\ {_PEOPLE}|\ (?:were|are|would|is)\ {_NEEDED})"),
-    ("size", rf"{_V}{_WHO}\ (?:(?:would|will|should|must|had|have|has)\ )?(?:have\ )?(?:been|be|are|were|is|was|to\ be)?\ ?(?:at\ least\ )?{_NEEDED}\b"),
+    ("size", rf"{_N}{_WHO}\ (?:(?:would|will|should|must|had|have|has)\ )?(?:have\ )?(?:been|be|are|were|is|was|to\ be)?\ ?(?:at\ least\ )?{_NEEDED}\b"),
     ("size", rf"\bsample\ size\b(?:[^.;]|\.\d){{0,140}}?\b(?:is|was|were|yielded|gives|gave)\ (?:at\ least\ |calculated\ (?:as|to\ be)\ |n\ ?=\ ?)?{_V}(?=\ {_PEOPLE}|[.;,]|$|\ \()"),
-    ("size", rf"{_V}(?=(?:\ [\p{{L}}-]+){{0,2}}\ {_PEOPLE}\b)"),
+    ("size", rf"{_N}(?=(?:\ [\p{{L}}-]+){{0,2}}\ {_PEOPLE}\b)"),
 )  # fmt: skip
 """Role and pattern. `aside` numbers belong to nothing; `beta` and `confidence` are complements of power and alpha;
 `size` is a number of cases that is not said to be that of a group or of all."""

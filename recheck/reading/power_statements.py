@@ -247,8 +247,14 @@ def _with_symbols(named: dict[str, Printed]) -> None:
     if delta is not None:
         named.setdefault("mean_difference" if "sd" in named else "d", delta)
     first, second = named.pop("n1", None), named.pop("n2", None)
-    if first is not None and second is not None and first.value == second.value:
+    if first is None or second is None:
+        return
+    if first.value == second.value:
         named.setdefault("n", first)
+    elif not {"n", "N"} & named.keys():
+        named["N"] = Printed(f"{first.text} + {second.text}", first.value + second.value, 0)
+        told = Printed(f"{second.text} / {first.text}", second.value / first.value, 0)
+        named.setdefault("ratio", told)
 
 
 def _placed_size(named: dict[str, Printed]) -> None:
@@ -309,8 +315,10 @@ def _said(text: str, near: str, values: Mapping[str, Printed]) -> tuple[str, ...
     if {"independent", "paired"} <= said.keys() and "d_z" in values:
         said.pop("independent")
     said |= dict.fromkeys(_direction(text))
-    if "n" in values or {"n1", "n2"} <= values.keys():
+    if "n" in values or ({"n1", "n2"} <= values.keys() and values["n1"].value == values["n2"].value):
         said["per-group"] = None
+    elif {"n1", "n2"} <= values.keys():
+        said |= {"in-total": None, "independent": None}
     elif "N" in values:
         said["in-total"] = None
     return tuple(said)
@@ -333,13 +341,31 @@ def without_their_numbers(placed: Sequence[Placed], powers: Sequence[Placed]) ->
 
     def inside(item: Placed) -> bool:
         texts = {printed.text for printed in item.claim.values.values()}
-        return any(
+        return _planned(item) or any(
             item.passage == power.passage and item.start < power.end and power.start < item.end
-            and texts <= {printed.text for printed in power.claim.values.values()}
+            and texts <= {part for printed in power.claim.values.values() for part in _parts(printed.text)}
             for power in powers
         )  # fmt: skip
 
     return [item for item in placed if not inside(item)]
+
+
+_PLANS = regex.compile(
+    r"(?i)\bpower(?:ed)?\ (?:analys\w+|calculation\w*|to\ (?:detect|find|show)|(?:of|for)\ \d)|\b(?:sufficient|enough|adequate|statistical|high)\ power\b"
+    r"|\bsensitivity\ (?:power\ )?(?:analys|calculation)|\bsample\ size\ (?:calculation|estimation|planning)|\bminimum\ detectable"
+)
+
+
+def _planned(item: Placed) -> bool:
+    """Whether an effect without a p or an interval is one that a plan assumes: `sensitivity analysis showed that d = 0.40 could be detected`."""
+    values = set(item.claim.values)
+    lone = item.claim.kind == "estimate" and bool(values) and values <= {*EFFECTS, "g", "eta2", "omega2"}
+    return lone and _PLANS.search(item.text, timeout=TIMEOUT) is not None
+
+
+def _parts(text: str) -> tuple[str, ...]:
+    """A number as it is printed, and those that it was reckoned from: `15 − 10`, `64 + 32`."""
+    return (text, *regex.split(r"\ [−+/]\ ", text))
 
 
 def in_reading_order(

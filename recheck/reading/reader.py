@@ -11,7 +11,9 @@ from recheck.model import Claim, Confidence, Document, Passage, Printed, Reading
 from recheck.reading.assignments import assignments, ns_at
 from recheck.reading.claims import Draft, drafts
 from recheck.reading.context import Setting, decimal_comma, in_paragraph, setting_of
+from recheck.reading.counted_groups import with_counted_groups
 from recheck.reading.glyphs import Repairs, doubted, repaired
+from recheck.reading.group_sizes import Told, with_group_sizes
 from recheck.reading.groups import announced_spread, size_of_each, with_means
 from recheck.reading.items import Assignment
 from recheck.reading.listed import corrected
@@ -28,9 +30,11 @@ from recheck.reading.power_statements import (
     without_their_numbers,
 )
 from recheck.reading.quoting import Sentence, beside_earlier_work, of_earlier_work
+from recheck.reading.rank_sizes import with_rank_sizes
 from recheck.reading.relating import related
 from recheck.reading.significance import told_in_words
 from recheck.reading.tokens import DIGITS, Spans, sentences, tokens
+from recheck.reading.told_spreads import with_told_spreads
 from recheck.reading.traps import trapped
 from recheck.reading.variance_tests import of_variances
 from recheck.reading.views import View, view_of
@@ -172,20 +176,33 @@ def _sentence(sentence: Sentence, setting: Setting, left: Counter[str]) -> Itera
     parts = [item.part for item in items]
     worded = "p" not in parts and parts.count("statistic") == 1
     items, together = in_parallel(items, line)
+    told: list[Told] = []
     for draft in sorted((*drafts(items, line), *together), key=lambda draft: draft.first):
-        label = (_own_sign(sentence, sign) or setting.plus_minus) if _after_sign(draft) else (brackets or setting.in_brackets)
+        label = (
+            (_own_sign(sentence, sign) or setting.plus_minus)
+            if _after_sign(draft)
+            else (brackets or setting.in_brackets)
+        )
         name = named(draft, label, says)
-        if name is None:
-            continue
-        reason = trapped(draft, sentence) or _credible(draft, setting)
+        reason = name and (trapped(draft, sentence) or _credible(draft, setting))
         if reason:
             left[reason] += 1
+        else:
+            told.append((draft, name and _sized(name, each)))
+    found: list[Told] = []
+    for draft, name in with_rank_sizes(
+        with_counted_groups(with_group_sizes(told)), sentence.text, sentence.start
+    ):
+        if name is None:
             continue
         if worded:
             name = told_in_words(draft, name, sentence)
         if earlier or beside_earlier_work(draft, sentence):
             name = _of_earlier_work(name)
-        yield draft, replace(_sized(name, each), stated=_said(draft, name, says))
+        found.append((draft, replace(name, stated=_said(draft, name, says))))
+    for draft, name in with_told_spreads(found, sentence.text, sentence.start, sentence.before):
+        if name is not None:
+            yield draft, name
 
 
 def _own_sign(sentence: Sentence, told: str) -> str:

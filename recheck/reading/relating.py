@@ -6,9 +6,10 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from recheck.model import Claim, Document, Passage, SameResult
+from recheck.reading.caption_links import with_captions
 from recheck.reading.linking import in_prose
 from recheck.reading.placed import Placed
-from recheck.reading.risk_links import with_counts
+from recheck.reading.risk_links import all_crude, with_counts
 from recheck.reading.table_links import linked_further, unlinked_others
 from recheck.reading.told import Item, items_of, names_of
 from recheck.reading.twice import same_results
@@ -30,8 +31,11 @@ def related(
     items = unlinked_others(items_of(current, passages, names))
     claims |= {item.claim.id: item.claim for item in items}
     claims |= linked_further(items, texts, names)
+    if document.tables:
+        cells = [item.claim for item in placed if item.passage < 0]
+        claims |= with_captions(items, cells, document.tables, claims)
     claims |= {i.claim.id: _named(i, claims[i.claim.id]) for i in items if i.about.outcome or i.about.group}
-    claims |= with_counts(placed, claims)
+    claims |= with_counts(placed, claims, crude=all_crude(texts))
     order = {item.claim.id: at for at, item in enumerate(placed)}
     same = same_results(items, passages, names, order)
     return tuple(claims[item.claim.id] for item in placed), same

@@ -14,6 +14,7 @@ import regex
 
 from recheck.model import EFFECTS_ON_RISK, LEVELS, TOTAL_OF_GROUP, Claim, Confidence
 from recheck.reading.placed import Placed
+from recheck.reading.views import TIMEOUT
 
 IN_SENTENCE = "the two counts told with it in the same sentence"
 OF_CHANGES = "the two numbers of changes told with McNemar's test in the same sentence"
@@ -34,8 +35,55 @@ _BEFORE = 40
 """Characters before a result that may say of what kind it is, where a sentence holds several."""
 
 
-def with_counts(placed: Sequence[Placed], claims: Mapping[str, Claim]) -> dict[str, Claim]:
-    """Each ratio or difference of risks with the ids of its counts, by its own id; `claims` are all as they stand now."""
+_ALL_CRUDE = regex.compile(
+    r"""(?i)\b(?:all|odds|risk|relative|reported|these|ratios?|differences?|associations?|estimates?)\b[^.;]{0,60}\b(?:are|were|is)\ (?:all\ |reported\ |given\ |presented\ |shown\ )*
+        (?:as\ )?(?:crude|un-?adjusted|non-?adjusted|univaria\w+)(?!\s+(?:p\b|for\ multip))
+        | \bwe\ (?:report|present|give|calculated|computed|estimated)\ (?:only\ )?(?:crude|un-?adjusted)\b""",
+    regex.VERBOSE,
+)
+
+
+_NO_ADJUSTMENT = regex.compile(
+    r"(?i)\b(?:not|no|without)\ (?:any\ |further\ )?adjust\w*|\bp[ -]values?[^.;]{0,30}\badjust\w*|\badjust\w*\ (?:p[ -]values?|for\ multipl\w+)"
+)
+
+
+def all_crude(texts: Sequence[str]) -> bool:
+    """Whether a document says once that its ratios are crude, and nowhere speaks of adjusted ones."""
+    said = False
+    for text in texts:
+        low = text.lower()
+        if "djust" not in low and "crude" not in low and "univaria" not in low and "multivaria" not in low:
+            continue
+        if _ADJUSTED.search(_NO_ADJUSTMENT.sub("", text, timeout=TIMEOUT), timeout=TIMEOUT):
+            return False
+        said = said or _ALL_CRUDE.search(text, timeout=TIMEOUT) is not None
+    return said
+
+
+def with_counts(
+    placed: Sequence[Placed], claims: Mapping[str, Claim], *, crude: bool = False
+) -> dict[str, Claim]:
+    """Each ratio or difference of risks with the ids of its counts, by its own id.
+
+    `claims` are all as they stand now; `crude` tells that the document calls all its ratios so.
+    """
+    linked = dict(_with_counts(placed, claims))
+    if not crude:
+        return linked
+    return {
+        name: _called_crude(claim) if EFFECTS_ON_RISK & claim.values.keys() else claim
+        for name, claim in linked.items()
+    }
+
+
+def _called_crude(claim: Claim) -> Claim:
+    if claim.says("crude", "covariate-adjusted"):
+        return claim
+    return replace(claim, stated=(*claim.stated, "crude"))
+
+
+def _with_counts(placed: Sequence[Placed], claims: Mapping[str, Claim]) -> dict[str, Claim]:
     found = {}
     sentences: dict[tuple[int, int], list[Placed]] = defaultdict(list)
     for item in placed:

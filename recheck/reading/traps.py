@@ -121,7 +121,7 @@ _PLANS = (
     "assumed to be", "personal communication",
 )  # fmt: skip
 _EXAMPLES = ("for example, if", "for instance, if", "if for instance", "if for example", "if, for instance", "if, for example", "suppose ", "imagine ", "hypothetical example", "hypothetical data",
-             "hypothetical stud", "hypothetical result", "simulat", "would be reported as",
+             "hypothetical stud", "hypothetical result", "would be reported as",
              "for illustration", "fictitious", "a random variable", "drawn from a", "sampled from a", "generated from",
              "generating", "normal distribution with", "prior distribution", "priors ", "gaussian")  # fmt: skip
 
@@ -145,13 +145,24 @@ def _planned(draft: Draft, sentence: Sentence) -> bool:
                 "such draws",
             )
         )
-    if sentence.says(_EXAMPLES):
+    if sentence.says(_EXAMPLES) or _simulated(sentence):
         return True
     return (
         sentence.says(_PLANS)
         and not draft.part("centre")
         and not (draft.get("t", "F", "chi2") and tested(draft))
     )
+
+
+def _simulated(sentence: Sentence) -> bool:
+    """Whether numbers are drawn by a computer; people who were trained in a simulation give results."""
+    return sentence.says(("simulat",)) and not sentence.says(_SIMULATORS)
+
+
+_SIMULATORS = (
+    "simulation group", "simulation arm", "simulation training", "simulation-based", "simulation cent", "simulation session", "simulation course", "simulation class", "simulation condition", "simulation exercise",
+    "simulation lab", "simulation suite", "simulation program", "simulation teaching", "simulator", "simulated patient", "simulated driving", "driving simulat", "flight simulat", "simulated work", "simulated shift",
+)  # fmt: skip
 
 
 _ASSUMPTIONS = ("shapiro", "kolmogorov", "levene", "mauchly", "bartlett", "box's m", "normality", "normal distribution", "normally distributed", "homogeneity of varian",

@@ -21,6 +21,7 @@ def _of_variances() -> regex.Pattern[str]:
         | (?:equality|inequality|ratio|comparison|difference|homogeneity|heterogeneity)\ (?:of|in|between)\ (?:the\ )?(?:error\ |two\ |both\ |group\ )?varianc\w+
         | variance\ ratio | homoge?n?e?oscedastic\w* | homoscedastic\w*
         | \bvariances?\b [^;,]{0,90}? \b(?:differ\w*|equal|unequal|similar|alike|homogeneous|heterogeneous|larger|smaller|greater)\b
+        | \b(?:sds|standard\ deviations)\b [^;,.]{0,60}? \b(?:differ\w*|equal|unequal|similar|homogeneous|heterogeneous)\b
         | differ\w*\ in\ (?:their\ )?varianc\w+ | \bvariances\b""",
         regex.VERBOSE,
     )

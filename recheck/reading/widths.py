@@ -41,7 +41,9 @@ def tells_margins(text: str) -> bool:
     if not any(sign in low for sign in ("±", "+/-", "+-", "plus", "errors", "limits", "uncertaint")):
         return False
     for match in _told().finditer(low, timeout=TIMEOUT):
-        sentence = low[low.rfind(". ", 0, match.start()) + 1 : match.start()] + low[match.end() :].split(". ")[0]
+        sentence = (
+            low[low.rfind(". ", 0, match.start()) + 1 : match.start()] + low[match.end() :].split(". ")[0]
+        )
         if not _ELSEWHERE.intersection(word.strip("(),;:.") for word in sentence.split()):
             return True
     return False

@@ -6,15 +6,18 @@ mean and SD has a low and a high end and varies by itself; SDs are cut at 0.
 
 from __future__ import annotations
 
-from itertools import product
+from functools import cache
+from itertools import combinations, product
 
 import numpy as np
-from numpy.typing import ArrayLike
+from numpy.typing import ArrayLike, NDArray
 
 from recheck.recompute.arrays import HALF_ULP, Bounds, Floats, quotient, spread_bounds, together
 
 MOST_GROUPS = 12
 """Groups above which the corners of a box are too many to visit."""
+CHUNK = 1 << 15
+"""Numbers at a time, so that temporaries stay in the cache."""
 
 
 def ss_between(means: ArrayLike, weights: ArrayLike) -> Floats:
@@ -43,7 +46,7 @@ def f_welch(means: ArrayLike, sds: ArrayLike, ns: ArrayLike) -> tuple[Floats, Fl
     """Welch's F for unequal variances and its second df (the first is k - 1).
 
     With w = n / sd², L = sum (1 - w / sum w)² / (n - 1): F = (sum w (m - m̄_w)² / (k - 1)) /
-    (1 + 2 (k - 2) L / (k² - 1)), df2 = (k² - 1) / (3 L). Source: Welch (1951), Biometrika 38:330-336.
+    (1 + 2 (k - 2) L / (k² - 1)), df2 = (k² - 1) / (3 L); nan where an SD is 0. Source: Welch (1951), Biometrika 38:330-336.
     """
     means, sds, ns = together(means, sds, ns)
     k, weights = means.shape[-1], quotient(ns, sds**2)
@@ -86,11 +89,39 @@ def ss_between_bounds(low: ArrayLike, high: ArrayLike, weights: ArrayLike) -> Bo
     lost = HALF_ULP * (np.abs(origin) + np.maximum(np.abs(low), np.abs(high)))
     lost = np.where(lost < 1e-9 * (high - low), 0.0, lost)
     low, high = low - origin - lost, high - origin + lost
-    corners = np.array(list(product((False, True), repeat=k)))
-    most = np.max(
-        ss_between(np.where(corners, high[..., None, :], low[..., None, :]), weights[..., None, :]), axis=-1
-    )
-    return _least_ss(low, high, weights), np.asarray(most)
+    return _least_ss(low, high, weights), _most_ss(low, high, weights)
+
+
+def _most_ss(low: Floats, high: Floats, weights: Floats) -> Floats:
+    """The greatest weighted sum of squares at a corner of each box; see `ss_between_bounds`.
+
+    With W the sum of weights it is the sum of w_i w_j / W (m_i - m_j)² over pairs, each of which takes one
+    of four values at a corner: no difference is lost in a larger sum.
+    """
+    k = low.shape[-1]
+    pairs = list(combinations(range(k), 2))
+    rows = [np.ascontiguousarray(np.reshape(part, (-1, k)).T) for part in (low, high, weights)]
+    most = np.zeros(rows[0].shape[1])
+    step = max(1, CHUNK // 2**k)
+    for start in range(0, len(most) if pairs else 0, step):
+        a, b, w = (part[:, start : start + step] for part in rows)
+        share = w / np.sum(w, axis=0)
+        terms = np.stack([
+            w[i] * share[j] * (x[i] - y[j]) ** 2 for i, j in pairs for x in (a, b) for y in (a, b)
+        ])  # fmt: skip
+        most[start : start + step] = np.max(_corners(k) @ terms, axis=0)
+    return most.reshape(low.shape[:-1])
+
+
+@cache
+def _corners(k: int) -> Floats:
+    """Which of the four values each pair of groups takes at each corner of a box, as zeros and ones."""
+    upper: NDArray[np.bool_] = np.array(list(product((False, True), repeat=k)), dtype=np.bool_)
+    columns = [
+        (upper[:, i] == x) & (upper[:, j] == y)
+        for i, j in combinations(range(k), 2) for x in (False, True) for y in (False, True)
+    ]  # fmt: skip
+    return np.stack(columns, axis=1).astype(np.float64)
 
 
 def _least_ss(low: Floats, high: Floats, weights: Floats) -> Floats:
@@ -106,16 +137,29 @@ def nearest_to_their_mean(low: Floats, high: Floats, weights: Floats) -> Floats:
     It solves sum w (nearest - c) = 0, whose left side falls with c and is linear between the ends of
     intervals: see `ss_between_bounds`. Intervals lie along the last axis.
     """
-    ends = np.concatenate([low, high], axis=-1)
-    nearest = np.clip(ends[..., None], low[..., None, :], high[..., None, :])
-    slope = np.sum(weights[..., None, :] * (ends[..., None] - nearest), axis=-1)
-    left = np.max(np.where(slope <= 0, ends, -np.inf), axis=-1, keepdims=True)
-    right = np.min(np.where(slope >= 0, ends, np.inf), axis=-1, keepdims=True)
+    k = low.shape[-1]
+    # Groups lie along the first axis here, where sums are quick; rows go by chunks that stay in the cache.
+    rows = [np.ascontiguousarray(np.reshape(part, (-1, k)).T) for part in (low, high, weights)]
+    found: Floats = np.empty(rows[0].shape)
+    step = max(1, CHUNK // (2 * k * k))
+    for start in range(0, found.shape[1], step):
+        part = slice(start, start + step)
+        found[:, part] = _nearest(*(row[:, part] for row in rows))
+    return np.asarray(found.T.reshape(low.shape))
+
+
+def _nearest(low: Floats, high: Floats, weights: Floats) -> Floats:
+    ends = np.concatenate([low, high])
+    gaps = ends - np.minimum(np.maximum(ends, low[:, None]), high[:, None])
+    gaps *= weights[:, None]
+    slope = np.sum(gaps, axis=0)
+    left = np.max(np.where(slope <= 0, ends, -np.inf), axis=0)
+    right = np.min(np.where(slope >= 0, ends, np.inf), axis=0)
     below, above = high <= left, low >= right
     pull = np.where(below | above, weights, 0.0)
     fixed = np.where(below, high, np.where(above, low, 0.0))
-    centre = quotient(np.sum(pull * fixed, axis=-1, keepdims=True), np.sum(pull, axis=-1, keepdims=True))
-    return np.asarray(np.clip(np.where(np.isnan(centre), left, centre), low, high))
+    centre = quotient(np.sum(pull * fixed, axis=0), np.sum(pull, axis=0))
+    return np.clip(np.where(np.isnan(centre), left, centre), low, high)
 
 
 def f_one_way_bounds(
@@ -158,9 +202,10 @@ def f_welch_bounds(
     mean_low, mean_high, sd_low, sd_high, ns = together(mean_low, mean_high, sd_low, sd_high, ns)
     sd_low, sd_high = spread_bounds(sd_low, sd_high)
     k, light, heavy = mean_low.shape[-1], quotient(ns, sd_high**2), quotient(ns, sd_low**2)
-    least, most = ss_between_bounds(mean_low, mean_high, light)[0], np.full(light.shape[:-1], np.inf)
-    if np.all(np.isfinite(heavy)):
-        most = ss_between_bounds(mean_low, mean_high, heavy)[1]
+    least = ss_between_bounds(mean_low, mean_high, light)[0]
+    endless = np.isinf(heavy)
+    most = ss_between_bounds(mean_low, mean_high, np.where(endless, 1.0, heavy))[1]
+    most = np.where(np.any(endless, axis=-1), np.inf, most)
     others_light = np.sum(light, axis=-1, keepdims=True) - light
     with np.errstate(invalid="ignore"):
         others_heavy = np.sum(heavy, axis=-1, keepdims=True) - heavy

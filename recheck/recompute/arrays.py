@@ -9,7 +9,7 @@ from numpy.typing import ArrayLike, NDArray
 
 Floats: TypeAlias = NDArray[np.float64]
 Bounds: TypeAlias = tuple[Floats, Floats]
-"""Lower and upper ends, each of the shape to which the arguments broadcast."""
+"""Lower and upper ends, each of the shape to which the arguments broadcast on which that end depends."""
 HALF_ULP = 2.0**-53
 """Relative error of the double nearest to a decimal number, at most."""
 
@@ -59,6 +59,16 @@ def quotient_bounds(top_low: Floats, top_high: Floats, bottom_low: Floats, botto
     high = quotient(top_high, np.where(top_high > 0, bottom_low, bottom_high))
     low = quotient(top_low, np.where(top_low < 0, bottom_low, bottom_high))
     return low, high
+
+
+def where_known(bounds: Bounds, *ends: ArrayLike) -> Bounds:
+    """The bounds, nan where an end of the box is nan: minima and maxima of corners may have passed it over."""
+    unknown: NDArray[np.bool_] = np.zeros((), dtype=bool)
+    for end in floats(*ends):
+        unknown = unknown | np.isnan(end)
+    if not np.any(unknown):
+        return bounds
+    return np.where(unknown, np.nan, bounds[0]), np.where(unknown, np.nan, bounds[1])
 
 
 def absolute_bounds(low: ArrayLike, high: ArrayLike) -> Bounds:

@@ -22,7 +22,7 @@ from recheck.recompute.tails import chi2_tail, f_tail, r_tail, t_tail, z_tail
 def p_from_t_bounds(
     t_low: ArrayLike, t_high: ArrayLike, df_low: ArrayLike, df_high: ArrayLike, tails: ArrayLike = 2
 ) -> Bounds:
-    """Range of p over a box of t and df.
+    """Range of p, by `t_tail`, over a box of t and df.
 
     `tails` 2: the box is of |t|, what lies below 0 is cut off; 1: t is signed, p the upper tail.
     Corners: the tail falls as t rises; as df rises it falls where t > 0 and rises where t < 0 (the
@@ -36,7 +36,7 @@ def p_from_t_bounds(
 
 
 def p_from_z_bounds(z_low: ArrayLike, z_high: ArrayLike, tails: ArrayLike = 2) -> Bounds:
-    """Range of p over an interval of z: `tails` 2 of |z|, 1 of the signed z with p its upper tail."""
+    """Range of p, by `z_tail`, over an interval of z: `tails` 2 of |z|, 1 of the signed z with p its upper tail."""
     z_low, z_high, tails = floats(z_low, z_high, tails)
     low, high = z_tail(_cut(z_high, tails)), z_tail(_cut(z_low, tails))
     return np.asarray(tails * low), np.asarray(tails * high)
@@ -45,7 +45,7 @@ def p_from_z_bounds(z_low: ArrayLike, z_high: ArrayLike, tails: ArrayLike = 2) -
 def p_from_chi2_bounds(
     chi2_low: ArrayLike, chi2_high: ArrayLike, df_low: ArrayLike, df_high: ArrayLike
 ) -> Bounds:
-    """Range of the upper tail over a box of chi-square and df.
+    """Range of the upper tail, `chi2_tail`, over a box of chi-square and df.
 
     Corners: the tail falls as chi-square rises, and rises with df, since an independent chi-square
     variable is added to the first.
@@ -56,7 +56,7 @@ def p_from_chi2_bounds(
 def p_from_r_bounds(
     r_low: ArrayLike, r_high: ArrayLike, df_low: ArrayLike, df_high: ArrayLike, tails: ArrayLike = 2
 ) -> Bounds:
-    """Range of p over a box of r and df = n - 2; r is cut to its range.
+    """Range of p, by `r_tail`, over a box of r and df = n - 2; r is cut to its range.
 
     `tails` 2: the box is of |r|; 1: r is signed, p the upper tail. Corners: t = r sqrt(df / (1 - r²))
     rises with r and moves away from 0 with df, and so does its tail (see `p_from_t_bounds`).
@@ -72,7 +72,7 @@ def p_from_F_bounds(
     F_low: ArrayLike, F_high: ArrayLike,
     df1_low: ArrayLike, df1_high: ArrayLike, df2_low: ArrayLike, df2_high: ArrayLike,
 ) -> Bounds:  # fmt: skip
-    """Range of the upper tail over a box of F, df1 and df2.
+    """Range of the upper tail, `f_tail`, over a box of F, df1 and df2.
 
     The tail falls as F rises. In df1 it rises, or rises and then falls: the least value has df1 at an
     end. In df2 it falls, or falls and then rises: the greatest value has df2 at an end. The other

@@ -9,7 +9,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from recheck.recompute.arrays import Bounds, Floats, floats, quotient
+from recheck.recompute.arrays import Bounds, Floats, floats, quotient, where_known
 from recheck.recompute.intervals import t_from_ci, t_from_ci_bounds
 from recheck.recompute.tails import z_quantile, z_two_sided
 
@@ -30,7 +30,10 @@ def p_from_z_approximate(z: ArrayLike) -> Floats:
 
 
 def se_from_p(estimate: ArrayLike, p: ArrayLike) -> Floats:
-    """SE of an estimate from its two-sided p against 0, |estimate| / z; of a ratio, that of its logarithm."""
+    """SE of an estimate from its two-sided p against 0, |estimate| / z; of a ratio, that of its logarithm.
+
+    Source: Altman & Bland (2011), BMJ 343:d2090.
+    """
     estimate, p = floats(estimate, p)
     return quotient(np.abs(estimate), z_quantile(p / 2))
 
@@ -74,8 +77,9 @@ def ci_from_p_bounds(
             ends = [estimate + factor * np.abs(estimate) for estimate in (estimate_low, estimate_high)]
         return np.asarray(pick(pick(ends[0], ends[1]), inside))
 
-    lower = extreme(np.fmin, -far), extreme(np.fmax, -near)
-    return lower, (extreme(np.fmin, near), extreme(np.fmax, far))
+    box = estimate_low, estimate_high, p_low, p_high
+    lower = where_known((extreme(np.fmin, -far), extreme(np.fmax, -near)), *box)
+    return lower, where_known((extreme(np.fmin, near), extreme(np.fmax, far)), *box)
 
 
 def p_from_ci(low: ArrayLike, high: ArrayLike, level: ArrayLike) -> Floats:

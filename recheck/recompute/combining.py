@@ -10,11 +10,11 @@ import numpy as np
 from numpy.typing import ArrayLike
 
 from recheck.recompute.anova import ss_between, ss_between_bounds
-from recheck.recompute.arrays import Bounds, Floats, floats, quotient, spread_bounds, together
+from recheck.recompute.arrays import Bounds, Floats, floats, quotient, spread_bounds, together, where_known
 
 
 def union_mean(means: ArrayLike, ns: ArrayLike) -> Floats:
-    """Mean of all cases of several groups, sum n m / sum n."""
+    """Mean of all cases of several groups, sum n m / sum n. By definition."""
     means, ns = together(means, ns)
     return quotient(np.sum(ns * means, axis=-1), np.sum(ns, axis=-1))
 
@@ -66,7 +66,7 @@ def pooled_sd_of_bounds(sd_low: ArrayLike, sd_high: ArrayLike, ns: ArrayLike) ->
 
 
 def rest_mean(mean: ArrayLike, n: ArrayLike, mean_part: ArrayLike, n_part: ArrayLike) -> Floats:
-    """Mean of the cases of a total that are not in a part of it; nan where the part is all."""
+    """Mean of the cases of a total that are not in a part of it, from `union_mean`; nan where the part is all."""
     mean, n, mean_part, n_part = floats(mean, n, mean_part, n_part)
     # As the total's mean and what the part takes from it, which keeps digits for means that are far from 0.
     return np.asarray(mean + quotient(n_part * (mean - mean_part), n - n_part))
@@ -112,4 +112,5 @@ def rest_sd_bounds(
     far = np.maximum(mean_high - part_mean_low, part_mean_high - mean_low)
     low = rest_sd(far, sd_low, n, 0.0, part_sd_high, n_part)
     high = rest_sd(near, sd_high, n, 0.0, part_sd_low, n_part)
-    return np.where(np.isnan(low) & ~np.isnan(high), 0.0, low), high
+    bounds = np.where(np.isnan(low) & ~np.isnan(high), 0.0, low), high
+    return where_known(bounds, near, far, sd_low, sd_high, part_sd_low, part_sd_high)

@@ -13,7 +13,7 @@ from recheck.recompute.arrays import Floats, floats, quotient
 
 
 def expected_counts(counts: ArrayLike) -> Floats:
-    """Counts expected from the margins, row total times column total over the whole."""
+    """Counts expected from the margins, row total times column total over the whole. Source: Pearson (1904), On the Theory of Contingency."""
     (counts,) = floats(counts)
     rows, columns = counts.sum(axis=-1, keepdims=True), counts.sum(axis=-2, keepdims=True)
     return quotient(rows * columns, _whole(counts)[..., None, None])

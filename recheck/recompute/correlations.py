@@ -10,7 +10,7 @@ from collections.abc import Iterator
 import numpy as np
 from numpy.typing import ArrayLike
 
-from recheck.recompute.arrays import Bounds, Floats, floats, quotient, together
+from recheck.recompute.arrays import Bounds, Floats, floats, quotient, together, where_known
 
 
 def partial_r(r12: ArrayLike, r13: ArrayLike, r23: ArrayLike) -> Floats:
@@ -53,7 +53,8 @@ def partial_r_bounds(
     high = _most(r12_high, r13_low, r13_high, r23_low, r23_high)
     low = -_most(-r12_low, -r13_high, -r13_low, r23_low, r23_high)
     none = (low > 1) | (high < -1)
-    return np.where(none, np.nan, np.maximum(low, -1.0)), np.where(none, np.nan, np.minimum(high, 1.0))
+    bounds = np.where(none, np.nan, np.maximum(low, -1.0)), np.where(none, np.nan, np.minimum(high, 1.0))
+    return where_known(bounds, r12_low, r12_high, r13_low, r13_high, r23_low, r23_high)
 
 
 def _most(r12: Floats, r13_low: Floats, r13_high: Floats, r23_low: Floats, r23_high: Floats) -> Floats:

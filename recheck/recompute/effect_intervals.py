@@ -123,7 +123,8 @@ def partial_eta2_ci(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, level: ArrayLi
 def partial_eta2_ci_by_df(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, level: ArrayLike = 0.90) -> Bounds:
     """The same with the error df alone, lambda / (lambda + df2): partial eta² of the two F = lambda / df1.
 
-    Source: Kelley (2007), Journal of Statistical Software 20(8), and programs since (from memory).
+    As programs print it; Kelley (2007), Journal of Statistical Software 20(8), divides by lambda + N, as `partial_eta2_ci` does
+    in a one-way design. Source: Ben-Shachar, Lüdecke & Makowski (2020), Journal of Open Source Software 5(56):2815 (from memory).
     """
     (df2,) = floats(df2)
     low, high = noncentral_F_ci(F, df1, df2, level)
@@ -131,9 +132,9 @@ def partial_eta2_ci_by_df(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, level: A
 
 
 def share_of_lambda(noncentrality: ArrayLike, total: ArrayLike) -> Floats:
-    """Share of variance of a noncentrality, lambda / (lambda + total). Source: Steiger (2004), as above."""
+    """Share of variance of a noncentrality, lambda / (lambda + total); 1 of an infinite one. Source: Steiger (2004), as above."""
     noncentrality, total = floats(noncentrality, total)
-    return quotient(noncentrality, noncentrality + total)
+    return quotient(1.0, 1 + quotient(total, noncentrality))
 
 
 def f_ci(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, level: ArrayLike = 0.90) -> Bounds:

@@ -106,7 +106,7 @@ def d_rough(t: ArrayLike, df: ArrayLike) -> Floats:
 
 
 def d_rough_total(t: ArrayLike, n_total: ArrayLike) -> Floats:
-    """2 t / sqrt(N), which is d_s where both groups have N / 2."""
+    """2 t / sqrt(N), which is d_s where both groups have N / 2. Source: as for `d_rough`."""
     return d_rough(t, n_total)
 
 

@@ -151,7 +151,10 @@ def d_change_variance(d: ArrayLike, r: ArrayLike, n: ArrayLike) -> Floats:
 
 
 def r_variance(r: ArrayLike, n: ArrayLike) -> Floats:
-    """Variance of a correlation in large samples, (1 - r²)² / (n - 1). Source: Pearson & Filon (1898), Phil. Trans. A 191:229-311."""
+    """Variance of a correlation in large samples, (1 - r²)² / (n - 1).
+
+    Source: Pearson & Filon (1898), Phil. Trans. A 191:229-311, who have n; with n - 1 Borenstein et al. (2009), as above, formula 6.1.
+    """
     r, n = floats(r, n)
     return np.asarray(((1 - r) * (1 + r)) ** 2 / (n - 1))
 

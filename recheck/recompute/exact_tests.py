@@ -1,6 +1,7 @@
 """Exact inference from 2 x 2 tables with both margins fixed, and Fisher's test of larger ones.
 
 Tables lie along the last two axes, as in `contingency`; all others are looped over in blocks that the cache holds.
+nan where a count is no whole number, or below 0.
 The first cell follows the noncentral hypergeometric distribution, weights w(k) ψ^k with ψ the odds ratio.
 """
 
@@ -104,8 +105,9 @@ def conditional_odds_ratio(counts: ArrayLike) -> Floats:
 
 def median_unbiased_odds_ratio(counts: ArrayLike) -> Floats:
     """The odds ratio at which the observed first count is the median, by mid-P. Source: Rothman & Greenland (1998), Modern Epidemiology, 14."""
-    low, _ = odds_ratio_exact(counts, 0.0, own=0.5)
-    return low
+    low, high = odds_ratio_exact(counts, 0.0, own=0.5)
+    # 0 where the first count is the least that it may be, infinite where the greatest, unknown where it is both.
+    return np.asarray(np.where(np.isinf(high), np.where(low == 0, np.nan, high), low))
 
 
 def odds_ratio_exact(counts: ArrayLike, level: float = 0.95, *, own: float = 1.0) -> Bounds:
@@ -152,10 +154,19 @@ def _rising_to(function: Callable[[Floats], Floats], target: Floats) -> Floats:
 def _by_blocks(counts: ArrayLike, function: Callable[[_Rows], Floats]) -> Floats:
     (counts,) = floats(counts)
     flat = counts.reshape(-1, 2, 2)
+    whole = _are_counts(flat)
+    tables = np.where(whole[:, None, None], flat, 1.0)
     found = np.empty(len(flat))
-    for part in _blocks(flat):
-        found[part] = function(_rows(flat[part]))
-    return np.asarray(found.reshape(counts.shape[:-2]))
+    for part in _blocks(tables):
+        found[part] = function(_rows(tables[part]))
+    return np.asarray(np.where(whole, found, np.nan).reshape(counts.shape[:-2]))
+
+
+def _are_counts(tables: Floats) -> NDArray[np.bool_]:
+    """Tell which tables hold whole numbers from 0 alone."""
+    return np.asarray(
+        np.all((tables >= 0) & np.isfinite(tables) & (tables == np.rint(tables)), axis=(-2, -1))
+    )
 
 
 def _blocks(flat: Floats) -> Iterator[slice]:
@@ -193,6 +204,8 @@ def freeman_halton_p(counts: ArrayLike, *, most: int = 2_000_000) -> float:
     Source: Freeman & Halton (1951), Biometrika 38:141-149; the merging as in Mehta & Patel (1983), J. Am. Stat. Assoc. 78:427-434.
     """
     (counts,) = floats(counts)
+    if not _are_counts(counts):
+        return float("nan")
     table = counts[counts.sum(axis=1) > 0][:, counts.sum(axis=0) > 0].astype(int)
     table = table.T if table.shape[0] > table.shape[1] else table
     if min(table.shape, default=0) < 2:

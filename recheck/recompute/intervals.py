@@ -8,12 +8,12 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import ArrayLike
 
-from recheck.recompute.arrays import Bounds, Floats, floats, quotient, together
+from recheck.recompute.arrays import Bounds, Floats, floats, quotient, together, where_known
 from recheck.recompute.tails import t_quantile
 
 
 def critical_t(level: ArrayLike, df: ArrayLike) -> Floats:
-    """The t of a two-sided interval: the quantile with (1 - level) / 2 above it."""
+    """The t of a two-sided interval: the `t_quantile` with (1 - level) / 2 above it."""
     (level,) = floats(level)
     return t_quantile((1 - level) / 2, df)
 
@@ -35,7 +35,10 @@ def se_from_ci(low: ArrayLike, high: ArrayLike, level: ArrayLike, df: ArrayLike)
 
 
 def t_from_ci(low: ArrayLike, high: ArrayLike, level: ArrayLike, df: ArrayLike) -> Floats:
-    """t against 0 of the estimate that is the middle of its interval, t_crit (low + high) / (high - low)."""
+    """t against 0 of the estimate that is the middle of its interval, t_crit (low + high) / (high - low).
+
+    Source: Altman & Bland (2011), BMJ 343:d2304, for the normal distribution.
+    """
     low, high = floats(low, high)
     return quotient(critical_t(level, df) * (low + high), high - low)
 
@@ -44,7 +47,7 @@ def t_from_ci_bounds(
     low_lo: ArrayLike, low_hi: ArrayLike, high_lo: ArrayLike, high_hi: ArrayLike,
     level: ArrayLike, df: ArrayLike,
 ) -> Bounds:  # fmt: skip
-    """Range of the signed t against 0 over a box of both ends of an interval, low < high.
+    """Range of `t_from_ci` over a box of both ends of an interval, low < high.
 
     t rises with the low end where the high end is positive, falls where it is negative, and falls
     with the high end where the low end is positive, rises where it is negative: monotone along
@@ -59,4 +62,5 @@ def t_from_ci_bounds(
     low = np.where(touching & (least < 0), -np.inf, np.fmin.reduce(ratios))
     high = np.where(touching & (most > 0), np.inf, np.fmax.reduce(ratios))
     scale = critical_t(level, df)
-    return np.where(some, scale * low, np.nan), np.where(some, scale * high, np.nan)
+    bounds = np.where(some, scale * low, np.nan), np.where(some, scale * high, np.nan)
+    return where_known(bounds, low_lo, low_hi, high_lo, high_hi)

@@ -80,7 +80,7 @@ def triple_excess(low12: ArrayLike, high12: ArrayLike, low13: ArrayLike, high13:
 
 
 def worst_triples(low: ArrayLike, high: ArrayLike, guard: float = 1e-9) -> Iterator[tuple[int, int, int]]:
-    """Triples of variables, whose three intervals no data can have, the worst first.
+    """Triples of variables, whose three intervals no data can have, the worst first, by `triple_excess`.
 
     Takes all k (k-1) (k-2) / 6 of them at once.
     """
@@ -90,7 +90,7 @@ def worst_triples(low: ArrayLike, high: ArrayLike, guard: float = 1e-9) -> Itera
     i, j, m = np.array(list(combinations(range(len(low)), 3))).T
     excess = triple_excess(low[i, j], high[i, j], low[i, m], high[i, m], low[j, m], high[j, m])
     for at in np.argsort(-excess, kind="stable"):
-        if excess[at] <= guard:
+        if not excess[at] > guard:
             return
         yield int(i[at]), int(j[at]), int(m[at])
 
@@ -122,11 +122,13 @@ def within_box(low: ArrayLike, high: ArrayLike, *, steps: int = STEPS) -> Defini
     projections). Either an iterate of the box has no negative eigenvalue and is the witness, or the negative
     part Z of B, which tends to the normal of a separating plane, proves by `most_over_box` that there is
     none. Both are checked, so the answer does not rest on convergence; None where neither came
-    about in so many `steps`. Sources: Higham (2002), IMA Journal of Numerical Analysis 22:329-343; Beck & Teboulle
+    about in so many `steps`, or where an end is nan. Sources: Higham (2002), IMA Journal of Numerical Analysis 22:329-343; Beck & Teboulle
     (2009), SIAM Journal on Imaging Sciences 2:183-202; O'Donoghue & Candès (2015), Foundations of
     Computational Mathematics 15:715-732 for the restart.
     """
     low, high = floats(low, high)
+    if np.isnan(low + high).any():
+        return Definiteness(None)
     box = ahead = (low + high) / 2
     weight, margin = 1.0, 0.0
     for step in range(steps):
@@ -171,7 +173,7 @@ def most_over_box(vectors: ArrayLike, low: ArrayLike, high: ArrayLike) -> Fracti
     """The greatest sum of v'Rv over the rows v of `vectors`, R in the box, in exact arithmetic.
 
     It is the sum of Z_ii and 2 Z_ij times the end of the interval on the side of its sign, Z = sum of
-    vv'. `vectors` hold whole numbers up to 2**20; ends inside -1 to 1 are first moved outward by one unit
+    vv': the certificates of `within_box`. `vectors` hold whole numbers up to 2**20; ends inside -1 to 1 are first moved outward by one unit
     in the last place, by more than which the double nearest to a decimal cannot be off.
     """
     whole = [[int(x) for x in row] for row in np.atleast_2d(np.asarray(vectors, dtype=np.float64))]
@@ -185,7 +187,7 @@ def most_over_box(vectors: ArrayLike, low: ArrayLike, high: ArrayLike) -> Fracti
 
 
 def still_proved(found: Definiteness, low: ArrayLike, high: ArrayLike) -> bool:
-    """Tell whether the certificate of one box is one of another box of the same variables too."""
+    """Tell by `most_over_box` whether the certificate of one box is one of another box of the same variables too."""
     if found.vectors is None:
         return False
     low, high = floats(low, high)
@@ -198,7 +200,7 @@ def still_proved(found: Definiteness, low: ArrayLike, high: ArrayLike) -> bool:
 def fewest_at_fault(low: ArrayLike, high: ArrayLike, found: Definiteness) -> tuple[int, ...]:
     """Variables whose correlations alone no data can have; for a box whose certificate was found.
 
-    The worst three, else what is left when variables are left out one by one, those of least weight in
+    The worst three (`worst_triples`), else what is left when variables are left out one by one, those of least weight in
     the certificate first, as long as `FEW_STEPS` prove the others to be at fault; so each that is left is
     needed, as far as was looked.
     """

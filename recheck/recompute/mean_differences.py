@@ -37,6 +37,7 @@ from recheck.recompute.arrays import (
     quotient,
     spread_bounds,
     together,
+    where_known,
 )
 from recheck.recompute.f_shape import valley_floor
 from recheck.recompute.tails import t_quantile, t_two_sided
@@ -100,14 +101,15 @@ def welch_ci_bounds(
     difference = difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high)
     (level,) = floats(level)
     *box, miss = _sd_box(sd1_low, sd1_high, n1, sd2_low, sd2_high, n2, (1 - level) / 2)
-    return _ends(difference, (_least(_half_width, box, miss), _greatest(_half_width, box, miss)))
+    half = _least(_half_width, box, miss), _greatest(_half_width, box, miss)
+    return _ends(difference, where_known(half, *box))
 
 
 def welch_p_bounds(
     mean1_low: ArrayLike, mean1_high: ArrayLike, sd1_low: ArrayLike, sd1_high: ArrayLike, n1: ArrayLike,
     mean2_low: ArrayLike, mean2_high: ArrayLike, sd2_low: ArrayLike, sd2_high: ArrayLike, n2: ArrayLike,
 ) -> Bounds:  # fmt: skip
-    """Range of Welch's two-sided p over a box of means and SDs.
+    """Range of Welch's two-sided p, of `t_welch` with its df, over a box of means and SDs.
 
     p falls with |D|: its least value has the greatest |D| and a point of an edge with a lowest SD,
     its greatest the least |D| and a corner (see the module). Where both SDs may be 0 the least p is 0.
@@ -115,7 +117,7 @@ def welch_p_bounds(
     near, far = absolute_bounds(*difference_bounds(mean1_low, mean1_high, mean2_low, mean2_high))
     box = list(_sd_box(sd1_low, sd1_high, n1, sd2_low, sd2_high, n2))
     *box, near, far = together(*box, near, far)
-    return _least(_p, box, far), _greatest(_p, box, near)
+    return where_known((_least(_p, box, far), _greatest(_p, box, near)), *box, near, far)
 
 
 def _ends(difference: Bounds, half: Bounds) -> tuple[Bounds, Bounds]:

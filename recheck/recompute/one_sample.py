@@ -18,6 +18,7 @@ from recheck.recompute.arrays import (
     quotient,
     quotient_bounds,
     spread_bounds,
+    where_known,
 )
 from recheck.recompute.tails import t_quantile, t_two_sided
 
@@ -51,7 +52,7 @@ def one_sample_t_bounds(
     mean_low: ArrayLike, mean_high: ArrayLike, sd_low: ArrayLike, sd_high: ArrayLike, n: ArrayLike,
     value_low: ArrayLike = 0.0, value_high: ArrayLike = 0.0,
 ) -> Bounds:  # fmt: skip
-    """Range of the signed t over a box: both ends are corners (see `quotient_bounds`)."""
+    """Range of `t_one_sample` over a box: both ends are corners (see `quotient_bounds`)."""
     sd_low, sd_high = spread_bounds(sd_low, sd_high)
     root = np.sqrt(floats(n)[0])
     difference = difference_bounds(mean_low, mean_high, value_low, value_high)
@@ -62,14 +63,15 @@ def one_sample_p_bounds(
     mean_low: ArrayLike, mean_high: ArrayLike, sd_low: ArrayLike, sd_high: ArrayLike, n: ArrayLike,
     value_low: ArrayLike = 0.0, value_high: ArrayLike = 0.0,
 ) -> Bounds:  # fmt: skip
-    """Range of the two-sided p over a box: it falls as |t| rises, and df are known.
+    """Range of `p_one_sample` over a box: it falls as |t| rises, and df are known.
 
     Where no difference may stand over no spread, t and so p are open on that side.
     """
     low, high = one_sample_t_bounds(mean_low, mean_high, sd_low, sd_high, n, value_low, value_high)
     near, far = absolute_bounds(np.where(np.isnan(low), -np.inf, low), np.where(np.isnan(high), np.inf, high))
     df = np.subtract(n, 1.0)
-    return t_two_sided(far, df), t_two_sided(near, df)
+    bounds = t_two_sided(far, df), t_two_sided(near, df)
+    return where_known(bounds, mean_low, mean_high, sd_low, sd_high, value_low, value_high)
 
 
 def mean_ci_bounds(

@@ -19,6 +19,7 @@ from recheck.recompute.arrays import (
     floats,
     quotient,
     spread_bounds,
+    where_known,
 )
 
 
@@ -87,7 +88,7 @@ def paired_t_bounds(
     mean1_low: ArrayLike, mean1_high: ArrayLike, sd1_low: ArrayLike, sd1_high: ArrayLike,
     mean2_low: ArrayLike, mean2_high: ArrayLike, sd2_low: ArrayLike, sd2_high: ArrayLike, n: ArrayLike,
 ) -> Bounds:  # fmt: skip
-    """Range of |t| of a paired test over a box of means and SDs and every correlation from -1 to 1.
+    """Range of the size of `t_paired` over a box of means and SDs and every correlation from -1 to 1.
 
     The SD of the differences takes all values from |sd1 - sd2| (r = 1) to sd1 + sd2 (r = -1), so over
     the box from the distance of the two SD intervals, 0 where they meet, to the sum of the high
@@ -130,7 +131,8 @@ def implied_correlation_bounds(
     corners = [(sd1, sd2) for sd1 in (sd1_low, sd1_high) for sd2 in (sd2_low, sd2_high)]
     low = [quotient(sd1**2 + sd2**2 - large, 2 * sd1 * sd2) for sd1, sd2 in edges]
     high = [quotient(sd1**2 + sd2**2 - small, 2 * sd1 * sd2) for sd1, sd2 in corners]
-    return np.fmin.reduce(np.broadcast_arrays(*low)), np.fmax.reduce(np.broadcast_arrays(*high))
+    bounds = np.fmin.reduce(np.broadcast_arrays(*low)), np.fmax.reduce(np.broadcast_arrays(*high))
+    return where_known(bounds, sd1_low, sd1_high, sd2_low, sd2_high)
 
 
 def _nearest(other: Floats, K: Floats, low: Floats, high: Floats) -> Floats:

@@ -40,7 +40,7 @@ def mcnemar_exact_p(b: ArrayLike, c: ArrayLike) -> Floats:
 
 
 def mcnemar_mid_p(b: ArrayLike, c: ArrayLike) -> Floats:
-    """The exact p less the probability of the observed split. Source: Fagerland, Lydersen & Laake (2013), BMC Medical Research Methodology 13:91."""
+    """The exact p less the probability of the observed split, less half of it where b = c. Source: Fagerland, Lydersen & Laake (2013), BMC Medical Research Methodology 13:91."""
     b, c = floats(b, c)
     total, less = b + c, np.minimum(b, c)
     logs = special.gammaln(total + 1) - special.gammaln(less + 1) - special.gammaln(total - less + 1)
@@ -51,7 +51,7 @@ def mcnemar_mid_p(b: ArrayLike, c: ArrayLike) -> Floats:
 
 
 def matched_odds_ratio(b: ArrayLike, c: ArrayLike) -> Floats:
-    """Odds ratio of matched pairs, b / c. Source: Kraus (1960), J. Chronic Diseases 12:191-217."""
+    """Odds ratio of matched pairs, b / c. Source: Mantel & Haenszel (1959), J. National Cancer Institute 22:719-748."""
     return quotient(*floats(b, c))
 
 
@@ -62,8 +62,9 @@ def matched_log_se(b: ArrayLike, c: ArrayLike) -> Floats:
 
 
 def matched_wald(b: ArrayLike, c: ArrayLike, level: ArrayLike = 0.95) -> Bounds:
-    """Wald interval of the matched odds ratio on the log scale; infinite or nan where b or c is 0."""
-    ratio, half = matched_odds_ratio(b, c), critical_z(level) * matched_log_se(b, c)
+    """Wald interval of the matched odds ratio on the log scale; nan where b or c is 0. Source: as for `matched_log_se`."""
+    ratio, se = matched_odds_ratio(b, c), matched_log_se(b, c)
+    half = critical_z(level) * np.where(np.isfinite(se), se, np.nan)
     return np.asarray(ratio * np.exp(-half)), np.asarray(ratio * np.exp(half))
 
 

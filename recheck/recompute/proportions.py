@@ -53,7 +53,10 @@ def wilson(count: ArrayLike, total: ArrayLike, level: ArrayLike = 0.95) -> Bound
 
 
 def wilson_corrected(count: ArrayLike, total: ArrayLike, level: ArrayLike = 0.95) -> Bounds:
-    """Wilson's interval with the continuity correction 1/(2n). Source: Newcombe (1998), method 4; Fleiss (1981), Statistical Methods for Rates and Proportions, 1.14."""
+    """Wilson's interval with the continuity correction 1/(2n), which R's prop.test leaves out of count = n/2.
+
+    Source: Newcombe (1998), method 4; Fleiss (1981), Statistical Methods for Rates and Proportions, 1.14.
+    """
     count, total = floats(count, total)
     z, p = critical_z(level), quotient(count, total)
     z2, q, bottom = z**2, 1 - p, 2 * (total + z**2)
@@ -97,7 +100,7 @@ def mid_p(count: ArrayLike, total: ArrayLike, level: ArrayLike = 0.95) -> Bounds
         return np.asarray((more + as_many) / 2)
 
     low, high = _rising_to(above, tail), _rising_to(above, 1 - tail)
-    empty = total <= 0
+    empty = ~(total > 0) | np.isnan(count + tail)
     low, high = np.where(count == 0, 0.0, low), np.where(count == total, 1.0, high)
     return np.where(empty, np.nan, low), np.where(empty, np.nan, high)
 

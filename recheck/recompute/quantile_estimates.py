@@ -1,7 +1,7 @@
 """Mean and SD of a sample from its range, its quartiles, or both: published estimators for normal data.
 
 Letters as in the papers: a minimum, q1 and q3 quartiles, m median, b maximum, n the sample size. None
-of these is exact; what the printed numbers prove is told by `spread_limits`.
+of these is exact; what the printed numbers prove is told by `spread_limits`. SDs are nan for n < 2.
 """
 
 from __future__ import annotations
@@ -26,11 +26,12 @@ def sd_from_range_hozo(a: ArrayLike, m: ArrayLike, b: ArrayLike, n: ArrayLike) -
     """
     a, m, b, n = floats(a, m, b, n)
     few = np.sqrt(((a - 2 * m + b) ** 2 / 4 + (b - a) ** 2) / 12)
-    return np.where(n <= 15, few, (b - a) / np.where(n <= 70, 4.0, 6.0))
+    sd = np.where(n <= 15, few, (b - a) / np.where(n <= 70, 4.0, 6.0))
+    return np.where(n >= 2, sd, np.nan)
 
 
 def mean_from_five_bland(a: ArrayLike, q1: ArrayLike, m: ArrayLike, q3: ArrayLike, b: ArrayLike) -> Floats:
-    """(a + 2 q1 + 2 m + 2 q3 + b) / 8. Source: Bland (2015), J. Stat. Theory Pract. 8, in Wan et al. (2014), formula 10."""
+    """(a + 2 q1 + 2 m + 2 q3 + b) / 8. Source: Bland (2015), Int. J. Stat. Med. Res. 4:57-64, as in Wan et al. (2014), formula 10."""
     a, q1, m, q3, b = floats(a, q1, m, q3, b)
     return np.asarray((a + 2 * q1 + 2 * m + 2 * q3 + b) / 8)
 
@@ -110,9 +111,9 @@ def sd_from_five_shi(a: ArrayLike, q1: ArrayLike, q3: ArrayLike, b: ArrayLike, n
 
 def _extreme(n: Floats) -> Floats:
     """Blom's (1958) approximation to the expected largest of n normal values."""
-    return z_quantile(0.625 / (n + 0.25))
+    return z_quantile(0.625 / (np.where(n >= 2, n, np.nan) + 0.25))
 
 
 def _quartile(n: Floats) -> Floats:
     """Blom's approximation to the expected upper quartile of n normal values."""
-    return z_quantile((0.25 * n + 0.375) / (n + 0.25))
+    return z_quantile((0.25 * n + 0.375) / (np.where(n >= 2, n, np.nan) + 0.25))

@@ -41,13 +41,13 @@ def signed_rank_range(n: ArrayLike) -> Bounds:
 
 
 def rank_sum_from_u(u: ArrayLike, n1: ArrayLike) -> Floats:
-    """Rank sum of group 1 from its U."""
+    """Rank sum of group 1 from its U. Source: Mann & Whitney (1947), Ann. Math. Stat. 18:50-60."""
     u, n1 = floats(u, n1)
     return np.asarray(u + n1 * (n1 + 1) / 2)
 
 
 def u_from_rank_sum(rank_sum: ArrayLike, n1: ArrayLike) -> Floats:
-    """U of group 1 from its rank sum."""
+    """U of group 1 from its rank sum, the inverse of `rank_sum_from_u`."""
     rank_sum, n1 = floats(rank_sum, n1)
     return np.asarray(rank_sum - n1 * (n1 + 1) / 2)
 
@@ -90,7 +90,7 @@ def z_from_signed_rank(
 def u_from_z(
     z: ArrayLike, n1: ArrayLike, n2: ArrayLike, ties: ArrayLike = 0.0, *, continuity: bool = False
 ) -> Floats:
-    """The U whose z this is; beside n1 n2 / 2, where a corrected z is 0, that very value."""
+    """The U whose z this is, the inverse of `z_from_u`; beside n1 n2 / 2, where a corrected z is 0, that very value."""
     z, n1, n2 = floats(z, n1, n2)
     step = np.sign(z) / 2 if continuity else 0.0
     return np.asarray(n1 * n2 / 2 + z * u_sd(n1, n2, ties) + step)
@@ -99,7 +99,7 @@ def u_from_z(
 def signed_rank_from_z(
     z: ArrayLike, n: ArrayLike, ties: ArrayLike = 0.0, *, continuity: bool = False
 ) -> Floats:
-    """The W whose z this is, as in `u_from_z`."""
+    """The W whose z this is, the inverse of `z_from_signed_rank`, as in `u_from_z`."""
     z, n = floats(z, n)
     step = np.sign(z) / 2 if continuity else 0.0
     return np.asarray(n * (n + 1) / 4 + z * signed_rank_sd(n, ties) + step)

@@ -11,6 +11,8 @@ from scipy import special
 from recheck.recompute.arrays import Floats, together
 
 EXACT_UP_TO = 9
+CHUNK = 1 << 14
+"""Rows at a time, so that the temporaries stay in the cache."""
 
 
 def spearman_two_sided(r: ArrayLike, n: ArrayLike) -> Floats:
@@ -23,6 +25,14 @@ def spearman_two_sided(r: ArrayLike, n: ArrayLike) -> Floats:
     Correlation Methods; Best & Roberts (1975), Applied Statistics 24:377-379 (algorithm AS 89).
     """
     r, n = together(r, n)
+    rows, tails = (np.ravel(r), np.ravel(n)), np.empty(r.size)
+    for start in range(0, r.size, CHUNK):
+        part = slice(start, start + CHUNK)
+        tails[part] = _two_sided(rows[0][part], rows[1][part])
+    return tails.reshape(r.shape)
+
+
+def _two_sided(r: Floats, n: Floats) -> Floats:
     valid = (np.abs(r) <= 1) & (n >= 2)
     size, count = np.where(valid, np.abs(r), 0.0), np.where(valid, n, 2.0)
     span = (count**3 - count) / 12

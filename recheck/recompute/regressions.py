@@ -27,7 +27,8 @@ def F_from_r2(r2: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
 def r2_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
     """R² of the model that F tests as a whole, df1 F / (df1 F + df2); 1 where F is infinite. The inverse of `F_from_r2`."""
     F, df1, df2 = floats(F, df1, df2)
-    return np.asarray(1 - quotient(df2, df1 * F + df2))
+    # Not 1 - df2 / (df1 F + df2), whose digits cancel for a small F.
+    return quotient(1.0, 1 + quotient(df2, df1 * F))
 
 
 def r2_from_F_bounds(

@@ -179,7 +179,7 @@ def _ratio(
     low, high = (np.exp(end) for end in _ends(table, restricted, z, levels, FARTHEST))
     none_low = table.a == 0 if not odds else (table.a == 0) | (table.d == 0)
     none_high = table.c == 0 if not odds else (table.b == 0) | (table.c == 0)
-    empty = (table.n1 == 0) | (table.n2 == 0)
+    empty = ~((table.n1 > 0) & (table.n2 > 0))
     low, high = np.where(none_low, 0.0, low), np.where(none_high, np.inf, high)
     return np.where(empty, np.nan, low), np.where(empty, np.nan, high)
 
@@ -188,7 +188,7 @@ def _difference(z: Statistic, counts: tuple[ArrayLike, ...], level: ArrayLike) -
     *cells, levels = together(*counts, level)
     table = _Table(*cells)
     low, high = _ends(table, _restricted_difference, z, levels, 1.0)
-    empty = (table.n1 == 0) | (table.n2 == 0)
+    empty = ~((table.n1 > 0) & (table.n2 > 0))
     return np.where(empty, np.nan, low), np.where(empty, np.nan, high)
 
 
@@ -201,7 +201,9 @@ def _ends(table: _Table, restricted: Restricted, z: Statistic, level: Floats, fa
         for _ in range(HALVINGS):
             middle = (low + high) / 2
             with np.errstate(invalid="ignore", divide="ignore", over="ignore"):
-                above = z(table, middle, *restricted(table, middle)) > target
+                value = z(table, middle, *restricted(table, middle))
+            # No gap over no variance, as of two groups without events at a difference of 0, is no evidence.
+            above = np.where(np.isnan(value), 0.0, value) > target
             low, high = np.where(above, middle, low), np.where(above, high, middle)
         found.append(np.asarray((low + high) / 2))
     return found[0], found[1]

@@ -46,7 +46,7 @@ def _odd_t_tail(t: Floats, df: Floats) -> Floats:
 
 
 def z_tail(z: ArrayLike) -> Floats:
-    """Upper tail P(Z > z) of the standard normal distribution."""
+    """Upper tail P(Z > z) of the standard normal distribution. Source: Abramowitz & Stegun (1964), 26.2."""
     return np.asarray(special.ndtr(np.negative(z)), dtype=np.float64)
 
 
@@ -123,12 +123,12 @@ def _beta_fraction(a: Floats, b: Floats, F: Floats) -> Floats:
 
 
 def t_two_sided(t: ArrayLike, df: ArrayLike) -> Floats:
-    """Two-sided P(|T| > |t|)."""
+    """Two-sided P(|T| > |t|), twice `t_tail`."""
     return np.asarray(2 * t_tail(np.abs(t), df))
 
 
 def z_two_sided(z: ArrayLike) -> Floats:
-    """Two-sided P(|Z| > |z|)."""
+    """Two-sided P(|Z| > |z|), twice `z_tail`."""
     return np.asarray(2 * z_tail(np.abs(z)))
 
 
@@ -144,12 +144,12 @@ def r_tail(r: ArrayLike, df: ArrayLike) -> Floats:
 
 
 def r_two_sided(r: ArrayLike, df: ArrayLike) -> Floats:
-    """Two-sided p of a correlation, df = n - 2; 0 where |r| = 1, nan beyond."""
+    """Two-sided p of a correlation, twice `r_tail`, df = n - 2; 0 where |r| = 1, nan beyond."""
     return np.asarray(2 * r_tail(np.abs(r), df))
 
 
 def t_quantile(upper_p: ArrayLike, df: ArrayLike) -> Floats:
-    """The t with `upper_p` (0 to 1) above it, to 1e-12 relative in its tail; df may be infinite."""
+    """The t with `upper_p` (0 to 1) above it, the inverse of `t_tail`, to 1e-12 relative in its tail; df may be infinite."""
     p, df = together(upper_p, df)
     tail = np.minimum(p, 1 - p)
     with np.errstate(invalid="ignore", divide="ignore"):
@@ -188,5 +188,5 @@ def _polished(t: Floats, tail: Floats, df: Floats) -> Floats:
 
 
 def z_quantile(upper_p: ArrayLike) -> Floats:
-    """The z with `upper_p` (0 to 1) above it."""
+    """The z with `upper_p` (0 to 1) above it, the inverse of `z_tail`."""
     return np.asarray(-special.ndtri(np.asarray(upper_p, dtype=np.float64)))

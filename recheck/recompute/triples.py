@@ -18,7 +18,7 @@ CHUNK = 1 << 14
 def check_t_triples(
     t_low: ArrayLike, t_high: ArrayLike, df: ArrayLike, p_low: ArrayLike, p_high: ArrayLike
 ) -> tuple[Floats, Floats, NDArray[np.uint8]]:
-    """Compare printed p with the two-sided p of t and df, each printed number as its interval.
+    """Compare printed p with the two-sided p of t and df, twice `t_tail`, each printed number as its interval.
 
     Arguments broadcast to one shape; t is signed or not, df exact. Gives the ends of the implied
     two-sided p and a code: 0 they agree; 1 only a one-tailed p does (p / 2, or 1 - p / 2 against the

@@ -17,6 +17,7 @@ from recheck.recompute.arrays import (
     quotient,
     quotient_bounds,
     spread_bounds,
+    where_known,
 )
 
 
@@ -30,7 +31,7 @@ def pooled_sd(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLike) -> F
 
 
 def pooled_se(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLike) -> Floats:
-    """SE of the mean difference with the pooled SD, pooled_sd sqrt(1/n1 + 1/n2)."""
+    """SE of the mean difference with the pooled SD, `pooled_sd` times sqrt(1/n1 + 1/n2)."""
     n1, n2 = floats(n1, n2)
     return np.asarray(pooled_sd(sd1, n1, sd2, n2) * np.sqrt(1 / n1 + 1 / n2))
 
@@ -41,7 +42,7 @@ def welch_se(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLike) -> Fl
     Source: Welch (1938), Biometrika 29:350-362.
     """
     sd1, n1, sd2, n2 = floats(sd1, n1, sd2, n2)
-    return np.asarray(np.hypot(sd1 / np.sqrt(n1), sd2 / np.sqrt(n2)))
+    return np.asarray(np.sqrt(sd1**2 / n1 + sd2**2 / n2))
 
 
 def satterthwaite_df(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLike) -> Floats:
@@ -57,7 +58,7 @@ def satterthwaite_df(sd1: ArrayLike, n1: ArrayLike, sd2: ArrayLike, n2: ArrayLik
 def t_pooled(
     mean1: ArrayLike, sd1: ArrayLike, n1: ArrayLike, mean2: ArrayLike, sd2: ArrayLike, n2: ArrayLike
 ) -> Floats:
-    """Student's t of two independent groups, df = n1 + n2 - 2; infinite where both SDs are 0."""
+    """Student's t of two independent groups, by `pooled_se`, df = n1 + n2 - 2; infinite where both SDs are 0."""
     return quotient(np.subtract(mean1, mean2), pooled_se(sd1, n1, sd2, n2))
 
 
@@ -101,7 +102,7 @@ def welch_df_bounds(
     sd1_low: ArrayLike, sd1_high: ArrayLike, n1: ArrayLike,
     sd2_low: ArrayLike, sd2_high: ArrayLike, n2: ArrayLike,
 ) -> Bounds:  # fmt: skip
-    """Range of Satterthwaite's df over a box of SDs.
+    """Range of `satterthwaite_df` over a box of SDs.
 
     With w = v1 / (v1 + v2), v = sd²/n, 1/df = w²/(n1-1) + (1-w)²/(n2-1): a parabola in w with its
     least value 1/(n1+n2-2) at w = (n1-1)/(n1+n2-2), that is sd1²/sd2² = n1(n1-1) / (n2(n2-1)). w rises
@@ -118,7 +119,8 @@ def welch_df_bounds(
     least, most = np.where(np.isnan(least), 0.0, least), np.where(np.isnan(most), 1.0, most)
     best = np.clip(quotient(n1 - 1, n1 + n2 - 2), least, most)
     low = np.minimum(_df_of_share(least, n1, n2), _df_of_share(most, n1, n2))
-    return np.asarray(low), _df_of_share(best, n1, n2)
+    bounds = np.asarray(low), _df_of_share(best, n1, n2)
+    return where_known(bounds, sd1_low, sd1_high, sd2_low, sd2_high)
 
 
 def _share(sd1: Floats, n1: Floats, sd2: Floats, n2: Floats) -> Floats:

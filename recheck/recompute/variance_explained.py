@@ -12,15 +12,18 @@ from recheck.recompute.arrays import Floats, floats, quotient, together
 
 
 def r_from_t(t: ArrayLike, df: ArrayLike) -> Floats:
-    """r of a t with its sign, t / sqrt(t² + df). Source: Lakens (2013), Frontiers in Psychology 4:863."""
+    """r of a t with its sign, t / sqrt(t² + df); 1 in size where t is infinite. Source: Lakens (2013), Frontiers in Psychology 4:863."""
     t, df = floats(t, df)
-    return quotient(t, np.hypot(t, np.sqrt(df)))
+    return np.asarray(np.sign(t) / np.hypot(1.0, quotient(np.sqrt(df), t)))
 
 
 def partial_eta2_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
-    """Partial eta squared, F df1 / (F df1 + df2). Source: Cohen (1973), Educ. Psychol. Meas. 33:107-112."""
+    """Partial eta squared, F df1 / (F df1 + df2); 1 where F is infinite.
+
+    Source: Cohen (1973), Educ. Psychol. Meas. 33:107-112.
+    """
     F, df1, df2 = floats(F, df1, df2)
-    return quotient(F * df1, F * df1 + df2)
+    return quotient(1.0, 1 + quotient(df2, F * df1))
 
 
 def omega2_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, N: ArrayLike) -> Floats:
@@ -30,7 +33,7 @@ def omega2_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike, N: ArrayLike) ->
     (1979), Educational and Psychological Measurement 39:119-128; Lakens (2013), as above.
     """
     F, df1, _, N = together(F, df1, df2, N)
-    return quotient(df1 * (F - 1), df1 * (F - 1) + N)
+    return quotient(1.0, 1 + quotient(N, df1 * (F - 1)))
 
 
 def epsilon2_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
@@ -49,7 +52,7 @@ def f_from_F(F: ArrayLike, df1: ArrayLike, df2: ArrayLike) -> Floats:
 
 
 def phi_from_chi2(chi2: ArrayLike, N: ArrayLike) -> Floats:
-    """Size of phi of a 2 x 2 table, sqrt(chi2 / N)."""
+    """Size of phi of a 2 x 2 table, sqrt(chi2 / N), that is `cramers_v` with k = 2."""
     return cramers_v(chi2, N, 2)
 
 
@@ -91,7 +94,7 @@ def f2_from_share(share: ArrayLike) -> Floats:
 def share_from_f2(f2: ArrayLike) -> Floats:
     """The share of variance of an f², f² / (1 + f²). Source: Cohen (1988), as above, 8.2."""
     (f2,) = floats(f2)
-    return quotient(f2, 1 + f2)
+    return quotient(1.0, 1 + quotient(1.0, f2))
 
 
 def fisher_z(r: ArrayLike) -> Floats:
@@ -102,7 +105,7 @@ def fisher_z(r: ArrayLike) -> Floats:
 
 
 def r_from_fisher_z(z: ArrayLike) -> Floats:
-    """The correlation of a Fisher z, tanh z."""
+    """The correlation of a Fisher z, tanh z, the inverse of `fisher_z`."""
     (z,) = floats(z)
     return np.asarray(np.tanh(z))
 

@@ -32,7 +32,7 @@ def variance_ratio(sd1: ArrayLike, sd2: ArrayLike) -> Floats:
 
 
 def variance_ratio_p(F: ArrayLike, n1: ArrayLike, n2: ArrayLike) -> Floats:
-    """Two-sided p of a ratio of two variances: twice the smaller of both tails of F."""
+    """Two-sided p of a ratio of two variances (`variance_ratio`): twice the smaller of both tails of F, 1 at most."""
     F, df1, df2 = floats(F, np.subtract(n1, 1.0), np.subtract(n2, 1.0))
     upper, lower = f_tail(F, df1, df2), f_tail(quotient(1.0, F), df2, df1)
     return np.asarray(np.minimum(2 * np.minimum(upper, lower), 1.0))

@@ -26,7 +26,8 @@ class Way:
     in; an empty tuple says that this way cannot be followed with these numbers. `unstated` holds
     the assumptions that the text leaves open, `given` those that it states or the numbers fit.
     A `costly` way is left out where many corrections of a number are tried; one that stands `alone`
-    is rare, and is not combined with a reading of the rounding.
+    is rare, and is not combined with a reading of the rounding. One that is `likely` is told before any
+    reading of the rounding, with as many assumptions.
     """
 
     implied: Callable[[Box], tuple[Interval, ...]]
@@ -34,6 +35,7 @@ class Way:
     given: tuple[str, ...] = ()
     costly: bool = False
     alone: bool = False
+    likely: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -81,13 +83,13 @@ def box_of(numbers: Numbers, rounding: Rounding = PLAIN) -> dict[str, Interval]:
 def attempts(quantity: str, numbers: Numbers, ways: Sequence[Way]) -> Iterator[Attempt]:
     """Yield every way under every rounding, fewest unstated assumptions first."""
     tried = [
-        (len(way.unstated) + bool(r.words), i, j, way, r)
+        (len(way.unstated) + bool(r.words), not way.likely or bool(r.words), i, j, way, r)
         for i, way in enumerate(ways)
         for j, r in enumerate(ROUNDINGS)
         if not (way.alone and r.words)
     ]
     boxes: dict[str, dict[str, Interval]] = {}
-    for unstated, _, _, way, rounding in sorted(tried, key=lambda item: item[:3]):
+    for unstated, _, _, _, way, rounding in sorted(tried, key=lambda item: item[:4]):
         if unstated > MOST_UNSTATED:
             return
         if rounding.name not in boxes:

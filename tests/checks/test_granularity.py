@@ -10,7 +10,15 @@ from hypothesis import strategies as st
 from recheck.checks.registry import Case, find_check
 from recheck.checks.running import run_checks
 from recheck.confirming import confirm
-from recheck.model import N_OF_GROUP, SCALE_ENDS_INFERRED, SCALE_INFERRED, SCORES_ASKED, Reading, Settings
+from recheck.model import (
+    AVERAGED_BY,
+    N_OF_GROUP,
+    SCALE_ENDS_INFERRED,
+    SCALE_INFERRED,
+    SCORES_ASKED,
+    Reading,
+    Settings,
+)
 from tests.checks.claims import claim
 
 SCALE = {"scale_min": "1", "scale_max": "7"}
@@ -228,3 +236,16 @@ def test_figures_of_a_sample_agree_or_say_that_nothing_can_be_found(scores, deci
     for check in ("mean-of-whole-scores", "sd-of-whole-scores", "mean-on-scale", "sd-on-scale"):
         verdicts = {finding.verdict for finding in found(check, *ONE, **values)}
         assert verdicts <= {"agrees", "unchecked"}
+
+
+def test_words_that_hint_at_averages_are_quoted():
+    finding = one(
+        "mean-of-whole-scores", *ONE, "averaged-scores", notes=(f"{AVERAGED_BY}“six loaves”",), **GRIM
+    )
+    assert finding.verdict == "unchecked"
+    assert "“six loaves”" in finding.message and "--scores" in finding.message
+
+
+def test_words_far_off_that_hint_at_averages_leave_a_doubt():
+    finding = one("mean-of-whole-scores", *ONE, notes=(f"{AVERAGED_BY}“six loaves”",), **GRIM)
+    assert finding.verdict == "conditional"

@@ -5,6 +5,7 @@ from __future__ import annotations
 import pytest
 
 import recheck
+from recheck.checks.examples import table
 from recheck.model import Finding
 from tests.reference import rows
 
@@ -71,3 +72,30 @@ def test_ends_of_the_implied_range_are_attained() -> None:
     """F from 16.45 to 16.55 with 3 and 96 df: R² from 3 F / (3 F + 96)."""
     (implied, *_) = findings("It was fitted, R² = .34, F(3, 96) = 16.5.")["r2-from-F"].implied
     assert implied.low == pytest.approx(49.35 / 145.35) and implied.high == pytest.approx(49.65 / 145.65)
+
+
+STEPS = (
+    "Step 1 | .21 | .20 | .21 | 18.9 | 18.9 | 2, 143 | <.001",
+    "Step 2 | .35 | .33 | .14 | 25.6 | 30.1 | 1, 142 | <.001",
+)
+
+
+@pytest.mark.parametrize(
+    ("last", "verdict"),
+    [
+        # Four predictors in all: 1 − .65 · 145/141 = .332.
+        ("Step 3 | .35 | .33 | .00 | 18.9 | 0.07 | 1, 141 | .788", "agrees"),
+        ("Step 3 | .35 | .38 | .00 | 18.9 | 0.07 | 1, 141 | .788", "inconsistent"),
+        ("Step 3 | .35 | .13 | .00 | 18.9 | 0.07 | 1, 141 | .788", "conditional"),
+    ],
+)
+def test_df_of_a_step_do_not_count_the_predictors_of_its_model(last: str, verdict: str) -> None:
+    head = "Step | R2 | Adjusted R2 | ΔR2 | F | F change | df | p"
+    text = table("Table 2. Regression of loaf height.", head, *STEPS, last)
+    found = [f.verdict for f in recheck.audit_text(text).findings if f.check == "adjusted-r2"]
+    assert sorted(found) == sorted(["agrees", "agrees", verdict])
+
+
+def test_an_adjusted_r2_beside_the_f_of_a_step_is_that_of_the_model() -> None:
+    found = findings("Step 2 added to the model, adjusted R² = .37, F change (1, 95) = 7.9, p = .006.")
+    assert found["adjusted-r2-from-F"].verdict == "agrees"

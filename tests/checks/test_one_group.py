@@ -3,7 +3,7 @@
 import pytest
 
 from recheck.checks.registry import Case, all_checks, find_check
-from recheck.model import OF_DIFFERENCES
+from recheck.model import EXACT_VALUE, OF_DIFFERENCES
 from tests.checks.claims import claim
 
 all_checks()
@@ -67,3 +67,28 @@ def test_standard_errors_are_taken_as_such():
     group = claim("group-summary", name="g", mean="20.93", se="9.75", n="15")
     test = claim("t-test", "one-sample", groups=("g",), t="2.148", df="14", comparison_value="0")
     assert verdicts("t-from-one-group", test, group) == ["agrees"]
+
+
+def test_a_midpoint_is_not_rounded():
+    from dataclasses import replace
+
+    group = claim("group-summary", name="g", mean="4.2", sd="1.04", n="50")
+    test = claim("t-test", "one-sample", groups=("g",), t="9.52", df="49", comparison_value="3")
+    # 4.2 against 2.8 gives 9.52: 3 may stand for 2.8, the midpoint of a scale does not.
+    assert verdicts("t-from-one-group", test, group) == ["conditional"]
+    exact = replace(test, notes=(EXACT_VALUE,))
+    assert verdicts("t-from-one-group", exact, group) == ["inconsistent"]
+
+
+@pytest.mark.parametrize(
+    ("name", "t", "notes", "expected"),
+    [
+        ("mean_difference", "4.06", (OF_DIFFERENCES,), ["agrees"]), ("mean_difference", "4.60", (OF_DIFFERENCES,), ["conditional"]),
+        ("estimate", "4.60", (OF_DIFFERENCES,), ["conditional"]), ("estimate", "4.60", (), []),
+    ],
+)  # fmt: skip
+def test_words_alone_tell_of_differences(name, t, notes, expected):
+    from dataclasses import replace
+
+    test = replace(claim("t-test", t=t, df="9", sd="1.23", **{name: "1.58"}), notes=notes)
+    assert verdicts("t-from-difference", test) == expected

@@ -3,7 +3,7 @@
 import pytest
 
 from recheck.checks.registry import Case, all_checks, find_check
-from recheck.model import N_OF_GROUP
+from recheck.model import N_OF_GROUP, SIZES_IN_WORDS
 from tests.checks.claims import claim, finding
 from tests.reference import rows
 
@@ -101,3 +101,20 @@ def test_another_w_is_left_alone():
 def test_pairs_without_difference_leave_doubt():
     test = claim("rank-test", "rank-test", "signed-ranks", w="20", n="15", p=".60")
     assert finding("p-from-ranks", test).verdict == "conditional"
+
+
+def test_sizes_told_with_the_test_itself():
+    from dataclasses import replace
+
+    test = claim("rank-test", "rank-test", u="45", z="−1.20", n1="12", n2="14")
+    found = find_check("z-from-ranks").run(Case(test))
+    assert [f.verdict for f in found] == ["inconsistent"]
+    for note in (N_OF_GROUP, SIZES_IN_WORDS):
+        found = find_check("z-from-ranks").run(Case(replace(test, notes=(note,))))
+        assert [f.verdict for f in found] == ["conditional"]
+
+
+def test_an_exact_p_is_named_before_a_reading_of_rounding():
+    test = claim("rank-test", "rank-test", u="53", z="−1.10", p=".291")
+    (found,) = find_check("p-from-z").run(Case(test))
+    assert found.verdict == "conditional" and "exact or continuity-corrected" in found.message

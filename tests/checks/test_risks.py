@@ -9,6 +9,8 @@ from hypothesis import strategies as st
 from scipy.stats import contingency
 from statsmodels.stats.proportion import confint_proportions_2indep, proportion_confint
 
+import recheck
+from recheck.checks.examples import table
 from recheck.checks.registry import Case, all_checks, find_check
 from recheck.model import TOTAL_OF_GROUP
 from tests.checks.claims import claim
@@ -208,3 +210,53 @@ def test_published_and_constructed_percentages_without_their_count(row):
 def test_totals_that_would_do_are_named():
     found = judged("percent-of-total", claim("count", percent="36.4", total="40"), [])
     assert any("33 (12 of 33)" in remedy.text for remedy in found.reconciled_by)
+
+
+FAULTS = (
+    " | Steam (n = 102) | Dry (n = 99) | RR (95% CI) | P",
+    "Split | 18 (17.6%) | 19 (19.2%) | 0.92 (0.51 to 1.65) | .856",
+)
+
+
+@pytest.mark.parametrize(
+    "note",
+    ["P by Fisher’s exact test.", "P values from chi-square tests.", "P by χ² test with Yates’ correction."],
+)
+def test_p_of_a_named_test_is_not_told_by_the_interval_of_its_ratio(note):
+    found = {
+        f.check: f.verdict
+        for f in recheck.audit_text(table(f"Table 2. Faults of loaves. {note}", *FAULTS)).findings
+    }
+    assert found["p-from-ci"] == "unchecked"
+
+
+def test_fishers_p_beside_a_ratio_is_that_of_its_counts():
+    # scipy.stats.fisher_exact([[18, 84], [19, 80]]).pvalue = 0.85595
+    for p, expected in ((".856", "agrees"), (".0856", "conditional")):
+        rows_ = (FAULTS[0], FAULTS[1].replace(".856", p))
+        text = table("Table 2. Faults of loaves. P by Fisher’s exact test.", *rows_)
+        assert {f.check: f.verdict for f in recheck.audit_text(text).findings}["p-from-counts"] == expected
+
+
+@pytest.mark.parametrize(
+    ("methods", "crude"),
+    [
+        ("Odds ratios are crude.", True),
+        ("All ratios are reported unadjusted. P values were not adjusted for multiple testing.", True),
+        ("Odds ratios are crude; adjusted ratios came from a logistic model.", False),
+        ("Odds ratios are given with their intervals.", False),
+    ],
+)
+def test_a_document_may_call_its_ratios_crude_once(methods, crude):
+    told = "Crusts split in 12/60 steamed and 27/60 dry loaves (OR = 0.41, 95% CI 0.14 to 0.69)."
+    (of,) = [c for c in recheck.audit_text(f"{methods}\n\n{told}").claims if "or" in c.values]
+    assert of.says("crude") == crude
+
+
+def test_a_named_fisher_test_of_a_text_is_no_other():
+    # scipy.stats.fisher_exact([[3, 17], [11, 9]]).pvalue = 0.01870, alternative="less" 0.00935; Pearson's p is 0.0080
+    told = (("p = .019", "agrees"), ("one-sided p = .009", "agrees"), ("p = .009", "conditional"),
+            ("p = .008", "conditional"), ("p = .5", "conditional"), ("one-sided p = .019", "conditional"))  # fmt: skip
+    for p, expected in told:
+        text = f"Crusts split in 3 of 20 steamed and 11 of 20 dry loaves (Fisher’s exact test, {p})."
+        assert {f.check: f.verdict for f in recheck.audit_text(text).findings}["p-from-counts"] == expected

@@ -61,3 +61,17 @@ def test_a_stated_model_is_not_rebuilt():
         "Rye | 18 | 92.4 | 6.12 | 2.44",
     )
     assert verdicts(text, "se-from-sd") == [("se-from-sd", "se", "unchecked")]
+
+
+@pytest.mark.parametrize(
+    ("told", "verdict", "words"),
+    [
+        # An n of its own beside SD and SE: no fourfold n is behind it, as 4.2²/1.4² = 9 of 36 would be.
+        ("(SD = 4.2, SE = 1.4, n = 36)", "conditional", "not from a model (marginal means, clusters, repeated measures); else n would be 9"),
+        ("(SD = 4.23, SE = 0.82, n = 36)", "conditional", "some of the n cases have no value of this variable (n would be 27)"),
+        ("(SD = 4.2, SE = 0.70, n = 36)", "agrees", ""),
+    ],
+)  # fmt: skip
+def test_missing_cases_are_few_where_n_stands_beside_the_numbers(told, verdict, words):
+    (finding,) = found(f"Rye loaves rose to 92.4 mm {told}.", "se-from-sd")
+    assert (finding.verdict, words in finding.message) == (verdict, True)

@@ -32,6 +32,16 @@ def test_published_bartlett(row):
         assert run("bartlett-from-groups", test, *told) == [expected]
 
 
+def test_sds_listed_beside_the_test_are_conditional_at_most():
+    # NIST e-Handbook 1.3.5.9, as below.
+    told = {"sd1": "65.55", "n1": "240", "sd2": "61.85", "n2": "240"}
+    for F, expected in (("1.123", "agrees"), ("1.321", "conditional")):
+        test = claim("F-test", "variance-test", F=F, df1="239", df2="239", **told)
+        assert run("F-of-variances", test) == [expected]
+    other = claim("F-test", "variance-test", F="1.321", df1="1", df2="239", **told)
+    assert run("F-of-variances", other) == ["unchecked"]
+
+
 def test_ratio_in_either_order():
     # NIST e-Handbook 1.3.5.9: F = 1.123037 of SDs 65.54909 and 61.85425, 240 each.
     told = groups(["65.55", "61.85"], ["240", "240"])

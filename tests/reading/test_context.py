@@ -158,7 +158,7 @@ HEIGHTS = "Height was 92.4 ± 6.1 mm with rye (n = 25) and 86.0 ± 5.8 mm with w
     [
         "Values are mean ± 95% confidence limits.",
         "Means ± 95% CI are given.",
-        "Figures are means ± 2 SE.",
+        "Numbers are means ± 2 SE.",
         "Heights are given ± half the 95% confidence interval.",
         "Uncertainties are 95% confidence intervals (± values).",
         "± denotes the 95% confidence limits.",

@@ -24,6 +24,9 @@ def counted(text: str) -> list[dict[str, str]]:
         "Crusts split in 12 of 40 steamed and 20 of the 41 dry loaves (OR = 0.45, 95% CI 0.18 to 1.13).",
         "Odds of a split were lower with steam (12 out of 40) than without (20 out of 41), odds ratio 0.45 (95% CI 0.18-1.13).",
         "Crusts split in 12/40 steamed and 20/41 dry loaves, χ²(1, N = 81) = 2.99, p = .084.",
+        "Crusts split in 12 of 40 steamed and 20 of 41 dry loaves (Fisher’s exact p = .11).",
+        "Rates of split crusts were 12/40 and 20/41; the unadjusted OR was 0.45 (95% CI 0.18 to 1.13).",
+        "Crusts split less often with steam (12/40 vs 20/41; absolute difference −19%, 95% CI −40% to 2%).",
     ],
 )
 def test_fractions_are_counts_beside_a_ratio_or_a_chi2_of_two_shares(told: str) -> None:
@@ -42,6 +45,7 @@ def test_a_count_may_be_told_in_words() -> None:
         "On 12/10 and on 20/11 the ovens were cold (OR = 0.45, 95% CI 0.18 to 1.13).",
         "Scores of 12 of 40 points and 20 of 41 points were common (OR = 0.45, 95% CI 0.18 to 1.13).",
         "Crusts split in 12/40 steamed and 20/41 dry loaves, t(79) = 2.99.",
+        "Crusts split in 12/40 steamed and 20/41 dry loaves (Fisher’s z = 0.4, p = .08).",
     ],
 )
 def test_other_fractions_are_none(told: str) -> None:
@@ -178,3 +182,15 @@ def test_a_ratio_without_an_interval_is_read_beside_counts_alone() -> None:
     ]
     rows = "| Split crust | 4.1 | 5.2 | 0.45 |"
     assert linked(TABLE.format(heads="Height | Width | Crude OR", rows=rows)) == []
+
+
+@pytest.mark.parametrize(
+    "told",
+    [
+        "21 apprentices changed to rye and 6 to wheat (McNemar χ²(1) = 8.33).",
+        "Before training 20 and after it 35 of 60 apprentices weighed the flour; 21 changed to weighing and 6 to the cup (McNemar χ²(1) = 8.33).",
+        "21 changed from wheat to rye and 6 from rye to wheat (McNemar χ²(1) = 8.33).",
+    ],
+)
+def test_changes_of_mcnemars_test(told: str) -> None:
+    assert counted(told) == [{"count": "21"}, {"count": "6"}]

@@ -146,3 +146,24 @@ def test_one_box_without_spread():
     means, ns = ((1.0, 1.1), (2.0, 2.1)), (5, 5)
     assert anova_box.f_one_way_range(means, ((0.0, 0.1), (0.0, 0.1)), ns)[1] == np.inf
     assert np.isnan(anova_box.f_one_way_range(((1.0, 1.0),) * 2, ((0.0, 0.0),) * 2, ns)[0])
+
+
+@BOX
+@given(st.lists(st.tuples(intervals(-5, 5, 2.0), st.integers(2, 40)), min_size=2, max_size=6))
+def test_points_nearest_to_their_own_mean(groups):
+    ends, ns = np.array([pair for pair, _ in groups]).T, np.array([n for _, n in groups], dtype=float)
+    points = anova.nearest_to_their_mean(*ends, ns)
+    assert points == pytest.approx(np.clip(np.average(points, weights=ns), *ends), abs=1e-9)
+    box = tuple((float(low), float(high)) for low, high in ends.T)
+    bounds = [float(end) for end in anova.ss_between_bounds(*ends, ns)]
+    assert anova_box.ss_between_range(box, tuple(ns)) == pytest.approx(bounds, rel=1e-9, abs=1e-12)
+
+
+def test_one_row_without_spread_leaves_the_other_rows_alone():
+    """The upper end of Welch's F was infinite in all rows where one of them had an SD that may be 0."""
+    means, ns = np.array([[4.0, 5.0, 6.0]] * 2), np.array([12.0, 9.0, 20.0])
+    sds = np.array([[1.0, 1.5, 0.8], [0.004, 1.5, 0.8]])
+    F, df2 = anova.f_welch_bounds(means - 0.05, means + 0.05, sds - 0.005, sds + 0.005, ns)
+    alone = anova.f_welch_bounds(means[0] - 0.05, means[0] + 0.05, sds[0] - 0.005, sds[0] + 0.005, ns)
+    assert (F[0][0], F[1][0], df2[0][0], df2[1][0]) == (*alone[0], *alone[1])
+    assert np.isinf(F[1][1])

@@ -51,3 +51,9 @@ def test_sizes_and_cut_spreads_of_an_interval(ends, u):
     least = 0.0 if ends[0] <= 0 <= ends[1] else min(map(abs, ends))
     assert [float(end) for end in arrays.absolute_bounds(*ends)] == [least, max(map(abs, ends))]
     assert [float(end) for end in arrays.spread_bounds(*ends)] == [max(end, 0.0) for end in ends]
+
+
+def test_bounds_are_unknown_where_an_end_of_the_box_is():
+    low, high = arrays.where_known((np.zeros(3), np.ones(3)), [1.0, np.nan, 2.0], 4.0)
+    assert np.isnan(low).tolist() == np.isnan(high).tolist() == [False, True, False]
+    assert np.isnan(arrays.where_known((np.zeros(3), np.ones(3)), 1.0, np.nan)).all()

@@ -135,3 +135,10 @@ def test_interval_of_a_huge_t():
     low, high = effect_intervals.noncentral_t_ci(2611.2838, 194.0, 0.95)
     rough = 2611.2838 * (1 + np.array([-1, 1]) * 1.96 / np.sqrt(388))
     assert np.allclose([low, high], rough, rtol=0.002)
+
+
+def test_the_share_of_a_noncentrality_is_that_of_its_effect():
+    """With lambda = N f² (Cohen 1988, 8.3) the share is f² / (1 + f²)."""
+    f2, N = np.array([0.0, 0.01, 0.0625, 0.16, 9.0]), 60
+    assert effect_intervals.share_of_lambda(N * f2, N) == pytest.approx(f2 / (1 + f2), rel=1e-14)
+    assert effect_intervals.share_of_lambda(0.0, 60) == 0

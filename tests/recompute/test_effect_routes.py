@@ -100,3 +100,11 @@ def test_conversions_of_a_published_example():
         [-0.9, 0, 0.3]
     )
     assert variance_explained.fisher_z(1.0) == np.inf
+
+
+def test_shares_of_infinite_statistics_are_whole():
+    """Where no spread is left, t and F are infinite and all the variance is explained."""
+    assert variance_explained.r_from_t([np.inf, -np.inf, 0.0], 10).tolist() == [1.0, -1.0, 0.0]
+    assert variance_explained.partial_eta2_from_F([np.inf, 0.0], 2, 10).tolist() == [1.0, 0.0]
+    assert variance_explained.omega2_from_F([np.inf, 1.0], 2, 10, 13).tolist() == [1.0, 0.0]
+    assert variance_explained.share_from_f2([np.inf, 0.0]).tolist() == [1.0, 0.0]

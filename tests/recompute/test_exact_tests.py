@@ -105,3 +105,27 @@ def test_larger_tables_match_all_tables_of_their_margins(seed):
     own = 1 / np.prod([float(factorial(int(cell))) for cell in table.ravel()])
     expected = sum(w for w in weights if w <= own * (1 + 1e-9)) / sum(weights)
     assert exact_tests.freeman_halton_p(table) == pytest.approx(expected, rel=1e-9)
+
+
+ALL = (
+    "fisher_p", "fisher_one_sided_p", "fisher_mid_p", "conditional_odds_ratio", "median_unbiased_odds_ratio", "odds_ratio_exact",
+)  # fmt: skip
+
+
+@pytest.mark.parametrize("name", ALL)
+def test_what_is_no_count_is_unknown_and_leaves_other_tables_alone(name):
+    good = [[3, 5], [6, 2]]
+    tables = np.array(
+        [good, [[np.nan, 2], [3, 4]], [[2.5, 3], [1, 1]], [[-1, 3], [1, 1]], [[np.inf, 1], [1, 1]]]
+    )
+    found, alone = np.array(getattr(exact_tests, name)(tables)), np.array(getattr(exact_tests, name)(good))
+    assert np.array_equal(found[..., 0], alone)
+    assert np.isnan(found[..., 1:]).all()
+    assert all(np.isnan(exact_tests.freeman_halton_p(table)) for table in tables[1:])
+
+
+def test_median_unbiased_odds_ratios_at_their_ends():
+    """The first count at its greatest is the median of no finite odds ratio; with one table alone every one will do."""
+    assert exact_tests.median_unbiased_odds_ratio([[5, 0], [0, 5]]) == np.inf
+    assert exact_tests.median_unbiased_odds_ratio([[0, 5], [5, 0]]) == 0
+    assert np.isnan(exact_tests.median_unbiased_odds_ratio([[0, 0], [3, 4]]))

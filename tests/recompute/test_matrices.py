@@ -185,3 +185,19 @@ def test_all_triples_are_looked_at() -> None:
     for triple in combinations(range(7), 3):
         chosen = np.ix_(triple, triple)
         assert (matrices.within_box(low[chosen], high[chosen]).possible is False) == (triple in named)
+
+
+def test_a_certificate_is_one_of_the_boxes_within():
+    wide = box(np.array([[1, 0.9, 0.9], [0.9, 1, 0.1], [0.9, 0.1, 1]]), 1)
+    found = matrices.within_box(*wide)
+    assert found.possible is False
+    assert matrices.still_proved(found, *box(np.array([[1, 0.9, 0.9], [0.9, 1, 0.1], [0.9, 0.1, 1]]), 2))
+    possible = box(np.array([[1, 0.9, 0.9], [0.9, 1, 0.7], [0.9, 0.7, 1]]), 1)
+    assert not matrices.still_proved(found, *possible)
+    assert not matrices.still_proved(matrices.within_box(*possible), *possible)
+
+
+def test_an_unknown_cell_decides_nothing():
+    cells = np.array([[1, np.nan, 0.2], [np.nan, 1, 0.3], [0.2, 0.3, 1]])
+    assert matrices.within_box(cells, cells).possible is None
+    assert list(matrices.worst_triples(cells, cells)) == []

@@ -5,20 +5,26 @@ from __future__ import annotations
 import ast
 import inspect
 import sys
+import warnings
 from collections.abc import Callable, Iterator
 from importlib import import_module
 from pathlib import Path
 from types import ModuleType
 
+import numpy as np
+import pytest
 import regex
+from numpy.typing import NDArray
 
 from recheck import recompute
-from tests.benchmarks.formulas import functions
+from tests.benchmarks.formulas import functions, table
 
+ROWS = {name: row for name, row in table()[0].items() if name != "contingency.expected_counts"}
+"""Functions on rows: all of the table of speeds but the one of whole tables."""
 PREFIX = recompute.__name__ + "."
 MACHINERY = ("arrays.", "granularity.", "power.search.")
 """Interval arithmetic, whole-number engines and root finding: their proofs stand in their docstrings, in place of a source."""
-PLAIN = regex.compile(r"\b[Bb]y definition\b|\b(ibidem|as above|Cochrane Handbook)\b|\b(1[89]|20)\d\d\b")
+PLAIN = regex.compile(r"\b[Bb]y definition\b|\b(ibidem|as above|Cochrane\s+Handbook)\b|\b(1[89]|20)\d\d\b")
 """A year, a work without one, a work named further up, or that there is nothing to cite."""
 
 
@@ -39,6 +45,50 @@ def test_the_names_are_found():
     here = _named(Path(__file__).parent / "test_two_groups.py")
     assert "two_groups.t_pooled" in here
     assert "risks.odds_ratio" not in here
+
+
+@pytest.mark.parametrize("name", sorted(ROWS))
+def test_a_row_is_its_own(name: str):
+    """Nothing that stands in one row changes another, and a row alone is what it is among others."""
+    row = ROWS[name]
+    arguments = [np.array(column) for column in row.arguments(12)]
+    before = _parts(functions()[name](*arguments, **row.options))
+    alone = _parts(functions()[name](*(column[1] for column in arguments), **row.options))
+    for one, among in zip(alone, before, strict=True):
+        assert np.allclose(one, among[1], rtol=1e-12, atol=1e-14, equal_nan=True)
+    for column in arguments:
+        for strange in (np.nan, 0.0, np.inf):
+            kept, column[0] = np.array(column[0]), strange
+            with np.errstate(all="ignore"), warnings.catch_warnings():
+                warnings.simplefilter("ignore", RuntimeWarning)
+                after = _parts(functions()[name](*arguments, **row.options))
+            column[0] = kept
+            assert all(
+                np.allclose(a[1:], b[1:], rtol=1e-12, atol=1e-14, equal_nan=True)
+                for a, b in zip(before, after, strict=True)
+            )
+
+
+@pytest.mark.parametrize("name", sorted(name for name in ROWS if name.endswith("_bounds")))
+def test_an_unknown_end_of_a_box_leaves_no_two_ends(name: str):
+    """Where an argument is nan, no two ends of a range are told as if it were not there."""
+    row = ROWS[name]
+    arguments = [np.array(column) for column in row.arguments(12)]
+    for column in arguments:
+        kept, column[0] = np.array(column[0]), np.nan
+        with np.errstate(all="ignore"):
+            parts = _parts(functions()[name](*arguments, **row.options))
+        column[0] = kept
+        assert any(np.isnan(part[0]) for part in parts)
+
+
+def _parts(found: object) -> list[NDArray[np.float64]]:
+    """The arrays of a result, of a pair of ends, or of two such pairs."""
+    return (
+        [part for inner in found for part in _parts(inner)]
+        if isinstance(found, tuple)
+        else [np.asarray(found)]
+    )
 
 
 def _named(path: Path) -> set[str]:
@@ -76,8 +126,10 @@ def _imported(tree: ast.AST) -> Iterator[tuple[str, object]]:
 
 
 def _full(value: object) -> set[str]:
-    module = getattr(value, "__module__", None) or ""
-    return {f"{module.removeprefix(PREFIX)}.{value.__name__}"} if inspect.isfunction(value) else set()
+    """A function's name as `functions` has it; one that keeps its results is no plain function."""
+    if inspect.isclass(value) or not callable(value) or not hasattr(value, "__name__"):
+        return set()
+    return {f"{value.__module__.removeprefix(PREFIX)}.{value.__name__}"}
 
 
 def _has_source(name: str, function: Callable[..., object], seen: tuple[str, ...]) -> bool:
@@ -86,13 +138,15 @@ def _has_source(name: str, function: Callable[..., object], seen: tuple[str, ...
     text = function.__doc__ or ""
     if name.startswith(MACHINERY) or PLAIN.search(text) or PLAIN.search(module.__doc__ or ""):
         return bool(text)
-    others = functions()
-    referred = {word for word in regex.findall(r"`([\w.]+)`", text)} | {
-        function.__name__.removesuffix("_bounds")
-    }
+    others, home = functions(), name.rpartition(".")[0]
+    referred = [*regex.findall(r"`([\w.]+)`", text), function.__name__.removesuffix("_bounds")]
+    near = (
+        o
+        for word in referred
+        for o in (word, f"{home}.{word}", *(full for full in others if full.endswith(f".{word}")))
+    )
     return any(
         _has_source(other, others[other], (*seen, name))
-        for word in referred
-        for other in (f"{name.rpartition('.')[0]}.{word}", *(o for o in others if o.endswith(f".{word}")))
-        if other in others and other != name and other not in seen
+        for other in near
+        if other in others and other not in (*seen, name)
     )

@@ -44,6 +44,7 @@ def test_newcombe_found_these_intervals():
     # Newcombe (1998), Statistics in Medicine 17:857-872, Table I: 81/263, 15/148, 0/20, 1/29 (from memory).
     expected = {
         proportions.wald: ((0.2522, 0.3638), (0.0527, 0.1500), (0.0, 0.0), (0.0, 0.1009)),
+        proportions.wald_corrected: ((0.2503, 0.3657), (0.0494, 0.1534), (0.0, 0.0250), (0.0, 0.1181)),
         proportions.wilson: ((0.2553, 0.3662), (0.0624, 0.1605), (0.0, 0.1611), (0.0061, 0.1718)),
         proportions.wilson_corrected: ((0.2535, 0.3682), (0.0598, 0.1644), (0.0, 0.2005), (0.0018, 0.1963)),
         proportions.clopper_pearson: ((0.2527, 0.3676), (0.0578, 0.1617), (0.0, 0.1684), (0.0009, 0.1776)),
@@ -70,3 +71,11 @@ def test_the_logit_interval_is_walds_of_a_logistic_regression():
 )
 def test_of_no_cases_there_is_no_interval(method):
     assert np.all(np.isnan(method(0, 0)))
+    assert np.all(np.isnan(method([3, np.nan], [np.nan, 5])))
+
+
+def test_the_normal_quantile_of_an_interval():
+    # Abramowitz & Stegun (1964), table 26.5 and below.
+    assert proportions.critical_z([0.9, 0.95, 0.99]) == pytest.approx(
+        [1.644854, 1.959964, 2.575829], abs=5e-7
+    )

@@ -76,3 +76,14 @@ def test_the_later_estimators_err_less(normal, n):
     luo = error(estimates.mean_from_five_luo(a, q1, m, q3, b, n), 10)
     assert luo <= error(estimates.mean_from_five_bland(a, q1, m, q3, b), 10)
     assert luo <= error(estimates.mean_from_quartiles_luo(q1, m, q3, n), 10)
+
+
+def test_one_value_has_no_sd():
+    n = np.array([1.0, np.nan, 2.0])
+    for sds in (
+        estimates.sd_from_range_hozo(1, 2, 4, n),
+        estimates.sd_from_range_wan(1, 4, n),
+        estimates.sd_from_quartiles_wan(2, 3, n),
+        estimates.sd_from_five_shi(1, 2, 3, 4, n),
+    ):
+        assert np.isnan(sds).tolist() == [True, True, False]

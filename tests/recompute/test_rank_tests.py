@@ -109,3 +109,14 @@ def test_ranges():
     assert [float(x) for x in rt.signed_rank_range(15)] == [0, 120]
     assert np.isnan(rt.u_exact_p(13, 3, 4)) and np.isnan(rt.u_exact_p(10, 101, 5))
     assert rt.u_exact_p([2, 2, 3], [5, 4, 5], [5, 6, 5]).shape == (3,)
+
+
+def test_sds_are_those_of_all_orders_and_signs():
+    """Tied ranks too: every choice of group 1, and every pattern of signs."""
+    ranks = np.array([1.0, 2.5, 2.5, 5.0, 5.0, 5.0, 7.0])
+    ties = (2**3 - 2) + (3**3 - 3)
+    sums = [ranks[list(chosen)].sum() for chosen in combinations(range(7), 3)]
+    assert rt.u_sd(3, 4, ties) == pytest.approx(np.std(sums), rel=1e-12)
+    signed = np.array(list(product((0, 1), repeat=7))) @ ranks
+    assert rt.signed_rank_sd(7, ties) == pytest.approx(np.std(signed), rel=1e-12)
+    assert rt.z_from_u(rt.u_from_z(1.3, 3, 4, ties), 3, 4, ties) == pytest.approx(1.3)

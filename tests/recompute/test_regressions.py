@@ -104,3 +104,8 @@ def test_order_of_the_adjustments(r2: float, df1: int, df2: int) -> None:
     for formula in (*formulas, regressions.adjusted_r2_olkin_pratt):
         assert formula(r2, df1 + 1, df2) <= formula(r2, df1, df2) + 1e-12
         assert formula(r2, df1, df2) <= formula(min(r2 + 0.01, 1), df1, df2) + 1e-12
+
+
+def test_the_r2_of_a_small_F_keeps_its_digits():
+    assert float(regressions.r2_from_F(1e-10, 1, 100)) == pytest.approx(1e-12 / (1 + 1e-12), rel=1e-14)
+    assert regressions.r2_from_F([0.0, np.inf], 3, 50).tolist() == [0.0, 1.0]

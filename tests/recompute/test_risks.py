@@ -2,8 +2,10 @@
 
 import numpy as np
 import pytest
-from scipy import optimize
+from scipy import optimize, stats
 from statsmodels.stats.proportion import confint_proportions_2indep
+from statsmodels.stats.proportion import test_proportions_2indep as z_of_proportions
+from statsmodels.stats.rates import confint_poisson_2indep
 
 from recheck.recompute import risk_intervals, risks, score_intervals
 from tests.reference import rows
@@ -133,3 +135,34 @@ def test_intervals_of_empty_cells_end_at_the_limits():
 def test_z_squared_is_pearsons_chi2():
     row = TABLES[0]
     assert risks.z_pooled(*row.numbers("a", "b", "c", "d")) ** 2 == pytest.approx(row.number("chi2"))
+
+
+@pytest.mark.parametrize("counts", [(12, 88, 5, 95), (3, 17, 9, 71), (1, 1, 400, 9600)])
+def test_ratios_of_rates_and_unpooled_z_match_statsmodels(counts):
+    a, b, c, d = counts
+    low, high = risk_intervals.risk_ratio_rates(a, b, c, d, 0.9)
+    expected = confint_poisson_2indep(a, a + b, c, c + d, method="wald-log", compare="ratio", alpha=0.1)
+    assert (low, high) == pytest.approx(expected, rel=1e-9)
+    test = z_of_proportions(a, a + b, c, c + d, method="wald")
+    assert risks.z_unpooled(a, b, c, d) == pytest.approx(test.statistic, rel=1e-9)
+
+
+def test_score_intervals_of_two_groups_alike_without_events():
+    """At a difference of 0 there is no gap over no variance. The ends in closed form, k = N / (N - 1):
+
+    with p2 = 0, z² = delta n1 / ((1 - delta) k), and so in the other direction; for the ratio of two groups with events alone
+    z² = (theta - 1) n2 / k above 1 and (1 / theta - 1) n1 / k below.
+    """
+    k, z2 = 15 / 14, stats.norm.isf(0.025) ** 2
+    first, second = (z2 * k / n for n in (10, 5))
+    expected = -second / (1 + second), first / (1 + first)
+    assert score_intervals.difference_score(0, 10, 0, 5) == pytest.approx(expected, abs=1e-10)
+    assert score_intervals.difference_score(5, 0, 10, 0) == pytest.approx(expected, abs=1e-10)
+    assert score_intervals.risk_ratio_score(10, 0, 5, 0) == pytest.approx(
+        (1 / (1 + first), 1 + second), rel=1e-10
+    )
+
+
+@pytest.mark.parametrize("name", ["odds_ratio_score", "risk_ratio_likelihood", "difference_score"])
+def test_unknown_counts_give_unknown_intervals(name):
+    assert np.isnan(getattr(score_intervals, name)(3, np.nan, 2, 5)).all()

@@ -132,3 +132,12 @@ def test_two_groups_broadcast():
     low, high = tg.pooled_t_bounds(5, 5.1, [1.0, 2.0], [1.1, 2.1], 10, 4, 4.1, 1, 1.1, 12)
     assert low.shape == high.shape == (2,)
     assert isinstance(tg.t_welch(5, 1, 10, 4, 1, 10), np.ndarray)
+
+
+@RAW
+@given(a=SAMPLE, b=SAMPLE)
+def test_the_pooled_sd_is_that_of_the_residuals(a, b):
+    residuals = np.concatenate([np.array(a) - np.mean(a), np.array(b) - np.mean(b)])
+    expected = np.sqrt(np.sum(residuals**2) / (len(a) + len(b) - 2)) if len(a) + len(b) > 2 else np.nan
+    found = tg.pooled_sd(np.std(a, ddof=1), len(a), np.std(b, ddof=1), len(b))
+    assert float(found) == pytest.approx(expected, rel=1e-9, abs=1e-9)

@@ -51,8 +51,10 @@ def test_variance_tests_of_r():
 def test_bartlett_of_raw_data(groups):
     groups = [[*g, max(g) + 1] for g in groups]
     K2, _, p = va.bartlett([np.std(g, ddof=1) for g in groups], [len(g) for g in groups])
-    expected = stats.bartlett(*[np.array(g, dtype=float) for g in groups])
-    assert (float(K2), float(p)) == pytest.approx((expected.statistic, expected.pvalue), rel=1e-7, abs=1e-10)
+    # The library's p is nan where its statistic is 0 but for rounding.
+    expected = max(float(stats.bartlett(*[np.array(g, dtype=float) for g in groups]).statistic), 0.0)
+    upper = stats.chi2.sf(expected, len(groups) - 1)
+    assert (float(K2), float(p)) == pytest.approx((expected, upper), rel=1e-7, abs=1e-10)
 
 
 @BOX
@@ -88,3 +90,16 @@ def test_limits_of_bartlett():
     assert va.bartlett_bounds([1.0, 1.05], [1.1, 1.2], [9, 9])[0] == 0
     with pytest.raises(ValueError, match="at most 12 groups"):
         va.bartlett_bounds([1.0] * 13, [2.0] * 13, [5] * 13)
+
+
+@BOX
+@given(F=intervals(0.01, 6, 3.0), n1=N, n2=N, u=SHARES)
+def test_bounds_of_p_over_an_interval_of_the_ratio(F, n1, n2, u):
+    dfs = n1 - 1, n2 - 1
+    p = min(1.0, 2 * min(stats.f.sf(at(F, u), *dfs), stats.f.cdf(at(F, u), *dfs)))
+    bounds = va.p_of_ratio_bounds(*F, n1, n2)
+    assert holds(bounds, p, slack=1e-12)
+    inside = F[0] <= stats.f.median(*dfs) <= F[1]
+    ends = [va.variance_ratio_p(end, n1, n2) for end in F]
+    assert float(bounds[1]) == pytest.approx(1.0 if inside else max(ends), rel=1e-9)
+    assert float(bounds[0]) == pytest.approx(min(ends), rel=1e-12)

@@ -13,6 +13,7 @@ import numpy as np
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST
+from tests.soundness.honest_alone import EFFECTS_ALONE
 from tests.soundness.honest_conversions import EFFECT_CONVERSIONS
 from tests.soundness.honest_effects import EFFECT_INTERVALS
 from tests.soundness.honest_granularity import GRANULARITY
@@ -118,6 +119,7 @@ def main() -> int:
         **EFFECT_INTERVALS,
         **EFFECT_CONVERSIONS,
         **HONEST_POWER,
+        **EFFECTS_ALONE,
     }
     if asked.only:
         generators = {asked.only: generators[asked.only]}

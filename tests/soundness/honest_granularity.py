@@ -204,6 +204,35 @@ def several_loaves(rng: Rng) -> Sample:
     return told(rng, hand, outcome, f"{rated(rng, outcome, low, high)} {hint}", groups)
 
 
+def averaged_far_off(rng: Rng) -> Sample:
+    """One question a time, but several times: told in a paragraph of its own, before or behind the measure."""
+    hand, outcome, low, high, sizes = start(rng)
+    k = int(rng.integers(2, 7))
+    groups = [
+        summary(rng, hand, np.mean([scores(rng, n, low, high) for _ in range(k)], axis=0)) for n in sizes
+    ]
+    far = one(
+        rng,
+        [
+            f"Each taster was served {k} loaves, one at a time.",
+            f"The question was answered on {k} evenings.",
+            "It was asked at the end of each lesson.",
+            f"Scores are means of {k} assessors.",
+            "A mean score was computed for each taster.",
+            "Data of all sessions were pooled.",
+            "Values are means over days.",
+            "For each apprentice the mean over all shifts was used.",
+            f"Each taster rated the loaves on {k} days.",
+            "The tasters gave one score to every loaf of a batch.",
+            "The assessors repeated the tasting a week later.",
+        ],
+    )
+    how = one(rng, [" with a single item", " by one question", " on a single item"])
+    sample = told(rng, hand, outcome, rated(rng, outcome, low, high, how), groups)
+    text = f"{far}\n\n{sample.text}" if rng.random() < 0.5 else f"{sample.text}\n\n{far}"
+    return replace(sample, text=text)
+
+
 def half_points(rng: Rng) -> Sample:
     """Half points were allowed."""
     hand, outcome, low, high, sizes = start(rng)
@@ -305,7 +334,7 @@ def shares(rng: Rng) -> Sample:
 
 GRANULARITY: dict[str, Generator] = {
     "single item": single_item, "single item, other rounding": truncated, "averaged silently": averaged_silently,
-    "averaged items": averaged_items, "several loaves": several_loaves, "half points": half_points, "analogue scale": analogue,
+    "averaged items": averaged_items, "several loaves": several_loaves, "averaged, told far off": averaged_far_off, "half points": half_points, "analogue scale": analogue,
     "sum score": sum_score, "sum left open": sum_left_open, "change of scores": change, "adjusted scores": adjusted,
     "missing in a table": missing_in_table, "scores of 0 and 1": shares,
 }  # fmt: skip

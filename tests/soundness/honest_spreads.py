@@ -208,6 +208,54 @@ def total_rows(rng: Rng) -> Sample:
     )
 
 
+WEIGHTED = (
+    "Height by group (population-weighted).|n", "Height by group; sampling weights were applied.|n", "Height by group.|Unweighted n",
+    "Height by group, standardised to the flours of all mills.|n", "Height by group. Means are weighted by the loaves sold.|n",
+    "Height by group; n is unweighted, means and SDs are weighted.|n", "Height by group, post-stratified.|n", "Age-standardised height by group.|n",
+    "Height by group, design-weighted means.|n", "Height by group. Estimates use calibration weights.|n",
+)  # fmt: skip
+
+
+def weighted_totals(rng: Rng) -> Sample:
+    """Groups and their total in rows, each group weighted by its share of another population; n as counted."""
+    hand, design = table_hand(rng), draw_design(rng, high=80)
+    data, places = scores(rng, list(design.sizes)), int(rng.choice([1, 2]))
+    shares = rng.dirichlet(np.ones(len(data)))
+    means, variances = np.array([x.mean() for x in data]), np.array([x.var() for x in data])
+    mean = float(shares @ means)
+    spread = float(np.sqrt(shares @ (variances + (means - mean) ** 2)))
+    told = [
+        (name, len(x), float(x.mean()), computing.sd(x)) for name, x in zip(design.names, data, strict=True)
+    ]
+    told.append((one(rng, ["Total", "All", "Overall"]), sum(map(len, data)), mean, spread))
+    rows = [[name, str(n), shown(hand, m, places), shown(hand, s, places)] for name, n, m, s in told]
+    caption, head = one(rng, list(WEIGHTED)).split("|")
+    return alone(markdown(f"Table 1. {caption}", ["Group", head, "Mean", "SD"], rows))
+
+
+def totals_in_prose(rng: Rng) -> Sample:
+    """All apprentices and the groups that they are made of, n before the brackets or in them; of some the age is not known."""
+    hand, places = table_hand(rng), int(rng.choice([1, 2]))
+    data = [rng.normal(24, 4, int(rng.integers(5, 90))) + float(rng.normal(0, 2)) for _ in range(2)]
+    known = [x[rng.random(len(x)) < (1.0 if rng.random() < 0.7 else 0.95)] for x in data]
+    known = [k if len(k) > 2 else x for k, x in zip(known, data, strict=True)]
+    told = [
+        f"M = {shown(hand, float(x.mean()), places)}, SD = {shown(hand, computing.sd(x), places)}"
+        for x in (np.concatenate(known), *known)
+    ]
+    N, n1, n2 = sum(map(len, data)), *map(len, data)
+    sentence = one(
+        rng,
+        [
+            f"We trained {N} apprentices ({told[0]}): {n1} women ({told[1]}) and {n2} men ({told[2]}).",
+            f"In all, {N} apprentices took part ({told[0]}), {n1} women ({told[1]}) and {n2} men ({told[2]}).",
+            f"The sample of {N} bakers ({told[0]}) comprised {n1} masters ({told[1]}) and {n2} novices ({told[2]}).",
+            f"Age of the {N} bakers ({told[0]}) was that of {n1} women ({told[1]}) and {n2} men ({told[2]}) alike.",
+        ],
+    )
+    return Sample(sentence, alone=True)
+
+
 def changes(rng: Rng) -> Sample:
     """Scores before and after with the change, of all cases or of those that have both."""
     hand, places = table_hand(rng), int(rng.choice([1, 2]))
@@ -245,4 +293,5 @@ HONEST_SPREADS: dict[str, Generator] = {
     "descriptives": descriptives, "variables in rows": variables_in_rows, "spreads in prose": told_in_prose,
     "total columns": total_columns, "total rows": total_rows, "changes": changes,
     "SE and CI of other models": other_errors, "ends of scales": scale_ranges,
+    "weighted totals": weighted_totals, "totals in prose": totals_in_prose,
 }  # fmt: skip

@@ -10,6 +10,7 @@ from hypothesis import HealthCheck, given, settings
 
 from tests.soundness.auditing import audit_document, outcomes
 from tests.soundness.honest import HONEST, honest_samples
+from tests.soundness.honest_alone import EFFECTS_ALONE
 from tests.soundness.honest_conversions import EFFECT_CONVERSIONS
 from tests.soundness.honest_effects import EFFECT_INTERVALS
 from tests.soundness.honest_granularity import GRANULARITY
@@ -47,6 +48,7 @@ QUICK = settings(max_examples=30, deadline=None, derandomize=True, suppress_heal
         (EFFECT_INTERVALS, 10),
         (EFFECT_CONVERSIONS, 15),
         (HONEST_POWER, 12),
+        (EFFECTS_ALONE, 20),
     ],
     ids=[
         "plain",
@@ -59,6 +61,7 @@ QUICK = settings(max_examples=30, deadline=None, derandomize=True, suppress_heal
         "effect intervals",
         "effect conversions",
         "power",
+        "effects alone",
     ],
 )
 def test_honest_results_are_never_flagged(generators: Mapping[str, Generator], each: int) -> None:

@@ -21,6 +21,7 @@ _LABEL_ALONE = regex.compile(
 _NOTE = regex.compile(
     r"""\s*(?:(?:table\s+)?notes?\s*[.:—–]|notes?\s*$|abbreviations?\b|legend\s*[.:]|key\s*:|sources?\s*:
     |(?:values|data|numbers|figures|results|entries|cells)\s+(?:are|represent|given|shown|presented|reported|in)\b(?!\s+available)
+    |ps?(?:[\ -]?values?)?\s+(?:(?:are|is|were|was)\s+)?(?:(?:obtained|calculated|computed)\s+)?(?:by|from|with|using|according\s+to|based\s+on|those\s+of)\b
     |[*∗†‡§¶‖#]|[a-z]\)\s|p\s*[<=≤]|n\s*\(%\)|M\s*=\s*mean|SD\s*[:=,]|CI\s*[:=,])""",
     regex.VERBOSE | regex.IGNORECASE,
 )

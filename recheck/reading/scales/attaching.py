@@ -14,7 +14,14 @@ from recheck.reading.scales.by_name import Attached, by_name
 from recheck.reading.scales.counted import as_count, count_said, counted_rounds
 from recheck.reading.scales.described import Scale, scales_of
 from recheck.reading.scales.giving import Hinted, asked_note, general_hints, given, off_items
-from recheck.reading.scales.of_cells import captions_of, of_cell, of_everything, speaks_of_ratings
+from recheck.reading.scales.of_cells import (
+    captions_of,
+    of_cell,
+    of_everything,
+    speaks_of_ratings,
+    tells_scores_of,
+    title_of,
+)
 from recheck.reading.scales.of_prose import of_prose
 from recheck.reading.tokens import Spans
 from recheck.reading.views import View
@@ -75,8 +82,12 @@ def _scale(
         number = -1 - placed[at].passage
         if number < 0:
             continue
-        general = everything if everything and speaks_of_ratings(document.tables[number]) else None
-        if attached := of_cell(claims[at], index, of_tables.get(number, ()), general):
+        table = document.tables[number]
+        general = everything if everything and speaks_of_ratings(table) else None
+        title = title_of(table) if not claims[at].outcome else ()
+        if attached := of_cell(
+            claims[at], index, of_tables.get(number, ()), general, title, scored=tells_scores_of(table)
+        ):
             found[at] = attached
     found |= of_prose(placed, claims, [at for at in wanted if placed[at].passage >= 0], scales, index, views)
     told = _fitting(found, claims)

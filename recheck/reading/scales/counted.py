@@ -86,15 +86,26 @@ def _told_before(placed: Placed) -> str | None:
     tail = before[max(0, match.start() - _LEAD) :]
     outside = _bracketed().sub("", before[match.start() :], timeout=TIMEOUT)
     digits = any(char.isdigit() for char in outside)
-    foreign = apart(placed.text, match[0][: len("number of")], start)
+    personal = _of_persons().search(match[0], timeout=TIMEOUT)
+    said = match[0][: personal.end()] if personal else match[0]
+    foreign = apart(placed.text, said if personal else match[0][: len("number of")], start)
     if (
         digits
         or foreign
-        or _spread_out().search(tail, timeout=TIMEOUT)
+        or _spread_out().search(_of_persons().sub("", tail, timeout=TIMEOUT), timeout=TIMEOUT)
         or _changed().search(tail, timeout=TIMEOUT)
     ):
         return None
-    return _verb().split(match[0], maxsplit=1, timeout=TIMEOUT)[0].strip()
+    return said.strip() if personal else _verb().split(said, maxsplit=1, timeout=TIMEOUT)[0].strip()
+
+
+@cache
+def _of_persons() -> regex.Pattern[str]:
+    """`that each apprentice baked`: counted once for each person, in so many words."""
+    return regex.compile(
+        r"\b(?:that |which )?(?:each|every) (?:participant|apprentice|baker|taster|panell?ist|patient|student|pupil|child|person|respondent|subject|judge) (?:had |has )?(?!was|were|is|per\b)\p{L}+\b",
+        regex.IGNORECASE,
+    )
 
 
 _LEAD = 24
@@ -122,5 +133,6 @@ def _changed() -> regex.Pattern[str]:
 def as_count(claim: Claim, said: str, rounds: bool) -> Claim:
     """A summary of counts: its scores are whole, surely where nothing was counted in several rounds."""
     notes = (*claim.notes, f"count: “{said}”", *((SCALE_INFERRED,) if rounds else ()))
-    stated = dict.fromkeys((*claim.stated, "whole-scores", *(("averaged-scores",) if rounds else ())))
+    once = ("single-item",) if _of_persons().search(said, timeout=TIMEOUT) else ()
+    stated = dict.fromkeys((*claim.stated, "whole-scores", *(("averaged-scores",) if rounds else once)))
     return replace(claim, stated=tuple(stated), notes=notes)

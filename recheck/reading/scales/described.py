@@ -56,7 +56,7 @@ class Scale:
 
 _SIGNS = (
     "scale", "point", "score", "range", "rate", "rating", "likert", "max", "ranging", "respon", "assessed", "scoring", "possible", "out of", "analog", "vas", "nrs",
-    "slider", "grade", "judged", "evaluated", "answer", "coded", "anchor", "step", "continuum", " runs ", " ran ",
+    "slider", "grade", "judged", "evaluated", "answer", "coded", "anchor", "step", "how ", "item", "question", "awarded", "continuum", " runs ", " ran ",
 )  # fmt: skip
 """One of them stands in every sentence that tells a scale by more than the names of its ends, in lower case."""
 
@@ -70,7 +70,11 @@ def may_tell(text: str) -> bool:
         if sign in low:
             break
     else:
-        return "(" in text and "=" in text and named_number().search(text, timeout=TIMEOUT) is not None
+        return (
+            ("(" in text or ":" in text)
+            and "=" in text
+            and named_number().search(text, timeout=TIMEOUT) is not None
+        )
     numbers = len(_short_numbers().findall(text, timeout=TIMEOUT))
     single = any(sign in low for sign in ("point", "step", "out of", "max", "mm", "cm", "highest"))
     return (
@@ -126,6 +130,7 @@ def sentence_scales(
         return
     last = 0
     pieces = pieces_of(text)
+    plain = _unlabelled(text, pieces) if pieces else text
     for piece in pieces:
         said = whose(text, piece, last)
         last = piece.end
@@ -133,13 +138,28 @@ def sentence_scales(
         if said.before and order:
             names = _inherited(sentences[:order])
         keys = tuple(dict.fromkeys(alias for key, name in names for alias in _aliases(key, name)))
-        hints = _landed(hints_of(text) if len(pieces) == 1 else _own_hints(text, piece), text, piece)
+        hints = _landed(hints_of(plain) if len(pieces) == 1 else _own_hints(plain, piece), text, piece)
         yield _scale(view, text, piece, start, keys, hints, (number, order))
 
 
 def _own_hints(text: str, piece: Piece) -> Hints:
     """What a sentence with several scales says beside one of them."""
     return hints_of(text[max(0, piece.start - 60) : piece.end + 40])
+
+
+@cache
+def _label() -> regex.Pattern[str]:
+    return regex.compile(r"[(\[][^()\[\]]*[)\]]?|[=:] ?[^,;()\d]+")
+
+
+def _unlabelled(text: str, pieces: Sequence[Piece]) -> str:
+    """A sentence with blanks for what the ends of its scales are called: `5 (daily)` tells of no diary."""
+    for piece in pieces:
+        if piece.low is not None:
+            first = piece.low[1]
+            inside = _label().sub(lambda match: " " * len(match[0]), text[first : piece.end], timeout=TIMEOUT)
+            text = text[:first] + inside + text[piece.end :]
+    return text
 
 
 def _landed(hints: Hints, text: str, piece: Piece) -> Hints:

@@ -25,18 +25,25 @@ def _unit_behind() -> regex.Pattern[str]:
     return regex.compile(rf"^ ?-?{_UNITS}(?![\w-])", regex.IGNORECASE)
 
 
-def has_unit(text: str, claim: Claim | None = None) -> bool:
-    """Whether a name of a table holds a unit, or the text of a claim prints one behind its mean."""
+def units_of(quote: str) -> frozenset[str]:
+    """The units in which a scale is read off: the millimetres of a line."""
+    return frozenset(unit for unit in ("mm", "cm") if regex.search(rf"\b\d* ?-?{unit}\b", quote))
+
+
+def has_unit(text: str, claim: Claim | None = None) -> str:
+    """The unit that a name of a table holds, or that the text of a claim prints behind its mean, "" for none."""
     if claim is None:
-        return _unit_of_label().search(text, timeout=TIMEOUT) is not None
+        found = _unit_of_label().search(text, timeout=TIMEOUT)
+        return found[0].strip("[]()/,; ") if found else ""
     mean = claim.values["mean"].text
     spread = claim.values.get("sd") or claim.values.get("se")
     for printed in (mean, *([spread.text] if spread else [])):
         plain = printed.replace("−", "-")
         at = text.find(plain)
-        if at >= 0 and _unit_behind().match(text[at + len(plain) :], timeout=TIMEOUT):
-            return True
-    return False
+        behind = _unit_behind().match(text[at + len(plain) :], timeout=TIMEOUT) if at >= 0 else None
+        if behind is not None:
+            return behind[0].strip(" -")
+    return ""
 
 
 _CHANGE = words("change changes changed gain gains gained improvement improvements increase increases decrease decreases decline declines reduction reductions difference differences δ delta diff z-score z-scores slope slopes correlation ratio percent percentage % log rank ranks loss")  # fmt: skip
@@ -70,7 +77,7 @@ def of_change(claim: Claim, before: str = "") -> bool:
 
 
 _BEFORE_NAME = words(
-    "rated scored judged reported perceived felt found evaluated assessed gave had showed self self-rated self-reported higher lower more less greater their mean average total for of in on and the"
+    "rated scored judged reported perceived felt found evaluated assessed gave had showed self self-rated self-reported higher lower more less greater their mean average total subjective current general overall for of in on and the"
 )
 _AFTER_NAME = words(
     "rated scored judged found felt rating ratings score scores scale test questionnaire inventory level levels vas nrs judgments judgements averaged ranged remained improved worsened in among at after before with increased decreased dropped rose fell"

@@ -56,20 +56,34 @@ def _averaged() -> regex.Pattern[str]:
         r"|mean (?:of|over|across) (?:the|all|these|those|its|his|her|their|both|two|three|four|five|six|seven|eight|nine|ten|\d+)\b"
         r"|mean (?:item|scale|composite|subscale) scores?|(?:individual|participant|personal|subject) means?|means? (?:was|were) (?:computed|calculated|formed|taken|used)"
         r"|(?:comput|calculat|form|tak|us|creat)(?:ed|ing) (?:the |a |an )?(?:mean|average)s?\b(?! and| ±| \()"
-        r"|composites?|aggregat\w+|collaps(?:ed|ing)|combined (?:into|to|in))\b",
+        r"|mean (?:scores?|ratings?|values?|responses?|judge?ments?|answers?) (?:(?:was|were) (?:computed|calculated|formed|taken|used)|per|for each|over|across)|(?:are|is|were|as) (?:the )?means? (?:of|over|across)"
+        r"|pooled(?! (?:sd|standard|varian|estimat|error|analys|odds|effect|model|within-))|composites?|aggregat\w+|collaps(?:ed|ing)|combined (?:into|to|in)|(?:ratings?|scores?|marks|answers) of (?:the )?(?:both|two|three|all) (?:\w+ ){0,2}?were combined)\b",
         regex.IGNORECASE,
     )
+
+
+_SOME = _COUNT.replace("?P<number>", "?:")
+_ONES = (
+    r"(?:participants?|apprentices?|panell?ists?|patients?|subjects?|persons?|child|children|students?|respondents?|bakers?|raters?|judges?|tasters?|attributes?|items?|questions?|statements?|dimensions?|groups?|"
+    r"conditions?|aspects?|criteri(?:on|a)|qualit(?:y|ies)|characteristics?|propert(?:y|ies)|features?|variables?|outcomes?|measures?|points?|scales?|ends?)\b"
+)
+"""What there is one of to a score: who gives it, what is asked for, and the group."""
+_RATERS = (
+    r"(?!panel|team|jury|family|class|couple|dyad|pair|household)\p{L}+ (?:also |then |again )?"
+    r"(?:answered|rated|gave|indicated|reported|judged|evaluated|graded|responded|was asked|marked|ticked|chose|assigned|told)\b"
+)
+"""Somebody by what he does: `each pupil answered`."""
+_NO_THINGS = r"(?:worth|were|was|rated|scored|on|from|ranging|using|with|correct|of|answered|judged|evaluated|graded|coded|consist\w*|anchored|time points?|measured|assessed)\b"
 
 
 @cache
 def _near() -> regex.Pattern[str]:
     """What makes a score of something else than one whole answer, where it stands beside the scale."""
     return regex.compile(
-        r"\b(?:factor scores?|z-?scor\w+|standardi[sz]ed (?:scores?|to|within|across)|indices|index|latent|percent(?:age)?s?|residuals?|log-?transform\w*|trials|blocks|repeatedly|occasions|sessions|daily|per (?:day|week|month|session|trial|block|loaf|hour|minute)"
+        r"\b(?:factor scores?|z-?scor\w+|standardi[sz]ed (?:scores?|to|within|across)|indices|index|latent|percent(?:age)?s?|residuals?|log-?transform\w*|trials|blocks|repeatedly|occasions|sessions|daily"
         r"|stimuli|pictures|photographs|images|videos?|clips|vignettes|scenarios|faces|excerpts|interviewees|targets"
-        r"|(?:each|every|both) (?!participants?\b|apprentices?\b|panell?ists?\b|patients?\b|subjects?\b|persons?\b|child\b|children\b|students?\b|respondents?\b|bakers?\b|raters?\b|judges?\b|tasters?\b|attributes?\b|items?\b|questions?\b|statements?\b|dimensions?\b|groups?\b|"
-        r"aspects?\b|criteri(?:on|a)\b|qualit(?:y|ies)\b|characteristics?\b|propert(?:y|ies)\b|features?\b|variables?\b|outcomes?\b|measures?\b|worth\b|(?!panel|team|jury|family|class|couple|dyad|pair|household)\p{L}+ (?:also |then |again )?(?:answered|rated|gave|indicated|reported|judged|evaluated|graded|responded|was asked|marked|ticked|chose|assigned|told)\b|"
-        r"conditions?\b|were\b|was\b|rated\b|scored\b|on\b|from\b|ranging\b|using\b|with\b|points?\b|correct\b|scales?\b|ends?\b|of\b|answered\b|judged\b|evaluated\b|graded\b|coded\b|consist\w*|anchored\b|time points?\b|measured\b|assessed\b)\p{L}+|ecological momentary|diary|over the (?:course|period)|throughout the day|last (?:\d+|two|three|four|seven) (?:days|hours|weeks))\b",
+        rf"|(?:each|every|both) (?!{_ONES}|{_RATERS}|{_NO_THINGS})\p{{L}}+|each of (?:(?:the|these|those|their|his|her|{_SOME}) ){{1,2}}(?!{_ONES})\p{{L}}+"
+        rf"|per (?!cent\b|se\b|{_ONES})\p{{L}}+|ecological momentary|diary|over the (?:course|period)|throughout the day|last (?:\d+|two|three|four|seven) (?:days|hours|weeks))\b",
         regex.IGNORECASE,
     )
 
@@ -155,8 +169,37 @@ def _uneven() -> regex.Pattern[str]:
     )
 
 
+@cache
+def _again() -> regex.Pattern[str]:
+    """Several things or occasions anywhere in a document: `six loaves were served`, `answered on five evenings`."""
+    many = rf"(?:{_SOME}|several|all|both|each|every|multiple)"
+    return regex.compile(
+        rf"\b(?:on|in|over|across|during|after|at|for|within|of) (?:(?:the|each of the|the end of) )?{many} (?:[\w-]+ ){{0,2}}?(?:days?|evenings?|mornings?|nights?|weeks?|months?|shifts?|lessons?|occasions?|sessions?|visits?|batch(?:es)?|bakes?|rounds?|blocks?|trials?)\b"
+        rf"|\b{many} (?:[\w-]+ ){{0,2}}?(?:loaves|loaf|breads?|slices?|samples?|wines?|products?|portions?|stimuli|stimulus|dishes|specimens?|pictures?|images?|photographs?|vignettes?|scenarios?|cakes?|rolls?|assessors|judges|raters)\b"
+        r"|\b(?:repeated|retest\w*|re-test\w*|replicat\w+|duplicate|triplicate)\b",
+        regex.IGNORECASE,
+    )
+
+
+@cache
+def _rating() -> regex.Pattern[str]:
+    """Words of people who rate; what was assessed or evaluated may be a height, too."""
+    return regex.compile(
+        r"\b(?:rat(?:e|ed|ings?|ers?)\b|scor|tast|judg|assessors|answer|question|asked|served|items?\b|panel)",
+        regex.IGNORECASE,
+    )
+
+
+def several_told(text: str) -> str:
+    """The words of a sentence about ratings that tell of several things or occasions, "" for none."""
+    if _rating().search(text, timeout=TIMEOUT) is None:
+        return ""
+    match = _again().search(text, timeout=TIMEOUT)
+    return _clip(match[0]) if match else ""
+
+
 SIGNS = (
-    "averag", "mean", "percent", "residual", "transform", "daily", "diary", "momentary", "last ", "composite", "aggregat", "collaps", "combined", "index", "indices", "factor score", "z-sc", "standardi", "latent", "rate", "tast", "scor", "evaluat", "judg", "assess", "trial", "block", "replicat", "duplicat",
+    "averag", "mean", "pooled", "percent", "residual", "transform", "daily", "diary", "momentary", "last ", "composite", "aggregat", "collaps", "combined", "index", "indices", "factor score", "z-sc", "standardi", "latent", "rate", "tast", "scor", "evaluat", "judg", "assess", "trial", "block", "replicat", "duplicat",
     "triplicat", "session", "twice", "times", "daily", " per ", "each ", "item", "question", "statement", "cronbach", "α", "reliab", "consisten", "summ", "total", "sum", "single", "half", "halves", "step", "increment", "decimal", "visual", "vas",
     "slid", "analog", "cent", "convert", "t score", "t-score", "rescal", "re-scal", "normali", "percentile", "stanine", "ipsati", "pomp", "whole", "integer", "prorat", "pro-rat", "missing", "imputation", "substitution", "0.",
 )  # fmt: skip

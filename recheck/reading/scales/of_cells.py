@@ -4,15 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
+from functools import cache
+
+import regex
 
 from recheck.model import Claim, Document, Passage, Table
-from recheck.reading.matching import Key
+from recheck.reading.matching import Key, terms
 from recheck.reading.scales.by_name import Attached, may_be, merged, name_of, one_of
 from recheck.reading.scales.described import Scale, joined, may_tell, sentence_scales
 from recheck.reading.scales.guards import changes, has_unit
 from recheck.reading.scales.labels import label_scales
+from recheck.reading.scales.whose import canonical
 from recheck.reading.tokens import sentences
-from recheck.reading.views import view_of
+from recheck.reading.views import TIMEOUT, view_of
 
 
 def captions_of(document: Document) -> dict[int, tuple[Scale, ...]]:
@@ -59,7 +63,13 @@ def speaks_of_ratings(table: Table) -> bool:
 
 
 def of_cell(
-    claim: Claim, index: Mapping[Key, Scale | None], captions: Sequence[Scale], general: Scale | None = None
+    claim: Claim,
+    index: Mapping[Key, Scale | None],
+    captions: Sequence[Scale],
+    general: Scale | None = None,
+    title: Key = (),
+    *,
+    scored: bool = False,
 ) -> Attached | None:
     """The scale of a summary of a table: its own heading's, that of its name, or the one that caption or text tell for all."""
     names = [text for text in (claim.outcome, claim.group) if text]
@@ -82,6 +92,40 @@ def of_cell(
         return Attached(captions[0], sure=False, of_all=captions[0].of_all)
     if len(captions) == 1 and not claim.outcome and len(captions[0].names) == 1:
         return Attached(captions[0], sure=True)
+    if len(captions) == 1 and scored:
+        return Attached(captions[0], sure=False)
+    if not claim.outcome and title and (titled := index.get(title)) is not None:
+        return Attached(titled, sure=True)
     if general is not None and not captions and claim.outcome:
         return Attached(general, sure=False)
     return None
+
+
+@cache
+def _title() -> regex.Pattern[str]:
+    """`Table 1. Satisfaction with the training by group`: what stands before `by`, `in`, `after` is the outcome."""
+    return regex.compile(
+        r"^(?:tab(?:le|\.) ?[\p{L}\d.]{1,6}[.:] ?)?(?:(?:mean|average|descriptive statistics (?:of|for)|means? (?:and|with) (?:standard deviations?|SDs?) (?:of|for)|the|ratings? of|scores? (?:of|for|on)) )*"
+        r"(?P<name>[\p{L}][\p{L}\d' -]{2,60}?)(?:,? (?:by|in|across|among|before|after|as a function|according|per|scores?|ratings?)\b[^.]*)?[.;:]?$",
+        regex.IGNORECASE,
+    )
+
+
+def title_of(table: Table) -> Key:
+    """The key of the one outcome that the caption of a table names, () where it is longer than a name."""
+    text = " ".join(table.caption.text.split()) if table.caption else ""
+    match = _title().match(text, timeout=TIMEOUT) if len(text) < 160 else None
+    return canonical(terms(match["name"])) if match else ()
+
+
+@cache
+def _scores_of() -> regex.Pattern[str]:
+    return regex.compile(
+        r"^(?:tab(?:le|\.) ?[\p{L}\d.]{1,6}[.:] ?)?(?:[\w-]+ ){0,2}(?:scores?|ratings?|marks|grades) (?:of|for|given to|by)\b(?!.* and )",
+        regex.IGNORECASE,
+    )
+
+
+def tells_scores_of(table: Table) -> bool:
+    """Whether a caption tells the scale of all scores of a table: `Scores of the breads (1-9 scale)`."""
+    return table.caption is not None and _scores_of().match(table.caption.text, timeout=TIMEOUT) is not None

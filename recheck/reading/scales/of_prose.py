@@ -4,16 +4,19 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
+from functools import cache
+
+import regex
 
 from recheck.model import LEVELS, Claim
 from recheck.reading.matching import Key, Vocabulary, terms
 from recheck.reading.placed import Placed
 from recheck.reading.scales.by_name import Attached, one_of
 from recheck.reading.scales.described import Scale
-from recheck.reading.scales.guards import apart, has_unit, of_change, stands_alone, tells_beside
+from recheck.reading.scales.guards import apart, has_unit, of_change, stands_alone, tells_beside, units_of
 from recheck.reading.scales.whose import OF_SCORES, canonical
 from recheck.reading.told import Item, Names, items_of
-from recheck.reading.views import View
+from recheck.reading.views import TIMEOUT, View
 
 
 def of_prose(
@@ -41,10 +44,16 @@ def of_prose(
     found: dict[int, Attached] = {}
     for at in wanted:
         item = items[claims[at].id]
-        if has_unit(item.placed.text[_start(item) :], claims[at]) or of_change(claims[at]):
+        if of_change(claims[at]):
             continue
-        attached = _beside(item, scales, index) or _named(item, index, scales) or _alone(item, scales)
-        if attached:
+        attached = (
+            _beside(item, scales, index)
+            or _named(item, index, scales)
+            or _alone(item, scales)
+            or _by_verb(item, scales, views)
+        )
+        unit = has_unit(item.placed.text[_start(item) :], claims[at])
+        if attached and not (unit and unit not in units_of(attached.scale.quote)):
             found[at] = attached
     return found
 
@@ -145,3 +154,49 @@ def _alone(item: Item, scales: Sequence[Scale]) -> Attached | None:
     return (
         Attached(scale, sure=False) if low is not None and high is not None and low <= mean <= high else None
     )
+
+
+_VERBS = r"(?P<verb>rated|scored|judged|graded|evaluated|marked)"
+
+
+@cache
+def _thing_rated() -> regex.Pattern[str]:
+    """`The class was rated higher`: what stands at the beginning is the thing, not the outcome."""
+    return regex.compile(
+        rf"^(?:[^,;.()]{{1,40}}, )?[^,;.()=]{{2,50}}? (?:was|were) (?:\w+ )?{_VERBS}\b", regex.IGNORECASE
+    )
+
+
+def _by_verb(item: Item, scales: Sequence[Scale], views: Sequence[View]) -> Attached | None:
+    """The one scale on which things are rated as the sentence says that one was: `apprentices rated the course from 1 to 7`."""
+    outcome = item.about.outcome
+    if outcome is not None and any(canonical(outcome.key) in scale.names for scale in scales):
+        return None
+    match = _thing_rated().match(item.placed.text[: _start(item)], timeout=TIMEOUT)
+    if match is None or of_change(item.claim, item.placed.text):
+        return None
+    verb = match["verb"].lower()
+    told = [scale for scale in scales if scale.names and _by_whom(scale, verb, views)]
+    if not any(_of_thing(scale, verb, views) for scale in told):
+        return None
+    scale = one_of(told) if len({scale.ends for scale in told}) == 1 else None
+    return Attached(scale, sure=False) if scale is not None else None
+
+
+def _before(scale: Scale, views: Sequence[View]) -> str:
+    return views[scale.passage].text[max(0, scale.span[0] - _REACH) : scale.span[1]].lower()
+
+
+_REACH = 120
+"""Characters before a scale in which its verb stands."""
+
+
+def _by_whom(scale: Scale, verb: str, views: Sequence[View]) -> bool:
+    """Whether a scale of the text is told with a verb."""
+    return scale.passage >= 0 and verb in _before(scale, views)
+
+
+def _of_thing(scale: Scale, verb: str, views: Sequence[View]) -> bool:
+    """Whether a scale is that on which somebody rated a thing: `rated the course`."""
+    said = _before(scale, views).rpartition(verb + " ")[2]
+    return said.startswith(("the ", "each ", "every ", "their ", "a ", "both "))

@@ -18,7 +18,9 @@ _N = r"(?:[-+]?\d{1,3}(?:\.\d)?(?![\d.,]*\d| ?%)|(?:zero|one|two|three|four|five
 _LOW, _HIGH = rf"(?P<low>{_N})", rf"(?P<high>{_N})"
 _TO = r" ?(?:to|-|--|and|through|until|up to|\.\.\.?|…) ?"
 _QUOTED = r"[\"'“”«][^\"'“”»]{1,60}[\"'“”»]"
-_SAID_LAST = rf"(?: ?[(\[](?!M ?=|S\.?D|S\.?E|n ?=|mean)[^()\[\]=]{{1,60}}[)\]]|,? ?{_QUOTED})"
+_NO_LABEL = r"(?!(?:M|Mdn|S\.?D|S\.?E|S\.?E\.?M|N|CI|IQR|ranges?|interquartile|medians?|means?|standard|p|t|r)(?![\p{L}-])(?! than))"
+"""What opens brackets that hold a statistic, not what an end of a scale is called: `from 4.1 (SD 1.0) to 5.2 (SD 1.1)`."""
+_SAID_LAST = rf"(?: ?[(\[]{_NO_LABEL}[^()\[\]=]{{1,60}}[)\]]|,? ?{_QUOTED})"
 _SAID = rf"(?:{_SAID_LAST}|(?:,| =| :|=|:) ?[\p{{L}}][^()\[\];.\d]{{1,50}}?)"
 """What an end of a scale is called: ` (poor)`, ` = not at all`, `, "never"`."""
 _KIND = (
@@ -46,6 +48,8 @@ _OF_SCALE = (
     r"(?: [\w'-]{1,15}){0,6}? (?:from|between|at|as) ",
     r"(?:rated|coded|(?<=[(\[])scored) ",
     r"responses? (?:could )?rang(?:ed?|ing) (?:from|between) ",
+    r"(?:awarded|gave|assigned|received) (?:from|between) ",
+    r"(?:one|single) (?:item|question)(?:,| ?[(\[])? ?(?:rated |scored |scale |range |from )?",
 )
 _OF_SCORE = (
     r"(?:possible|theoretical|potential|score|scoring) (?:range|scores?|values?|totals?)\b[^.;()\d]{0,24}?(?:[ :=,(]|from |of |between )",
@@ -101,10 +105,11 @@ def anchors() -> regex.Pattern[str]:
 def named_ends() -> regex.Pattern[str]:
     """`(1) to very much (7)`, `1 (poor) to 5 (excellent)`, `(1) Very difficult to (5) very easy`."""
     word = r"[\p{L}\"'“”][\p{L}\"'“” ,/-]{1,60}?"
-    end = r"[\p{L}\"'“”][^()\[\]]{1,60}"
+    end = rf"{_NO_LABEL}[\p{{L}}\"'“”][^()\[\]=]{{1,60}}"
     return regex.compile(
         rf"(?<=[\p{{L}}\"'“”] ?)[(\[]{_LOW}[)\]],? (?:{word} ?[(\[]\d{{1,3}}[)\]],? ){{0,8}}(?:to|through|and(?= [\"“])) {word} ?[(\[]{_HIGH}[)\]]"
         rf"|(?<![\w.=<>-]){_LOW} ?[(\[]{end}[)\]]{_TO}{_HIGH} ?[(\[]{end}[)\]]"
+        rf"|(?<![\w.=<>-]){_LOW} ?[(\[]{end}[)\]](?:, \d{{1,3}} ?[(\[]{end}[)\]]){{1,9}},? (?:or|and|to) {_HIGH} ?[(\[]{end}[)\]]"
         rf"|[(\[]{_LOW}[)\]] {word} ?to [(\[]{_HIGH}[)\]] ?[\p{{L}}\"'“]",
         regex.IGNORECASE,
     )

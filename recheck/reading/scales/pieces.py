@@ -106,7 +106,7 @@ def _found(text: str) -> Iterator[Piece]:
             yield Piece(*match.span(), high=match.span("high"), scored=True)
 
 
-_LEADS = ("scale", "likert", "continuum", "slider", "nrs", "vas", "analog", "rat", "scor", "judged", "grade", "grading", "evaluat", "assess", "answer", "anchor", "coded", "marked", "respon", "possibl", "theoretic", "potential", "rang", "total", "value", "points", "run", "var", "may", "can")  # fmt: skip
+_LEADS = ("scale", "likert", "continuum", "slider", "nrs", "vas", "analog", "rat", "scor", "judged", "grade", "grading", "evaluat", "assess", "answer", "anchor", "coded", "item", "question", "award", "gave", "assign", "marked", "respon", "possibl", "theoretic", "potential", "rang", "total", "value", "points", "run", "var", "may", "can")  # fmt: skip
 _REACH = 110
 """Characters before two numbers in which the words that lead them in stand."""
 
@@ -146,7 +146,8 @@ def _rising(text: str, low: Span, high: Span, most: int = 5) -> bool:
         first, last = (value_of(text[slice(*span)]) for span in (low, high))
     except ValueError:
         return False
-    return first < last and first <= most and last <= 999
+    # Borg (1970): perceived exertion goes from 6 to 20.
+    return first < last and (first <= most or (first == 6 and last == 20)) and last <= 999
 
 
 def _of_scale(text: str, match: regex.Match[str], said: regex.Match[str]) -> bool:
@@ -174,7 +175,7 @@ def _of_scale(text: str, match: regex.Match[str], said: regex.Match[str]) -> boo
 
 _INSTRUMENTS = (
     "questionnaire", "inventory", "scale", "instrument", "index", "checklist", "total score", "sum score", "higher score", "higher values",
-    "higher total", "indicating", "subscale", "possible", "rated", "rating", "test consists", "knowledge test", "items",
+    "higher total", "indicating", "subscale", "possible", "rated", "rating", "test consists", "knowledge test", "items", "-item ", "questions", "correct answer",
 )  # fmt: skip
 
 

@@ -4,17 +4,19 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cache
+from itertools import pairwise
 
 import regex
 
 from recheck.reading.matching import FUNCTION_WORDS, LEFT_OUT, Key, terms
+from recheck.reading.scales.asked_how import asked_how
 from recheck.reading.scales.pieces import Piece
 from recheck.reading.tokens import words
 from recheck.reading.views import TIMEOUT
 
 OF_SCORES = frozenset(
     ("score", "rating", "scale", "level", "questionnaire", "inventory", "subscale", "total", "rated", "scored", "self-rated", "self", "reported", "perceived", "perception",
-     "judgement", "judgment", "measure", "intensity", "degree", "severity", "variable", "overall-score", "instrument", "test", "point", "task", "item", "vas", "nrs", "likert")
+     "judgement", "judgment", "measure", "intensity", "degree", "severity", "variable", "overall-score", "instrument", "test", "point", "task", "item", "subjective", "current", "general", "vas", "nrs", "likert")
 )  # fmt: skip
 """Stems that may stand beside an outcome's name without making it another one: `sourness rating` is sourness."""
 
@@ -77,7 +79,8 @@ def _asked() -> regex.Pattern[str]:
     return regex.compile(
         rf"(?:used|employed|applied|served|administered)(?: by [\w ]{{3,30}})? (?:{_TO_DO} |for (?:assessing |measuring |rating |scoring )?|when rating )(?P<name>{_NP}){end}"
         rf"|^[^.;,()]{{0,30}}?(?:scales?|likert|NRS|VAS|items?|format)\b(?: (?:ratings?|scores?))? (?:of|for) (?P<name>{_NP}){end}"
-        rf"|^[^.;()]{{0,12}}, [\w ]{{2,40}}? (?:rated|scored|judged|graded) (?P<name>{_NP}){end}",
+        rf"|^ ?{_TO_DO} (?P<name>{_NP}){end}"
+        rf"|^[^.;()]{{0,12}}, [\w ]{{2,40}}? (?:rated|scored|judged|graded|reported|indicated|stated|expressed|evaluated|marked|assessed) (?P<name>{_NP}){end}",
         regex.IGNORECASE,
     )
 
@@ -123,13 +126,15 @@ def _short() -> regex.Pattern[str]:
     )
 
 
-_SAID_BY_SELF = frozenset(("reported", "report", "rated", "scored", "rating", "assessed", "assessment", "perceived", "score"))
+_SAID_BY_SELF = frozenset(
+    ("reported", "report", "rated", "scored", "rating", "assessed", "assessment", "perceived", "score")
+)
 
 
 def canonical(key: Key) -> Key:
     """A key without the words that every score's name may have: `sourness rating` and `rated sourness` are sourness."""
     # `self-rated sourness` is sourness, but self-efficacy is not efficacy.
-    own = "self" in key and _SAID_BY_SELF.isdisjoint(key)
+    own = any(one == "self" and two not in _SAID_BY_SELF for one, two in pairwise(key))
     kept = tuple(stem for stem in key if stem not in OF_SCORES or (own and stem == "self"))
     return kept if kept and not all(stem in LEFT_OUT for stem in kept) else ()
 
@@ -138,22 +143,30 @@ def whose(text: str, piece: Piece, start: int = 0) -> Whose:
     """The outcomes that a scale is given by its sentence, from `start` on (the end of the scale before it)."""
     told_at = min(span[0] for span in (piece.low, piece.high, piece.points) if span is not None)
     before = text[start:told_at]
-    bracketed = _named_in_front(text, piece, start)
-    if bracketed:
+    bracketed, instrument = _named_in_front(text, piece, start)
+    if bracketed and not instrument:
         return Whose(bracketed)
-    names = _verbal(before) or _asked_on(before)
+    before = _summaries().sub("", before, timeout=TIMEOUT) if "=" in before else before
+    names = _verbal(before) or _asked_on(before) or asked_how(before) or _labelled(before)
     if not names:
-        behind = _asked().search(text, piece.end, min(len(text), piece.end + 160), timeout=TIMEOUT)
+        behind = _asked().search(text[piece.end : piece.end + 160], timeout=TIMEOUT)
         names = _names(behind["name"]) if behind else ()
     if not names and (
         ranging := _ranging().search(text[start : max(piece.start, start)] or before, timeout=TIMEOUT)
     ):
         names = _names(ranging["name"])
     names = names or measure_told(before)
+    names = (*names, *bracketed)
     if names:
         return Whose(tuple(dict.fromkeys((*names, *_instrument(before)))))
     short = _instrument(before)
     return Whose(short, before=not short and _points_back(before))
+
+
+@cache
+def _summaries() -> regex.Pattern[str]:
+    """Brackets that hold numbers of a result: ` (M = 5.19, SD = 1.10)`."""
+    return regex.compile(r" ?[(\[](?=[^()\[\]]*\b(?:M|SD|SE|n|N|mean|Mdn) ?=)[^()\[\]]*[)\]]")
 
 
 def _verbal(text: str) -> tuple[tuple[Key, str], ...]:
@@ -190,7 +203,7 @@ def measure_told(text: str) -> tuple[tuple[Key, str], ...]:
 def _question_on() -> regex.Pattern[str]:
     """`one question on boredom,`, `a single item about trust in the dough from`, `a rating of crumb`."""
     return regex.compile(
-        r"\b(?:item|question|statement|single-item measure|one-item measure) (?:on|about|of|for|regarding|concerning|assessing|measuring|addressing|tapping|capturing|asking about|that asked about) "
+        r"\b(?:(?:item|question|statement|single-item measure|one-item measure) (?:on|about|of)|(?:item|question|statement|measure|scores?|ratings?|marks?|grades?) for|(?:item|question|statement|measure) (?:regarding|concerning|assessing|measuring|addressing|tapping|capturing|asking about|that asked about)) "
         rf"(?P<name>{_NP})(?=,? {_ON}\b| ?[(\[]|,|$|,? (?:was|were|is|answered|rated|scored|that|which)\b)",
         regex.IGNORECASE,
     )
@@ -234,19 +247,41 @@ def _bracket() -> regex.Pattern[str]:
     return regex.compile(r"[(\[][^()\[\]]*$")
 
 
-def _named_in_front(text: str, piece: Piece, start: int) -> tuple[tuple[Key, str], ...]:
-    """The name before the bracket that tells the scale: `sourness (1 = none, 9 = strong)`, `crumb score (7-point scale)`."""
+def _named_in_front(text: str, piece: Piece, start: int) -> tuple[tuple[tuple[Key, str], ...], bool]:
+    """The name before the bracket that tells the scale, and whether it is that of an instrument.
+
+    `sourness (1 = none, 9 = strong)`, `crumb score (7-point scale)`, `was rated on the Borg scale (6-20)`.
+    """
     lead = text[start : piece.start]
     opened = _bracket().search(lead, timeout=TIMEOUT)
     if opened is None:
-        return ()
+        return (), False
     phrase = _phrase_back(lead[: opened.start()].rstrip())
     inside = opened[0].lower()
     # `knowledge (ten items, each scored from 0 to 2)` speaks of the items.
     names = _names(phrase) if phrase and len(inside) < 60 else ()
     short = _opening_short().match(opened[0], timeout=TIMEOUT)
     key = canonical(terms(short["short"])) if short and names else ()
-    return (*names, (key, short["short"])) if short and key else names
+    used = phrase.lower().endswith(
+        ("scale", "questionnaire", "inventory", "index", "instrument", "checklist")
+    )
+    return ((*names, (key, short["short"])) if short and key else names), used
+
+
+@cache
+def _told_of() -> regex.Pattern[str]:
+    """`Crumb quality: 1 = poor`, `The primary outcome was pain, measured on`, `For crumb quality, judges awarded`."""
+    return regex.compile(
+        rf"^(?P<name>[\p{{L}}][\p{{L}} '-]{{2,50}}): |\boutcomes?(?: measures?| variables?)? (?:was|is|were|are) (?P<name>{_NP})(?=,? {_ON}\b|, | ?[(\[]|,? (?:which|that|rated|scored|measured|judged|assessed)\b)"
+        rf"|^For (?P<name>{_NP}), [^,;()]{{3,40}} (?:awarded|gave|assigned|received)\b",
+        regex.IGNORECASE,
+    )
+
+
+def _labelled(text: str) -> tuple[tuple[Key, str], ...]:
+    """The outcome that a sentence opens with, or calls an outcome."""
+    match = _told_of().search(text, timeout=TIMEOUT)
+    return _names(match["name"]) if match else ()
 
 
 @cache

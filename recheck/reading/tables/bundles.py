@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import cache
 
@@ -65,7 +65,10 @@ def bundles_of(frame: Frame) -> tuple[Bundle, ...]:
         role = roles.get(column)
         if role is not None and not _has_cells(sheet, column):
             continue
-        if role is None or not set(role.quantities) <= _JOINING:
+        if role is not None and _sd_of_differences(sheet, column, current, roles):
+            roles[column] = replace(role, quantities=("sd",))
+            current.append(column)
+        elif role is None or not set(role.quantities) <= _JOINING:
             found.append(current)
             current = []
         elif current and (not _joins(current, column, roles) or _p_before(current, column, roles)):
@@ -75,6 +78,20 @@ def bundles_of(frame: Frame) -> tuple[Bundle, ...]:
             current.append(column)
     found.append(current)
     return tuple(bundle for columns in found if (bundle := _bundle(columns, roles)) is not None)
+
+
+def _sd_of_differences(sheet: Sheet, column: int, current: Sequence[int], roles: Mapping[int, Role]) -> bool:
+    """Whether a column right behind a mean difference holds the SD of the same differences, as its headings say, and a t follows."""
+    if (
+        roles[column].quantities not in (("sd",), ("sd", "mean_difference"))
+        or not current
+        or roles[current[-1]].quantities != ("mean_difference",)
+    ):
+        return False
+    following = [roles[c] for c in range(column + 1, column + _NEAR) if c in roles]
+    heading = sheet.column_header(column).text.lower()
+    tested = any("t" in role.quantities for role in following)
+    return tested and any(word in heading for word in ("difference", "change", "gain"))
 
 
 def _has_cells(sheet: Sheet, column: int) -> bool:

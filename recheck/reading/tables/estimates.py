@@ -3,6 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from functools import cache
+
+import regex
 
 from recheck.model import EFFECTS_ON_RISK, LEVELS, Printed
 from recheck.reading.tables.cells import COMPARISONS
@@ -10,6 +13,7 @@ from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level,
 from recheck.reading.tables.saying import marks_compare
 from recheck.reading.tables.summaries import own_names
 from recheck.reading.tables.units import Unit
+from recheck.reading.views import TIMEOUT
 
 _MAIN = (*sorted(COMPARISONS), "estimate")
 _KEPT = (*_MAIN, "se", "sd", "ci_low", "ci_high", "p", "stars", "n", "N")
@@ -71,7 +75,28 @@ def _stated(frame: Frame, unit: Unit) -> list[str]:
     heads = " ".join(frame.sheet.column_header(column).text for column in unit.columns).lower()
     if "adjusted" in heads.replace("unadjusted", "") or "aor" in heads.split() or "ahr" in heads.split():
         said.append("covariate-adjusted")
-    return [*said, *(word for word in frame.legend.stated if word in _OF_MODELS)]
+    said += [word for word in frame.legend.stated if word in _OF_MODELS]
+    return [*said, *_tests_of_counts(frame, unit)]
+
+
+def _tests_of_counts(frame: Frame, unit: Unit) -> list[str]:
+    """The tests of counts that caption or notes name, for a p beside a ratio or a difference of risks."""
+    if "p" not in unit.values or not EFFECTS_ON_RISK & unit.values.keys():
+        return []
+    said = [word for word in frame.legend.stated if word in _OF_COUNTS]
+    if not said and _chi2().search(frame.legend.text, timeout=TIMEOUT):
+        return ["chi2-named"]
+    return said
+
+
+_OF_COUNTS = ("fisher-exact", "yates", "uncorrected-chi2", "likelihood-ratio")
+
+
+@cache
+def _chi2() -> regex.Pattern[str]:
+    return regex.compile(
+        r"(?:\bchi[- ]?squared?|χ ?(?:2|²)|\bchi ?2)[- ](?:tests?|statistics?|analys[ei]s)\b"
+    )
 
 
 _OF_MODELS = frozenset(

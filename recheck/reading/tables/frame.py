@@ -9,6 +9,7 @@ from decimal import Decimal
 from recheck.model import LEVELS, Claim, ClaimKind, Confidence, Place, Printed, Table
 from recheck.reading.context import Setting
 from recheck.reading.placed import claim_id
+from recheck.reading.tables.courses import without_changes
 from recheck.reading.tables.grid import Header, Sheet
 from recheck.reading.tables.headings import Told, told
 from recheck.reading.tables.legend import Legend
@@ -21,6 +22,7 @@ from recheck.reading.tables.roles import (
     role_of,
     size_told,
 )  # fmt: skip
+from recheck.reading.tables.row_sizes import sizes_add_up
 from recheck.reading.tables.sizes import sizes_of
 from recheck.reading.tables.values import Piece, decimal_comma_of, pieces
 from recheck.reading.tokens import words
@@ -123,7 +125,11 @@ def frame_of(sheet: Sheet, legend: Legend, setting: Setting) -> Frame:
     ]
     groups = {column: group_of(sheet.column_header(column), legend) for column in sheet.columns}
     size_rows, sizes = sizes_of(sheet, legend, groups)
-    roles = column_roles(sheet, legend)
+    named = column_roles(sheet, legend)
+    roles = without_changes(named, sheet, legend)
+    groups |= {
+        c: Group(LEVELS.join(sheet.column_header(c).path), groups[c].n) for c in named.keys() - roles.keys()
+    }
     # `Q1` over a column looks like the name of a group until the columns beside it tell what it is.
     groups |= {
         c: Group(role.group or "", groups[c].n)
@@ -159,17 +165,22 @@ def _groups_in_rows(
     with_n = sum(
         any(told(text).n is not None for text in sheet.row_header(row).path[-1:]) for row in sheet.rows
     )
-    if with_n > 1 or _told_in_rows(sheet, legend):
+    if with_n > 1 or _told_in_rows(sheet, legend) or sizes_add_up(sheet, roles):
         return True
     centres = [c for c, role in roles.items() if {"mean", "median"} & set(role.quantities)]
     if not centres or any(
         groups[c].name and set(roles[c].quantities) <= {"mean", "sd"} and len(centres) > 1 for c in centres
     ):
         return False
-    head = sheet.column_header(sheet.stubs[-1]).last.lower().rstrip("s") if sheet.stubs else ""
-    return head in _GROUP_HEADS or any(
+    return heads_groups(sheet) or any(
         _shared(sheet, c, centres[0]) for c, role in roles.items() if _TEST_COLUMNS & set(role.quantities)
     )
+
+
+def heads_groups(sheet: Sheet) -> bool:
+    """Whether the heading over the names of the rows says that they are groups."""
+    head = sheet.column_header(sheet.stubs[-1]).last.lower().rstrip("s") if sheet.stubs else ""
+    return head in _GROUP_HEADS
 
 
 _GROUP_HEADS = words("group condition treatment arm cohort gruppe groupe grupo bedingung")

@@ -39,7 +39,12 @@ def _words() -> regex.Pattern[str]:
     )
 
 
-_KEYS = {"weighted": "weighted", "adjusted": "covariate-adjusted", "marginal": "marginal", "imputed": "imputed"}
+_KEYS = {
+    "weighted": "weighted",
+    "adjusted": "covariate-adjusted",
+    "marginal": "marginal",
+    "imputed": "imputed",
+}
 
 
 @cache

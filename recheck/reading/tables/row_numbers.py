@@ -8,7 +8,7 @@ from functools import cache
 
 import regex
 
-from recheck.model import EFFECTS_ON_RISK, ClaimKind, Printed
+from recheck.model import EFFECTS_ON_RISK, OF_DIFFERENCES, ClaimKind, Printed
 from recheck.reading.numerals import printed
 from recheck.reading.tables.bundles import (
     DEGREES,
@@ -70,6 +70,8 @@ def numbers_of(frame: Frame, row: int, bundle: Bundle) -> Numbers:
         named = [q for q in given if q in _OWNERS]
         last = named[-1] if named else (last if set(given) <= _PASSED else "")
     complete(found, bundle.roles, frame)
+    if {"sd", "mean_difference"} <= found.values.keys():
+        found.notes.append(OF_DIFFERENCES)
     return found
 
 

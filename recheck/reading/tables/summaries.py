@@ -6,10 +6,11 @@ from collections.abc import Iterator
 from dataclasses import replace
 
 from recheck.model import LEVELS, N_OF_GROUP, Printed
-from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level
+from recheck.reading.tables.frame import Found, Frame, claim_of, heads_groups, interval_level
 from recheck.reading.tables.headings import Told
 from recheck.reading.tables.modelled import modelled
 from recheck.reading.tables.roles import size_told
+from recheck.reading.tables.row_sizes import of_row_alone, size_column, size_of_row
 from recheck.reading.tables.units import Unit
 
 _CENTRES = ("mean", "median")
@@ -65,7 +66,7 @@ def _size(frame: Frame, unit: Unit, values: dict[str, Printed]) -> tuple[Printed
     labels = frame.labels(unit.rows[0], unit.columns[0])
     if labels and labels[-1].n is not None:
         return labels[-1].n, ()
-    of_group = group_size(frame, unit) or _told_of_row(frame, unit)
+    of_group = group_size(frame, unit) or _told_of_row(frame, unit) or _in_own_column(frame, unit)
     return (of_group, (N_OF_GROUP,)) if of_group is not None else (None, ())
 
 
@@ -73,6 +74,15 @@ def _told_of_row(frame: Frame, unit: Unit) -> Printed | None:
     """The n that caption or notes give for the group that the row is named by."""
     labels = frame.labels(unit.rows[0], unit.columns[0])
     return size_told(frame.legend, (labels[-1].name,)) if labels and frame.groups_in_rows else None
+
+
+def _in_own_column(frame: Frame, unit: Unit) -> Printed | None:
+    """The n that a column of its own prints for a row that is a group, whatever was measured."""
+    column = size_column(frame.sheet, frame.roles)
+    if column is None or len(unit.rows) > 1 or not (frame.groups_in_rows or heads_groups(frame.sheet)):
+        return None
+    alone = all(of_row_alone(text) for c in unit.columns for text in frame.sheet.column_header(c).path)
+    return size_of_row(frame.sheet, column, unit.rows[0]) if alone else None
 
 
 def group_size(frame: Frame, unit: Unit) -> Printed | None:

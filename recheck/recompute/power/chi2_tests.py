@@ -23,7 +23,7 @@ def chi2_power(w: ArrayLike, N: ArrayLike, df: ArrayLike, alpha: ArrayLike = 0.0
 def chi2_n(
     w: ArrayLike, power: ArrayLike, df: ArrayLike, alpha: ArrayLike = 0.05, *, whole: bool = False
 ) -> Floats:
-    """The N of all cases that has the power for an effect w > 0."""
+    """The N of all cases that has the power, by `chi2_power`, for an effect w > 0."""
     w, power, df, alpha = together(w, power, df, alpha)
 
     def rises(N: Floats) -> Floats:
@@ -34,7 +34,7 @@ def chi2_n(
 
 
 def chi2_detectable(N: ArrayLike, power: ArrayLike, df: ArrayLike, alpha: ArrayLike = 0.05) -> Floats:
-    """The smallest w that is detected with the power."""
+    """The smallest w that is detected with the power, by `chi2_power`."""
     N, power, df, alpha = together(N, power, df, alpha)
 
     def rises(w: Floats) -> Floats:

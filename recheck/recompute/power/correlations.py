@@ -89,7 +89,7 @@ def r_n(
     rho: ArrayLike, power: ArrayLike, alpha: ArrayLike = 0.05, *, method: Method = "exact",
     tails: int = 2, far_tail: bool = True, whole: bool = False,
 ) -> Floats:  # fmt: skip
-    """The n that has the power for a correlation rho > 0; at least 4."""
+    """The n that has the power, by `exact_r_power` or another `method`, for a correlation rho > 0; at least 4."""
     rho, power, alpha = together(rho, power, alpha)
 
     def rises(n: Floats) -> Floats:
@@ -110,7 +110,7 @@ def r_detectable(
     tails: int = 2,
     far_tail: bool = True,
 ) -> Floats:
-    """The smallest correlation that is detected with the power; between 1e-6 and 1 − 1e-9."""
+    """The smallest correlation that is detected with the power, as for `r_n`; between 1e-6 and 1 − 1e-9."""
     n, power, alpha = together(n, power, alpha)
 
     def rises(rho: Floats) -> Floats:

@@ -47,7 +47,7 @@ def fixed_effects_n(
     *,
     whole: bool = False,
 ) -> Floats:
-    """The N of all cases that has the power for an effect f² > 0; at least parameters + 1."""
+    """The N of all cases that has the power, by `fixed_effects_power`, for an effect f² > 0; at least parameters + 1."""
     f2, power, df1, parameters, alpha = together(f2, power, df1, parameters, alpha)
 
     def rises(N: Floats) -> Floats:
@@ -60,7 +60,7 @@ def fixed_effects_n(
 def fixed_effects_detectable(
     N: ArrayLike, power: ArrayLike, df1: ArrayLike, parameters: ArrayLike, alpha: ArrayLike = 0.05
 ) -> Floats:
-    """The smallest f² that is detected with the power."""
+    """The smallest f² that is detected with the power, by `fixed_effects_power`."""
     N, power, df1, parameters, alpha = together(N, power, df1, parameters, alpha)
 
     def rises(f2: Floats) -> Floats:
@@ -81,7 +81,7 @@ def anova_power(f: ArrayLike, n: ArrayLike, groups: ArrayLike, alpha: ArrayLike 
 def anova_n(
     f: ArrayLike, power: ArrayLike, groups: ArrayLike, alpha: ArrayLike = 0.05, *, whole: bool = False
 ) -> Floats:
-    """The n of each of `groups` groups that has the power for Cohen's f > 0; at least 2 where whole."""
+    """The n of each of `groups` groups that has the power, by `anova_power`, for Cohen's f > 0; at least 2 where whole."""
     f, power, groups, alpha = together(f, power, groups, alpha)
 
     def rises(n: Floats) -> Floats:

@@ -23,7 +23,7 @@ def z_power(shift: ArrayLike, alpha: ArrayLike = 0.05, *, tails: int = 2, far_ta
 
 
 def z_shift(power: ArrayLike, alpha: ArrayLike = 0.05, *, tails: int = 2) -> Floats:
-    """z of alpha plus z of the power: the shift that a z test detects with the power (far tail dropped), at least 0."""
+    """z of alpha plus z of the power: the shift that a z test detects with the power (`z_power`, far tail dropped), at least 0."""
     power, alpha = together(power, alpha)
     return np.asarray(np.maximum(special.ndtri(power) - special.ndtri(alpha / tails), 0.0))
 
@@ -41,7 +41,7 @@ def normal_n(
 
 
 def normal_n_one_sample(d: ArrayLike, power: ArrayLike, alpha: ArrayLike = 0.05, *, tails: int = 2) -> Floats:
-    """The n of one group, or of pairs with d_z, by the normal approximation: (z_alpha + z_power)² / d²."""
+    """The n of one group, or of pairs with d_z, by the normal approximation: (z_alpha + z_power)² / d². Source: as for `normal_n`."""
     d, power, alpha = together(d, power, alpha)
     with np.errstate(divide="ignore"):
         return np.asarray((z_shift(power, alpha, tails=tails) / d) ** 2)

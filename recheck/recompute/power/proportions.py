@@ -41,7 +41,7 @@ def arcsine_power(
 def arcsine_n(
     h: ArrayLike, power: ArrayLike, alpha: ArrayLike = 0.05, *, ratio: ArrayLike = 1.0, tails: int = 2
 ) -> Floats:
-    """The n of the first group, (1 + 1 / ratio) ((z_alpha + z_power) / h)²; infinite for h = 0."""
+    """The n of the first group, (1 + 1 / ratio) ((z_alpha + z_power) / h)²; infinite for h = 0. Source: Cohen (1988), 6.4."""
     h, power, alpha, ratio = together(h, power, alpha, ratio)
     return np.asarray((1 + 1 / ratio) * quotient(z_shift(power, alpha, tails=tails), h) ** 2)
 

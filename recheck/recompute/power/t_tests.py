@@ -83,7 +83,7 @@ def one_sample_t_n(
 ) -> Floats:
     """The n of a one-sample (pairs of a paired) t test that has the power for an effect d > 0 (d_z).
 
-    At least 2; nan for d = 0.
+    By `one_sample_t_power`. At least 2; nan for d = 0.
     """
     d, power, alpha = together(d, power, alpha)
 
@@ -100,7 +100,7 @@ def two_sample_t_n(
 ) -> Floats:  # fmt: skip
     """The n of the first group that has the power for an effect d > 0; the second group has `ratio` times as many.
 
-    At least 2 with equal groups (3 / (1 + ratio) otherwise, so that df >= 1); nan for d = 0.
+    By `two_sample_t_power`. At least 2 with equal groups (3 / (1 + ratio) otherwise, so that df >= 1); nan for d = 0.
     """
     d, power, alpha, ratio = together(d, power, alpha, ratio)
 
@@ -115,7 +115,7 @@ def two_sample_t_n(
 def one_sample_t_detectable(
     n: ArrayLike, power: ArrayLike, alpha: ArrayLike = 0.05, *, tails: int = 2, far_tail: bool = True
 ) -> Floats:
-    """The smallest effect d (d_z) that a one-sample (paired) t test of n (pairs) detects with the power."""
+    """The smallest effect d (d_z) that a one-sample (paired) t test of n (pairs) detects with the power of `one_sample_t_power`."""
     n, power, alpha = together(n, power, alpha)
 
     def rises(d: Floats) -> Floats:
@@ -133,7 +133,7 @@ def two_sample_t_detectable(
     tails: int = 2,
     far_tail: bool = True,
 ) -> Floats:
-    """The smallest effect d that a pooled two-sample t test detects with the power."""
+    """The smallest effect d that a pooled two-sample t test detects with the power of `two_sample_t_power`."""
     n1, n2, power, alpha = together(n1, n2, power, alpha)
 
     def rises(d: Floats) -> Floats:

@@ -77,6 +77,21 @@ def test_references_and_footnotes():
     assert document.passages[1].marks == "       ^ "
 
 
+@pytest.mark.parametrize(
+    ("told", "notes"),
+    [
+        ("P by Fisher’s exact test.", 1),
+        ("P values are from χ² tests.", 1),
+        ("P values calculated using Fisher’s exact test.", 1),
+        ("Proofing by the oven took longer.", 0),
+    ],
+)
+def test_what_p_rests_on_is_a_note_below_a_table(told, notes):
+    grid_ = "<table><caption>Table 1. Faults</caption><tr><th>Fault<th>n<th>P</tr><tr><td>Split<td>18<td>.04</tr></table>"
+    (table,) = read(page(f"{grid_}<p>{told}</p><p>The loaves rose.</p>")).tables
+    assert len(table.notes) == notes
+
+
 def test_a_table_with_everything():
     document = read(
         page(

@@ -134,6 +134,7 @@ def test_captions_between_tables_go_with_the_custom_of_the_document():
         p("* Plus–minus values are means and standard deviations."),
         p("Standard errors in parentheses."),
         p("P values are from Fisher’s exact test."),
+        p("P by Fisher’s exact test."),
         p("N = 412 doughs."),
         p(r("Loaves of the first trial alone", '<w:sz w:val="16"/>')),
     ],

@@ -1,8 +1,8 @@
 """Short documents with the scales that their means must be given, kept as plain text in `cases/`.
 
 A case begins with `== name`; each of its lines is a paragraph, `Section | text`. Under them, indented, stands one line for
-each mean that has a scale: `5.12: 1..7 whole averaged items=5 summed single prorated inferred ends`, in any choice; `..20` is
-a highest score alone. Every other mean must have nothing.
+each mean that has a scale: `5.12: 1..7 whole averaged items=5 summed single prorated inferred ends perhaps`, in any choice; `..20` is
+a highest score alone, `perhaps` says that words far off tell of several answers. Every other mean must have nothing.
 """
 
 from __future__ import annotations
@@ -10,7 +10,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from pathlib import Path
 
-from recheck.model import SCALE_ENDS_INFERRED, SCALE_INFERRED, Claim, Document, Passage
+from recheck.model import AVERAGED_BY, SCALE_ENDS_INFERRED, SCALE_INFERRED, Claim, Document, Passage
 
 HOME = Path(__file__).parent / "cases"
 WORDS = {
@@ -68,6 +68,8 @@ def given(claim: Claim) -> frozenset[str]:
     found += [f"{low}..{high}"] if low or high else []
     found += [f"items={items}"] if items else []
     found += ["inferred"] if SCALE_INFERRED in claim.notes else []
+    told_far_off = any(note.startswith(AVERAGED_BY) for note in claim.notes)
+    found += ["perhaps"] if told_far_off and "averaged" not in found else []
     found += ["ends"] if SCALE_ENDS_INFERRED in claim.notes else []
     return frozenset(found)
 

@@ -61,6 +61,9 @@ def test_expression_is_read(text: str, expected: str) -> None:
         "The correlation ranged from 0 to 1.",
         "Between 1 and 7 loaves were sold at large scale.",
         "Three out of four bakers agreed.",
+        "Bench scores rose from 4.1 (SD = 1.0, n = 18) to 5.2 (SD = 1.1, n = 18).",
+        "Bench scores fell from 12 (IQR 9–15) to 8 (IQR 5–11).",
+        "Softness ratings went from 3 (SE 0.2) to 4 (SE 0.3).",
     ],
 )
 def test_near_miss_tells_nothing(text: str) -> None:

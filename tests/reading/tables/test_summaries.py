@@ -252,3 +252,41 @@ def test_a_standard_error_in_brackets_is_that_of_a_mean_elsewhere() -> None:
     text = "|  | Rye | Wheat |\n| Height | 11.2 (0.3) | 10.1 (0.2) |"
     found = claims(text, caption="Loaf height.", note="Standard errors in parentheses.")
     assert [told_of(claim) for claim in found] == ["mean 11.2, se 0.3", "mean 10.1, se 0.2"]
+
+
+def test_one_column_of_ns_for_all_outcomes_of_a_group() -> None:
+    found = claims("""
+        | Flour | n  | Height, M (SD) | Weight, M (SD) |
+        | Rye   | 18 | 92.4 (6.1)     | 800 (20)       |
+        | Wheat | 20 | 86.0 (5.8)     | 790 (22)       |
+        | Total | 38 | 89.0 (6.7)     | 795 (21)       |
+    """)
+    assert [told_of(claim) for claim in found[:2]] == ["mean 92.4, n 18, sd 6.1", "mean 800, n 18, sd 20"]
+    assert (found[0].outcome, found[0].group) == ("Height", "Rye")
+    assert all(N_OF_GROUP in claim.notes for claim in found)
+
+
+def test_an_n_of_a_row_is_not_that_of_some_of_its_cases() -> None:
+    boys = "| {} | N  | Boys, M (SD) | Girls, M (SD) |\n| North | 38 | 9.4 (6.1) | 8.0 (2.0) |\n| South | 40 | 8.0 (5.8) | 7.9 (2.2) |\n"
+    flours = "| {} | N  | Rye, M (SD) | Wheat, M (SD) |\n| Height | 38 | 9.4 (6.1) | 8.0 (2.0) |\n| Weight | 40 | 8.0 (5.8) | 7.9 (2.2) |\n"
+    texts = boys.format("School") + "| Total | 78 | 8.7 (6.0) | 8.0 (2.1) |", flours.format("Trait")
+    assert not any("n" in claim.values for text in texts for claim in claims(text))
+
+
+def test_a_difference_beside_its_two_measures_is_a_mean_with_its_sd() -> None:
+    text = "| | Before | After | {} |\n| Trained (n = 18) | 4.2 (1.1) | 5.0 (1.2) | 0.8 (0.9) |"
+    for heading in ("Difference", "Mean change", "Mean difference", "Change"):
+        found = claims(text.format(heading), caption="Bench scores, mean (SD).")
+        assert [told_of(claim) for claim in found][2:] == ["mean 0.8, n 18, sd 0.9"]
+        assert heading in (found[2].outcome, found[2].group)
+
+
+def test_a_difference_between_groups_has_no_sd() -> None:
+    text = "| | Trained (n = 18) | Untrained (n = 20) | Difference |\n| Quiz | 4.2 (1.1) | 5.0 (1.2) | 0.8 (0.4) |"
+    assert len(claims(text, caption="Bench scores, mean (SD).")) == 2
+
+
+def test_half_an_interval_is_no_spread() -> None:
+    text = "| | Rye | Wheat |\n| Height | 11.2 ± 0.3 | 10.1 ± 0.2 |"
+    for note in ("Values are means ± 95% CI.", "± denotes the 95% confidence limits."):
+        assert not any({"sd", "se"} & claim.values.keys() for claim in claims(text, note=note))

@@ -171,3 +171,34 @@ def test_exact_binomial_power_lies_between_the_approximations():
 def test_z_of_nothing_is_alpha():
     assert float(normal.z_power(0.0, 0.05)) == pytest.approx(0.05, rel=1e-12)
     assert float(normal.z_power(0.0, 0.05, far_tail=False)) == pytest.approx(0.025, rel=1e-12)
+
+
+@pytest.mark.parametrize(("rho", "n"), [(0.3, 30), (-0.3, 30), (0.05, 4000), (0.9, 6)])
+def test_approximate_powers_of_r(rho: float, n: int):
+    """The fixed predictor by scipy's noncentral t, Fisher's z by its normal distribution; both near the exact one for n of 30 and more."""
+    critical, shift = stats.t.isf(0.025, n - 2), rho / np.sqrt(1 - rho**2) * np.sqrt(n)
+    fixed = stats.nct.sf(critical, n - 2, shift) + stats.nct.cdf(-critical, n - 2, shift)
+    assert float(correlations.fixed_r_power(rho, n)) == pytest.approx(fixed, abs=1e-9)
+    z = abs(np.arctanh(rho)) * np.sqrt(n - 3)
+    fisher = stats.norm.sf(1.959963985, z) + stats.norm.cdf(-1.959963985, z)
+    assert float(correlations.fisher_r_power(rho, n)) == pytest.approx(fisher, abs=1e-9)
+    exact = float(correlations.exact_r_power(rho, n))
+    assert n < 30 or (fixed, fisher) == pytest.approx((exact, exact), abs=0.02)
+
+
+def test_power_of_some_predictors_of_a_regression():
+    # f² = 0.15, N = 77, three of three predictors: power .80 (Cohen's table; 77 as programs print, common practice, no source).
+    power = float(f_tests.fixed_effects_power(0.15, 77, 3, 4))
+    assert 0.8 <= power < 0.81
+    assert float(f_tests.fixed_effects_power(0.15, 76, 3, 4)) < 0.8
+    assert power == pytest.approx(stats.ncf.sf(stats.f.isf(0.05, 3, 73), 3, 73, 0.15 * 77), abs=1e-9)
+
+
+def test_shift_and_n_by_the_normal_quantiles():
+    shift = stats.norm.ppf(0.9) + stats.norm.ppf(0.975)
+    assert float(normal.z_shift(0.9)) == pytest.approx(shift, rel=1e-12)
+    assert float(normal.normal_n_one_sample(0.4, 0.9)) == pytest.approx((shift / 0.4) ** 2, rel=1e-12)
+    assert 2 * normal.normal_n_one_sample(0.4, 0.9) == pytest.approx(
+        float(normal.normal_n(0.4, 0.9)), rel=1e-12
+    )
+    assert float(normal.z_shift(0.01)) == 0

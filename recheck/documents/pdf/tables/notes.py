@@ -13,6 +13,7 @@ from recheck.documents.sections import captioned
 _NOTE = regex.compile(
     r"(?:notes?\b\s*[.:—–-]?|\*|†|‡|§|¶|#|\((?:[a-z]|\d|\*)\)\s+\S|[a-z]\)\s*\S|abbreviations?\b|values?\s+(?:are|in|represent|given)|"
     r"data\s+(?:are|were|represent)|sources?\s*:|significan(?:t|ce)|statistical(?:ly)?\s+sig|legend\s*:|"
+    r"ps?(?:[ -]?values?)?\s+(?:(?:are|is|were|was)\s+)?(?:(?:obtained|calculated|computed)\s+)?(?:by|from|with|using|according\s+to|based\s+on|those\s+of)\b|"
     r"standard\s+(?:errors?|deviations?)\b|numbers?\s+in\s+(?:parentheses|brackets)|(?-i:\p{Lu}{2,6})\s*[,:=])",
     regex.IGNORECASE,
 )
