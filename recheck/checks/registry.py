@@ -52,7 +52,7 @@ FAMILIES = (
     "risks",
     "risk_intervals",
     "shares",
-    "changes",
+    "paired_counts",
 )
 """Modules of checks, in the order in which they are listed and run."""
 
