@@ -9,7 +9,7 @@ from functools import cache
 import regex
 
 from recheck.model import EFFECTS_ON_RISK
-from recheck.reading.tables.cells import COEFFICIENTS
+from recheck.reading.tables.blocks import COEFFICIENTS
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.grid import Sheet
 from recheck.reading.tables.roles import Role

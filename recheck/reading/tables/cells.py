@@ -9,10 +9,16 @@ from typing import Literal
 
 import regex
 
-from recheck.model import EFFECTS_ON_RISK, Printed
+from recheck.model import Printed
 from recheck.reading.tables.bare_shares import bare_share
+from recheck.reading.tables.blocks import (
+    COMPARISONS,
+    has_constant,
+    nothing_but_pairs,
+    speaks_of_estimates,
+    speaks_of_intervals,
+)
 from recheck.reading.tables.frame import Frame, p_values
-from recheck.reading.tables.headings import told
 from recheck.reading.tables.roles import Role, fits, matched
 from recheck.reading.tables.values import Piece
 from recheck.reading.views import TIMEOUT
@@ -20,8 +26,6 @@ from recheck.reading.widths import MARGIN
 
 Source = Literal["heading", "legend", "shape"]
 
-COMPARISONS = EFFECTS_ON_RISK | {"mean_difference"}
-COEFFICIENTS = frozenset(("b", "beta", "intercept", "estimate"))
 _OF_GROUPS = frozenset(
     (
         "mean",
@@ -156,7 +160,7 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
         len(quantities) == 1
         and quantities[0] in COMPARISONS
         and piece.shape == "triple"
-        and _speaks_of_intervals(frame)
+        and speaks_of_intervals(frame)
     ):
         values_ = matched(piece, (*quantities, "ci_low", "ci_high"))
         return Cell(values_, row, column, piece, "legend", stated=role.stated, n=role.n) if values_ else None
@@ -168,11 +172,6 @@ def _under(frame: Frame, row: int, column: int, piece: Piece, role: Role) -> Cel
         values = {"percent" if piece.numbers[0].percent else "count": piece.numbers[0]}
         return Cell(values, row, column, piece, "heading", stated=role.stated, n=role.n)
     return None
-
-
-def _speaks_of_intervals(frame: Frame) -> bool:
-    """Whether caption or notes say that brackets hold confidence intervals."""
-    return frame.legend.interval == "ci" or any("ci_low" in form for form in frame.legend.forms)
 
 
 @cache
@@ -224,9 +223,7 @@ def _by_legend(
     ]
     if not fitting and piece.shape in ("pair(", "pair[") and frame.legend.brackets and not frame.legend.forms:
         # A standard error in brackets is that of a coefficient where the table tells of a regression.
-        of_coefficient = frame.legend.brackets == "se" and (
-            _speaks_of_estimates(frame) or has_constant(frame)
-        )
+        of_coefficient = frame.legend.brackets == "se" and (speaks_of_estimates(frame) or has_constant(frame))
         fitting = [] if of_coefficient else [("mean", frame.legend.brackets)]
     if not fitting and piece.shape in ("pair±", "pair±(") and frame.legend.spread not in ("", MARGIN):
         fitting = [("mean", frame.legend.spread)]
@@ -298,7 +295,7 @@ def _by_shape(
         return None
     if piece.label in ("sd", "se"):
         return _with_spread(frame, row, column, piece, "heading")
-    if _speaks_of_estimates(frame):
+    if speaks_of_estimates(frame):
         return None
     if piece.shape in ("pair±", "pair±("):
         return _with_spread(
@@ -309,7 +306,7 @@ def _by_shape(
             "legend" if frame.legend.spread or frame.setting.plus_minus else "shape",
         )
     if piece.shape in ("pair(", "pair[") and (
-        _like_a_mean(frame, piece) or frame.once("pairs", _nothing_but_pairs)
+        _like_a_mean(frame, piece) or frame.once("pairs", nothing_but_pairs)
     ):
         return _with_spread(frame, row, column, piece, "shape")
     return None
@@ -344,43 +341,6 @@ def _names_others(role: Role | None) -> bool:
         and "mean" not in role.quantities
         and not (role.name and set(role.quantities) <= {"n", "N"})
     )
-
-
-def _speaks_of_estimates(frame: Frame) -> bool:
-    estimates = COEFFICIENTS | COMPARISONS | {"r2", "adjusted_r2"}
-    return any(set(role.quantities) & estimates for role in frame.roles.values()) or any(
-        word in frame.legend.text for word in ("regression", "odds ratio", "hazard ratio", "coefficient")
-    )
-
-
-def has_constant(frame: Frame) -> bool:
-    """Whether a row is that of a model: its constant or its R²."""
-    return frame.once("constant", _has_constant)
-
-
-def _has_constant(frame: Frame) -> bool:
-    names = [frame.sheet.row_header(row).last.strip() for row in frame.sheet.rows]
-    return any(name.lower() in ("constant", "(constant)", "(intercept)") for name in names) or any(
-        set(told(name).quantities) & {"intercept", "r2", "adjusted_r2"} for name in names if name
-    )
-
-
-_ENOUGH = 4
-
-
-def _nothing_but_pairs(frame: Frame) -> bool:
-    """Whether a whole block prints `24.1 (3.2)`: positive, most with decimals, no marks, no `%`."""
-    found = [
-        piece
-        for row in frame.sheet.rows
-        for column in frame.sheet.columns
-        for piece in frame.pieces(row, column)
-        if piece.shape != "dash"
-    ]
-    pairs = [piece for piece in found if piece.shape in ("pair(", "pair[") and not piece.stars]
-    positive = all(n.value > 0 and not n.percent for piece in pairs for n in piece.numbers)
-    decimals = sum(piece.numbers[0].decimals > 0 for piece in pairs)
-    return len(found) >= _ENOUGH and len(pairs) == len(found) and positive and 3 * decimals >= 2 * len(pairs)
 
 
 def _like_a_mean(frame: Frame, piece: Piece) -> bool:

@@ -8,7 +8,7 @@ from functools import cache
 import regex
 
 from recheck.model import EFFECTS_ON_RISK, LEVELS, Printed
-from recheck.reading.tables.cells import COMPARISONS
+from recheck.reading.tables.blocks import COMPARISONS
 from recheck.reading.tables.frame import Found, Frame, claim_of, interval_level, star_of
 from recheck.reading.tables.saying import marks_compare
 from recheck.reading.tables.summaries import own_names

@@ -8,8 +8,8 @@ from functools import cache
 import regex
 
 from recheck.model import EFFECTS_ON_RISK, RATIOS, ClaimKind, Printed
+from recheck.reading.tables.blocks import COEFFICIENTS, has_constant
 from recheck.reading.tables.bundles import STATISTICS, Bundle, bundles_of
-from recheck.reading.tables.cells import COEFFICIENTS, has_constant
 from recheck.reading.tables.frame import Found, Frame, claim_of, star_of
 from recheck.reading.tables.headings import told
 from recheck.reading.tables.row_numbers import Numbers, numbers_of

@@ -10,6 +10,7 @@ import regex
 
 from recheck.model import EFFECTS_ON_RISK, OF_DIFFERENCES, ClaimKind, Printed
 from recheck.reading.numerals import printed
+from recheck.reading.tables.blocks import COEFFICIENTS
 from recheck.reading.tables.bundles import (
     DEGREES,
     DIFFERENCES,
@@ -18,7 +19,6 @@ from recheck.reading.tables.bundles import (
     STATISTICS,
     Bundle,
 )
-from recheck.reading.tables.cells import COEFFICIENTS
 from recheck.reading.tables.frame import NOT_SIGNIFICANT, Frame, interval_level, p_values, star_of
 from recheck.reading.tables.grid import Slot
 from recheck.reading.tables.headings import told

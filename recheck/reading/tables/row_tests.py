@@ -6,8 +6,8 @@ from collections.abc import Mapping, Sequence
 from dataclasses import replace
 
 from recheck.model import EFFECTS_ON_RISK, LEVELS, N_OF_GROUP, ClaimKind, Printed
+from recheck.reading.tables.blocks import COEFFICIENTS
 from recheck.reading.tables.bundles import Bundle, bundles_of
-from recheck.reading.tables.cells import COEFFICIENTS
 from recheck.reading.tables.compared import Link
 from recheck.reading.tables.contingency import rows_of_test
 from recheck.reading.tables.frame import Found, Frame, claim_of

@@ -7,7 +7,8 @@ from dataclasses import dataclass, field, replace
 from typing import Literal
 
 from recheck.model import Printed
-from recheck.reading.tables.cells import COEFFICIENTS, COMPARISONS, TESTS, Cell, named_cell
+from recheck.reading.tables.blocks import COEFFICIENTS, COMPARISONS
+from recheck.reading.tables.cells import TESTS, Cell, named_cell
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.sizes import measured_again
 
