@@ -40,10 +40,15 @@ class Setting:
     by_permutation: bool = False
 
     def at_own_level(self, value: Printed) -> Printed:
-        """A p told in words at the document's own level: `ns` is larger than that, `significant` smaller."""
+        """A p told in words at the document's own level: `ns` is larger than that, `significant` smaller.
+
+        Where that level is above .05 `ns` is only known to be larger than .05: the level may be that of some tests.
+        """
         alpha = self.context.alpha
         if value.text[:1].isalpha() and value.relation in "<>" and alpha is not None:
             share = alpha.value / 100 if alpha.percent else alpha.value
+            if value.relation == ">" and share > value.value:
+                return value
             return replace(value, value=share, decimals=alpha.decimals + 2 * alpha.percent)
         return value
 

@@ -207,15 +207,10 @@ def one_sample_named(rng: Rng) -> Sample:
     result = hand.join(hand.statistic("t", test.value, test.df), hand.p(test.p))
     group = hand.group(float(x.mean()), sd(x), len(x) if rng.random() < 0.7 else None)
     target = hand.number(printed)
-    phrase = one(
-        rng,
-        [
-            f"the target of {target}",
-            f"the scale midpoint of {target}",
-            f"the test value ({target})",
-            f"{target}",
-        ],
-    )
+    phrases = [f"the target of {target}", f"the test value ({target})", f"{target}"]
+    if exact == float(printed):
+        phrases.append(f"the scale midpoint of {target}")
+    phrase = one(rng, phrases)
     said = one(
         rng,
         [
