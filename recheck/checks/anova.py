@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import replace
 
-from recheck.checks.compare import Comparison, judge, unchecked
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge, unchecked
 from recheck.checks.examples import table
 from recheck.checks.groups import link_doubts
 from recheck.checks.models import foreign_model
@@ -25,7 +25,6 @@ from recheck.model import DISCREPANT, Claim, Finding, Interval, Remedy, shown
 from recheck.recompute.anova import MOST_GROUPS
 from recheck.reconcile.readings import Box, Way, agrees_as_printed, box_of
 
-POSITIVE = Interval(0.0, float("inf"))
 ROWS = ("F-test",)
 
 
@@ -93,7 +92,7 @@ def f_from_groups(case: Case) -> Iterable[Finding]:
     found = judge(
         case,
         Comparison(
-            name, "F", {"F": claim.values["F"], **several.numbers}, fit.ways, claims, bounds=POSITIVE,
+            name, "F", {"F": claim.values["F"], **several.numbers}, fit.ways, claims, bounds=NOT_NEGATIVE,
             doubts=(*fit.doubts, *link_doubts(case)), excuses=(foreign,) if foreign else (),
         ),
     )  # fmt: skip
@@ -142,7 +141,7 @@ def _meansquare(case: Case, ms: str, ss: str, df: str) -> Finding:
     if numbers[df].decimals <= 0 and claim.suggests("corrected-df", "repeated"):
         ways.append(Way(lambda box: ratio({**box, df: rounded_df(box[df])}, ss, df), (ROUNDED_DF,)))
     excuses = _pooled_ss(claim)
-    return judge(case, Comparison("ms-from-ss", ms, numbers, ways, bounds=POSITIVE, excuses=excuses))
+    return judge(case, Comparison("ms-from-ss", ms, numbers, ways, bounds=NOT_NEGATIVE, excuses=excuses))
 
 
 def _pooled_ss(claim: Claim) -> tuple[str, ...]:
@@ -183,7 +182,7 @@ def f_from_ms(case: Case) -> Iterable[Finding]:
     yield judge(
         case,
         Comparison(
-            "F-from-ms", "F", numbers, (Way(implied),), bounds=POSITIVE, doubts=doubts, excuses=excuses
+            "F-from-ms", "F", numbers, (Way(implied),), bounds=NOT_NEGATIVE, doubts=doubts, excuses=excuses
         ),
     )
 

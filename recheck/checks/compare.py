@@ -30,6 +30,7 @@ _ORDER: tuple[Confidence, ...] = ("low", "medium", "high")
 
 
 EVERYTHING = Interval(-math.inf, math.inf)
+NOT_NEGATIVE = Interval(0.0, math.inf)
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,14 +6,13 @@ import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
-from recheck.checks.compare import Comparison, doubted, impossible, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, doubted, impossible, judge
 from recheck.checks.designs import whole
 from recheck.checks.examples import table
 from recheck.checks.registry import Case, check
 from recheck.model import LEVELS, STATED, TOTAL_OF_GROUP, Claim, Finding, Interval, Printed, Remedy
 from recheck.reconcile.readings import Box, Way
 
-PERCENTS = Interval(0.0, math.inf)
 OF_GROUP = "the percentage is one of the whole group, none of whose cases is missing"
 UNWEIGHTED = "the percentage is that of the printed counts, not of weighted ones"
 TO_HUNDRED = "the percentages were adjusted so that they sum to 100"
@@ -78,7 +77,7 @@ def percent_from_count(case: Case) -> Iterable[Finding]:
     found = judge(
         case,
         Comparison(
-            "percent-from-count", "percent", numbers, ways, bounds=PERCENTS,
+            "percent-from-count", "percent", numbers, ways, bounds=NOT_NEGATIVE,
             doubts=() if own else (OF_GROUP,), excuses=excuses,
         ),
     )  # fmt: skip

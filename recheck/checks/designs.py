@@ -21,6 +21,7 @@ MOST_SPLITS = 2000
 """Totals above which splits of unknown group sizes are not listed one by one."""
 
 SE_READING = "the spread is a standard error"
+N_BELOW = "the SD has n, not n − 1, in its denominator"
 POOLED, WELCH, PAIRED = (
     "two independent groups, pooled variance",
     "two independent groups, Welch",

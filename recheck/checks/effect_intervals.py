@@ -12,13 +12,13 @@ from recheck.checks.compare import Comparison, judge, unchecked
 from recheck.checks.designs import TWO_GROUPS, whole
 from recheck.checks.effect_ends import UNSTATED_KIND, beside, worst
 from recheck.checks.effect_interval_methods import Method, Setting, others, swapped, usual
-from recheck.checks.effects import NAMES, OTHER_SD, correction
+from recheck.checks.effects import OTHER_SD, correction
 from recheck.checks.groups import link_doubts, linked_groups, unsigned
 from recheck.checks.interval_methods import USUAL_LEVEL
 from recheck.checks.intervals import OTHER_METHOD, ends, level_of
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval, Printed, shown
+from recheck.model import STANDARDIZED, Claim, Finding, Interval, Printed, shown
 from recheck.recompute.intervals import t_from_ci_bounds
 from recheck.reconcile.readings import Box, Numbers, Way
 
@@ -70,7 +70,7 @@ def ci_of_d(case: Case) -> Iterable[Finding]:
     """Compare both ends with the effect; the end that fits worse is told."""
     claim, name = case.claim, case.claim.interval_of
     statistic = "t" if "t" in claim.values else "F" if _of_two_groups(claim) else ""
-    if name not in NAMES or name not in claim.values:
+    if name not in STANDARDIZED or name not in claim.values:
         return
     df = claim.values["df2" if statistic == "F" else "df"].number if statistic else _df_of_groups(case, name)
     low, high = ends(claim)

@@ -14,13 +14,12 @@ from recheck.checks.designs import SE_READING, Fit, Groups, known, sds, whole
 from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
-from recheck.model import Claim, Finding, Interval
+from recheck.model import STANDARDIZED, Claim, Finding, Interval
 from recheck.recompute import effect_bounds, effect_sizes
 from recheck.reconcile.readings import Box, Way
 
 INFINITY = float("inf")
 Denominator = Literal["pooled", "sd1", "sd2", "mean", "rms", "population"]
-NAMES = ("d", "g", "delta", "d_z", "d_av", "d_rm")
 
 DENOMINATORS: dict[Denominator, str] = {
     "pooled": "",
@@ -40,7 +39,7 @@ CORRECTIONS = {
 
 def effect_of(claim: Claim) -> str | None:
     """The standardized mean difference that a claim prints, if it is one."""
-    return next((name for name in NAMES if name in claim.values), None)
+    return next((name for name in STANDARDIZED if name in claim.values), None)
 
 
 def correction(kind: str, df: float) -> float:
@@ -61,10 +60,6 @@ def _corrections(name: str) -> Iterator[tuple[str, tuple[str, ...]]]:
     for kind, words in CORRECTIONS.items():
         if kind != usual:
             yield kind, (words,)
-
-
-def _scaled(interval: Interval, factor: float) -> Interval:
-    return Interval(interval.low * factor, interval.high * factor)
 
 
 def _from_box(
@@ -89,7 +84,7 @@ def _independent_ways(name: str, groups: Groups, n1: float, n2: float) -> Iterat
                     box: Box, d: Denominator = denominator, k: str = kind, as_se: bool = as_se
                 ) -> tuple[Interval, ...]:
                     factor = correction(k, n1 + n2 - 2)
-                    return (_scaled(_from_box(box, groups, n1, n2, d, as_se=as_se), factor),)
+                    return (_from_box(box, groups, n1, n2, d, as_se=as_se).times(factor),)
 
                 yield Way(implied, unstated)
 
@@ -203,7 +198,7 @@ def _split_ways(name: str, groups: Groups, total: int) -> Iterator[Way]:
         def implied(box: Box, k: str = kind) -> tuple[Interval, ...]:
             parts = [_from_box(box, groups, 2.0, 2.0, which, as_se=False) for which in ONE_GROUP]
             factor = correction(k, max(total - 2, 2))
-            return (_scaled(Interval(min(p.low for p in parts), max(p.high for p in parts)), factor),)
+            return (Interval(min(p.low for p in parts), max(p.high for p in parts)).times(factor),)
 
         if "se" not in groups.spreads:
             yield Way(implied, words)

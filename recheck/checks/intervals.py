@@ -7,7 +7,7 @@ from collections.abc import Iterable
 
 from recheck.checks.compare import Comparison, impossible, judge, unchecked
 from recheck.checks.registry import Case, check
-from recheck.model import RATIOS, Claim, Finding, Interval, Printed, Remedy, shown
+from recheck.model import RATIOS, STANDARDIZED, Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.reconcile.readings import Box, Way
 
 ALL_KINDS = (
@@ -136,9 +136,6 @@ def ci_holds_estimate(case: Case) -> Iterable[Finding]:
     yield judge(
         case, Comparison("ci-holds-estimate", name, numbers, ways, doubts=tuple(doubts), excuses=excuses)
     )
-
-
-STANDARDIZED = ("d", "g", "delta", "d_z", "d_av", "d_rm")
 
 
 def _belonging(

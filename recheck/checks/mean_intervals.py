@@ -8,11 +8,12 @@ from dataclasses import replace
 
 import numpy as np
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
+from recheck.checks.designs import SE_READING
 from recheck.checks.interval_methods import NORMAL, other_widths
 from recheck.checks.intervals import BY_HAND, OFF_CENTRE, OTHER_METHOD, ends, level_of, log_middle
 from recheck.checks.registry import Case, check
-from recheck.checks.spreads import CHANCE, POOLED, SPREAD, pooled_beside
+from recheck.checks.spreads import CHANCE, POOLED, pooled_beside
 from recheck.checks.surroundings import (
     FEWEST_LEFT,
     OWN_SCORES,
@@ -29,7 +30,6 @@ from recheck.recompute import conversions
 from recheck.recompute.intervals import critical_t
 from recheck.reconcile.readings import Box, Numbers, Way, agrees_as_printed
 
-SE_READING = "the spread is a standard error"
 HALF_WIDTH = "the spread is half the width of the interval"
 TWO_SE = "the interval is the mean ∓ 2 SE"
 FEWER_DF = "the interval has fewer degrees of freedom than that (few clusters, few cases)"
@@ -154,7 +154,7 @@ def _spread_of_width(case: Case, quantity: str, numbers: Numbers, plain: Way) ->
         )
     foreign = model_of(claim, proved=around.proved)
     comparison = Comparison(
-        "spread-from-ci", quantity, numbers, ways, bounds=SPREAD, doubts=tuple(doubts), excuses=(foreign,) if foreign else (),
+        "spread-from-ci", quantity, numbers, ways, bounds=NOT_NEGATIVE, doubts=tuple(doubts), excuses=(foreign,) if foreign else (),
     )  # fmt: skip
     finding = judge(case, comparison)
     if relabelled and finding.verdict in (*DISCREPANT, "conditional"):
@@ -189,7 +189,7 @@ def _other_ways(case: Case, quantity: str, n: int | None, *, proved: bool) -> It
         yield Way(_scaled_way(_of_width(claim, "se", math.inf, math.inf), 1 / z, 1 / z), (HALF_WIDTH,))
     together = pooled_beside(case) if quantity == "sd" else None
     if together is not None and all(_width_fits(c, together[0]) for c in together[1] if _of_mean(c)):
-        yield Way(lambda box: (SPREAD,), (POOLED,))
+        yield Way(lambda box: (NOT_NEGATIVE,), (POOLED,))
     narrower, wider = other_widths(level, dfs[0] if n else 20.0)
     yield Way(_scaled_way(plain, narrower, CHANCE if proved else wider), (OTHER_METHOD,))
 

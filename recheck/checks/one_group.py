@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable
 
-from recheck.checks.compare import Comparison, judge, unchecked
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge, unchecked
 from recheck.checks.designs import SE_READING, known, whole
 from recheck.checks.groups import link_doubts, unsigned
 from recheck.checks.models import foreign_model
@@ -14,7 +14,6 @@ from recheck.model import EXACT_VALUE, N_OF_GROUP, OF_DIFFERENCES, Claim, Findin
 from recheck.recompute.one_sample import one_sample_t_bounds
 from recheck.reconcile.readings import Box, Numbers, Way
 
-POSITIVE = Interval(0.0, math.inf)
 AGAINST_ZERO = "t tests the mean of the differences against 0"
 ROUNDED_VALUE = "the comparison value is rounded"
 N_FROM_DF = "n is df + 1"
@@ -139,7 +138,7 @@ def _judged(
     yield judge(
         case,
         Comparison(
-            name, "t", told, ways, claims, bounds=POSITIVE, doubts=(*doubts, *link_doubts(case)),
+            name, "t", told, ways, claims, bounds=NOT_NEGATIVE, doubts=(*doubts, *link_doubts(case)),
             excuses=(foreign,) if foreign else (),
         ),
     )  # fmt: skip

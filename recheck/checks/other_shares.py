@@ -10,7 +10,7 @@ from recheck.checks.compare import Comparison, judge
 from recheck.checks.groups import unsigned
 from recheck.checks.registry import Case, check
 from recheck.checks.source_rows import from_source
-from recheck.checks.variance_shares import AT_MOST, SMALLER, other_model
+from recheck.checks.variance_shares import AT_MOST, SMALLER, UNEQUAL, other_model
 from recheck.model import Claim, Finding, Interval, Printed, shown
 from recheck.reconcile.readings import Box, Way
 
@@ -19,7 +19,6 @@ LESS = "{name} is that of the total, of repeated measures or by another formula,
 UP_TO_ETA2 = "{name} is by another formula, which may give all up to η²"
 SQUARED = "what is called f is f²"
 ROOT = "what is called f² is f"
-WELCH = "F is one for unequal variances (Welch), the effect size that of the classical analysis"
 ONE_EFFECT = "both speak of the same share of variance (partial, whole, adjusted or added)"
 PLAIN_F = "F is that of the very effect and of one error term"
 
@@ -111,7 +110,7 @@ def _ways(claim: Claim, name: str) -> Iterator[Way]:
             lambda box: (Interval(_of(name, box).low, _corners(_eta2, box).high),), (words,), alone=True
         )
     if not claim.says("repeated", "paired", "pooled") and claim.values["df2"].decimals <= 0:
-        yield Way(lambda box: (Interval(least, _of(name, _unequal(box)).high),), (WELCH,), alone=True)
+        yield Way(lambda box: (Interval(least, _of(name, _unequal(box)).high),), (UNEQUAL,), alone=True)
 
 
 def _unequal(box: Box) -> Box:

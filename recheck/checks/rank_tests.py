@@ -6,10 +6,10 @@ import math
 from collections.abc import Iterable
 
 from recheck.checks.compare import Comparison, doubted, impossible, judge
-from recheck.checks.designs import whole
+from recheck.checks.designs import MISSING, whole
 from recheck.checks.groups import unsigned
 from recheck.checks.p_values import judge_p
-from recheck.checks.ranked import MISSING, NO_ZEROS, NORMAL, RANK_SUM, Sizes, p_ways, sizes_of, z_ways
+from recheck.checks.ranked import NO_ZEROS, NORMAL, RANK_SUM, Sizes, p_ways, sizes_of, z_ways
 from recheck.checks.registry import Case, check
 from recheck.model import Claim, Finding, Interval, Printed, Remedy, shown
 from recheck.model.figures import printed_text, span

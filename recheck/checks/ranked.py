@@ -6,7 +6,7 @@ import math
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
-from recheck.checks.designs import whole
+from recheck.checks.designs import MISSING, whole
 from recheck.checks.groups import link_doubts
 from recheck.checks.p_values import ONE_TAILED
 from recheck.checks.registry import Case
@@ -16,7 +16,6 @@ from recheck.recompute.tails import z_two_sided
 from recheck.reconcile.readings import Box, Numbers, Way
 
 RANK_SUM = "it is the sum of ranks of one group (Wilcoxon's W), not U"
-MISSING = "no case is missing (n is that of the whole group)"
 IN_WORDS = "the numbers of cases that the sentence tells are the sizes of the two groups"
 UNNAMED = "this is the test of Mann and Whitney, or Wilcoxon's of two groups (it is not named)"
 NO_ZEROS = "no pair was left out for want of a difference"

@@ -5,15 +5,13 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.intervals import NEED_NOT_BE_SYMMETRIC, OFF_CENTRE, ends, exponential, log_middle
 from recheck.checks.registry import Case, check
 from recheck.checks.risk_intervals import told_by_counts
 from recheck.model import RATIOS, Claim, Finding, Interval, Printed
 from recheck.reconcile.readings import Box, Way, box_of
-
-POSITIVE = Interval(0.0, math.inf)
 
 
 @check(
@@ -64,7 +62,7 @@ def ratio_from_b(case: Case) -> Iterable[Finding]:
             ),
         )
         doubts = () if same_unit else ("ratio and coefficient are those of one unit of the predictor",)
-        yield judge(case, Comparison("ratio-from-b", name, numbers, ways, bounds=POSITIVE, doubts=doubts))
+        yield judge(case, Comparison("ratio-from-b", name, numbers, ways, bounds=NOT_NEGATIVE, doubts=doubts))
 
 
 def _interval_around(claim: Claim, name: str) -> bool:
@@ -115,7 +113,13 @@ def ratio_centre(case: Case) -> Iterable[Finding]:
     yield judge(
         case,
         Comparison(
-            "ratio-centre", name, numbers, (Way(implied),), bounds=POSITIVE, doubts=doubts, excuses=excuses
+            "ratio-centre",
+            name,
+            numbers,
+            (Way(implied),),
+            bounds=NOT_NEGATIVE,
+            doubts=doubts,
+            excuses=excuses,
         ),
     )
 

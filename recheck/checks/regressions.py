@@ -9,7 +9,7 @@ from dataclasses import replace
 import numpy as np
 
 from recheck.checks.coefficients import coefficient, coefficient_doubts, ratio_of
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
 from recheck.checks.examples import table
 from recheck.checks.groups import unsigned
 from recheck.checks.interval_methods import NORMAL, USUAL_LEVEL, other_widths
@@ -28,7 +28,6 @@ from recheck.recompute.arrays import quotient_bounds
 from recheck.recompute.tails import t_quantile, z_quantile
 from recheck.reconcile.readings import Box, Numbers, Way, first_agreement
 
-POSITIVE = Interval(0.0, math.inf)
 WALD = "the statistic is Wald's, (b / SE)²"
 SAME_SE = "the printed SE is the one that the test rests on, neither robust nor from a bootstrap"
 FEWEST_DF = 5.0
@@ -90,7 +89,9 @@ def t_from_b(case: Case) -> Iterable[Finding]:
         doubts = [*_se_doubts(claim), *coefficient_doubts(claim, names[0])]
         if name == "chi2":
             doubts.append("χ² is that of Wald's test, not of the likelihood ratio or the score")
-        yield judge(case, Comparison("t-from-b", name, numbers, ways, bounds=POSITIVE, doubts=tuple(doubts)))
+        yield judge(
+            case, Comparison("t-from-b", name, numbers, ways, bounds=NOT_NEGATIVE, doubts=tuple(doubts))
+        )
 
 
 def _tested(claim: Claim) -> tuple[str, str] | None:

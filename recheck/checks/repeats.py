@@ -157,7 +157,7 @@ def _ways(claim: Claim, quantity: str, mirror: str | None, tie: tuple[str, ...])
     elif quantity in EITHER_CODING:
         yield Way(lambda box: _negated(box, name), (TURNED,))
     elif quantity == "p" and not claim.suggests("two-tailed"):
-        yield Way(lambda box: (_scaled(box[name], 0.5), _scaled(box[name], 2.0)), (HALVED,))
+        yield Way(lambda box: (box[name].times(0.5), box[name].times(2.0)), (HALVED,))
 
 
 def _negated(box: Box, name: str) -> tuple[Interval, ...]:
@@ -168,10 +168,6 @@ def _inverted(box: Box, name: str) -> tuple[Interval, ...]:
     if name not in box or box[name].low <= 0:
         return ()
     return (Interval(1 / box[name].high, 1 / box[name].low),)
-
-
-def _scaled(interval: Interval, factor: float) -> Interval:
-    return Interval(interval.low * factor, interval.high * factor)
 
 
 def _worded(found: Finding, claim: Claim, other: Claim, pair: Comparison) -> Finding:

@@ -8,6 +8,7 @@ from collections.abc import Callable, Iterable, Iterator
 import numpy as np
 
 from recheck.checks.examples import table
+from recheck.checks.groups import unsigned
 from recheck.checks.interval_choice import Ends, Method, judge_interval
 from recheck.checks.intervals import ends, level_of
 from recheck.checks.registry import Case, check
@@ -21,7 +22,6 @@ from recheck.checks.risk_tables import (
     range_of,
     risk_layout,
     turned,
-    unsigned,
 )
 from recheck.checks.risks import (
     RATIO_MEASURES,

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from dataclasses import replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -157,11 +156,6 @@ def _maybe_matched(case: Case, layout: Layout) -> bool:
     named = any(word in heads for word in ("case", "control", "match"))
     multiple = large % small == 0 and not case.claim.says("independent", "between-groups")
     return multiple or named or case.claim.suggests("matched", "paired", "repeated")
-
-
-def unsigned(printed: Printed) -> Printed:
-    """The number without its sign: which group is subtracted is the authors' choice."""
-    return replace(printed, value=abs(printed.value))
 
 
 def spelled_out(claim: Claim, *names: str) -> bool:

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Callable, Iterable, Iterator
 from dataclasses import replace
 
 import numpy as np
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
 from recheck.checks.examples import table
+from recheck.checks.groups import unsigned
 from recheck.checks.registry import Case, check
 from recheck.checks.risk_tables import (
     Cells,
@@ -26,7 +26,6 @@ from recheck.checks.risk_tables import (
     spelled_out,
     transposed,
     turned,
-    unsigned,
 )
 from recheck.checks.tabulated import Layout
 from recheck.model import DISCREPANT, Finding, Interval, Printed, Remedy, shown
@@ -43,7 +42,6 @@ MEDIAN = "it is the median-unbiased estimate of the mid-P method"
 RISKS = "it is a ratio of risks, not of rates"
 PER_CENT = "in percentage points"
 RATIO_MEASURES: dict[str, Measure] = {"or": risks.odds_ratio, "rr": risks.risk_ratio}
-POSITIVE = Interval(0.0, math.inf)
 
 
 def _over(
@@ -160,7 +158,7 @@ def ratio_from_counts(case: Case) -> Iterable[Finding]:
             case,
             Comparison(
                 "ratio-from-counts", name, numbers, tuple(ratio_ways(case, layout, name)), (case.claim, *case.groups),
-                bounds=POSITIVE, doubts=doubts, excuses=excuses_of(case),
+                bounds=NOT_NEGATIVE, doubts=doubts, excuses=excuses_of(case),
             ),
         )  # fmt: skip
         yield _with_label_slip(case, layout, name, numbers, found)
@@ -241,6 +239,6 @@ def difference_from_counts(case: Case) -> Iterable[Finding]:
         case,
         Comparison(
             "risk-difference-from-counts", name, numbers, tuple(difference_ways(case, layout, unsigned(printed))),
-            (case.claim, *case.groups), bounds=POSITIVE, doubts=doubts_of(case, layout), excuses=excuses_of(case),
+            (case.claim, *case.groups), bounds=NOT_NEGATIVE, doubts=doubts_of(case, layout), excuses=excuses_of(case),
         ),
     )  # fmt: skip

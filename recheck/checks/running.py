@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import logging
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Hashable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import replace
+from typing import TypeVar
 
 from recheck.checks.beside import beside
 from recheck.checks.columns import by_columns
@@ -14,6 +15,7 @@ from recheck.checks.registry import Case, Check, Twin, all_checks
 from recheck.model import LEVELS, Claim, Finding, Place, SameResult, Settings, shown
 
 logger = logging.getLogger("recheck")
+_Key = TypeVar("_Key", bound=Hashable)
 
 
 def run_checks(
@@ -64,22 +66,16 @@ def _block_of(claim: Claim) -> tuple[str, str]:
 
 def _blocks(claims: Sequence[Claim]) -> dict[tuple[str, str], tuple[Claim, ...]]:
     """Counts of all categories of one variable, or all correlations of a table, by table and variable."""
-    blocks: dict[tuple[str, str], tuple[Claim, ...]] = {}
-    for claim in claims:
-        key = _block_of(claim)
-        if key != ("", ""):
-            blocks[key] = (*blocks.get(key, ()), claim)
-    return blocks
+    return _by_key((key, claim) for claim in claims if (key := _block_of(claim)) != ("", ""))
 
 
 def _counts_of_rows(claims: Sequence[Claim]) -> dict[tuple[str | None, str | None], tuple[Claim, ...]]:
     """All counts of each row of each table."""
-    rows: dict[tuple[str | None, str | None], tuple[Claim, ...]] = {}
-    for claim in claims:
-        key = claim.place.table, claim.place.row
-        if claim.kind == "count" and all(key):
-            rows[key] = (*rows.get(key, ()), claim)
-    return rows
+    return _by_key(
+        ((place.table, place.row), claim)
+        for claim in claims
+        if claim.kind == "count" and (place := claim.place).table and place.row
+    )
 
 
 def _told_together(place: Place) -> tuple[object, ...]:
@@ -91,11 +87,15 @@ def _told_together(place: Place) -> tuple[object, ...]:
 
 def _summaries(claims: Sequence[Claim]) -> dict[tuple[object, ...], tuple[Claim, ...]]:
     """All group summaries of each table and of each passage."""
-    told: dict[tuple[object, ...], list[Claim]] = {}
-    for claim in claims:
-        if claim.kind == "group-summary":
-            told.setdefault(_told_together(claim.place), []).append(claim)
-    return {key: tuple(together) for key, together in told.items()}
+    return _by_key((_told_together(claim.place), claim) for claim in claims if claim.kind == "group-summary")
+
+
+def _by_key(pairs: Iterable[tuple[_Key, Claim]]) -> dict[_Key, tuple[Claim, ...]]:
+    """The claims of each key, in their order."""
+    together: dict[_Key, list[Claim]] = {}
+    for key, claim in pairs:
+        together.setdefault(key, []).append(claim)
+    return {key: tuple(claims) for key, claims in together.items()}
 
 
 SHARES = frozenset(

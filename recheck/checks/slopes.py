@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Callable, Iterable
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
 from recheck.checks.designs import Groups, sds
 from recheck.checks.groups import fit_of, link_doubts, linked_groups, unsigned
 from recheck.checks.models import foreign_model
@@ -15,7 +14,6 @@ from recheck.recompute.arrays import difference_bounds
 from recheck.recompute.two_groups import binary_slope
 from recheck.reconcile.readings import Box, Way
 
-POSITIVE = Interval(0.0, math.inf)
 ONE_APART = "b is in the units of the means, its groups coded one unit apart (0 and 1)"
 TWO_APART = "the groups are coded −1 and 1"
 STEPS: tuple[tuple[float, tuple[str, ...]], ...] = ((1.0, ()), (2.0, (TWO_APART,)))
@@ -55,7 +53,7 @@ def slope_from_groups(case: Case) -> Iterable[Finding]:
             yield judge(
                 case,
                 Comparison(
-                    "slope-from-groups", name, {name: printed, **groups.numbers}, ways, claims, bounds=POSITIVE,
+                    "slope-from-groups", name, {name: printed, **groups.numbers}, ways, claims, bounds=NOT_NEGATIVE,
                     doubts=(ONE_APART, *link_doubts(case)), excuses=(foreign,) if foreign else (),
                 ),
             )  # fmt: skip

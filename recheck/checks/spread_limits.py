@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, replace
+from functools import cache
 
 import regex
 
@@ -20,13 +21,24 @@ OBSERVED = "minimum and maximum are values that occurred, not the ends of the sc
 LABELLED = "the spread is an SD or SE, which the text does not say"
 PLAIN_SCORES = "all these numbers describe the same scores, unweighted and untransformed"
 ONE_UNIT = "all these numbers are in one unit"
-UNITS = regex.compile(
-    r"\d\s*(h|hr|hrs|hours?|min|mins|minutes?|s|sec|secs|seconds?|ms|days?|weeks?|wk|wks|months?|mo|years?|yr|yrs|"
-    r"mm|cm|m|km|kg|g|mg|µg|μg|ng|l|ml|dl|°C|%)(?![\w-])",
-    regex.IGNORECASE,
-)
-"""Units behind numbers: `1.2 h (SD = 40 min)`."""
-GEOMETRIC = regex.compile(r"\bgeometric\b|\blog", regex.IGNORECASE)
+
+
+@cache
+def _units() -> regex.Pattern[str]:
+    """Units behind numbers: `1.2 h (SD = 40 min)`."""
+    return regex.compile(
+        r"\d\s*(h|hr|hrs|hours?|min|mins|minutes?|s|sec|secs|seconds?|ms|days?|weeks?|wk|wks|months?|mo|years?|yr|yrs|"
+        r"mm|cm|m|km|kg|g|mg|µg|μg|ng|l|ml|dl|°C|%)(?![\w-])",
+        regex.IGNORECASE,
+    )
+
+
+@cache
+def _geometric() -> regex.Pattern[str]:
+    """What tells of means made in logarithms."""
+    return regex.compile(r"\bgeometric\b|\blog", regex.IGNORECASE)
+
+
 ALL_CASES = "all n cases have a value of this variable"
 
 
@@ -64,9 +76,9 @@ def _doubts(claim: Claim, quantity: str) -> Iterator[str]:
         yield LABELLED
     if quantity == "se":
         yield OWN_SCORES.format("the SE")
-    if model_of(claim) or GEOMETRIC.search(claim.place.quote, timeout=1.0):
+    if model_of(claim) or _geometric().search(claim.place.quote, timeout=1.0):
         yield PLAIN_SCORES
-    if len({unit.lower() for unit in UNITS.findall(claim.place.quote, timeout=1.0)}) > 1:
+    if len({unit.lower() for unit in _units().findall(claim.place.quote, timeout=1.0)}) > 1:
         yield ONE_UNIT
 
 

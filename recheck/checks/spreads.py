@@ -5,7 +5,8 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable
 
-from recheck.checks.compare import Comparison, judge
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge
+from recheck.checks.designs import N_BELOW
 from recheck.checks.examples import table
 from recheck.checks.registry import Case, check
 from recheck.checks.surroundings import (
@@ -23,9 +24,7 @@ from recheck.model import Claim, Finding, Interval
 from recheck.recompute import combining, conversions
 from recheck.reconcile.readings import Numbers, Way
 
-SPREAD = Interval(0.0, math.inf)
 POOLED = "SE or interval comes from the SD pooled over the groups that are told beside this one"
-POPULATION = "the SD has n, not n − 1, in its denominator"
 RESAMPLED = "the SE was made by bootstrap"
 CHANCE = 1.12
 """How much wider than the plain formula chance makes a bootstrap SE or interval, at most; narrower it is by √((n − 1)/n) too."""
@@ -64,7 +63,7 @@ def se_from_sd(case: Case) -> Iterable[Finding]:
     n = float(numbers["n"].number)
     ways = [
         plain,
-        Way(lambda box: (_scaled(box["sd"], 1 / math.sqrt(n - 1)),), (POPULATION,)),
+        Way(lambda box: (_scaled(box["sd"], 1 / math.sqrt(n - 1)),), (N_BELOW,)),
         Way(lambda box: (_resampled(box["sd"], n),), (RESAMPLED,)),
     ]
     together = pooled_beside(case)
@@ -82,7 +81,7 @@ def se_from_sd(case: Case) -> Iterable[Finding]:
     yield judge(
         case,
         Comparison(
-            "se-from-sd", "se", numbers, ways, bounds=SPREAD, excuses=(foreign,) if foreign else (),
+            "se-from-sd", "se", numbers, ways, bounds=NOT_NEGATIVE, excuses=(foreign,) if foreign else (),
             doubts=() if around.proved else (OWN_SCORES.format("the SE") + (f"; else {would}" if would else ""),),
         ),
     )  # fmt: skip

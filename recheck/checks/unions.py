@@ -6,6 +6,7 @@ import math
 from collections import Counter
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
+from functools import cache
 
 import regex
 
@@ -18,14 +19,24 @@ from recheck.recompute import combining
 from recheck.recompute.anova import MOST_GROUPS, ss_between_bounds
 from recheck.reconcile.readings import Box, Numbers, Way, box_of
 
-WHOLE = regex.compile(
-    r"""(?:grand\s+)?(?:total|overall|all|combined|pooled|both|whole|entire|full|everyone)\b
+
+@cache
+def _whole() -> regex.Pattern[str]:
+    """What the column or row of all groups together is called."""
+    return regex.compile(
+        r"""(?:grand\s+)?(?:total|overall|all|combined|pooled|both|whole|entire|full|everyone)\b
     (?:[\s-]+(?:sample|group|groups|cohort|population|study|participants|patients|subjects|respondents|loaves|cases|bakers|
         apprentices|tasters|total|combined|together))*""",
-    regex.VERBOSE | regex.IGNORECASE,
-)
-"""What the column or row of all groups together is called."""
-_SIZE = regex.compile(r"\s*[,(\[]?\s*[nN]\s*=.*$")
+        regex.VERBOSE | regex.IGNORECASE,
+    )
+
+
+@cache
+def _size() -> regex.Pattern[str]:
+    """A size behind a name."""
+    return regex.compile(r"\s*[,(\[]?\s*[nN]\s*=.*$")
+
+
 PLAIN_MEAN = "the total is the plain mean of the groups' means, whatever their sizes"
 SUM = "the total is the sum of the groups, not all of their cases together"
 MISSING = "not all cases of the groups have a value of this variable"
@@ -119,11 +130,11 @@ FARTHEST = 2.0
 def _named(claim: Claim) -> str:
     """The innermost name of the group, that of the row where no group is told, without its n."""
     name = (claim.group or claim.place.row or "").rpartition(LEVELS)[2]
-    return _SIZE.sub("", name, timeout=1.0).strip()
+    return _size().sub("", name, timeout=1.0).strip()
 
 
 def _is_whole(claim: Claim) -> bool:
-    return WHOLE.fullmatch(_named(claim), timeout=1.0) is not None
+    return _whole().fullmatch(_named(claim), timeout=1.0) is not None
 
 
 def _above(name: str | None) -> str:

@@ -7,8 +7,8 @@ from collections.abc import Iterable, Mapping, Sequence
 
 import numpy as np
 
-from recheck.checks.compare import Comparison, judge, unchecked
-from recheck.checks.designs import SE_READING, known, whole
+from recheck.checks.compare import NOT_NEGATIVE, Comparison, judge, unchecked
+from recheck.checks.designs import MISSING, SE_READING, known, whole
 from recheck.checks.groups import link_doubts
 from recheck.checks.models import foreign_model
 from recheck.checks.registry import Case, check
@@ -17,13 +17,11 @@ from recheck.recompute import variances
 from recheck.recompute.anova import MOST_GROUPS
 from recheck.reconcile.readings import Box, Numbers, Way
 
-POSITIVE = Interval(0.0, math.inf)
 OTHER_DF = (
     "these df are not n − 1 of both groups, so F is another test's of equal variances, such as Levene's"
 )
 NO_CORRECTION = "the statistic lacks Bartlett's correction"
 LISTED = "the SDs in the text are those of the groups that this test compares"
-MISSING = "no case is missing (n is that of the whole group)"
 
 
 class _Spreads:
@@ -175,7 +173,7 @@ def _judged(case: Case, name: str, quantity: str, spreads: _Spreads, ways: list[
     return judge(
         case,
         Comparison(
-            name, quantity, numbers, ways, claims, bounds=POSITIVE, doubts=doubts,
+            name, quantity, numbers, ways, claims, bounds=NOT_NEGATIVE, doubts=doubts,
             excuses=(foreign,) if foreign else (),
         ),
     )  # fmt: skip

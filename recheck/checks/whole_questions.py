@@ -6,6 +6,7 @@ from collections.abc import Iterator
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
+from recheck.checks.designs import N_BELOW, SE_READING
 from recheck.checks.whole_scores import MOST_ANSWERS, Scored, are_whole, is_change, numbers_of, plain, scored
 from recheck.model import Claim, Printed, Remedy
 from recheck.reconcile.readings import Numbers
@@ -22,8 +23,6 @@ NEARBY = 10
 """How far off a group size is looked for that would do."""
 MOST_STEPS = 40
 """Units of the last digit within which the nearest possible spreads are looked for."""
-N_BELOW = "the SD has n, not n − 1, in its denominator"
-IS_SE = "the spread is a standard error"
 
 
 @dataclass(frozen=True, slots=True)
@@ -77,7 +76,7 @@ def readings(question: Question, unlabelled: bool) -> Iterator[tuple[str, Questi
     if question.quantity != "mean":
         of_all: Spread = "se of all" if question.kind == "se" else "sd of all"
         kinds = [(N_BELOW, replace(question, kind=of_all))]
-        kinds += [(IS_SE, replace(question, kind="se"))] if unlabelled else []
+        kinds += [(SE_READING, replace(question, kind="se"))] if unlabelled else []
     yield from kinds
     for rounding in ROUNDINGS:
         if rounding.words:

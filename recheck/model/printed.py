@@ -45,6 +45,10 @@ class Interval:
             return Interval(-self.high, -self.low)
         return Interval(0.0, max(-self.low, self.high))
 
+    def times(self, factor: float) -> Interval:
+        """Give the interval of the values times a factor that is not negative."""
+        return Interval(self.low * factor, self.high * factor)
+
     def minus(self, other: Interval) -> Interval:
         """Give the interval of all differences of a point of this one and a point of the other."""
         return Interval(self.low - other.high, self.high - other.low)

@@ -23,6 +23,10 @@ QUANTITIES: dict[str, str] = {
 
 RATIOS = ("or", "rr", "hr")
 """What compares two risks, odds or hazards by division: computed with, and symmetric, on the log scale."""
+EFFECTS_OF_COUNTS = frozenset(("or", "rr", "rd"))
+"""What the counts of two groups give; a hazard ratio needs times."""
+STANDARDIZED = ("d", "g", "delta", "d_z", "d_av", "d_rm")
+"""Standardized mean differences."""
 EFFECTS_ON_RISK = frozenset((*RATIOS, "rd"))
 
 

@@ -11,7 +11,9 @@ from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from decimal import Decimal
 
+from recheck.model import EFFECTS_OF_COUNTS
 from recheck.reading.frequencies import (
+    PARTLY,
     may_count,
     measured,
     no_fraction,
@@ -25,7 +27,6 @@ from recheck.reading.symbols import Symbol
 from recheck.reading.tokens import words
 
 SHARE = Symbol("percent", "count")
-_COMPARED = frozenset(("or", "rr", "rd"))
 _REPEATED = words(
     "trial trials item items question questions word words response responses answer answers choice choices attempt attempts time times "
     "occasion occasions stimuli images pairs points observations measurements"
@@ -35,7 +36,6 @@ _AVERAGED = words(
     "average averaged mean median weighted adjusted standardized standardised estimated imputed projected approximately about roughly "
     "around nearly almost increase decrease reduction variance confidence power"
 )
-_PARTLY = words("these those them whom which who remaining latter former rest other others")
 _CHANGED = words(
     "changed change switched moved shifted went turned converted improved worsened deteriorated reversed progressed regressed"
 )
@@ -47,7 +47,7 @@ def with_fractions(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     found = list(items)
     by_fisher = any(_is_fisher(line, index) for index in range(len(line.tokens)))
     if any(
-        item.quantity in _COMPARED
+        item.quantity in EFFECTS_OF_COUNTS
         or _of_two(item)
         or _of_points(item)
         or (by_fisher and item.quantity == "p")
@@ -153,7 +153,7 @@ def _opened(line: Line) -> tuple[Number, int] | None:
         return None
     end = past_words(line, number.after, 6)
     named = line.tokens[number.after : end]
-    plain = named and not any(token.low in _PARTLY or token.low in _REPEATED for token in named)
+    plain = named and not any(token.low in PARTLY or token.low in _REPEATED for token in named)
     return (number, end + 1) if plain and line.at(end).text == "," else None
 
 

@@ -303,7 +303,7 @@ def _percent_first(line: Line, index: int, percent: Number) -> Assignment | None
     )
 
 
-_PARTLY = words("these those them whom which who remaining latter former rest other others")
+PARTLY = words("these those them whom which who remaining latter former rest other others")
 
 
 def with_whole(items: Sequence[Assignment], line: Line) -> list[Assignment]:
@@ -323,7 +323,7 @@ def with_whole(items: Sequence[Assignment], line: Line) -> list[Assignment]:
     for item in items:
         between = [t for k, t in enumerate(line.tokens[at : item.first], at) if k not in counted]
         told = [*between, *line.tokens[item.first : item.after + 3]]
-        nested = any(t.kind == "num" or t.text == ";" for t in between) or any(t.low in _PARTLY for t in told)
+        nested = any(t.kind == "num" or t.text == ";" for t in between) or any(t.low in PARTLY for t in told)
         named = any(name == "total" for name, _ in item.extra)
         if item.part == "count" and not named and not nested and item.printed.value <= total[0].value:
             extra = (*item.extra, ("total", total[0].printed(line)))

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
+from functools import cache
 
 import regex
 
@@ -350,17 +351,20 @@ def without_their_numbers(placed: Sequence[Placed], powers: Sequence[Placed]) ->
     return [item for item in placed if not inside(item)]
 
 
-_PLANS = regex.compile(
-    r"(?i)\bpower(?:ed)?\ (?:analys\w+|calculation\w*|to\ (?:detect|find|show)|(?:of|for)\ \d)|\b(?:sufficient|enough|adequate|statistical|high)\ power\b"
-    r"|\bsensitivity\ (?:power\ )?(?:analys|calculation)|\bsample\ size\ (?:calculation|estimation|planning)|\bminimum\ detectable"
-)
+@cache
+def _plans() -> regex.Pattern[str]:
+    """What speaks of planning a study."""
+    return regex.compile(
+        r"(?i)\bpower(?:ed)?\ (?:analys\w+|calculation\w*|to\ (?:detect|find|show)|(?:of|for)\ \d)|\b(?:sufficient|enough|adequate|statistical|high)\ power\b"
+        r"|\bsensitivity\ (?:power\ )?(?:analys|calculation)|\bsample\ size\ (?:calculation|estimation|planning)|\bminimum\ detectable"
+    )
 
 
 def _planned(item: Placed) -> bool:
     """Whether an effect without a p or an interval is one that a plan assumes: `sensitivity analysis showed that d = 0.40 could be detected`."""
     values = set(item.claim.values)
     lone = item.claim.kind == "estimate" and bool(values) and values <= {*EFFECTS, "g", "eta2", "omega2"}
-    return lone and _PLANS.search(item.text, timeout=TIMEOUT) is not None
+    return lone and _plans().search(item.text, timeout=TIMEOUT) is not None
 
 
 def _parts(text: str) -> tuple[str, ...]:

@@ -9,12 +9,10 @@ from functools import cache
 import regex
 
 from recheck.model import N_OF_GROUP, SIZES_IN_WORDS, Printed
-from recheck.reading.claims import Draft
-from recheck.reading.naming import Named
+from recheck.reading.group_sizes import Told
 from recheck.reading.numerals import Line, printed
 from recheck.reading.views import TIMEOUT
 
-Told = tuple[Draft, Named | None]
 _BESIDE = 24
 """Characters behind the numbers of a test within which sizes are still its own: `U = 53, p = .291, n1 = 12, n2 = 14`."""
 

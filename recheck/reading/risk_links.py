@@ -9,6 +9,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
+from functools import cache
 
 import regex
 
@@ -21,13 +22,34 @@ OF_CHANGES = "the two numbers of changes told with McNemar's test in the same se
 IN_ROW = "the two counts of its row"
 AGAINST_REFERENCE = "the counts of its row and those of “{}”, the only row of its block without a ratio"
 
-_CRUDE = regex.compile(r"[cC]rude|(?i:un-?adjusted|non-?adjusted|univaria|bivaria)|\b[cu](?:OR|RR)\b")
-_ADJUSTED = regex.compile(
-    r"(?<!(?i:non|un)-?)(?i:adjust)|(?i:multivaria|controll(?:ed|ing) for|stratified|propensity|mantel)"
-    r"|\b[aA](?:OR|RR)\b|\b[mM]ultiple logistic|\bOR ?adj"
-)
-_RATES = regex.compile(r"(?i)\brate ratio|incidence rate|\bIRR\b|person.(?:year|month|week|day|time)")
-_POINTS = regex.compile(r"(?i)percentage.points?|%.points?|per.?cent.points?|\bpp\b")
+
+@cache
+def _crude() -> regex.Pattern[str]:
+    """What calls a ratio crude."""
+    return regex.compile(r"[cC]rude|(?i:un-?adjusted|non-?adjusted|univaria|bivaria)|\b[cu](?:OR|RR)\b")
+
+
+@cache
+def _adjusted() -> regex.Pattern[str]:
+    """What calls a ratio adjusted, matched or stratified."""
+    return regex.compile(
+        r"(?<!(?i:non|un)-?)(?i:adjust)|(?i:multivaria|controll(?:ed|ing) for|stratified|propensity|mantel)"
+        r"|\b[aA](?:OR|RR)\b|\b[mM]ultiple logistic|\bOR ?adj"
+    )
+
+
+@cache
+def _rates() -> regex.Pattern[str]:
+    """What tells of a ratio of rates."""
+    return regex.compile(r"(?i)\brate ratio|incidence rate|\bIRR\b|person.(?:year|month|week|day|time)")
+
+
+@cache
+def _points() -> regex.Pattern[str]:
+    """What tells of percentage points."""
+    return regex.compile(r"(?i)percentage.points?|%.points?|per.?cent.points?|\bpp\b")
+
+
 _EVERYONE = frozenset(
     ("total", "all", "overall", "whole sample", "total sample", "everyone", "both groups", "entire sample")
 )
@@ -35,17 +57,23 @@ _BEFORE = 40
 """Characters before a result that may say of what kind it is, where a sentence holds several."""
 
 
-_ALL_CRUDE = regex.compile(
-    r"""(?i)\b(?:all|odds|risk|relative|reported|these|ratios?|differences?|associations?|estimates?)\b[^.;]{0,60}\b(?:are|were|is)\ (?:all\ |reported\ |given\ |presented\ |shown\ )*
+@cache
+def _all_crude() -> regex.Pattern[str]:
+    """What says once that all ratios are crude."""
+    return regex.compile(
+        r"""(?i)\b(?:all|odds|risk|relative|reported|these|ratios?|differences?|associations?|estimates?)\b[^.;]{0,60}\b(?:are|were|is)\ (?:all\ |reported\ |given\ |presented\ |shown\ )*
         (?:as\ )?(?:crude|un-?adjusted|non-?adjusted|univaria\w+)(?!\s+(?:p\b|for\ multip))
         | \bwe\ (?:report|present|give|calculated|computed|estimated)\ (?:only\ )?(?:crude|un-?adjusted)\b""",
-    regex.VERBOSE,
-)
+        regex.VERBOSE,
+    )
 
 
-_NO_ADJUSTMENT = regex.compile(
-    r"(?i)\b(?:not|no|without)\ (?:any\ |further\ )?adjust\w*|\bp[ -]values?[^.;]{0,30}\badjust\w*|\badjust\w*\ (?:p[ -]values?|for\ multipl\w+)"
-)
+@cache
+def _no_adjustment() -> regex.Pattern[str]:
+    """What speaks of adjusting and does not mean the ratios."""
+    return regex.compile(
+        r"(?i)\b(?:not|no|without)\ (?:any\ |further\ )?adjust\w*|\bp[ -]values?[^.;]{0,30}\badjust\w*|\badjust\w*\ (?:p[ -]values?|for\ multipl\w+)"
+    )
 
 
 def all_crude(texts: Sequence[str]) -> bool:
@@ -55,9 +83,9 @@ def all_crude(texts: Sequence[str]) -> bool:
         low = text.lower()
         if "djust" not in low and "crude" not in low and "univaria" not in low and "multivaria" not in low:
             continue
-        if _ADJUSTED.search(_NO_ADJUSTMENT.sub("", text, timeout=TIMEOUT), timeout=TIMEOUT):
+        if _adjusted().search(_no_adjustment().sub("", text, timeout=TIMEOUT), timeout=TIMEOUT):
             return False
-        said = said or _ALL_CRUDE.search(text, timeout=TIMEOUT) is not None
+        said = said or _all_crude().search(text, timeout=TIMEOUT) is not None
     return said
 
 
@@ -106,13 +134,13 @@ def _of_risks(claim: Claim, text: str = "") -> bool:
     if claim.groups or "hr" in claim.values:
         return False
     if claim.kind == "comparison" and "mean_difference" in claim.values:
-        return claim.values["mean_difference"].percent or bool(_POINTS.search(text))
+        return claim.values["mean_difference"].percent or bool(_points().search(text))
     told = claim.values.get("estimate")
     if claim.kind == "estimate" and told is not None:
         # A number above 1 is no share: it is read as an estimate of its own.
         quote = f"{claim.place.quote} {claim.place.column or ''}".lower()
         return "risk difference" in quote or (
-            "difference" in quote and (told.percent or "%" in quote or bool(_POINTS.search(text)))
+            "difference" in quote and (told.percent or "%" in quote or bool(_points().search(text)))
         )
     return claim.kind == "estimate" and bool(EFFECTS_ON_RISK & claim.values.keys())
 
@@ -127,13 +155,13 @@ def _countable(claim: Claim) -> bool:
 def _linked(claim: Claim, groups: Sequence[Claim], basis: str, confidence: Confidence, said: str) -> Claim:
     """The claim with its counts, and with what its heading or its sentence says of the analysis."""
     stated = list(claim.stated)
-    if _CRUDE.search(said):
+    if _crude().search(said):
         stated = [word for word in stated if word not in ("covariate-adjusted", "adjusted-p")] + ["crude"]
-    elif _ADJUSTED.search(said):
+    elif _adjusted().search(said):
         stated.append("covariate-adjusted")
     if said == OF_CHANGES:
         stated.append("paired")
-    if _RATES.search(said):
+    if _rates().search(said):
         stated.append("rates")
     stated = list(dict.fromkeys(stated))
     return replace(
@@ -186,7 +214,7 @@ def _of_one_whole(pair: Sequence[Placed]) -> bool:
 def _beside(item: Placed, since: int) -> str:
     """What says of which kind a result is: its own words where they do, else those before it."""
     quote = item.claim.place.quote
-    if _CRUDE.search(quote) or _ADJUSTED.search(quote):
+    if _crude().search(quote) or _adjusted().search(quote):
         return quote
     if not since:
         return item.text

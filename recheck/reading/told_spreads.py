@@ -9,12 +9,10 @@ from functools import cache
 import regex
 
 from recheck.model import Printed
-from recheck.reading.claims import Draft
-from recheck.reading.naming import Named
+from recheck.reading.group_sizes import Told
 from recheck.reading.numerals import Line, printed
 from recheck.reading.views import TIMEOUT
 
-Told = tuple[Draft, Named | None]
 MOST = 12
 
 

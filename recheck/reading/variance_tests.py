@@ -37,9 +37,12 @@ def _of_means() -> regex.Pattern[str]:
     )
 
 
-_NO_TEST = regex.compile(
-    r"varian\w+ (?:explained|accounted|inflation)|(?:explain\w*|account\w* for|% of|percent of|proportion of)(?: the)? varian"
-)
+@cache
+def _no_test() -> regex.Pattern[str]:
+    """What speaks of variances and of no test of them."""
+    return regex.compile(
+        r"varian\w+ (?:explained|accounted|inflation)|(?:explain\w*|account\w* for|% of|percent of|proportion of)(?: the)? varian"
+    )
 
 
 def of_variances(draft: Draft) -> tuple[str, ...]:
@@ -56,7 +59,7 @@ def of_variances(draft: Draft) -> tuple[str, ...]:
     behind = regex.match(
         r"[ ,;:]{0,3}(?:by|in|using|with|of)? ?(?:levene|bartlett)", text[end : end + 40].lower()
     )
-    if _NO_TEST.search(before, timeout=TIMEOUT) or "spheric" in before:
+    if _no_test().search(before, timeout=TIMEOUT) or "spheric" in before:
         return ()
     told = _last(_of_variances(), before)
     if behind is None and (told < 0 or told < _last(_of_means(), before)):

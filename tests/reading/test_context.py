@@ -193,7 +193,9 @@ def test_a_paragraph_says_what_stands_after_its_own_signs(texts: tuple[str, ...]
 @pytest.mark.parametrize(("level", "least"), [(".10", "0.05"), (".01", "0.01")])
 def test_p_that_is_not_significant_is_above_a_level_of_05_at_most(level: str, least: str) -> None:
     """A lax level may be that of some tests alone; a strict one lets more p be `ns`."""
-    found = reading(f"We used alpha = {level} for all tests.", "The loaves did not differ, t(122) = 1.93, ns.")
+    found = reading(
+        f"We used alpha = {level} for all tests.", "The loaves did not differ, t(122) = 1.93, ns."
+    )
     (test,) = (claim for claim in found.claims if claim.kind == "t-test")
     assert str(test.values["p"].value) == least
     assert test.values["p"].relation == ">"

@@ -4,13 +4,12 @@ from __future__ import annotations
 
 import regex
 
-from recheck.model import Printed
+from recheck.model import EFFECTS_OF_COUNTS, Printed
 from recheck.reading.tables.frame import Frame
 from recheck.reading.tables.values import Piece
 from recheck.reading.views import TIMEOUT
 
 _SAID = regex.compile(r"\bn ?/ ?N\b|\b(?:no\.?|events?|number) ?/ ?(?:total|no\.|number|N)", regex.IGNORECASE)
-_RISKS = frozenset(("or", "rr", "rd"))
 SMALLEST = 5
 """A total up to here may be part of a fraction, a date or a score."""
 
@@ -46,4 +45,4 @@ def _said(frame: Frame) -> bool:
 
 
 def _compares_risks(frame: Frame) -> bool:
-    return any(_RISKS & set(role.quantities) for role in frame.roles.values())
+    return any(EFFECTS_OF_COUNTS & set(role.quantities) for role in frame.roles.values())
